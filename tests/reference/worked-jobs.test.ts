@@ -3,14 +3,31 @@
  * Fee 5 %, half up.
  */
 import { describe, expect, it } from 'vitest';
+import { scaleLog } from '~/domain/timber/log-scale.ts';
 import { NO_WORK } from '~/domain/trade/price.ts';
 import { settle } from '~/domain/trade/settlement.ts';
 import { largerLogs } from '~/domain/trade/on-the-day.ts';
+import { countTally, NO_EXTRAS, type TalliedBoard } from '~/domain/trade/tally-count.ts';
 import { OAK_TERMS, termsWith } from '../support/rate-cards.ts';
 
 describe('oak by the hardwood rule, $310 held', () => {
+  const boards = ([[1, 8, 12, 20], [1.25, 6.5, 12, 8], [2, 9, 12, 6], [0.75, 10, 11 + 8 / 12, 5]] as const).map(
+    ([thicknessIn, widthIn, lengthFt, count]): TalliedBoard => ({ kind: 'board', logId: null, thicknessIn, widthIn, lengthFt, count }),
+  );
+  const work = countTally(OAK_TERMS, { boards, clock: [], blades: [], culls: [], extras: NO_EXTRAS }, []);
   // 378 × 0.50 = 189.00 + set-up 75 + travel (31 − 25) × 2 × 2 = 24 → 288.00
-  const job = settle(OAK_TERMS, { ...NO_WORK, boardFeet: 378, setUps: 1, trips: 1 }, { heldCents: 31_000, feeBasisPoints: 500 });
+  const job = settle(OAK_TERMS, work, { heldCents: 31_000, feeBasisPoints: 500 });
+
+  it('scales 400 by International ¼, 370 by Scribner, 330 by Doyle', () => {
+    const scaled = [18, 16, 14].map((smallEndIn) => scaleLog({ smallEndIn, lengthFt: 12 }).boardFeet);
+    expect(scaled.map(({ internationalQuarter }) => internationalQuarter)).toEqual([170, 130, 100]);
+    expect(scaled.map(({ scribnerDecimalC }) => scribnerDecimalC)).toEqual([160, 120, 90]);
+    expect(scaled.map(({ doyle }) => doyle)).toEqual([147, 108, 75]);
+  });
+
+  it('tallies 160 + 65 + 108 + 45 = 378 bf', () => {
+    expect(work.boardFeet).toBe(378);
+  });
 
   it('prices each line once', () => {
     expect(job.lines.map(({ label, amountCents }) => [label, amountCents])).toEqual([

@@ -1,3 +1,5 @@
+import { largeEndOrTaper } from '~/domain/timber/taper-and-bark.ts';
+
 /** A mill's kind, in the order sawyers name them. */
 export type MillKind = 'band' | 'swing-blade' | 'chainsaw' | 'circular';
 
@@ -25,14 +27,10 @@ export interface LogForFit {
   readonly barkPct: number;
 }
 
-/** Taper when the large end was not measured: half an inch per 4 ft of length. */
-const TAPER_IN_PER_FT = 0.5 / 4;
 const TOLERANCE_IN = 0.005;
 
 /** Largest diameter outside bark: the large end (measured, or small end + taper) with its bark on. */
-export function largestOutsideBarkIn({ smallEndIn, largeEndIn, lengthFt, barkPct }: LogForFit): number {
-  return (largeEndIn ?? smallEndIn + lengthFt * TAPER_IN_PER_FT) * Math.sqrt(1 + barkPct / 100);
-}
+export const largestOutsideBarkIn = (log: LogForFit): number => largeEndOrTaper(log) * Math.sqrt(1 + log.barkPct / 100);
 
 export interface Fit {
   readonly fits: boolean;
@@ -45,7 +43,7 @@ export interface Fit {
 /** Holds one log against the mill's largest log, longest, shortest and widest cut. */
 export function fitLog(mill: MillLimits, log: LogForFit): Fit {
   const largest = largestOutsideBarkIn(log);
-  const insideBark = log.largeEndIn ?? log.smallEndIn + log.lengthFt * TAPER_IN_PER_FT;
+  const insideBark = largeEndOrTaper(log);
   const reasons = [
     ...(largest > mill.largestLogIn + TOLERANCE_IN ? [`the butt is ${inches(largest - mill.largestLogIn)} in too wide (${inches(largest)} in over bark, the mill takes ${inches(mill.largestLogIn)})`] : []),
     ...(log.lengthFt > mill.longestFt ? [`${feet(log.lengthFt)} is over the longest, ${feet(mill.longestFt)}`] : []),

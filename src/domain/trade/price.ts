@@ -1,6 +1,7 @@
 import { type Cents, share, times } from '~/domain/money.ts';
+import { logRuleNames } from '~/domain/timber/log-rules.ts';
 import { quarterHours } from './clock.ts';
-import { basisPrice, type BidTerms, LOG_RULE_NAMES, offBearerCents, type RateCard } from './rate-card.ts';
+import { basisPrice, type BidTerms, offBearerCents, type RateCard } from './rate-card.ts';
 
 export type LineKind = 'sawing' | 'surcharge' | 'extra' | 'set-up' | 'travel' | 'minimum' | 'metal' | 'tax';
 export type LineUnit = 'bf' | 'hour' | 'sq ft' | 'log' | 'pass' | 'each' | 'landing' | 'mile' | 'load' | 'blade' | 'job' | '%';
@@ -106,7 +107,7 @@ function sawingLines({ card, offBearer }: BidTerms, work: WorkQuantities): Line[
     basis.kind === 'hourly'
       ? [line('sawing', 'Sawing, by the hour', quarterHours(work.clockMinutes), 'hour', rate)]
       : [
-          line('sawing', `Sawing, ${basis.kind === 'lumber-tally' ? 'lumber tally' : LOG_RULE_NAMES[basis.rule]}`, work.boardFeet, 'bf', rate),
+          line('sawing', `Sawing, ${basis.kind === 'lumber-tally' ? 'lumber tally' : logRuleNames[basis.rule]}`, work.boardFeet, 'bf', rate),
           line('sawing', 'Sawing, logs added', work.addedBoardFeet, 'bf', rate),
         ];
   const slabLines =

@@ -1,15 +1,14 @@
 import { type Cents, formatCents } from '~/domain/money.ts';
+import { type LogRule, logRuleNames } from '~/domain/timber/log-rules.ts';
 
-/** A log rule, by the name the public endpoints use. */
-export type LogRule = 'internationalQuarter' | 'doyle' | 'scribnerDecimalC';
 /** How a lumber tally counts: whole surface measure, or exact decimals on the nominal size. */
 export type TallyRule = 'hardwood' | 'exact';
-/** Who takes boards off the mill: a helper the landowner brings, or nobody (the sawyer's price is then the other one). */
-export type OffBearer = 'with' | 'without';
+/** Who takes boards off the mill: a helper of the landowner's, or one the sawyer brings. */
+export type OffBearer = 'landowner-provides' | 'sawyer-brings';
 /** What becomes of slabs and sawdust. */
 export type Waste = 'left' | 'hauled' | 'bundled';
 
-/** A price that depends on whether the landowner brings an off-bearer. */
+/** A price with the sawyer's own off-bearer, and the price without one, when the landowner provides the help. */
 export interface OffBearerPrice {
   readonly withCents: Cents;
   readonly withoutCents: Cents;
@@ -80,12 +79,6 @@ export interface BidTerms {
   readonly landings: number;
 }
 
-export const LOG_RULE_NAMES: Readonly<Record<LogRule, string>> = {
-  internationalQuarter: 'International ¼-in',
-  doyle: 'Doyle',
-  scribnerDecimalC: 'Scribner Decimal C',
-};
-
 export const TALLY_RULE_NAMES: Readonly<Record<TallyRule, string>> = {
   hardwood: 'hardwood rule (surface measure)',
   exact: 'exact decimals on nominal size',
@@ -93,7 +86,7 @@ export const TALLY_RULE_NAMES: Readonly<Record<TallyRule, string>> = {
 
 /** The price of the pair that the bid's off-bearer choice picks. */
 export const offBearerCents = (price: OffBearerPrice, offBearer: OffBearer): Cents =>
-  offBearer === 'with' ? price.withCents : price.withoutCents;
+  offBearer === 'sawyer-brings' ? price.withCents : price.withoutCents;
 
 /** The basis's price: per bf, or per hour. */
 export const basisPrice = (basis: SawingBasis): OffBearerPrice => (basis.kind === 'hourly' ? basis.perHour : basis.perBf);
@@ -117,7 +110,7 @@ function describeCount(basis: SawingBasis): string {
     case 'log-scale': {
       const smallest = basis.smallestLog;
       const least = smallest === null ? '' : `, no log counted for less than ${smallest.diameterIn} in × ${smallest.lengthFt} ft`;
-      return `log scale, ${LOG_RULE_NAMES[basis.rule]}${least}`;
+      return `log scale, ${logRuleNames[basis.rule]}${least}`;
     }
     case 'hourly':
       return `by the hour from ${basis.from === 'first-cut' ? 'the first cut' : 'arrival'}, to a quarter hour`;

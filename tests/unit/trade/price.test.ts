@@ -9,25 +9,25 @@ const amounts = (terms = OAK_TERMS, work = NO_WORK) => priceWork(terms, work).li
 describe('what a rate counts', () => {
   it('is said in the words of the trade', () => {
     expect(describeBasis(OAK_CARD)).toBe('lumber tally, hardwood rule (surface measure)');
-    expect(describeBasis({ ...OAK_CARD, basis: { kind: 'log-scale', rule: 'doyle', smallestLog: { diameterIn: 12, lengthFt: 8 }, perBf: { withCents: 40, withoutCents: 45 } } }))
+    expect(describeBasis({ ...OAK_CARD, basis: { kind: 'log-scale', rule: 'doyle', smallestLog: { diameterIn: 12, lengthFt: 8 }, perBf: { withCents: 45, withoutCents: 40 } } }))
       .toBe('log scale, Doyle, no log counted for less than 12 in × 8 ft');
-    expect(describeBasis({ ...OAK_CARD, basis: { kind: 'hourly', from: 'arrival', perHour: { withCents: 9_500, withoutCents: 11_000 } }, slabs: { kind: 'square-foot', cents: 300 } }))
+    expect(describeBasis({ ...OAK_CARD, basis: { kind: 'hourly', from: 'arrival', perHour: { withCents: 11_000, withoutCents: 9_500 } }, slabs: { kind: 'square-foot', cents: 300 } }))
       .toBe('by the hour from arrival, to a quarter hour; slabs by the square foot of mean face');
-    expect(describeRate(OAK_CARD, 'with')).toBe('$0.50 / bf');
-    expect(describeRate(OAK_CARD, 'without')).toBe('$0.60 / bf');
+    expect(describeRate(OAK_CARD, 'landowner-provides')).toBe('$0.50 / bf');
+    expect(describeRate(OAK_CARD, 'sawyer-brings')).toBe('$0.60 / bf');
     expect(describeMinimum({ ...OAK_CARD, minimum: { cents: 25_000, covers: 'sawing-only' } })).toBe('$250.00 minimum for the sawing only');
   });
 });
 
 describe('every basis', () => {
   it('log scale charges the scale, not the tally', () => {
-    const terms = termsWith({ basis: { kind: 'log-scale', rule: 'doyle', smallestLog: null, perBf: { withCents: 45, withoutCents: 50 } }, setUpPerLanding: 0 }, { roadMiles: 0 });
+    const terms = termsWith({ basis: { kind: 'log-scale', rule: 'doyle', smallestLog: null, perBf: { withCents: 50, withoutCents: 45 } }, setUpPerLanding: 0 }, { roadMiles: 0 });
     // Doyle 330 × 0.45 = 148.50
     expect(amounts(terms, { ...NO_WORK, boardFeet: 330 })).toEqual([['Sawing, Doyle', 14_850]]);
   });
 
   it('the hour is charged to the nearest quarter, once for the job', () => {
-    const terms = termsWith({ basis: { kind: 'hourly', from: 'first-cut', perHour: { withCents: 9_500, withoutCents: 11_000 } } }, { roadMiles: 0, offBearer: 'without' });
+    const terms = termsWith({ basis: { kind: 'hourly', from: 'first-cut', perHour: { withCents: 11_000, withoutCents: 9_500 } } }, { roadMiles: 0, offBearer: 'sawyer-brings' });
     // 6 h 8 min = 8 min is past half a quarter (7½ min): 6.25 × 110.00 = 687.50
     expect(amounts(terms, { ...NO_WORK, clockMinutes: 368 })).toEqual([['Sawing, by the hour', 68_750]]);
     // 6 h 7 min → 6.00 × 110.00
