@@ -105,11 +105,14 @@ export function parseLengthFt(text: string, assumed: LengthUnit = 'ft', path = '
   return read.ok ? good(Number((read.value / 12).toPrecision(15))) : read;
 }
 
+/** Nothing that is measured is longer; beyond it a fraction of an inch has no meaning. */
+const printable = (value: number): boolean => Math.abs(value) < 1e12;
+
 const greatestDivisor = (a: number, b: number): number => (b === 0 ? a : greatestDivisor(b, a % b));
 
-/** A number with a fraction to the nearest 1/16 (or another denominator): `12 3/8`, `3/8`, `0`, `−1/2`. Never NaN: what is not finite prints as `?`. */
+/** A number with a fraction to the nearest 1/16 (or another denominator): `12 3/8`, `3/8`, `0`, `−1/2`. Never NaN: what is not a length prints as `?`. */
 export function formatFraction(value: number, denominator: 2 | 4 | 8 | 16 | 32 = 16): string {
-  if (!Number.isFinite(value)) return '?';
+  if (!printable(value)) return '?';
   const parts = Math.round(Math.abs(value) * denominator);
   const whole = Math.floor(parts / denominator);
   const left = parts % denominator;
@@ -124,7 +127,7 @@ export const formatInches = (inches: number, denominator: 2 | 4 | 8 | 16 | 32 = 
 
 /** `12 ft 6 in`, `12 ft`, `3/8 in`: inches as feet and inches to 1/16. */
 export function formatFeetInches(inches: number, denominator: 2 | 4 | 8 | 16 | 32 = 16): string {
-  if (!Number.isFinite(inches)) return '?';
+  if (!printable(inches)) return '?';
   const parts = Math.round(Math.abs(inches) * denominator);
   const feet = Math.floor(parts / (12 * denominator));
   const left = (parts - feet * 12 * denominator) / denominator;
@@ -138,7 +141,7 @@ export const formatFeet = (feet: number): string => formatFeetInches(feet * 12);
 
 /** Inches in metric: `37.5 cm` below a metre, `3.66 m` from there on. */
 export function formatMetric(inches: number): string {
-  if (!Number.isFinite(inches)) return '?';
+  if (!printable(inches)) return '?';
   const cm = inches * 2.54;
   return Math.abs(cm) < 100 ? `${Number(cm.toFixed(1))} cm` : `${(cm / 100).toFixed(2)} m`;
 }
