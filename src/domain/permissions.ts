@@ -1,0 +1,83 @@
+import type { BidState } from './states/bid.ts';
+import type { BookingState } from './states/booking.ts';
+import type { ListingState } from './states/listing.ts';
+
+/**
+ * What an account is to a thing. `owner` made the listing, `bidder` made the bid, `landowner` and `sawyer` are the two sides of
+ * a booking, `member` is any active account with a confirmed address, `anySawyer` one that works as a sawyer.
+ */
+export type Role = 'owner' | 'bidder' | 'landowner' | 'sawyer' | 'anySawyer' | 'member' | 'moderator';
+
+interface Rule<State extends string> {
+  readonly who: readonly Role[];
+  /** The states in which the deed is allowed; absent means any. */
+  readonly states?: readonly State[];
+}
+
+const rules = <State extends string>() => <const Action extends string>(table: Readonly<Record<Action, Rule<State>>>) => table;
+
+/** One row a deed: who may do it, in which state of the thing. Commands enforce it; queries send the answer along as `can`. */
+export const permissions = {
+  listing: rules<ListingState>()({
+    create: { who: ['member'] },
+    seeDraft: { who: ['owner'], states: ['draft'] },
+    edit: { who: ['owner'], states: ['draft', 'open'] },
+    publish: { who: ['owner'], states: ['draft'] },
+    withdraw: { who: ['owner'], states: ['open'] },
+    addPhoto: { who: ['owner'], states: ['draft', 'open', 'closed', 'matched'] },
+    seeBids: { who: ['owner', 'moderator'], states: ['open', 'closed', 'matched', 'done', 'withdrawn', 'lapsed'] },
+    chooseBid: { who: ['owner'], states: ['open', 'closed'] },
+    seePlace: { who: ['owner', 'moderator'] },
+    bid: { who: ['anySawyer'], states: ['open'] },
+    ask: { who: ['anySawyer', 'owner'], states: ['open', 'closed', 'matched'] },
+    hide: { who: ['moderator'] },
+  }),
+  bid: rules<BidState>()({
+    see: { who: ['bidder', 'owner', 'moderator'] },
+    change: { who: ['bidder'], states: ['open', 'toConfirm'] },
+    confirm: { who: ['bidder'], states: ['toConfirm'] },
+    withdraw: { who: ['bidder'], states: ['open', 'toConfirm'] },
+    choose: { who: ['owner'], states: ['open'] },
+  }),
+  booking: rules<BookingState>()({
+    see: { who: ['landowner', 'sawyer', 'moderator'] },
+    message: { who: ['landowner', 'sawyer'] },
+    proposeDay: { who: ['landowner', 'sawyer'], states: ['proposed', 'agreed', 'held'] },
+    confirmDay: { who: ['landowner', 'sawyer'], states: ['proposed', 'agreed', 'held'] },
+    pay: { who: ['landowner'], states: ['agreed'] },
+    cancel: { who: ['landowner', 'sawyer'], states: ['proposed', 'agreed', 'held'] },
+    seePlace: { who: ['landowner', 'sawyer', 'moderator'], states: ['held', 'sawing', 'tallied', 'queried', 'signed', 'settled'] },
+    startSawing: { who: ['sawyer'], states: ['held'] },
+    enterTally: { who: ['sawyer'], states: ['held', 'sawing'] },
+    offerTally: { who: ['sawyer'], states: ['sawing'] },
+    amendTally: { who: ['sawyer'], states: ['queried'] },
+    signTally: { who: ['landowner'], states: ['tallied', 'queried'] },
+    queryTally: { who: ['landowner'], states: ['tallied'] },
+    decideTally: { who: ['moderator'], states: ['queried'] },
+    topUp: { who: ['landowner'], states: ['sawing', 'tallied', 'queried', 'signed'] },
+    acceptHeld: { who: ['sawyer'], states: ['signed'] },
+    review: { who: ['landowner', 'sawyer'], states: ['settled'] },
+  }),
+  desk: rules<never>()({
+    open: { who: ['moderator'] },
+  }),
+} as const;
+
+export type Subject = keyof typeof permissions;
+export type Action<S extends Subject> = keyof (typeof permissions)[S] & string;
+
+/**
+ * Whether someone with these roles may do the deed in this state. Pure; `server/authorize.ts` finds the roles and throws.
+ */
+export function may<S extends Subject>(subject: S, action: Action<S>, roles: ReadonlySet<Role>, state?: string): boolean {
+  const rule = (permissions[subject] as Readonly<Record<string, Rule<string>>>)[action];
+  if (!rule) return false;
+  if (rule.states && (state === undefined || !rule.states.includes(state))) return false;
+  return rule.who.some((role) => roles.has(role));
+}
+
+/** Every deed on a subject answered at once, for a page to read. */
+export function abilities<S extends Subject>(subject: S, roles: ReadonlySet<Role>, state?: string): Record<Action<S>, boolean> {
+  const actions = Object.keys(permissions[subject]) as Action<S>[];
+  return Object.fromEntries(actions.map((action) => [action, may(subject, action, roles, state)])) as Record<Action<S>, boolean>;
+}
