@@ -1,0 +1,56 @@
+import pg from 'pg';
+import { RateLimiterPostgres, RateLimiterRes } from 'rate-limiter-flexible';
+import { tooMany } from '../errors.ts';
+import { env } from '../env.ts';
+
+/** How many tries, in how many seconds. Kept in PostgreSQL, so every process counts together. */
+const limits = {
+  'sign-in by address': { points: 30, duration: 900 },
+  'sign-in by account': { points: 10, duration: 900 },
+  'second factor': { points: 8, duration: 900 },
+  'sign-up': { points: 20, duration: 3600 },
+  'password reset': { points: 6, duration: 3600 },
+  'confirmation mail': { points: 6, duration: 3600 },
+  upload: { points: 200, duration: 3600 },
+  message: { points: 60, duration: 3600 },
+  report: { points: 20, duration: 3600 },
+} as const;
+
+export type LimitName = keyof typeof limits;
+
+let pool: pg.Pool | undefined;
+const limiters = new Map<LimitName, RateLimiterPostgres>();
+
+function limiterFor(name: LimitName): RateLimiterPostgres {
+  const known = limiters.get(name);
+  if (known) return known;
+  pool ??= new pg.Pool({ connectionString: env().DATABASE_URL, max: 2, application_name: 'skidway limits' });
+  const made = new RateLimiterPostgres({ storeClient: pool, tableName: 'rate_limit', tableCreated: true, keyPrefix: name, ...limits[name] });
+  limiters.set(name, made);
+  return made;
+}
+
+/**
+ * Counts one try of the deed for this key (an address, an account).
+ * @throws Refusal `tooMany` with the seconds to wait.
+ */
+export async function countTry(name: LimitName, key: string): Promise<void> {
+  try {
+    await limiterFor(name).consume(key.toLowerCase().slice(0, 200));
+  } catch (error) {
+    if (error instanceof RateLimiterRes) throw tooMany(Math.max(1, Math.ceil(error.msBeforeNext / 1000)));
+    throw error;
+  }
+}
+
+/** Forgets the tries of a key, after a success. */
+export async function forgetTries(name: LimitName, key: string): Promise<void> {
+  await limiterFor(name).delete(key.toLowerCase().slice(0, 200));
+}
+
+/** Closes the limiter's own connections, for tests and a graceful stop. */
+export async function closeLimits(): Promise<void> {
+  await pool?.end();
+  pool = undefined;
+  limiters.clear();
+}

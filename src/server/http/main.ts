@@ -1,0 +1,30 @@
+import { join } from 'node:path';
+import { fileURLToPath, pathToFileURL } from 'node:url';
+import { env } from '../env.ts';
+import { log } from '../log.ts';
+import { createFront, type Handler } from './front.ts';
+
+const dist = fileURLToPath(new URL('../../../dist', import.meta.url));
+const settings = env();
+const { handler } = (await import(pathToFileURL(join(dist, 'server/entry.mjs')).href)) as { handler: Handler };
+
+const server = createFront(handler, join(dist, 'client'), settings);
+server.requestTimeout = 30_000;
+server.headersTimeout = 10_000;
+server.keepAliveTimeout = 5_000;
+server.listen(settings.PORT, settings.HOST, () => {
+  log().info({ port: settings.PORT }, 'web ready');
+  process.send?.('ready');
+});
+
+let stopping = false;
+for (const signal of ['SIGINT', 'SIGTERM'] as const) {
+  process.on(signal, () => {
+    if (stopping) return;
+    stopping = true;
+    // Requests in hand are answered; idle connections are closed; nobody waits longer than ten seconds.
+    server.close(() => process.exit(0));
+    server.closeIdleConnections();
+    setTimeout(() => process.exit(0), 10_000).unref();
+  });
+}

@@ -1,0 +1,9 @@
+import type { Jobs } from '../jobs.ts';
+import { sendMail } from '../../services/mail.ts';
+import { sweep } from './sweep.ts';
+
+/** What the worker does with each kind of job. A handler may run twice and must then change nothing twice. */
+export const handlers: { readonly [Name in keyof Jobs]?: (payload: Jobs[Name]) => Promise<void> } = {
+  'send-mail': sendMail,
+  sweep: async () => sweep(),
+};

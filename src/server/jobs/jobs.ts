@@ -1,0 +1,19 @@
+import type { MailMessage } from '../services/mail.ts';
+
+/** Every kind of job and what it carries. The migration step declares a queue for each name in `queues`. */
+export interface Jobs {
+  'send-mail': MailMessage;
+  'process-photo': { photoId: string };
+  'make-provider-call': { callId: string };
+  'handle-provider-event': { eventId: string };
+  sweep: { which?: string };
+}
+
+/** How often a failing job is tried again, and how far apart (seconds, doubling). */
+export const queues: Readonly<Record<keyof Jobs, { retryLimit: number; retryDelay: number; retryBackoff: boolean }>> = {
+  'send-mail': { retryLimit: 8, retryDelay: 5, retryBackoff: true },
+  'process-photo': { retryLimit: 3, retryDelay: 5, retryBackoff: true },
+  'make-provider-call': { retryLimit: 10, retryDelay: 2, retryBackoff: true },
+  'handle-provider-event': { retryLimit: 10, retryDelay: 1, retryBackoff: true },
+  sweep: { retryLimit: 0, retryDelay: 1, retryBackoff: false },
+};

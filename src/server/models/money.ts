@@ -1,0 +1,97 @@
+import type { PaymentState } from '~/domain/states/payment.ts';
+import { filled, id, identity, instant, json, keyText, nullable, ref, table, text, whole, type Row } from './table.ts';
+
+export const HeldPayment = table('held_payment', {
+  id: id(),
+  bookingId: ref(),
+  status: filled(text<PaymentState>()),
+  dueCents: whole(),
+  transferGroup: text(),
+  disputedAt: nullable(instant()),
+  createdAt: instant(),
+  updatedAt: instant(),
+});
+export type HeldPayment = Row<typeof HeldPayment>;
+
+export const Checkout = table('checkout', {
+  id: id(),
+  paymentId: ref(),
+  purpose: text<'hold' | 'top-up' | 'increase'>(),
+  amountCents: whole(),
+  status: filled(text<'creating' | 'open' | 'complete' | 'expired'>()),
+  providerSessionId: nullable(text()),
+  url: nullable(text()),
+  idempotencyKey: text(),
+  expiresAt: instant(),
+  createdAt: instant(),
+  completedAt: nullable(instant()),
+});
+export type Checkout = Row<typeof Checkout>;
+
+export const Charge = table('charge', {
+  id: id(),
+  paymentId: ref(),
+  checkoutId: nullable(ref()),
+  providerChargeId: text(),
+  providerIntentId: text(),
+  amountCents: whole(),
+  receivedAt: instant(),
+});
+export type Charge = Row<typeof Charge>;
+
+export const ProviderCall = table('provider_call', {
+  id: id(),
+  kind: text<'transfer' | 'refund' | 'reversal' | 'expire-checkout'>(),
+  bookingId: nullable(ref()),
+  paymentId: nullable(ref()),
+  chargeId: nullable(ref()),
+  idempotencyKey: text(),
+  request: json<Record<string, unknown>>(),
+  status: filled(text<'waiting' | 'done' | 'failed' | 'stuck'>()),
+  attempts: filled(whole()),
+  providerId: nullable(text()),
+  response: nullable(json<unknown>()),
+  error: nullable(text()),
+  createdAt: instant(),
+  doneAt: nullable(instant()),
+});
+export type ProviderCall = Row<typeof ProviderCall>;
+
+export const ProviderEvent = table('provider_event', {
+  id: keyText(),
+  type: text(),
+  createdAt: instant(),
+  receivedAt: instant(),
+  handledAt: nullable(instant()),
+  payload: json<unknown>(),
+  outcome: nullable(text()),
+});
+export type ProviderEvent = Row<typeof ProviderEvent>;
+
+export type LedgerAccount =
+  | 'provider balance'
+  | 'landowner held'
+  | 'sawyer payable'
+  | 'refund payable'
+  | 'platform fee'
+  | 'provider fee'
+  | 'sawyer receivable'
+  | 'dispute loss';
+
+export const LedgerGroup = table('ledger_group', {
+  id: id(),
+  at: instant(),
+  cause: text(),
+  causeId: text(),
+  bookingId: nullable(ref()),
+  actorId: nullable(ref()),
+  note: filled(text()),
+});
+
+export const LedgerEntry = table('ledger_entry', {
+  id: { options: { ...identity().options, primaryKey: true, autoIncrement: true }, given: true } as ReturnType<typeof identity>,
+  groupId: ref(),
+  account: text<LedgerAccount>(),
+  bookingId: nullable(ref()),
+  amountCents: whole(),
+});

@@ -1,0 +1,83 @@
+import type { BidState } from '~/domain/states/bid.ts';
+import { day, days, filled, id, instant, json, keyRef, keyWhole, nullable, point, real, ref, table, text, texts, whole, wholes, yes, type Row } from './table.ts';
+
+/** `base` is snapped to the coarse grid before it is stored. */
+export const SawyerProfile = table('sawyer_profile', {
+  accountId: keyRef(),
+  businessName: filled(text()),
+  about: filled(text()),
+  zip: nullable(text()),
+  town: nullable(text()),
+  state: nullable(text()),
+  timeZone: nullable(text()),
+  base: nullable(point()),
+  travelMiles: filled(whole()),
+  services: filled(texts()),
+  languages: filled(texts()),
+  workingDays: filled(wholes()),
+  noticeDays: filled(whole()),
+  certificateKey: nullable(text()),
+  certificateSeenAt: nullable(instant()),
+  certificateExpiresOn: nullable(day()),
+  payoutAccount: nullable(text()),
+  payoutsReady: filled(yes()),
+  updatedAt: instant(),
+});
+export type SawyerProfile = Row<typeof SawyerProfile>;
+
+export const DayOff = table('day_off', { sawyerId: keyRef(), day: { options: { ...day().options, primaryKey: true } } as ReturnType<typeof day> });
+
+export type MillKind = 'band' | 'swing-blade' | 'chainsaw' | 'circular';
+
+export const Mill = table('mill', {
+  id: id(),
+  sawyerId: ref(),
+  name: text(),
+  kind: text<MillKind>(),
+  kerfIn: real(),
+  largestLogIn: real(),
+  widestCutIn: real(),
+  widestBoardIn: real(),
+  longestFt: real(),
+  shortestFt: real(),
+  paceBfPerHour: whole(),
+  turnsLogsBy: text<'machine' | 'hand'>(),
+  realisedYield: filled(real()),
+  yieldJobs: filled(whole()),
+  createdAt: instant(),
+  retiredAt: nullable(instant()),
+});
+export type Mill = Row<typeof Mill>;
+
+/** A new revision for each change; the highest is the current one. The card's shape is `domain/trade/rate-card.ts`. */
+export const RateCard = table('rate_card', { sawyerId: keyRef(), revision: keyWhole(), card: json<unknown>(), createdAt: instant() });
+export type RateCard = Row<typeof RateCard>;
+
+/** `mill`, `card` and `estimate` are frozen copies. */
+export const Bid = table('bid', {
+  id: id(),
+  listingId: ref(),
+  listingRevision: whole(),
+  sawyerId: ref(),
+  millId: ref(),
+  status: filled(text<BidState>()),
+  mill: json<unknown>(),
+  card: json<unknown>(),
+  estimate: json<unknown>(),
+  roadMiles: real(),
+  expectedBfHundredths: whole(),
+  expectedBy: text(),
+  overrideReason: nullable(text()),
+  expectedCents: whole(),
+  lowCents: whole(),
+  highCents: whole(),
+  holdCents: whole(),
+  metalCapCents: filled(whole()),
+  offBearer: text<'sawyer-brings' | 'landowner-provides'>(),
+  daysOffered: filled(days()),
+  message: filled(text()),
+  createdAt: instant(),
+  updatedAt: instant(),
+  decidedAt: nullable(instant()),
+});
+export type Bid = Row<typeof Bid>;
