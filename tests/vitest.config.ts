@@ -2,23 +2,40 @@ import { fileURLToPath } from 'node:url';
 import { defineConfig } from 'vitest/config';
 
 const root = fileURLToPath(new URL('..', import.meta.url));
-const alias = { '~': `${root}src` };
+const resolve = { alias: { '~': `${root}src` } };
 
-/** Pure checks: no database, no server. `tests/server` and `tests/http` have projects of their own. */
+/**
+ * Three kinds of check: `pure` needs nothing; `server` runs each file against a database of its own, cloned from a migrated
+ * template; `http` talks to the built server with the stand-ins beside it.
+ */
 export default defineConfig({
   root,
-  resolve: { alias },
+  resolve,
   test: {
     projects: [
       {
         root,
-        resolve: { alias },
+        resolve,
+        test: { name: 'pure', include: ['tests/{unit,reference,architecture,fakes}/**/*.test.ts'], testTimeout: 20_000 },
+      },
+      {
+        root,
+        resolve,
         test: {
-          name: 'pure',
-          include: ['tests/unit/**/*.test.ts', 'tests/reference/**/*.test.ts', 'tests/architecture/**/*.test.ts', 'tests/fakes/**/*.test.ts'],
-          environment: 'node',
+          name: 'server',
+          include: ['tests/server/**/*.test.ts'],
+          globalSetup: ['tests/support/template-database.ts'],
+          setupFiles: ['tests/support/own-database.ts'],
+          testTimeout: 30_000,
+          hookTimeout: 60_000,
         },
       },
+      {
+        root,
+        resolve,
+        test: { name: 'http', include: ['tests/http/**/*.test.ts'], globalSetup: ['tests/support/running-product.ts'], testTimeout: 30_000, hookTimeout: 60_000, fileParallelism: false },
+      },
     ],
+    maxWorkers: 2,
   },
 });
