@@ -1,4 +1,5 @@
 import { beforeAll, describe, expect, it } from 'vitest';
+import type { Model, ModelStatic } from 'sequelize';
 import { bidStates } from '~/domain/states/bid.ts';
 import { bookingStates } from '~/domain/states/booking.ts';
 import { listingStates } from '~/domain/states/listing.ts';
@@ -30,7 +31,8 @@ describe('the database has the last word', () => {
   it('has a column for every attribute of every model', async () => {
     const columns = await rows<{ name: string }>(`SELECT table_name || '.' || column_name AS name FROM information_schema.columns WHERE table_schema = 'public'`);
     const known = new Set(columns.map((column) => column.name));
-    for (const model of Object.values(models)) {
+    const all: readonly ModelStatic<Model>[] = Object.values(models) as never;
+    for (const model of all) {
       for (const attribute of Object.values(model.getAttributes())) expect(known).toContain(`${model.tableName}.${attribute.field}`);
     }
   });
