@@ -26,6 +26,11 @@ const scribnerFactor = (diameterIn: number, lengthFt: number): number => {
   return short;
 };
 
+const scribnerException = (diameterIn: number, lengthFt: number): number => {
+  const exception = scribnerExceptions[lengthFt];
+  return exception?.above.includes(diameterIn) ? 1 : exception?.below.includes(diameterIn) ? -1 : 0;
+};
+
 /**
  * Scribner Decimal C in board feet (tens): floor((length × factor + 5) / 10) units, plus the exception of the cell.
  * Source: US Forest Service, National Volume Estimator Library, `scrib.f`.
@@ -35,17 +40,31 @@ const scribnerFactor = (diameterIn: number, lengthFt: number): number => {
  */
 export function scribnerDecimalCBoardFeet(diameterIn: number, lengthFt: number): number {
   if ((diameterIn === 6 && (lengthFt === 6 || lengthFt === 8)) || (diameterIn === 7 && lengthFt === 6)) return 5;
-  const exception = scribnerExceptions[lengthFt];
-  const adjust = exception?.above.includes(diameterIn) ? 1 : exception?.below.includes(diameterIn) ? -1 : 0;
-  const units = Math.floor((lengthFt * scribnerFactor(diameterIn, lengthFt) + 5000) / 10_000) + adjust;
+  const units = Math.floor((lengthFt * scribnerFactor(diameterIn, lengthFt) + 5000) / 10_000) + scribnerException(diameterIn, lengthFt);
   return Math.max(0, units) * 10;
 }
+
+/** The numbers behind a Scribner cell, for showing how it is worked out: board feet per foot, and units the print adds or takes. */
+export const scribnerNumbers = (diameterIn: number, lengthFt: number): { readonly factorBfPerFt: number; readonly exceptionUnits: number } => ({
+  factorBfPerFt: scribnerFactor(diameterIn, lengthFt) / 1000,
+  exceptionUnits: scribnerException(diameterIn, lengthFt),
+});
 
 /** Millionths of a board foot in a 4-ft section of `halfInches`/2 in: 0.905 × (0.22 D² − 0.71 D), in whole numbers. */
 const internationalSection = (halfInches: number): number => 905 * (55 * halfInches ** 2 - 355 * halfInches);
 
 /** Cells that the published table prints 5 bf above what the formula gives (157.3 and 177.4): diameter × length. */
 const internationalPrinted: Readonly<Record<string, number>> = { '15x16': 160, '17x14': 180 };
+
+const internationalQuarterMillionths = (diameterIn: number, lengthFt: number): number => {
+  const sections = Math.floor(lengthFt / 4);
+  let quarterMillionths = (lengthFt % 4) * internationalSection(2 * diameterIn + sections);
+  for (let section = 0; section < sections; section += 1) quarterMillionths += 4 * internationalSection(2 * diameterIn + section);
+  return quarterMillionths;
+};
+
+/** International 1/4-inch before its table rounds it, board feet: for showing how a cell is worked out. */
+export const internationalUnroundedBoardFeet = (diameterIn: number, lengthFt: number): number => internationalQuarterMillionths(diameterIn, lengthFt) / 4_000_000;
 
 /**
  * International 1/4-inch as its table prints it, to the nearest 5 bf.
@@ -56,10 +75,7 @@ const internationalPrinted: Readonly<Record<string, number>> = { '15x16': 160, '
 export function internationalQuarterBoardFeet(diameterIn: number, lengthFt: number): number {
   const printed = internationalPrinted[`${diameterIn}x${lengthFt}`];
   if (printed !== undefined) return printed;
-  const sections = Math.floor(lengthFt / 4);
-  let quarterMillionths = (lengthFt % 4) * internationalSection(2 * diameterIn + sections);
-  for (let section = 0; section < sections; section += 1) quarterMillionths += 4 * internationalSection(2 * diameterIn + section);
-  return Math.max(0, Math.floor(quarterMillionths / 20_000_000 + 0.5) * 5);
+  return Math.max(0, Math.floor(internationalQuarterMillionths(diameterIn, lengthFt) / 20_000_000 + 0.5) * 5);
 }
 
 const ruleFunctions: Readonly<Record<LogRule, (diameterIn: number, lengthFt: number) => number>> = {

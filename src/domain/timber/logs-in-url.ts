@@ -29,9 +29,10 @@ const defectFields: Readonly<Record<Defect['kind'], readonly string[]>> = {
 
 const isKind = (text: string): text is Defect['kind'] => Object.hasOwn(defectFields, text);
 
-const writeDefect = (defect: Defect): string => {
+/** A defect as a short word, `wedge-8-90`: its kind, then its measures in the order of `Defect`. */
+export const writeDefect = (defect: Defect): string => {
   const values: Readonly<Record<string, unknown>> = { ...defect };
-  return `!${[defect.kind, ...defectFields[defect.kind].map((field) => number(Number(values[field])))].join('-')}`;
+  return `${[defect.kind, ...defectFields[defect.kind].map((field) => number(Number(values[field])))].join('-')}`;
 };
 
 /** Writes logs for a URL; the text holds only characters that need no escaping in a query. */
@@ -39,13 +40,14 @@ export const writeLogs = (logs: readonly LogGroup[]): string =>
   logs
     .map((log) => {
       const fields = [log.species, number(log.smallEndIn), log.largeEndIn === undefined ? '' : number(log.largeEndIn), number(log.lengthFt), log.count === 1 ? '' : String(log.count)];
-      return fields.join('_').replace(/_+$/, '') + (log.defects ?? []).map(writeDefect).join('');
+      return fields.join('_').replace(/_+$/, '') + (log.defects ?? []).map((defect) => `!${writeDefect(defect)}`).join('');
     })
     .join('~');
 
 const readNumber = (text: string | undefined): number => (text !== undefined && /^\d{1,4}(\.\d{1,3})?$/.test(text) ? Number(text) : Number.NaN);
 
-const readDefect = (text: string): Defect | null => {
+/** Reads what `writeDefect` wrote, or null. */
+export const readDefect = (text: string): Defect | null => {
   const [kind = '', ...values] = text.split('-');
   if (!isKind(kind)) return null;
   const fields = defectFields[kind];
