@@ -18,7 +18,7 @@ export const statusWords = {
   },
   bid: {
     open: say('Open'),
-    to_confirm: say('To confirm: the listing changed', 'care'),
+    toConfirm: say('To confirm: the listing changed', 'care'),
     chosen: say('Chosen', 'good'),
     declined: say('Not chosen', 'over'),
     withdrawn: say('Withdrawn', 'over'),
