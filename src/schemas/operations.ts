@@ -1,4 +1,9 @@
 import type { z } from 'zod';
+import { dryingAnswer, dryingRequest } from './drying.ts';
+import { estimateAnswer, estimateRequest } from './estimate.ts';
+import { speciesAnswer } from './species.ts';
+import { tallyAnswer, tallyRequest } from './tally.ts';
+import { treeVolumeAnswer, treeVolumeRequest } from './tree-volume.ts';
 
 /** One public or signed-in endpoint as `GET /api/openapi.json` describes it. */
 export interface Operation {
@@ -20,4 +25,9 @@ export const operations: readonly Operation[] = [
   { method: 'get', path: '/api/health', summary: 'Whether the parts this server needs answer' },
   { method: 'get', path: '/api/health/live', summary: 'Whether the process lives' },
   { method: 'get', path: '/api/openapi.json', summary: 'This description' },
+  { method: 'get', path: '/api/species', summary: 'The species, with density, bark and shrinkage', answer: speciesAnswer },
+  { method: 'post', path: '/api/estimate', summary: 'Scale, cubic content and green weight of logs', body: estimateRequest, answer: estimateAnswer },
+  { method: 'post', path: '/api/tally', summary: 'Board feet of boards by the hardwood or the softwood rule', body: tallyRequest, answer: tallyAnswer },
+  { method: 'post', path: '/api/tree-volume', summary: 'Board feet in a standing tree, form class 78', body: treeVolumeRequest, answer: treeVolumeAnswer },
+  { method: 'post', path: '/api/drying', summary: 'What a board comes to in the air it dries in', body: dryingRequest, answer: dryingAnswer },
 ];

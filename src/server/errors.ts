@@ -1,4 +1,4 @@
-import type { Problem } from '~/domain/result.ts';
+import type { Problem, Result } from '~/domain/result.ts';
 
 /** The ways a deed is refused. Mapped once to HTTP (`http/problem.ts`) and once to a page (`pages/500.astro`, `404.astro`). */
 export type Kind = 'invalid' | 'signedOut' | 'forbidden' | 'notFound' | 'conflict' | 'tooMany' | 'unavailable';
@@ -34,3 +34,9 @@ export const tooMany = (retryAfterS: number): Refusal =>
   new Refusal('tooMany', `Too many tries. Wait ${retryAfterS < 90 ? `${retryAfterS} seconds` : `${Math.ceil(retryAfterS / 60)} minutes`} and try again.`, { retryAfterS });
 /** An outside service does not answer. */
 export const unavailable = (message: string, retryAfterS = 30): Refusal => new Refusal('unavailable', message, { retryAfterS });
+
+/** The value of a pure rule's result. @throws the refusal, with the rule's own words and paths. */
+export function valueOf<T>(result: Result<T>): T {
+  if (result.ok) return result.value;
+  throw invalid(result.problems, result.problems[0]?.message);
+}
