@@ -18,14 +18,3 @@ export const bidStates = machine({
 
 export type BidState = (typeof bidStates.states)[number];
 export type BidMove = keyof typeof bidStates.moves;
-
-/** What each state is called on a screen. */
-export const bidStateNames: Readonly<Record<BidState, string>> = {
-  open: 'Open',
-  toConfirm: 'To confirm',
-  chosen: 'Chosen',
-  declined: 'Declined',
-  withdrawn: 'Withdrawn',
-  lapsed: 'Lapsed',
-  released: 'Released',
-};

@@ -20,17 +20,3 @@ export const bookingStates = machine({
 
 export type BookingState = (typeof bookingStates.states)[number];
 export type BookingMove = keyof typeof bookingStates.moves;
-
-/** What each state is called on a screen. */
-export const bookingStateNames: Readonly<Record<BookingState, string>> = {
-  proposed: 'Day to agree',
-  agreed: 'Day agreed, money due',
-  held: 'Money held',
-  sawing: 'Sawing',
-  tallied: 'Tally to sign',
-  queried: 'Tally queried',
-  signed: 'Tally signed',
-  settled: 'Settled',
-  lapsed: 'Lapsed',
-  cancelled: 'Cancelled',
-};

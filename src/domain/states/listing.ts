@@ -18,14 +18,3 @@ export const listingStates = machine({
 
 export type ListingState = (typeof listingStates.states)[number];
 export type ListingMove = keyof typeof listingStates.moves;
-
-/** What each state is called on a screen. */
-export const listingStateNames: Readonly<Record<ListingState, string>> = {
-  draft: 'Draft',
-  open: 'Open to bids',
-  closed: 'Closed to bids',
-  matched: 'Matched',
-  done: 'Done',
-  withdrawn: 'Withdrawn',
-  lapsed: 'Lapsed',
-};

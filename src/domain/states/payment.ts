@@ -18,13 +18,3 @@ export const paymentStates = machine({
 
 export type PaymentState = (typeof paymentStates.states)[number];
 export type PaymentMove = keyof typeof paymentStates.moves;
-
-/** What each state is called on a screen. */
-export const paymentStateNames: Readonly<Record<PaymentState, string>> = {
-  due: 'Due',
-  held: 'Held until you sign the tally',
-  settling: 'Being paid out',
-  settled: 'Settled',
-  refunded: 'Refunded',
-  void: 'Not needed',
-};
