@@ -51,6 +51,8 @@ export const paths = {
   review: (number: number) => `/bookings/${number}/review`,
 
   messages: '/messages',
+  askAbout: (listingNumber: number) => `/messages/about/${listingNumber}`,
+  cancelBooking: (number: number) => `/bookings/${number}/cancel`,
   conversation: (id: string) => `/messages/${id}`,
   report: (thing: string, id: string) => `/report/${thing}/${id}`,
 

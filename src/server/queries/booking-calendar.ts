@@ -1,0 +1,17 @@
+import { abilities, rolesOnBooking } from '../authorize.ts';
+import { notFound } from '../errors.ts';
+import { bookedDaysOf, invitationFor, startTimeOf } from '../invitations.ts';
+import { Booking, Listing } from '../models/index.ts';
+import { partiesOf } from '../parties.ts';
+import type { Viewer } from '../viewer.ts';
+
+/** The iCalendar text of a booking's days. @throws Refusal `notFound` for others, or while no day is agreed */
+export async function bookingCalendar(viewer: Viewer, number: number): Promise<string> {
+  const booking = Number.isSafeInteger(number) ? await Booking.findOne({ where: { number } }) : null;
+  if (!booking || !abilities('booking', rolesOnBooking(viewer, booking), booking.status).see) throw notFound('booking');
+  const days = await bookedDaysOf(booking.id);
+  if (days.length === 0) throw notFound('calendar entry: no day is agreed yet');
+  const listing = await Listing.findByPk(booking.listingId, { rejectOnEmpty: true });
+  const parties = await partiesOf(booking);
+  return invitationFor(booking, listing, days, await startTimeOf(booking.id), [parties.landowner, parties.sawyer], 0, false).ics;
+}
