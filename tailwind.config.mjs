@@ -29,7 +29,7 @@ export default {
       '5xl': ['3.625rem', '4.0625rem'],
     },
     borderRadius: { none: '0', DEFAULT: '4px', full: '9999px' },
-    boxShadow: { none: 'none', sheet: '5px 5px 0 rgb(var(--sapwood))' },
+    boxShadow: { none: 'none', offset: '5px 5px 0 rgb(var(--sapwood))' },
     extend: {
       // A finger's width at a desk, a glove's on the milling day.
       minHeight: { target: '44px', glove: '56px' },

@@ -46,7 +46,7 @@ function Answer({ worked, stale }: { readonly worked: WorkedOut; readonly stale:
     { label: logRuleNames.internationalQuarter, value: `${whole(estimate.boardFeet.internationalQuarter)} bf` },
     { label: logRuleNames.scribnerDecimalC, value: `${whole(estimate.boardFeet.scribnerDecimalC)} bf` },
     { label: logRuleNames.doyle, value: `${whole(estimate.boardFeet.doyle)} bf` },
-    { label: 'Green weight, with bark', value: `${whole(weightLb / 10)}0 lb` },
+    { label: 'Green weight, with bark', value: `${whole(Math.round(weightLb / 10) * 10)} lb` },
   ];
   return (
     <div className={`mt-5 grid items-center gap-6 sm:grid-cols-[184px_1fr] ${stale ? 'opacity-50' : ''}`}>

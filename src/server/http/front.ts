@@ -8,7 +8,7 @@ import { log } from '../log.ts';
 import { gate } from './gate.ts';
 
 /** Astro's handler in middleware mode. */
-export type Handler = (request: IncomingMessage, response: ServerResponse, next: (error?: unknown) => void, locals?: object) => unknown;
+export type Handler = (request: IncomingMessage, response: ServerResponse, next?: (error?: unknown) => void, locals?: object) => unknown;
 
 /** The largest body read from anyone, in bytes. Photographs never pass here: they go straight to storage. */
 const largestBody = 1_000_000;
@@ -89,11 +89,9 @@ export function createFront(handler: Handler, clientFolder: string, settings: En
       if (turned) return turnAway(request, response, turned.status, turned.detail);
       if (!capBody(request, response)) return;
       squeeze(request as never, response as never, () => {
-        const astro = (): void =>
-          void handler(request, response, (error) => {
-            if (error) log().error({ err: error, requestId: id }, 'handler failed');
-            turnAway(request, response, error ? 500 : 404, error ? 'Something went wrong on our side.' : 'There is no such page.');
-          });
+        // Without a third argument Astro draws its own 404 page; a program asking under /api gets problem details.
+        const missing = (): void => turnAway(request, response, 404, 'There is no such address.');
+        const astro = (): void => void (request.url?.startsWith('/api/') ? handler(request, response, missing) : handler(request, response));
         if (request.method === 'GET' || request.method === 'HEAD') files(request, response, astro);
         else astro();
       });
