@@ -12,7 +12,7 @@ body { margin: 0; } main { max-width: 30rem; margin: 2rem auto; padding: 1.5rem;
 h1 { font-size: 1.35rem; margin: 0 0 .25rem; } .sum { font-size: 2rem; font-weight: 700; margin: .25rem 0 1rem; }
 label, legend { display: block; font-weight: 600; margin-top: 1rem; } .hint { color: #4b565f; font-size: .9rem; margin: .1rem 0; }
 input[type=text], input[type=email] { box-sizing: border-box; width: 100%; font: inherit; padding: .55rem; border: 1px solid #67737c; border-radius: .3rem; }
-.pair { display: grid; grid-template-columns: 1fr 1fr; gap: 1rem; } fieldset { border: 0; padding: 0; margin: 0; }
+.pair { display: grid; grid-template-columns: 1fr 1fr; gap: 1rem; } fieldset { border: 0; padding: 0; margin: 1rem 0 0; }
 button, .button { display: block; width: 100%; box-sizing: border-box; margin-top: 1.25rem; padding: .75rem; font: inherit; font-weight: 700; text-align: center; border-radius: .3rem; border: 2px solid #1d4f7c; background: #1d4f7c; color: #fff; cursor: pointer; text-decoration: none; }
 .plain { background: #fff; color: #1d4f7c; } :focus-visible { outline: 3px solid #c26a00; outline-offset: 2px; }
 .error { border-left: 4px solid #a3171d; background: #fdeceb; padding: .6rem .9rem; margin: 0 0 1rem; } table { border-collapse: collapse; width: 100%; font-size: .9rem; }

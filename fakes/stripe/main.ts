@@ -5,6 +5,7 @@
  *     --webhook-url http://127.0.0.1:4321/api/webhooks/payments --webhook-secret whsec_skidway
  *
  * Each can come from the environment instead: PORT, DATA_DIR, STRIPE_KEY, WEBHOOK_URL, WEBHOOK_SECRET.
+ * `--page-origin` is the address people's browsers reach it at, when that is not 127.0.0.1.
  */
 import { parseArgs } from 'node:util';
 import { startFakeStripe } from './server.ts';
@@ -16,6 +17,7 @@ const { values } = parseArgs({
     key: { type: 'string' },
     'webhook-url': { type: 'string' },
     'webhook-secret': { type: 'string' },
+    'page-origin': { type: 'string' },
     'settle-after': { type: 'string' },
   },
 });
@@ -33,6 +35,7 @@ const stripe = await startFakeStripe({
   key: values.key ?? process.env['STRIPE_KEY'] ?? 'sk_test_skidway',
   ...(webhookUrl === undefined ? {} : { webhookUrl }),
   ...(webhookSecret === undefined ? {} : { webhookSecret }),
+  ...(values['page-origin'] === undefined ? {} : { pageOrigin: values['page-origin'] }),
   ...(values['settle-after'] === undefined ? {} : { settleAfterS: Number(values['settle-after']) }),
 });
 console.log(`Payments stand-in at ${stripe.url}`);

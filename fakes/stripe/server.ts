@@ -18,6 +18,8 @@ export interface FakeStripeOptions {
   /** Folder of the books; left out, everything is in memory only. */
   readonly data?: string;
   readonly key: string;
+  /** The origin in links for people's browsers; the listening address when left out. */
+  readonly pageOrigin?: string;
   /** Where events go from the start, the platform's and the connected accounts' alike. */
   readonly webhookUrl?: string;
   readonly webhookSecret?: string;
@@ -47,7 +49,7 @@ export async function startFakeStripe(options: FakeStripeOptions): Promise<FakeS
   let url = '';
   const world = new World({
     folder: options.data ?? null,
-    baseUrl: () => url,
+    baseUrl: () => options.pageOrigin ?? url,
     settleAfterS: options.settleAfterS ?? 2 * 86_400,
     disputeAfterS: options.disputeAfterS ?? 2,
     payoutTakesS: options.payoutTakesS ?? 2 * 86_400,
