@@ -1,11 +1,15 @@
 import { now } from '../../clock.ts';
+import { closeToBids, lapseListings } from '../../commands/close-listings.ts';
 import { log } from '../../log.ts';
 
 /** A sweep moves every stored deadline that has passed; it takes the time, finds its own rows, and may run as often as one likes. */
 export type Sweep = (at: Date) => Promise<void>;
 
 /** Every sweep by name, in the order they run. */
-export const sweeps: Readonly<Record<string, Sweep>> = {};
+export const sweeps: Readonly<Record<string, Sweep>> = {
+  'close to bids': closeToBids,
+  'lapse listings': lapseListings,
+};
 
 /** Runs every sweep for the given time. One that fails is logged and does not keep the others from running. */
 export async function sweep(at: Date = now()): Promise<void> {
