@@ -1,47 +1,13 @@
 import { defineMiddleware } from 'astro:middleware';
-import { paths } from './domain/paths.ts';
-import { env } from './server/env.ts';
-import { Refusal } from './server/errors.ts';
-import { statusOf } from './server/http/problem.ts';
-import { log } from './server/log.ts';
-import { sessionCookieName, viewerOf } from './server/sessions.ts';
-
-/** The public calculators take no notice of cookies, so they also need no session look-up. */
-const cookieless = /^\/api\/(species|estimate|tally|tree-volume|drying|saw-plan|cut-list|health|openapi\.json|webhooks)\b/;
-
-/** Puts the real origins where the build left stand-ins for them. */
-function settlePolicy(response: Response): Response {
-  const policy = response.headers.get('content-security-policy');
-  if (policy) {
-    const settled = policy.replaceAll('https://payments.skidway.invalid', env().PAYMENTS_PAGE_ORIGIN).replaceAll('https://storage.skidway.invalid', env().STORAGE_PUBLIC_ENDPOINT);
-    response.headers.set('content-security-policy', settled);
-  }
-  return response;
-}
 
 export const onRequest = defineMiddleware(async (context, next) => {
-  context.locals.requestId = context.request.headers.get('x-request-id') ?? '';
   context.locals.viewer = null;
-  context.locals.origin = env().ORIGIN;
-  if (context.isPrerendered) return next();
-
-  if (!cookieless.test(context.routePattern)) {
-    const { viewer, renew } = await viewerOf(context.cookies.get(sessionCookieName)?.value);
-    context.locals.viewer = viewer;
-    if (renew) context.cookies.set(renew.name, renew.value, renew.attributes);
+  if (context.isPrerendered) {
+    // Made at build time: there is no visitor, no environment and no database, so nothing of the server is loaded.
+    context.locals.requestId = '';
+    context.locals.origin = context.url.origin;
+    return next();
   }
-
-  try {
-    const response = await next();
-    if (context.locals.viewer && !response.headers.has('cache-control')) response.headers.set('cache-control', 'private, no-store');
-    return settlePolicy(response);
-  } catch (error) {
-    if (!(error instanceof Refusal)) {
-      log().error({ err: error, requestId: context.locals.requestId, route: context.routePattern }, 'page failed');
-      throw error;
-    }
-    if (error.kind === 'signedOut') return context.redirect(`${paths.signIn}?next=${encodeURIComponent(context.url.pathname + context.url.search)}`, 303);
-    context.locals.refusal = { status: statusOf(error), message: error.message };
-    return settlePolicy(await context.rewrite('/refused'));
-  }
+  const request = await import('./server/http/on-request.ts');
+  return request.onRequest(context, next);
 });
