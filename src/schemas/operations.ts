@@ -1,6 +1,7 @@
 import type { z } from 'zod';
 import { dryingAnswer, dryingRequest } from './drying.ts';
 import { estimateAnswer, estimateRequest } from './estimate.ts';
+import { listingsAnswer, listingsQuery } from './listings.ts';
 import { speciesAnswer } from './species.ts';
 import { tallyAnswer, tallyRequest } from './tally.ts';
 import { treeVolumeAnswer, treeVolumeRequest } from './tree-volume.ts';
@@ -30,4 +31,5 @@ export const operations: readonly Operation[] = [
   { method: 'post', path: '/api/tally', summary: 'Board feet of boards by the hardwood or the softwood rule', body: tallyRequest, answer: tallyAnswer },
   { method: 'post', path: '/api/tree-volume', summary: 'Board feet in a standing tree, form class 78', body: treeVolumeRequest, answer: treeVolumeAnswer },
   { method: 'post', path: '/api/drying', summary: 'What a board comes to in the air it dries in', body: dryingRequest, answer: dryingAnswer },
+  { method: 'get', path: '/api/listings', summary: 'Open listings by distance, a page at a time', query: listingsQuery, answer: listingsAnswer },
 ];

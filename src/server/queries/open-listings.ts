@@ -1,0 +1,192 @@
+import { readCursor, writeCursor } from '~/domain/finding/cursor.ts';
+import type { ListingSort } from '~/domain/finding/sorts.ts';
+import type { Point } from '~/domain/geo.ts';
+import { photoAlt, pictureView } from '~/domain/photo.ts';
+import type { ListingItem } from '~/schemas/listings.ts';
+import { rows } from '../db.ts';
+import { sqlBuilder } from './sql-builder.ts';
+
+/** Where counting stops: beyond it a number is no help to a reader and costs time. */
+const COUNT_TO = 1000;
+const METRES_PER_MILE = 1609.344;
+
+export interface ListingsAsked {
+  readonly from: Point | null;
+  readonly radiusMi?: number | undefined;
+  /** A species code; listings with any log of it. */
+  readonly species?: string | undefined;
+  /** International ¼. */
+  readonly minBoardFeet?: number | undefined;
+  /** Outside bark, the largest end of any log. */
+  readonly maxLargestEndIn?: number | undefined;
+  readonly closesBefore?: Date | undefined;
+  /** Only what some mill of this sawyer takes whole. */
+  readonly fitsMillsOf?: string | undefined;
+  readonly sort: ListingSort;
+  /** A text that `readCursor` accepts for this sort. */
+  readonly cursor?: string | undefined;
+  readonly limit: number;
+}
+
+/** An item with what a row of the page shows beside it. */
+export interface FoundListing extends ListingItem {
+  readonly howDown: string;
+  readonly metalRisk: string;
+  readonly closesInDays: number;
+}
+
+export interface FoundListings {
+  readonly items: readonly FoundListing[];
+  readonly nextCursor: string | null;
+  readonly total: number;
+  readonly totalIsExact: boolean;
+}
+
+interface Row {
+  id: string;
+  number: number;
+  title: string;
+  species: string[];
+  logCount: number;
+  boardFeet: number;
+  largest: number;
+  metres: number | null;
+  lat: number;
+  lng: number;
+  town: string;
+  closesOn: string;
+  closesIn: number;
+  sawBy: string | null;
+  sortKey: string | null;
+  bidCount: number;
+  howDown: string;
+  metalRisk: string;
+  photoId: string | null;
+  photoWidth: number | null;
+  photoHeight: number | null;
+  photoBlur: string | null;
+  photoCaption: string | null;
+}
+
+type Sql = ReturnType<typeof sqlBuilder>;
+
+const pointSql = (sql: Sql, { lat, lng }: Point): string => `ST_SetSRID(ST_MakePoint(${sql.value(lng)}::float8, ${sql.value(lat)}::float8), 4326)::geography`;
+
+/** What makes a listing part of the list, as SQL. Distances are to the coarse point; the exact place is never read here. */
+function conditions(sql: Sql, asked: ListingsAsked, at: Date, here: string | null): string[] {
+  const { radiusMi, species, minBoardFeet, maxLargestEndIn, closesBefore, fitsMillsOf } = asked;
+  return [
+    `l.status = 'open' AND l.hidden_at IS NULL`,
+    `l.closes_at > ${sql.value(at)}`,
+    ...(here && radiusMi !== undefined ? [`ST_DWithin(l.coarse, ${here}, ${sql.value(radiusMi * METRES_PER_MILE)}::float8, false)`] : []),
+    ...(species !== undefined ? [`l.species @> ARRAY[${sql.value(species)}::text]`] : []),
+    ...(minBoardFeet !== undefined ? [`l.board_feet >= ${sql.value(minBoardFeet)}::float8`] : []),
+    ...(maxLargestEndIn !== undefined ? [`l.largest_end_ob_in <= ${sql.value(maxLargestEndIn)}::float8 + 0.005`] : []),
+    ...(closesBefore !== undefined ? [`l.closes_at <= ${sql.value(closesBefore)}`] : []),
+    ...(fitsMillsOf !== undefined
+      ? [
+          `EXISTS (SELECT 1 FROM mill m WHERE m.sawyer_id = ${sql.value(fitsMillsOf)} AND m.retired_at IS NULL AND l.largest_end_ob_in <= m.largest_log_in + 0.005
+            AND NOT EXISTS (SELECT 1 FROM log g WHERE g.listing_id = l.id AND g.removed_at IS NULL AND (g.length_ft > m.longest_ft OR g.length_ft < m.shortest_ft)))`,
+        ]
+      : []),
+  ];
+}
+
+/** The order of each sort, its key as exact text, and the condition for going on after a cursor. */
+function ordering(sql: Sql, asked: ListingsAsked, here: string | null): { key: string; order: string; after: string | null } {
+  const cursor = asked.cursor === undefined ? null : readCursor(asked.cursor, asked.sort);
+  const past = (column: string, sign: '<' | '>', type: string): string | null =>
+    cursor && `(${column} ${sign} ${sql.value(cursor.key)}::${type} OR (${column} = ${sql.value(cursor.key)}::${type} AND l.id > ${sql.value(cursor.id)}::uuid))`;
+  switch (asked.sort) {
+    case 'distance': {
+      const away = `(l.coarse <-> ${here ?? 'l.coarse'})`;
+      return { key: `${away}::text`, order: `${away}, l.id`, after: past(away, '>', 'float8') };
+    }
+    case 'closing':
+      return { key: `(l.closes_at AT TIME ZONE 'UTC')::text || '+00'`, order: 'l.closes_at, l.id', after: past('l.closes_at', '>', 'timestamptz') };
+    case 'newest':
+      return { key: `(l.published_at AT TIME ZONE 'UTC')::text || '+00'`, order: 'l.published_at DESC, l.id', after: past('l.published_at', '<', 'timestamptz') };
+    case 'sawBy': {
+      // Rows without a date come last, so after a dated row they are still to come.
+      const undated = (): string | null => cursor && `(l.saw_by IS NULL AND l.id > ${sql.value(cursor.id)}::uuid)`;
+      const after = cursor?.key == null ? undated() : `(l.saw_by IS NULL OR ${past('l.saw_by', '>', 'date')})`;
+      return { key: 'l.saw_by::text', order: 'l.saw_by, l.id', after };
+    }
+  }
+}
+
+/**
+ * Open listings, a page at a time. Two queries: the page leans on the partial indexes `listing_open_*` (`listing_open_near` by
+ * nearest neighbour when sorted by distance), the count stops at a thousand.
+ */
+export async function openListings(asked: ListingsAsked, at: Date): Promise<FoundListings> {
+  const sql = sqlBuilder();
+  const here = asked.from && pointSql(sql, asked.from);
+  const where = conditions(sql, asked, at, here);
+  const { key, order, after } = ordering(sql, asked, here);
+  const found = await rows<Row>(
+    `WITH page AS (
+       SELECT l.*, ${key} AS sort_key, ${here ? `l.coarse <-> ${here}` : 'NULL::float8'} AS metres, row_number() OVER () AS place_in_page
+       FROM (SELECT * FROM listing l WHERE ${[...where, ...(after ? [after] : [])].join(' AND ')} ORDER BY ${order} LIMIT ${asked.limit + 1}) l
+     )
+     SELECT l.id, l.number, l.title, l.species, l.log_count AS "logCount", l.board_feet AS "boardFeet", l.largest_end_ob_in AS largest, l.metres,
+       ST_Y(l.coarse::geometry) AS lat, ST_X(l.coarse::geometry) AS lng, coalesce(l.town, '') AS town, l.sort_key AS "sortKey",
+       ((l.closes_at - interval '1 second') AT TIME ZONE l.time_zone)::date::text AS "closesOn",
+       floor(extract(epoch FROM l.closes_at - ${sql.value(at)}::timestamptz) / 86400)::int AS "closesIn",
+       l.saw_by::text AS "sawBy", l.how_down AS "howDown", l.metal_risk AS "metalRisk",
+       (SELECT count(*)::int FROM bid b WHERE b.listing_id = l.id AND b.status IN ('open', 'toConfirm')) AS "bidCount",
+       p.id AS "photoId", p.width AS "photoWidth", p.height AS "photoHeight", p.blur AS "photoBlur", p.caption AS "photoCaption"
+     FROM page l
+     LEFT JOIN LATERAL (
+       SELECT id, width, height, blur, caption FROM photo WHERE listing_id = l.id AND removed_at IS NULL AND status = 'ready' ORDER BY position, id LIMIT 1
+     ) p ON true
+     ORDER BY l.place_in_page`,
+    sql.values,
+  );
+  const count = await countUpTo(COUNT_TO + 1, asked, at);
+  const shown = found.slice(0, asked.limit);
+  const last = shown.at(-1);
+  return {
+    items: shown.map(asItem),
+    nextCursor: found.length > asked.limit && last ? writeCursor(asked.sort, { key: last.sortKey, id: last.id }) : null,
+    total: Math.min(count, COUNT_TO),
+    totalIsExact: count <= COUNT_TO,
+  };
+}
+
+async function countUpTo(most: number, asked: ListingsAsked, at: Date): Promise<number> {
+  const sql = sqlBuilder();
+  const here = asked.from && asked.radiusMi !== undefined ? pointSql(sql, asked.from) : null;
+  const where = conditions(sql, asked, at, here).join(' AND ');
+  const [counted] = await rows<{ count: number }>(`SELECT count(*)::int AS count FROM (SELECT 1 FROM listing l WHERE ${where} LIMIT ${most}) few`, sql.values);
+  return counted?.count ?? 0;
+}
+
+function asItem(row: Row): FoundListing {
+  const photo =
+    row.photoId !== null && row.photoWidth !== null && row.photoHeight !== null
+      ? pictureView({ id: row.photoId, width: row.photoWidth, height: row.photoHeight, blur: row.photoBlur ?? '' }, photoAlt(row.photoCaption ?? '', null))
+      : undefined;
+  return {
+    id: row.number,
+    title: row.title,
+    species: row.species,
+    logCount: row.logCount,
+    boardFeet: row.boardFeet,
+    largestEndOutsideBarkIn: Math.round(row.largest * 100) / 100,
+    distanceMi: row.metres === null ? null : Math.round((row.metres / METRES_PER_MILE) * 1000) / 1000,
+    place: { lat: row.lat, lng: row.lng, town: row.town },
+    closesOn: row.closesOn,
+    sawBy: row.sawBy,
+    bidCount: row.bidCount,
+    ...(photo ? { photo } : {}),
+    howDown: row.howDown,
+    metalRisk: row.metalRisk,
+    closesInDays: row.closesIn,
+  };
+}
+
+/** The item as the endpoint answers it, without what only the page shows. */
+export function publicItem({ howDown: _howDown, metalRisk: _metalRisk, closesInDays: _days, ...item }: FoundListing): ListingItem {
+  return item;
+}
