@@ -32,4 +32,5 @@ export const operations: readonly Operation[] = [
   { method: 'post', path: '/api/tree-volume', summary: 'Board feet in a standing tree, form class 78', body: treeVolumeRequest, answer: treeVolumeAnswer },
   { method: 'post', path: '/api/drying', summary: 'What a board comes to in the air it dries in', body: dryingRequest, answer: dryingAnswer },
   { method: 'get', path: '/api/listings', summary: 'Open listings by distance, a page at a time', query: listingsQuery, answer: listingsAnswer },
+  { method: 'post', path: '/api/webhooks/payments', summary: "The payment provider's signed messages" },
 ];

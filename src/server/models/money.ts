@@ -8,6 +8,7 @@ export const HeldPayment = table('held_payment', {
   dueCents: whole(),
   transferGroup: text(),
   disputedAt: nullable(instant()),
+  heldAcceptedAt: nullable(instant()),
   createdAt: instant(),
   updatedAt: instant(),
 });
@@ -36,6 +37,7 @@ export const Charge = table('charge', {
   providerIntentId: text(),
   amountCents: whole(),
   receivedAt: instant(),
+  returnedBecause: nullable(text()),
 });
 export type Charge = Row<typeof Charge>;
 
@@ -53,6 +55,7 @@ export const ProviderCall = table('provider_call', {
   response: nullable(json<unknown>()),
   error: nullable(text()),
   createdAt: instant(),
+  claimedUntil: nullable(instant()),
   doneAt: nullable(instant()),
 });
 export type ProviderCall = Row<typeof ProviderCall>;
@@ -65,6 +68,7 @@ export const ProviderEvent = table('provider_event', {
   handledAt: nullable(instant()),
   payload: json<unknown>(),
   outcome: nullable(text()),
+  account: nullable(text()),
 });
 export type ProviderEvent = Row<typeof ProviderEvent>;
 
@@ -95,3 +99,34 @@ export const LedgerEntry = table('ledger_entry', {
   bookingId: nullable(ref()),
   amountCents: whole(),
 });
+
+export const CardDispute = table('card_dispute', {
+  id: keyText(),
+  chargeId: ref(),
+  bookingId: ref(),
+  amountCents: whole(),
+  status: filled(text<'open' | 'won' | 'lost'>()),
+  openedAt: instant(),
+  closedAt: nullable(instant()),
+});
+export type CardDispute = Row<typeof CardDispute>;
+
+/** One line of a reconciliation's findings. */
+export interface Finding {
+  readonly what: string;
+  readonly object: string;
+  readonly booking?: number;
+  readonly oursCents?: number;
+  readonly theirsCents?: number;
+}
+
+export const Reconciliation = table('reconciliation', {
+  id: id(),
+  beganAt: instant(),
+  finishedAt: nullable(instant()),
+  ledgerCents: nullable(whole()),
+  providerCents: nullable(whole()),
+  repaired: filled(json<Finding[]>()),
+  differences: filled(json<Finding[]>()),
+});
+export type Reconciliation = Row<typeof Reconciliation>;

@@ -1,3 +1,6 @@
+import { now } from '../../clock.ts';
+import { handleProviderEvent } from '../../commands/handle-provider-event.ts';
+import { makeProviderCall } from '../../commands/make-provider-call.ts';
 import type { Jobs } from '../jobs.ts';
 import { sendMail } from '../../services/mail.ts';
 import { sweep } from './sweep.ts';
@@ -5,5 +8,7 @@ import { sweep } from './sweep.ts';
 /** What the worker does with each kind of job. A handler may run twice and must then change nothing twice. */
 export const handlers: { readonly [Name in keyof Jobs]?: (payload: Jobs[Name]) => Promise<void> } = {
   'send-mail': sendMail,
+  'make-provider-call': async ({ callId }) => makeProviderCall(callId, now()),
+  'handle-provider-event': async ({ eventId }) => handleProviderEvent(eventId, now()),
   sweep: async () => sweep(),
 };

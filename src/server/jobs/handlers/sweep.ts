@@ -1,6 +1,7 @@
 import { now } from '../../clock.ts';
 import { closeToBids, lapseListings } from '../../commands/close-listings.ts';
 import { log } from '../../log.ts';
+import { moneySweeps } from './money-sweeps.ts';
 
 /** A sweep moves every stored deadline that has passed; it takes the time, finds its own rows, and may run as often as one likes. */
 export type Sweep = (at: Date) => Promise<void>;
@@ -9,6 +10,7 @@ export type Sweep = (at: Date) => Promise<void>;
 export const sweeps: Readonly<Record<string, Sweep>> = {
   'close to bids': closeToBids,
   'lapse listings': lapseListings,
+  ...moneySweeps,
 };
 
 /** Runs every sweep for the given time. One that fails is logged and does not keep the others from running. */

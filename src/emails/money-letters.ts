@@ -1,0 +1,59 @@
+import { formatCents, type Cents } from '~/domain/money.ts';
+import { formatInstant } from '~/domain/time.ts';
+import type { MailMessage } from '~/server/services/mail.ts';
+import { letter } from './letter.ts';
+
+interface To {
+  readonly name: string;
+  readonly email: string;
+}
+
+/** The money is held: to the landowner as a receipt, to the sawyer as the word to come. */
+export const moneyHeld = (to: To, other: To, held: { readonly cents: Cents; readonly startsAt: Date; readonly zone: string; readonly mine: boolean }, link: string): MailMessage =>
+  letter(to.email, `Held: ${formatCents(held.cents)} for ${formatInstant(held.startsAt, held.zone)}`, to.name, [
+    held.mine
+      ? `Your ${formatCents(held.cents)} is held until you sign the tally. What is not used returns to your card.`
+      : `${other.name} paid the hold of ${formatCents(held.cents)}. It is held until the tally is signed. The place and the access notes are on the booking.`,
+    { button: 'See the booking', href: link },
+  ]);
+
+/** More money was added to a hold. */
+export const holdGrew = (to: To, addedCents: Cents, heldCents: Cents, link: string): MailMessage =>
+  letter(to.email, `${formatCents(addedCents)} added to the hold`, to.name, [`${formatCents(addedCents)} was added. Held in all: ${formatCents(heldCents)}.`, { button: 'See the booking', href: link }]);
+
+/** Money came for something no longer owed and goes back whole. */
+export const moneyReturned = (to: To, cents: Cents, why: string, link: string): MailMessage =>
+  letter(to.email, `${formatCents(cents)} goes back to your card`, to.name, [`${why} The whole ${formatCents(cents)} goes back to your card; your bank takes some days.`, { button: 'See the booking', href: link }]);
+
+/** The hold was not paid in time. */
+export const bookingLapsed = (to: To, mine: boolean, link: string): MailMessage =>
+  letter(to.email, 'The booking lapsed: the hold was not paid', to.name, [
+    mine ? 'The hold was not paid in time. The day is free again and your listing is open for bids.' : 'The hold was not paid in time. Your day is free again.',
+    { button: 'See the booking', href: link },
+  ]);
+
+/** Pay waits for a payout account. */
+export const payoutNeeded = (to: To, bookingNumber: number, link: string): MailMessage =>
+  letter(to.email, 'Your pay waits for a payout account', to.name, [
+    `The tally of booking ${bookingNumber} is signed and your pay is ready. Set up the account that it is paid to; it is released as soon as the payment provider has what it asks for.`,
+    { button: 'Set up payouts', href: link },
+  ]);
+
+/** Paid out: the receipt of each side. */
+export const paidOut = (to: To, figures: readonly (readonly [label: string, value: string])[], mine: 'landowner' | 'sawyer', link: string): MailMessage =>
+  letter(to.email, mine === 'sawyer' ? 'Your pay is released' : 'Receipt: settled', to.name, [
+    mine === 'sawyer' ? 'Your pay is released today; your bank takes some days.' : 'The booking is settled. What was not used is on its way to your card; your bank takes some days.',
+    { facts: figures },
+    { button: 'See the receipt', href: link },
+  ]);
+
+/** A card payment is disputed, or the dispute has ended. */
+export const disputeNews = (to: To, bookingNumber: number, news: 'open' | 'won' | 'lost', cents: Cents, link: string): MailMessage =>
+  letter(to.email, `Card payment of booking ${bookingNumber} ${news === 'open' ? 'is disputed' : `: dispute ${news}`}`, to.name, [
+    {
+      open: `The bank was told that the card payment of ${formatCents(cents)} is disputed. Until the bank decides, nothing more is paid out from it.`,
+      won: `The bank decided for the payment: ${formatCents(cents)} stands.`,
+      lost: `The bank gave ${formatCents(cents)} back to the card. A moderator looks at what follows.`,
+    }[news],
+    { button: 'See the booking', href: link },
+  ]);

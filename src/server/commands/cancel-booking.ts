@@ -1,0 +1,68 @@
+import { formatCents } from '~/domain/money.ts';
+import { bookingStates } from '~/domain/states/booking.ts';
+import { paymentStates } from '~/domain/states/payment.ts';
+import { cancelCutOff } from '~/domain/time.ts';
+import { settleCancellation, type Settlement } from '~/domain/trade/settlement.ts';
+import { bookingCancelled } from '~/emails/booking-letters.ts';
+import { authorize, rolesOnBooking } from '../authorize.ts';
+import { moneyTermsOf } from '../booking-money.ts';
+import { inTransaction } from '../db.ts';
+import { conflict } from '../errors.ts';
+import { afterEnding } from '../end-booking.ts';
+import { enqueue } from '../jobs/queue.ts';
+import { heldFor } from '../ledger.ts';
+import { lockBooking } from '../locks.ts';
+import { Checkout, HeldPayment, type Booking } from '../models/index.ts';
+import { bookingLink, partiesOf } from '../parties.ts';
+import { transition } from '../transition.ts';
+import type { Actor, Viewer } from '../viewer.ts';
+import { queueCheckoutEnd } from './queue-provider-call.ts';
+import { payOut } from './settle-booking.ts';
+
+/** Ends a payment nobody has paid: it is void, and a checkout that is still open is ended at the provider. */
+export async function voidPayment(by: Actor, payment: HeldPayment, at: Date): Promise<void> {
+  await transition(paymentStates, 'voidUnpaid', payment, by, at, { updatedAt: at });
+  const open = await Checkout.findOne({ where: { paymentId: payment.id, status: ['creating', 'open'] }, lock: true });
+  if (open?.providerSessionId) await queueCheckoutEnd(payment, open.providerSessionId, at);
+}
+
+/** What cancelling would come to now: who gets what of the money held. */
+export async function cancellationOf(booking: Booking, by: 'landowner' | 'sawyer', at: Date): Promise<Settlement> {
+  const { terms, feeBasisPoints } = await moneyTermsOf(booking.id);
+  const startsAt = booking.startsAt;
+  if (!startsAt) throw conflict('No day is agreed yet.');
+  return settleCancellation(terms, { by, at, cutOffAt: cancelCutOff(startsAt) }, { heldCents: await heldFor(booking.id), feeBasisPoints });
+}
+
+const moneyWords = (parts: Settlement): string =>
+  parts.payableCents === 0
+    ? `The whole hold of ${formatCents(parts.refundCents)} goes back to the card; the bank takes some days.`
+    : `Set-up and travel of ${formatCents(parts.payableCents)} are owed, for it is less than 48 hours to the start; ${formatCents(parts.refundCents)} goes back to the card.`;
+
+/**
+ * Either side cancels before sawing. Free until 48 hours before the first day's start; later by the landowner, set-up and travel are
+ * owed; by the sawyer, everything goes back.
+ * @param expects what the person was shown of what is owed, in cents; a cancellation that would cost more is refused
+ */
+export async function cancelBooking(by: Viewer, input: { readonly booking: number; readonly reason: string; readonly expects?: number }, at: Date): Promise<void> {
+  await inTransaction(async () => {
+    const booking = await lockBooking(input.booking);
+    authorize(by, 'booking', 'cancel', rolesOnBooking(by, booking), booking.status);
+    const payment = await HeldPayment.findOne({ where: { bookingId: booking.id }, lock: true });
+    const side = by.id === booking.landownerId ? 'landowner' : 'sawyer';
+    const wasHeld = booking.status === 'held';
+    const parts = wasHeld ? await cancellationOf(booking, side, at) : null;
+    if (parts && input.expects !== undefined && parts.payableCents > input.expects) {
+      throw conflict(`It is now less than 48 hours to the start: cancelling costs ${formatCents(parts.payableCents)} for set-up and travel. Look again before you cancel.`);
+    }
+    if (parts && payment?.disputedAt) throw conflict('The card payment is disputed at the bank. A moderator ends this booking when the bank has decided.');
+    await transition(bookingStates, 'cancel', booking, by, at, { cancelledBy: by.id, cancelReason: input.reason, updatedAt: at });
+    if (payment?.status === 'due') await voidPayment(by, payment, at);
+    if (parts && payment) await payOut(by, booking, payment, parts, 'cancellation', at);
+    await afterEnding(by, booking, at);
+    const parties = await partiesOf(booking);
+    for (const person of [parties.landowner, parties.sawyer]) {
+      await enqueue('send-mail', bookingCancelled(person, by.name, input.reason, parts ? moneyWords(parts) : 'No money was held.', bookingLink(booking)));
+    }
+  });
+}
