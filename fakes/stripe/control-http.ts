@@ -92,6 +92,9 @@ export async function answerControl(control: Control, method: string, path: stri
     case 'POST /_control/advance':
       control.advance(number(body, 'seconds'));
       return { ok: true };
+    case 'POST /_control/top-up':
+      control.topUp(number(body, 'cents'));
+      return { ok: true };
     case 'POST /_control/reset':
       control.reset();
       return { ok: true };

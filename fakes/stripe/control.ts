@@ -1,5 +1,6 @@
 import type Stripe from 'stripe';
 import { completeOnboarding, restrictAccount } from './accounts.ts';
+import { move } from './balance.ts';
 import { books, type Books } from './books.ts';
 import { readCard } from './cards.ts';
 import { expireSession, paySession } from './checkout.ts';
@@ -100,6 +101,12 @@ export class Control {
   /** Moves the clock forward and does what has come due: money becomes available, sessions expire, payouts arrive. */
   advance(seconds: number): void {
     this.world.store.change(() => this.world.advance(seconds));
+    catchUp(this.world);
+  }
+
+  /** The platform pays money of its own in, available at once: what it bears fees and whole refunds from. */
+  topUp(cents: number): void {
+    this.world.store.change(() => move(this.world, '', { amount: cents, type: 'topup', category: 'topup', source: this.world.id('tu'), description: 'Top-up' }));
     catchUp(this.world);
   }
 

@@ -5,6 +5,7 @@
  *     --webhook-url http://127.0.0.1:4321/api/webhooks/payments --webhook-secret whsec_skidway
  *
  * Each can come from the environment instead: PORT, DATA_DIR, STRIPE_KEY, WEBHOOK_URL, WEBHOOK_SECRET.
+ * `--float` is the platform's own money at the provider, in cents.
  * `--page-origin` is the address people's browsers reach it at, when that is not 127.0.0.1.
  */
 import { parseArgs } from 'node:util';
@@ -19,6 +20,7 @@ const { values } = parseArgs({
     'webhook-secret': { type: 'string' },
     'page-origin': { type: 'string' },
     'settle-after': { type: 'string' },
+    float: { type: 'string' },
   },
 });
 
@@ -36,6 +38,8 @@ const stripe = await startFakeStripe({
   ...(webhookUrl === undefined ? {} : { webhookUrl }),
   ...(webhookSecret === undefined ? {} : { webhookSecret }),
   ...(values['page-origin'] === undefined ? {} : { pageOrigin: values['page-origin'] }),
+  // Whole refunds need more than the charge brought in: the provider keeps its fee. A platform has some money of its own there.
+  floatCents: Number(values.float ?? 1_000_000),
   ...(values['settle-after'] === undefined ? {} : { settleAfterS: Number(values['settle-after']) }),
 });
 console.log(`Payments stand-in at ${stripe.url}`);

@@ -24,6 +24,8 @@ export interface FakeStripeOptions {
   readonly webhookUrl?: string;
   readonly webhookSecret?: string;
   readonly webhooks?: Partial<DeliverySettings>;
+  /** Cents of its own that the platform has paid in before anything else happens. */
+  readonly floatCents?: number;
   /** Seconds until the money of a charge is available; two days at the provider. */
   readonly settleAfterS?: number;
   /** Seconds until the card that disputes does so. */
@@ -62,6 +64,7 @@ export async function startFakeStripe(options: FakeStripeOptions): Promise<FakeS
   };
   setUp();
   const control = new Control(world, deliveries, faults, setUp);
+  if (options.floatCents !== undefined && world.store.all('balance_transaction', '').length === 0) control.topUp(options.floatCents);
   const api = new Api(world, faults, options.key);
 
   const server = createServer((request, response) => {

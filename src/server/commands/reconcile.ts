@@ -29,7 +29,10 @@ async function finishCall(kind: 'refund' | 'transfer', id: string, at: Date): Pr
   await finishProviderCall(callId, kind === 'refund' ? await readRefund(id) : { providerId: id, status: 'moved' }, at);
 }
 
-/** Our own payout of earned fees, or a fee that the provider took: nobody decides these in the application, so they are only entered. */
+/**
+ * Our own payout of earned fees, money of our own paid in (both against what we have earned), or a fee that the provider took: nobody
+ * decides these in the application, so they are only entered.
+ */
 async function enterOwn(movement: Movement, account: 'platform fee' | 'provider fee', at: Date): Promise<void> {
   await inTransaction(async () => {
     await post({
@@ -47,7 +50,7 @@ async function repair(movement: Movement, at: Date): Promise<void> {
   } else if (movement.type === 'refund' || movement.type === 'refund_failure') await finishCall('refund', movement.sourceId, at);
   else if (movement.type === 'transfer') await finishCall('transfer', movement.sourceId, at);
   else if (movement.type === 'adjustment' && movement.category.startsWith('dispute')) await noteDispute(await readDispute(movement.sourceId), at);
-  else if (movement.type === 'payout') await enterOwn(movement, 'platform fee', at);
+  else if (movement.type === 'payout' || movement.type === 'payout_failure' || movement.type === 'topup') await enterOwn(movement, 'platform fee', at);
   else if (movement.type === 'stripe_fee') await enterOwn(movement, 'provider fee', at);
 }
 
