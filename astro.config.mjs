@@ -36,7 +36,6 @@ export default defineConfig({
         "manifest-src 'self'",
         "object-src 'none'",
         "base-uri 'self'",
-        "frame-ancestors 'none'",
         // A form that starts a payment is redirected to the provider's page, which the browser counts as a form target.
         `form-action 'self' ${payments} ${storage}`,
       ],

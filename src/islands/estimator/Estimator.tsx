@@ -76,9 +76,9 @@ export default function Estimator(): ReactElement {
           <section id="one-log" aria-labelledby="one-log-title" className="no-print grid gap-8 lg:grid-cols-[minmax(0,26rem)_minmax(0,1fr)]">
             <div>
               <h2 id="one-log-title" className="mb-4">{changing === null ? 'Measure a log' : `Change line ${changing + 1}`}</h2>
-              <LogForm draft={draft} units={units} changing={changing !== null} onChange={(next) => change({ draft: next })} onAdd={save} onCancel={() => { setChanging(null); change({ draft: emptyDraft }); }} />
+              <LogForm draft={draft} settings={settings} units={units} changing={changing !== null} onChange={(next) => change({ draft: next })} onAdd={save} onCancel={() => { setChanging(null); change({ draft: emptyDraft }); }} />
             </div>
-            <div className="sheet p-5 sm:p-7">
+            <div className="sheet self-start p-5 sm:p-7">
               <h2 className="mb-4">What is in this log</h2>
               {log ? (
                 <div className="grid gap-6 md:grid-cols-[15rem_minmax(0,1fr)]">

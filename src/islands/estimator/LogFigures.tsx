@@ -82,9 +82,9 @@ export function LogFigures({ log, settings, units }: LogFiguresProps): ReactElem
 
 function Line({ term, value, note }: { readonly term: string; readonly value: string; readonly note: string }): ReactElement {
   return (
-    <div className="flex flex-wrap items-baseline justify-between gap-x-4 border-b border-rule py-2">
-      <dt>{term}</dt>
-      <dd className="figure text-right font-bold">{value} <span className="block text-sm font-normal text-ink-soft">{note}</span></dd>
+    <div className="grid grid-cols-[minmax(0,1fr)_auto] items-baseline gap-x-4 border-b border-rule py-2">
+      <dt>{term}<span className="block text-sm text-ink-soft">{note}</span></dt>
+      <dd className="figure text-right font-bold">{value}</dd>
     </div>
   );
 }

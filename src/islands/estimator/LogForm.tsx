@@ -1,15 +1,23 @@
 import { useEffect, useRef, useState, type FormEvent, type ReactElement } from 'react';
+import { scaleLog, type ScaleSettings } from '~/domain/timber/log-scale.ts';
 import type { LogGroup } from '~/domain/timber/logs-in-url.ts';
+import { speciesOf } from '~/domain/timber/species.ts';
+import { greenWeightWithBark } from '~/domain/timber/weight.ts';
 import { fieldId } from '~/components/field-ids.ts';
 import { Button, Checkbox } from '~/islands/form/choices.tsx';
 import { Field } from '~/islands/form/fields.tsx';
-import type { Units } from '~/islands/logs/words.ts';
+import { sayWeight, wholeNumber, type Units } from '~/islands/logs/words.ts';
 import { DefectFields } from './DefectFields.tsx';
 import { readDraft, type Draft } from './draft.ts';
 import { SpeciesPicker } from './SpeciesPicker.tsx';
 
+/** The two figures asked for first, in sight of the form on a phone. */
+const shortly = (log: LogGroup, settings: ScaleSettings, units: Units): string =>
+  `${wholeNumber(scaleLog(log, settings).netBoardFeet.internationalQuarter)} bf International ¼ · ${sayWeight(greenWeightWithBark(log, speciesOf(log.species)), units)}`;
+
 interface LogFormProps {
   readonly draft: Draft;
+  readonly settings: ScaleSettings;
   readonly units: Units;
   /** A log of the list is being changed. */
   readonly changing: boolean;
@@ -19,7 +27,7 @@ interface LogFormProps {
 }
 
 /** The measures of one log as they are read off the tape. Nothing is scolded before "Add this log" but what cannot be right. */
-export function LogForm({ draft, units, changing, onChange, onAdd, onCancel }: LogFormProps): ReactElement {
+export function LogForm({ draft, settings, units, changing, onChange, onAdd, onCancel }: LogFormProps): ReactElement {
   const [tried, setTried] = useState(false);
   const form = useRef<HTMLFormElement>(null);
   const { log, problems, missing } = readDraft(draft, units);
@@ -58,7 +66,7 @@ export function LogForm({ draft, units, changing, onChange, onAdd, onCancel }: L
       </div>
       <Checkbox name="over-bark" label="I measured over the bark" hint="The bark of this species is taken off." checked={draft.overBark} onChange={(event) => set({ overBark: event.target.checked })} />
       <div className="grid grid-cols-2 items-end gap-3 sm:grid-cols-3">
-        <Field {...tape('smallAcross')} label="Small end again, at right angles" optional suffix={diameter} />
+        <Field {...tape('smallAcross')} label="Small end, other way" optional suffix={diameter} />
         <Field {...tape('large')} label="Large end" optional suffix={diameter} />
         <Field {...tape('count')} label="How many alike" />
       </div>
@@ -66,6 +74,7 @@ export function LogForm({ draft, units, changing, onChange, onAdd, onCancel }: L
         <summary className="min-h-target py-2.5 font-semibold text-crayon">Rot, sweep and other defects{draft.defects.length > 0 && ` (${draft.defects.length})`}</summary>
         <DefectFields defects={draft.defects} errors={errors} units={units} onChange={(defects) => set({ defects })} />
       </details>
+      {log && <p className="figure lg:hidden" aria-live="polite">{shortly(log, settings, units)}</p>}
       <div className="flex flex-wrap items-center gap-4">
         <Button type="submit">{changing ? 'Save this log' : 'Add this log'}</Button>
         {changing && <Button kind="quiet" onClick={onCancel}>Leave it as it was</Button>}

@@ -17,8 +17,8 @@ export const sayInches = (inches: number, units: Units): string => (units === 'u
 /** A log's length. */
 export const sayFeet = (feet: number, units: Units): string => (units === 'us' ? formatFeet(feet) : formatMetric(feet * 12));
 
-/** `1,157 lb`, with kilograms where lengths are metric. */
-export const sayWeight = (lb: number, units: Units): string => (units === 'us' ? `${whole.format(lb)} lb` : `${whole.format(lb * 0.45359237)} kg`);
+/** `1,160 lb`, to the nearest ten, or kilograms to the nearest five: green weights are not known closer. */
+export const sayWeight = (lb: number, units: Units): string => (units === 'us' ? `${whole.format(Math.round(lb / 10) * 10)} lb` : `${whole.format(Math.round((lb * 0.45359237) / 5) * 5)} kg`);
 
 /** "1 log", "3 logs". */
 export const countOf = (count: number, one: string, many = `${one}s`): string => `${whole.format(count)} ${count === 1 ? one : many}`;

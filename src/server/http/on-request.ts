@@ -14,7 +14,9 @@ function settlePolicy(response: Response): Response {
   const policy = response.headers.get('content-security-policy');
   if (policy) {
     const settled = policy.replaceAll('https://payments.skidway.invalid', env().PAYMENTS_PAGE_ORIGIN).replaceAll('https://storage.skidway.invalid', env().STORAGE_PUBLIC_ENDPOINT);
-    response.headers.set('content-security-policy', settled);
+    // Said here and not in the build: in the meta tag of a page made at build time it would be ignored with a complaint
+    // (there our front's X-Frame-Options holds).
+    response.headers.set('content-security-policy', `${settled.replace(/;\s*$/, '')}; frame-ancestors 'none'`);
   }
   return response;
 }
