@@ -64,6 +64,23 @@ export async function openSession(accountId: string, userAgent: string): Promise
   return lucia().createSessionCookie(session.id);
 }
 
+/** The part of Astro's context that signing in needs. */
+interface Door {
+  readonly request: Request;
+  readonly cookies: { get(name: string): { value: string } | undefined; set(name: string, value: string, attributes: Cookie['attributes']): void };
+}
+
+/**
+ * Signs the browser in: whatever session it had ends, a new one with a new secret begins.
+ * @param secondFactorAt when the second factor was given, or null
+ */
+export async function enter(door: Door, accountId: string, secondFactorAt: Date | null): Promise<void> {
+  await endSession(door.cookies.get(sessionCookieName)?.value);
+  const cookie = await openSession(accountId, door.request.headers.get('user-agent') ?? '');
+  if (secondFactorAt) await markSecondFactor(cookie.value, secondFactorAt);
+  door.cookies.set(cookie.name, cookie.value, cookie.attributes);
+}
+
 /** Ends the session that this cookie value opened. @returns the cookie that clears it. */
 export async function endSession(cookieValue: string | undefined): Promise<Cookie> {
   if (cookieValue) await lucia().invalidateSession(cookieValue);

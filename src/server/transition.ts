@@ -14,7 +14,7 @@ export interface Trace {
 }
 
 /** Writes one line of the audit log for a deed that changes no status. */
-export async function record(actor: Actor, action: string, thing: string, thingId: string | null, at: Date, trace: Trace = {}): Promise<void> {
+export async function record(actor: Pick<Actor, 'id' | 'name'>, action: string, thing: string, thingId: string | null, at: Date, trace: Trace = {}): Promise<void> {
   await Event.create({ at, actorId: actor.id, action, thing, thingId, data: { ...(actor.id === null ? { by: actor.name } : {}), ...trace.data }, requestId: trace.requestId ?? null });
 }
 

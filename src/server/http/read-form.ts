@@ -1,5 +1,6 @@
 import type { z } from 'zod';
 import type { Problem } from '~/domain/result.ts';
+import { Refusal } from '../errors.ts';
 import { problemsOf } from './endpoint.ts';
 
 /** What a form post said: the understood value, or the problems with everything that was typed, to render the page again. */
@@ -13,9 +14,12 @@ export type Typed = Readonly<Record<string, string | readonly string[]>>;
 /**
  * Reads a posted form by a schema. Names ending in `[]` are always lists (without the brackets in the schema).
  * The page answers 422 and renders itself again with `typed` and `problems` when `ok` is false.
+ * @throws Refusal `invalid` when the body is not a form at all.
  */
 export async function readForm<T>(request: Request, schema: z.ZodType<T>): Promise<FormRead<T>> {
-  const data = await request.formData();
+  const data = await request.formData().catch(() => {
+    throw new Refusal('invalid', 'What was sent is not a form.');
+  });
   const typed: Record<string, string | string[]> = {};
   for (const [name, value] of data.entries()) {
     if (typeof value !== 'string') continue;
