@@ -1,6 +1,7 @@
-import type { Split } from '~/domain/trade/settlement.ts';
-import { split, type Settlement } from '~/domain/trade/settlement.ts';
-import { notFound } from './errors.ts';
+import { cancelCutOff } from '~/domain/time.ts';
+import { settleCancellation, split, type Settlement, type Split } from '~/domain/trade/settlement.ts';
+import { conflict, notFound } from './errors.ts';
+import { heldFor } from './ledger.ts';
 import { Booking, HeldPayment, Tally, WorkAgreement } from './models/index.ts';
 import type { BidTerms } from '~/domain/trade/rate-card.ts';
 
@@ -33,4 +34,12 @@ export async function signedSettlement(bookingId: string): Promise<{ readonly se
 export function splitNow(settlement: Settlement, heldCents: number, feeBasisPoints: number): Split {
   const costTax = settlement.overHold?.ifToppedUp.taxCents ?? settlement.taxCents;
   return split(settlement.costCents, costTax, { heldCents, feeBasisPoints });
+}
+
+/** What cancelling would come to now: who gets what of the money held. */
+export async function cancellationOf(booking: Booking, by: 'landowner' | 'sawyer', at: Date): Promise<Settlement> {
+  const { terms, feeBasisPoints } = await moneyTermsOf(booking.id);
+  const startsAt = booking.startsAt;
+  if (!startsAt) throw conflict('No day is agreed yet.');
+  return settleCancellation(terms, { by, at, cutOffAt: cancelCutOff(startsAt) }, { heldCents: await heldFor(booking.id), feeBasisPoints });
 }

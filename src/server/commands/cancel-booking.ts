@@ -1,18 +1,16 @@
 import { formatCents } from '~/domain/money.ts';
 import { bookingStates } from '~/domain/states/booking.ts';
 import { paymentStates } from '~/domain/states/payment.ts';
-import { cancelCutOff } from '~/domain/time.ts';
-import { settleCancellation, type Settlement } from '~/domain/trade/settlement.ts';
+import type { Settlement } from '~/domain/trade/settlement.ts';
 import { bookingCancelled } from '~/emails/booking-letters.ts';
 import { authorize, rolesOnBooking } from '../authorize.ts';
-import { moneyTermsOf } from '../booking-money.ts';
+import { cancellationOf } from '../booking-money.ts';
 import { inTransaction } from '../db.ts';
 import { conflict } from '../errors.ts';
 import { afterEnding } from '../end-booking.ts';
 import { enqueue } from '../jobs/queue.ts';
-import { heldFor } from '../ledger.ts';
 import { lockBooking } from '../locks.ts';
-import { Checkout, HeldPayment, type Booking } from '../models/index.ts';
+import { Checkout, HeldPayment } from '../models/index.ts';
 import { bookingLink, partiesOf } from '../parties.ts';
 import { transition } from '../transition.ts';
 import type { Actor, Viewer } from '../viewer.ts';
@@ -24,14 +22,6 @@ export async function voidPayment(by: Actor, payment: HeldPayment, at: Date): Pr
   await transition(paymentStates, 'voidUnpaid', payment, by, at, { updatedAt: at });
   const open = await Checkout.findOne({ where: { paymentId: payment.id, status: ['creating', 'open'] }, lock: true });
   if (open?.providerSessionId) await queueCheckoutEnd(payment, open.providerSessionId, at);
-}
-
-/** What cancelling would come to now: who gets what of the money held. */
-export async function cancellationOf(booking: Booking, by: 'landowner' | 'sawyer', at: Date): Promise<Settlement> {
-  const { terms, feeBasisPoints } = await moneyTermsOf(booking.id);
-  const startsAt = booking.startsAt;
-  if (!startsAt) throw conflict('No day is agreed yet.');
-  return settleCancellation(terms, { by, at, cutOffAt: cancelCutOff(startsAt) }, { heldCents: await heldFor(booking.id), feeBasisPoints });
 }
 
 const moneyWords = (parts: Settlement): string =>
