@@ -58,6 +58,11 @@ export const permissions = {
     acceptHeld: { who: ['sawyer'], states: ['signed'] },
     review: { who: ['landowner', 'sawyer'], states: ['settled'] },
   }),
+  sawyer: rules<never>()({
+    keepProfile: { who: ['anySawyer'] },
+    keepMill: { who: ['anySawyer'] },
+    keepRates: { who: ['anySawyer'] },
+  }),
   desk: rules<never>()({
     open: { who: ['moderator'] },
   }),

@@ -4,9 +4,10 @@ import { SERVICES } from '~/domain/trade/services.ts';
 import { fieldOf, list, text, whole } from './fields.ts';
 
 const zip = (typed: string) => (/^\d{5}$/.test(typed) ? good(typed) : refused('', 'Write the five digits of your ZIP code.'));
+/** 1 Monday … 7 Sunday. */
 const weekdays = list.transform((typed, ctx) => {
   const days = [...new Set(typed.map(Number))];
-  if (days.length > 0 && days.every((day) => Number.isInteger(day) && day >= 0 && day <= 6)) return days.sort();
+  if (days.length > 0 && days.every((day) => Number.isInteger(day) && day >= 1 && day <= 7)) return days.sort();
   ctx.addIssue({ code: 'custom', message: 'Tick at least one day of the week you saw on.' });
   return z.NEVER;
 });

@@ -10,7 +10,7 @@ const roles: readonly Role[] = ['owner', 'bidder', 'landowner', 'sawyer', 'anySa
 
 /** Every role × action × state that is allowed, as lines a reviewer can read. */
 function matrix(): string[] {
-  const states = { listing: listingStates.states, bid: bidStates.states, booking: bookingStates.states, desk: [] } as const;
+  const states = { listing: listingStates.states, bid: bidStates.states, booking: bookingStates.states, sawyer: [], desk: [] } as const;
   const lines: string[] = [];
   for (const subject of Object.keys(permissions) as (keyof typeof permissions)[]) {
     for (const action of Object.keys(permissions[subject])) {

@@ -1,0 +1,113 @@
+import type { Cents } from '~/domain/money.ts';
+import { abilities } from '~/domain/permissions.ts';
+import type { BidState } from '~/domain/states/bid.ts';
+import { formatDayWithYear, type Day } from '~/domain/time.ts';
+import type { BidMill } from '~/domain/trade/bid-estimate.ts';
+import { authorize, rolesOnListing } from '../authorize.ts';
+import type { FrozenEstimate } from '../bid-work.ts';
+import { rows } from '../db.ts';
+import { notFound, signedOut } from '../errors.ts';
+import { Booking } from '../models/booking.ts';
+import { Listing } from '../models/listing.ts';
+import type { Viewer } from '../viewer.ts';
+import { sawyerDays } from './open-days.ts';
+import { earliestOpenDay } from '~/domain/trade/milling-days.ts';
+
+export type BidSort = 'estimate' | 'perBf' | 'day' | 'distance';
+
+export interface ComparedBid {
+  readonly id: string;
+  readonly status: BidState;
+  readonly sawyerId: string;
+  readonly sawyer: string;
+  readonly settledJobs: number;
+  readonly reviews: number;
+  readonly stars: number | null;
+  /** `certificate seen, expires on …`; null when none was seen or it has expired. */
+  readonly certificate: string | null;
+  readonly roadMiles: number;
+  readonly mill: BidMill;
+  readonly frozen: FrozenEstimate;
+  readonly expectedCents: Cents;
+  readonly lowCents: Cents;
+  readonly highCents: Cents;
+  readonly holdCents: Cents;
+  readonly expectedBf: number;
+  readonly expectedBy: string;
+  readonly overrideReason: string | null;
+  readonly earliestOpenDay: Day | null;
+  readonly daysOffered: readonly Day[];
+  readonly message: string;
+}
+
+interface Row {
+  readonly id: string;
+  readonly status: BidState;
+  readonly sawyer_id: string;
+  readonly sawyer: string;
+  readonly settled_jobs: number;
+  readonly reviews: number;
+  readonly stars: number | null;
+  readonly certificate_expires_on: string | null;
+  readonly road_miles: number;
+  readonly mill: BidMill;
+  readonly estimate: FrozenEstimate;
+  readonly expected_cents: number;
+  readonly low_cents: number;
+  readonly high_cents: number;
+  readonly hold_cents: number;
+  readonly expected_bf_hundredths: number;
+  readonly expected_by: string;
+  readonly override_reason: string | null;
+  readonly days_offered: string[];
+  readonly message: string;
+}
+
+// Leans on bid_of_listing, booking_of_sawyer and review_of_subject; a listing has tens of bids at most.
+const SQL = `
+  SELECT b.id, b.status, b.sawyer_id, coalesce(nullif(p.business_name, ''), a.name) AS sawyer, b.road_miles, b.mill, b.estimate,
+    b.expected_cents, b.low_cents, b.high_cents, b.hold_cents, b.expected_bf_hundredths, b.expected_by, b.override_reason,
+    b.days_offered::text[] AS days_offered, b.message,
+    (SELECT count(*)::int FROM booking k WHERE k.sawyer_id = b.sawyer_id AND k.status = 'settled') AS settled_jobs,
+    r.reviews, r.stars,
+    CASE WHEN p.certificate_seen_at IS NOT NULL AND p.certificate_expires_on >= $2::date THEN p.certificate_expires_on::text END AS certificate_expires_on
+  FROM bid b
+  JOIN account a ON a.id = b.sawyer_id
+  LEFT JOIN sawyer_profile p ON p.account_id = b.sawyer_id
+  CROSS JOIN LATERAL (SELECT count(*)::int AS reviews, avg(stars)::float8 AS stars FROM review WHERE subject_id = b.sawyer_id AND hidden_at IS NULL) r
+  WHERE b.listing_id = $1 AND b.status IN ('open', 'toConfirm', 'chosen') AND a.status = 'active'
+  ORDER BY b.created_at, b.id`;
+
+/** Every live bid on a listing, worked on the same logs, for its owner to compare. */
+export async function compareBids(viewer: Viewer | null, listingNumber: number, sort: BidSort, at: Date) {
+  if (!viewer) throw signedOut();
+  const listing = Number.isSafeInteger(listingNumber) ? await Listing.findOne({ where: { number: listingNumber } }) : null;
+  if (!listing) throw notFound('listing');
+  const roles = rolesOnListing(viewer, listing);
+  if (!roles.has('owner') && !roles.has('moderator')) throw notFound('listing');
+  authorize(viewer, 'listing', 'seeBids', roles, listing.status);
+  const found = await rows<Row>(SQL, [listing.id, at.toISOString().slice(0, 10)]);
+  const bids: ComparedBid[] = [];
+  for (const row of found) {
+    const days = await sawyerDays(row.sawyer_id, listing.timeZone ?? 'UTC', at, row.days_offered);
+    bids.push(toBid(row, earliestOpenDay(days)));
+  }
+  const booking = await Booking.findOne({ where: { listingId: listing.id }, order: [['createdAt', 'DESC']] });
+  return { listing, bids: bids.sort(order[sort]), booking: listing.status === 'matched' || listing.status === 'done' ? booking : null, can: abilities('listing', roles, listing.status) };
+}
+
+const perBf = (bid: ComparedBid): number => bid.frozen.estimate.quote.costPerBfCents ?? Number.POSITIVE_INFINITY;
+const order: Readonly<Record<BidSort, (a: ComparedBid, b: ComparedBid) => number>> = {
+  estimate: (a, b) => a.expectedCents - b.expectedCents,
+  perBf: (a, b) => perBf(a) - perBf(b),
+  day: (a, b) => ((a.earliestOpenDay ?? '9') < (b.earliestOpenDay ?? '9') ? -1 : 1),
+  distance: (a, b) => a.roadMiles - b.roadMiles,
+};
+
+const toBid = (row: Row, earliest: Day | null): ComparedBid => ({
+  id: row.id, status: row.status, sawyerId: row.sawyer_id, sawyer: row.sawyer, settledJobs: row.settled_jobs, reviews: row.reviews, stars: row.stars,
+  certificate: row.certificate_expires_on === null ? null : `certificate seen, expires ${formatDayWithYear(row.certificate_expires_on)}`,
+  roadMiles: row.road_miles, mill: row.mill, frozen: row.estimate, expectedCents: row.expected_cents, lowCents: row.low_cents, highCents: row.high_cents,
+  holdCents: row.hold_cents, expectedBf: row.expected_bf_hundredths / 100, expectedBy: row.expected_by, overrideReason: row.override_reason,
+  earliestOpenDay: earliest, daysOffered: row.days_offered, message: row.message,
+});
