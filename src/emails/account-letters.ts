@@ -70,3 +70,7 @@ export const listingHidden = (to: To, title: string, reason: string | null, link
     reason === null ? 'A moderator shows your listing again.' : `A moderator hid your listing from others: ${reason}`,
     { button: 'See the listing', href: link },
   ]);
+
+/** To the owner of a listing whose bidder left or was suspended. */
+export const bidTakenBack = (to: To, title: string, link: string): MailMessage =>
+  letter(to.email, `A bid was taken back: ${title}`, to.name, ['One of the bids on your listing was taken back, because its sawyer no longer works here. The others stand.', { button: 'See the bids', href: link }]);

@@ -1,0 +1,56 @@
+import { accountClosed } from '~/emails/account-letters.ts';
+import { execute, inTransaction } from '../db.ts';
+import { conflict, forbidden } from '../errors.ts';
+import { enqueue } from '../jobs/queue.ts';
+import { Account } from '../models/account.ts';
+import { openAffairs, openAffairsWords } from '../queries/open-affairs.ts';
+import { takeBack } from '../take-back.ts';
+import { record } from '../transition.ts';
+import type { Viewer } from '../viewer.ts';
+import { provePassword } from './change-password.ts';
+
+/** Rows that are about the person alone. $1 is the account. */
+const gone = [
+  'DELETE FROM session WHERE account_id = $1',
+  'DELETE FROM email_token WHERE account_id = $1',
+  'DELETE FROM account_block WHERE blocker_id = $1 OR blocked_id = $1',
+  'DELETE FROM day_off WHERE sawyer_id = $1',
+  "UPDATE log SET note = '' FROM listing WHERE listing.id = log.listing_id AND owner_id = $1",
+];
+
+/** Rows that others' records need: they stay, and say nothing about the person any more. $2 is the time. */
+const blanked = [
+  `UPDATE sawyer_profile SET business_name = '', about = '', zip = NULL, town = NULL, base = NULL, services = '{}', languages = '{}', certificate_key = NULL,
+     certificate_seen_at = NULL, certificate_expires_on = NULL, updated_at = $2 WHERE account_id = $1`,
+  'UPDATE mill SET retired_at = coalesce(retired_at, $2) WHERE sawyer_id = $1',
+  "UPDATE photo SET removed_at = coalesce(removed_at, $2), caption = '', file_name = '' WHERE owner_id = $1",
+  // Logs and measures stay for the other side's records of the job; where it was becomes the coarse point.
+  `UPDATE listing SET typed = '{}', note = '', metal_note = '', zip = NULL, place = coarse, access = NULL, landing = NULL, waste = NULL, updated_at = $2 WHERE owner_id = $1`,
+  "UPDATE bid SET message = '', updated_at = $2 WHERE sawyer_id = $1 AND message <> ''",
+  "UPDATE message SET body = 'The account that wrote this is closed.', read_at = coalesce(read_at, $2) WHERE sender_id = $1",
+  'UPDATE message SET read_at = coalesce(read_at, $2) WHERE recipient_id = $1',
+  `UPDATE account SET email = 'closed-' || id || '@closed.invalid', email_confirmed_at = NULL, password_hash = '', name = 'Closed account', is_landowner = false, is_sawyer = false,
+     is_moderator = false, status = 'closed', totp_secret = NULL, totp_confirmed_at = NULL, totp_last_step = NULL, zip = NULL, closed_at = $2 WHERE id = $1`,
+];
+
+/**
+ * Closes one's own account: what it offers is taken back, personal data leaves, records of money and the audit log stay.
+ * @throws Refusal `invalid` for a wrong password, `conflict` while bookings are live or money is open, `forbidden` for a suspended
+ *   account, whose affairs a moderator looks after
+ */
+export async function closeAccount(by: Viewer, input: { readonly password: string }, at: Date): Promise<void> {
+  await provePassword(by, input.password, 'password');
+  await inTransaction(async () => {
+    // Listings and bids are locked before the account, as choosing a bid does; whoever was first is seen by the check below.
+    await takeBack(by.id, by, 'The account is closed', at);
+    const account = await Account.findByPk(by.id, { lock: true, rejectOnEmpty: true });
+    if (account.status === 'suspended') throw forbidden('This account is suspended. Write to a moderator to have it closed.');
+    if (account.isModerator && (await Account.count({ where: { isModerator: true, status: 'active' } })) === 1) throw conflict('You are the only moderator. Make another one first.');
+    const open = openAffairsWords(await openAffairs(by.id));
+    if (open !== null) throw conflict(open);
+    await enqueue('send-mail', accountClosed(account));
+    await record(by, 'closeAccount', 'account', by.id, at);
+    for (const sql of gone) await execute(sql, [by.id]);
+    for (const sql of blanked) await execute(sql, [by.id, at]);
+  });
+}
