@@ -43,6 +43,7 @@ export async function onRequest(context: APIContext, next: MiddlewareNext): Prom
     }
     if (error.kind === 'signedOut') return context.redirect(`${paths.signIn}?next=${encodeURIComponent(context.url.pathname + context.url.search)}`, 303);
     context.locals.refusal = { status: statusOf(error), message: error.message };
-    return settlePolicy(await context.rewrite('/refused'));
+    // A request of its own: a form that was read before the refusal cannot be copied into the rewritten request.
+    return settlePolicy(await context.rewrite(new Request(new URL('/refused', context.url), { headers: context.request.headers })));
   }
 }
