@@ -46,6 +46,7 @@ export const paths = {
   paid: (number: number) => `/bookings/${number}/paid`,
   tally: (number: number) => `/bookings/${number}/tally`,
   signTally: (number: number) => `/bookings/${number}/sign`,
+  decideTally: (number: number) => `/bookings/${number}/decide`,
   receipt: (number: number) => `/bookings/${number}/receipt`,
   invitation: (number: number) => `/bookings/${number}/invitation.ics`,
   review: (number: number) => `/bookings/${number}/review`,

@@ -49,6 +49,7 @@ export const permissions = {
     seePlace: { who: ['landowner', 'sawyer', 'moderator'], states: ['held', 'sawing', 'tallied', 'queried', 'signed', 'settled'] },
     startSawing: { who: ['sawyer'], states: ['held'] },
     enterTally: { who: ['sawyer'], states: ['held', 'sawing'] },
+    allowMetal: { who: ['landowner'], states: ['sawing'] },
     offerTally: { who: ['sawyer'], states: ['sawing'] },
     amendTally: { who: ['sawyer'], states: ['queried'] },
     signTally: { who: ['landowner'], states: ['tallied', 'queried'] },

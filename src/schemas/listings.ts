@@ -77,11 +77,4 @@ export const listingItem = z.object({
 });
 export type ListingItem = z.output<typeof listingItem>;
 
-/** An item with what a row of the page shows beside it. */
-export interface FoundListing extends ListingItem {
-  readonly howDown: string;
-  readonly metalRisk: string;
-  readonly closesInDays: number;
-}
-
 export const listingsAnswer = z.object({ items: z.array(listingItem), nextCursor: z.string().nullable(), total: z.number().int(), totalIsExact: z.boolean() });

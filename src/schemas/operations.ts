@@ -2,9 +2,9 @@ import type { z } from 'zod';
 import { dryingAnswer, dryingRequest } from './drying.ts';
 import { estimateAnswer, estimateRequest } from './estimate.ts';
 import { listingsAnswer, listingsQuery } from './listings.ts';
-import { quotingPracticeAnswer, quotingPracticeQuery } from './quoting-practice.ts';
 import { speciesAnswer } from './species.ts';
 import { tallyAnswer, tallyRequest } from './tally.ts';
+import { tallyEntriesBody } from './tally-entries.ts';
 import { treeVolumeAnswer, treeVolumeRequest } from './tree-volume.ts';
 
 /** One public or signed-in endpoint as `GET /api/openapi.json` describes it. */
@@ -32,7 +32,8 @@ export const operations: readonly Operation[] = [
   { method: 'post', path: '/api/tally', summary: 'Board feet of boards by the hardwood or the softwood rule', body: tallyRequest, answer: tallyAnswer },
   { method: 'post', path: '/api/tree-volume', summary: 'Board feet in a standing tree, form class 78', body: treeVolumeRequest, answer: treeVolumeAnswer },
   { method: 'post', path: '/api/drying', summary: 'What a board comes to in the air it dries in', body: dryingRequest, answer: dryingAnswer },
-  { method: 'get', path: '/api/quoting-practice', summary: 'By what the sawyers near a ZIP code charge, in counts', query: quotingPracticeQuery, answer: quotingPracticeAnswer },
   { method: 'get', path: '/api/listings', summary: 'Open listings by distance, a page at a time', query: listingsQuery, answer: listingsAnswer },
   { method: 'post', path: '/api/webhooks/payments', summary: "The payment provider's signed messages" },
+  { method: 'get', path: '/api/bookings/{number}/tally', summary: 'The tally of a booking, for its two sides', signedIn: true },
+  { method: 'put', path: '/api/bookings/{number}/tally', summary: 'Enter boards, hits, cull logs, hours; each once by its id', signedIn: true, body: tallyEntriesBody },
 ];

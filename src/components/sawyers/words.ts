@@ -1,6 +1,6 @@
-import type { PublicMill, PublicSawyer } from '~/domain/finding/public-sawyer.ts';
 import { formatFeet, formatFraction, formatInches } from '~/domain/measure.ts';
 import { MILL_KIND_NAMES } from '~/domain/trade/mill-fit.ts';
+import type { PublicMill, PublicSawyer } from '~/server/queries/sawyers-near.ts';
 
 const sentence = (text: string): string => text.charAt(0).toUpperCase() + text.slice(1);
 

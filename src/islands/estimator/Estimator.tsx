@@ -11,7 +11,6 @@ import { Loads } from './Loads.tsx';
 import { LogFigures } from './LogFigures.tsx';
 import { LogForm } from './LogForm.tsx';
 import { LogPicture } from './LogPicture.tsx';
-import { NearbyRules } from './NearbyRules.tsx';
 import { PasteTable } from './PasteTable.tsx';
 import { SettingFields } from './SettingFields.tsx';
 import { StandingTree } from './StandingTree.tsx';
@@ -112,7 +111,6 @@ export default function Estimator(): ReactElement {
                 <details className="no-print mt-4 border-t border-rule"><summary className={disclosure}>Trips and lifting</summary><Loads logs={logs} units={units} /></details>
               </>
             )}
-            <details className="no-print border-t border-rule"><summary className={disclosure}>Which rule do sawyers near you quote in?</summary><NearbyRules /></details>
             <details className="no-print border-t border-rule"><summary className={disclosure}>Paste or open a table of logs</summary><PasteTable onAdd={add} /></details>
             <details className="no-print border-y border-rule"><summary className={disclosure}>Units and scaling practice</summary><div className="py-3"><SettingFields settings={settings} units={units} onChange={change} /></div></details>
           </section>

@@ -37,10 +37,10 @@ export function LogTable({ logs, caption, settings = {}, units = 'us', action }:
       <caption>{caption}</caption>
       <thead>
         <tr>
-          <th scope="col" className="w-1/2">Log</th>
-          {shownRules.map((rule) => <th scope="col" className="num !whitespace-normal" key={rule}>{logRuleNames[rule]}</th>)}
+          <th scope="col">Log</th>
+          {shownRules.map((rule) => <th scope="col" className="num" key={rule}>{logRuleNames[rule]}, bf</th>)}
           <th scope="col" className="num">Green weight</th>
-          {action && <th scope="col" className="no-print"><span className="sr-only">Change or remove</span></th>}
+          {action && <th scope="col"><span className="sr-only">Change or remove</span></th>}
         </tr>
       </thead>
       <tbody>

@@ -67,6 +67,7 @@ export async function confirmDays(by: Viewer, input: { readonly booking: number;
 
       const before = await bookedDaysOf(booking.id);
       await swapDays(booking, days);
+      await DayProposal.update({ status: 'replaced' }, { where: { bookingId: booking.id, status: 'confirmed' } });
       await proposal.update({ status: 'confirmed', decidedAt: at });
       const startsAt = dayStart(first, booking.timeZone, startTime);
       if (booking.status === 'proposed') await agree(by, booking, startsAt, at);

@@ -18,6 +18,7 @@ export const Booking = table('booking', {
   payBy: nullable(instant()),
   signBy: nullable(instant()),
   invitationSequence: filled(whole()),
+  signReminders: filled(whole()),
   cancelledBy: nullable(ref()),
   cancelReason: nullable(text()),
   createdAt: instant(),

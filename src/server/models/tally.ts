@@ -1,4 +1,4 @@
-import { filled, givenId, id, instant, json, nullable, real, ref, table, text, whole, type Row } from './table.ts';
+import { filled, givenId, id, instant, json, nullable, real, ref, table, text, whole, yes, type Row } from './table.ts';
 
 export const Tally = table('tally', {
   id: id(),
@@ -8,6 +8,8 @@ export const Tally = table('tally', {
   clock: filled(json<unknown[]>()),
   extras: filled(json<Record<string, unknown>>()),
   note: filled(text()),
+  metalAllowed: filled(whole()),
+  endedBySawyer: filled(yes()),
   createdAt: instant(),
   offeredAt: nullable(instant()),
   contentSha256: nullable(text()),
@@ -52,6 +54,7 @@ export const CullLog = table('cull_log', {
   logId: nullable(ref()),
   reason: text(),
   openingMinutes: filled(whole()),
+  passes: filled(whole()),
   enteredAt: instant(),
   removedAt: nullable(instant()),
 });

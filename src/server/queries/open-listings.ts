@@ -2,7 +2,7 @@ import { readCursor, writeCursor } from '~/domain/finding/cursor.ts';
 import type { ListingSort } from '~/domain/finding/sorts.ts';
 import type { Point } from '~/domain/geo.ts';
 import { photoAlt, pictureView } from '~/domain/photo.ts';
-import type { FoundListing, ListingItem } from '~/schemas/listings.ts';
+import type { ListingItem } from '~/schemas/listings.ts';
 import { rows } from '../db.ts';
 import { sqlBuilder } from './sql-builder.ts';
 
@@ -26,6 +26,13 @@ export interface ListingsAsked {
   /** A text that `readCursor` accepts for this sort. */
   readonly cursor?: string | undefined;
   readonly limit: number;
+}
+
+/** An item with what a row of the page shows beside it. */
+export interface FoundListing extends ListingItem {
+  readonly howDown: string;
+  readonly metalRisk: string;
+  readonly closesInDays: number;
 }
 
 export interface FoundListings {
@@ -65,21 +72,13 @@ type Sql = ReturnType<typeof sqlBuilder>;
 
 const pointSql = (sql: Sql, { lat, lng }: Point): string => `ST_SetSRID(ST_MakePoint(${sql.value(lng)}::float8, ${sql.value(lat)}::float8), 4326)::geography`;
 
-/** Up to here the spatial index finds all within a radius faster than walking outward from the middle. */
-const NEARBY_MI = 100;
-
-// The planner takes ST_DWithin for a handful of rows however wide it is, so a wide one is a plain comparison: then it walks an
-// ordered index and stops when the page is full.
-const within = (here: string, radiusMi: number, metres: string): string =>
-  radiusMi <= NEARBY_MI ? `ST_DWithin(l.coarse, ${here}, ${metres}::float8, false)` : `(l.coarse <-> ${here}) <= ${metres}::float8`;
-
 /** What makes a listing part of the list, as SQL. Distances are to the coarse point; the exact place is never read here. */
 function conditions(sql: Sql, asked: ListingsAsked, at: Date, here: string | null): string[] {
   const { radiusMi, species, minBoardFeet, maxLargestEndIn, closesBefore, fitsMillsOf } = asked;
   return [
     `l.status = 'open' AND l.hidden_at IS NULL`,
     `l.closes_at > ${sql.value(at)}`,
-    ...(here && radiusMi !== undefined ? [within(here, radiusMi, sql.value(radiusMi * METRES_PER_MILE))] : []),
+    ...(here && radiusMi !== undefined ? [`ST_DWithin(l.coarse, ${here}, ${sql.value(radiusMi * METRES_PER_MILE)}::float8, false)`] : []),
     ...(species !== undefined ? [`l.species @> ARRAY[${sql.value(species)}::text]`] : []),
     ...(minBoardFeet !== undefined ? [`l.board_feet >= ${sql.value(minBoardFeet)}::float8`] : []),
     ...(maxLargestEndIn !== undefined ? [`l.largest_end_ob_in <= ${sql.value(maxLargestEndIn)}::float8 + 0.005`] : []),
@@ -101,7 +100,7 @@ function ordering(sql: Sql, asked: ListingsAsked, here: string | null): { key: s
   switch (asked.sort) {
     case 'distance': {
       const away = `(l.coarse <-> ${here ?? 'l.coarse'})`;
-      return { key: `${away}::text`, order: away, after: past(away, '>', 'float8') };
+      return { key: `${away}::text`, order: `${away}, l.id`, after: past(away, '>', 'float8') };
     }
     case 'closing':
       return { key: `(l.closes_at AT TIME ZONE 'UTC')::text || '+00'`, order: 'l.closes_at, l.id', after: past('l.closes_at', '>', 'timestamptz') };
@@ -128,7 +127,7 @@ export async function openListings(asked: ListingsAsked, at: Date): Promise<Foun
   const found = await rows<Row>(
     `WITH page AS (
        SELECT l.*, ${key} AS sort_key, ${here ? `l.coarse <-> ${here}` : 'NULL::float8'} AS metres, row_number() OVER () AS place_in_page
-       FROM (${pageOf(`SELECT * FROM listing l WHERE ${[...where, ...(after ? [after] : [])].join(' AND ')} ORDER BY ${order}`, asked, order)}) l
+       FROM (SELECT * FROM listing l WHERE ${[...where, ...(after ? [after] : [])].join(' AND ')} ORDER BY ${order} LIMIT ${asked.limit + 1}) l
      )
      SELECT l.id, l.number, l.title, l.species, l.log_count AS "logCount", l.board_feet AS "boardFeet", l.largest_end_ob_in AS largest, l.metres,
        ST_Y(l.coarse::geometry) AS lat, ST_X(l.coarse::geometry) AS lng, coalesce(l.town, '') AS town, l.sort_key AS "sortKey",
@@ -155,20 +154,11 @@ export async function openListings(asked: ListingsAsked, at: Date): Promise<Foun
   };
 }
 
-/**
- * One more row than the page shows. Before PostgreSQL 16 the nearest-neighbour index serves an order by distance alone, so rows
- * that tie with the last are taken along and put in order of id afterwards.
- */
-const pageOf = (select: string, { sort, limit }: ListingsAsked, order: string): string =>
-  sort === 'distance' ? `SELECT * FROM (${select} FETCH FIRST ${limit + 1} ROWS WITH TIES) l ORDER BY ${order}, l.id LIMIT ${limit + 1}` : `${select} LIMIT ${limit + 1}`;
-
 async function countUpTo(most: number, asked: ListingsAsked, at: Date): Promise<number> {
   const sql = sqlBuilder();
   const here = asked.from && asked.radiusMi !== undefined ? pointSql(sql, asked.from) : null;
   const where = conditions(sql, asked, at, here).join(' AND ');
-  // A wide radius is counted outward from the middle, which ends at the first thousand.
-  const outward = here && (asked.radiusMi ?? 0) > NEARBY_MI ? `ORDER BY l.coarse <-> ${here}` : '';
-  const [counted] = await rows<{ count: number }>(`SELECT count(*)::int AS count FROM (SELECT 1 FROM listing l WHERE ${where} ${outward} LIMIT ${most}) few`, sql.values);
+  const [counted] = await rows<{ count: number }>(`SELECT count(*)::int AS count FROM (SELECT 1 FROM listing l WHERE ${where} LIMIT ${most}) few`, sql.values);
   return counted?.count ?? 0;
 }
 

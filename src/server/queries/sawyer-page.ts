@@ -1,9 +1,8 @@
-import type { PublicSawyer } from '~/domain/finding/public-sawyer.ts';
 import type { Point } from '~/domain/geo.ts';
 import { rows, oneRow } from '../db.ts';
 import { notFound } from '../errors.ts';
 import { earliestOpenDayOf } from './open-days.ts';
-import { publicSawyerColumns, publicSawyerConditions } from './sawyers-near.ts';
+import { publicSawyerColumns, publicSawyerConditions, type PublicSawyer } from './sawyers-near.ts';
 import { sqlBuilder } from './sql-builder.ts';
 
 export interface PublicReview {

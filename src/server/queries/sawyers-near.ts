@@ -1,10 +1,39 @@
 import { ROAD_FACTOR } from '~/domain/trade/road-miles.ts';
-import type { PublicSawyer } from '~/domain/finding/public-sawyer.ts';
+import type { RateCard } from '~/domain/trade/rate-card.ts';
 import type { Point } from '~/domain/geo.ts';
 import { rows } from '../db.ts';
 import { sqlBuilder } from './sql-builder.ts';
 
 const METRES_PER_MILE = 1609.344;
+
+export interface PublicMill {
+  readonly name: string;
+  readonly kind: 'band' | 'swing-blade' | 'chainsaw' | 'circular';
+  readonly kerfIn: number;
+  readonly largestLogIn: number;
+  readonly widestCutIn: number;
+  readonly widestBoardIn: number;
+  readonly longestFt: number;
+  readonly shortestFt: number;
+  readonly turnsLogsBy: 'machine' | 'hand';
+}
+
+/** What anyone may know of a sawyer. The base is on the coarse grid and is given as a town and a distance only. */
+export interface PublicSawyer {
+  readonly id: string;
+  readonly name: string;
+  readonly town: string;
+  readonly state: string;
+  readonly distanceMi: number | null;
+  readonly travelMiles: number;
+  readonly mills: readonly PublicMill[];
+  readonly card: RateCard;
+  readonly settledJobs: number;
+  readonly reviewCount: number;
+  readonly meanStars: number | null;
+  /** A moderator looked at a certificate that is valid until this day. */
+  readonly certificateExpiresOn: string | null;
+}
 
 /** The columns of a public sawyer, for `sawyer_profile s JOIN account a`. `metres` is SQL for the distance. */
 export const publicSawyerColumns = (metres: string, at: string): string => `

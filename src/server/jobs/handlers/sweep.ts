@@ -2,6 +2,7 @@ import { now } from '../../clock.ts';
 import { closeToBids, lapseListings } from '../../commands/close-listings.ts';
 import { log } from '../../log.ts';
 import { moneySweeps } from './money-sweeps.ts';
+import { sweepTallies } from './sweep-tallies.ts';
 
 /** A sweep moves every stored deadline that has passed; it takes the time, finds its own rows, and may run as often as one likes. */
 export type Sweep = (at: Date) => Promise<void>;
@@ -11,6 +12,7 @@ export const sweeps: Readonly<Record<string, Sweep>> = {
   'close to bids': closeToBids,
   'lapse listings': lapseListings,
   ...moneySweeps,
+  'sign or recall tallies': sweepTallies,
 };
 
 /** Runs every sweep for the given time. One that fails is logged and does not keep the others from running. */

@@ -1,0 +1,136 @@
+import { useState, type ReactElement } from 'react';
+import { buttonKinds, gloveSize, join } from '~/components/classes.ts';
+import { Field, Select } from '~/islands/form/fields.tsx';
+import type { TallyEntry } from '~/schemas/tally-entries.ts';
+import type { TallyView } from '~/schemas/tally-view.ts';
+
+interface BesideProps {
+  readonly view: TallyView;
+  readonly logId: string | null;
+  readonly add: (...entries: TallyEntry[]) => void;
+}
+
+const newId = (): string => crypto.randomUUID();
+const time = (iso: string): string => new Date(iso).toLocaleTimeString('en-US', { hour: 'numeric', minute: '2-digit' });
+const summary = 'flex min-h-glove cursor-pointer items-center border-t border-rule text-lg font-bold text-crayon';
+
+/** Blades that metal has cost: each a tap, each taken back with another. */
+export function MetalHits({ view, logId, add }: BesideProps): ReactElement {
+  return (
+    <details>
+      <summary className={summary}>Metal hits · {view.hits.length}</summary>
+      <p className="max-w-prose text-ink-soft">Stop the blade and stand clear before you look. Follow the mill’s manual. After two hits sawing stops until the landowner allows more.</p>
+      <div className="mt-2 flex flex-wrap gap-2">
+        {(['re-sharpened', 'destroyed'] as const).map((outcome) => (
+          <button key={outcome} type="button" className={join(buttonKinds.outlined, gloveSize)} onClick={() => add({ kind: 'hit', id: newId(), logId, outcome, note: '' })}>Blade {outcome}</button>
+        ))}
+      </div>
+      <ul>{view.hits.map((hit) => <Taken key={hit.id} text={`Blade ${hit.outcome}`} onUndo={() => add({ kind: 'remove', id: hit.id })} />)}</ul>
+    </details>
+  );
+}
+
+function Taken({ text, onUndo }: { readonly text: string; readonly onUndo: () => void }): ReactElement {
+  return (
+    <li className="flex items-center justify-between gap-3 border-b border-rule">
+      <span>{text}</span>
+      <button type="button" className={buttonKinds.quiet} onClick={onUndo}>Take back<span className="sr-only">: {text}</span></button>
+    </li>
+  );
+}
+
+/** A log that was opened and left: why, and what opening it took. */
+export function CullLogs({ view, logId, add }: BesideProps): ReactElement {
+  const [reason, setReason] = useState('');
+  const [minutes, setMinutes] = useState('');
+  const [problem, setProblem] = useState<string | undefined>();
+  const label = view.logs.find(({ id }) => id === logId)?.label ?? 'this log';
+  const take = (): void => {
+    if (reason.trim() === '') return setProblem('Say why it is a cull log.');
+    const openingMinutes = Math.round(Number(minutes || '0'));
+    if (!(openingMinutes >= 0 && openingMinutes <= 600)) return setProblem('Write the opening time as minutes, like 20.');
+    add({ kind: 'cull', id: newId(), logId, reason: reason.trim(), openingMinutes, passes: 0 });
+    setReason('');
+    setMinutes('');
+    setProblem(undefined);
+  };
+  return (
+    <details>
+      <summary className={summary}>Cull logs · {view.culls.length}</summary>
+      <div className="grid gap-3 pb-3">
+        <Field name="cullReason" label={`Why ${label} is a cull log`} value={reason} error={problem} onChange={(event) => setReason(event.target.value)} />
+        <Field name="cullMinutes" label="Opening time, minutes" inputMode="numeric" figure width="short" value={minutes} onChange={(event) => setMinutes(event.target.value)} />
+        <p><button type="button" className={join(buttonKinds.outlined, gloveSize)} onClick={take}>Record the cull log</button></p>
+      </div>
+      <ul>{view.culls.map((cull) => <Taken key={cull.id} text={`${view.logs.find(({ id }) => id === cull.logId)?.label ?? 'A log'}: ${cull.reason}${cull.openingMinutes ? `, ${cull.openingMinutes} min` : ''}`} onUndo={() => add({ kind: 'remove', id: cull.id })} />)}</ul>
+    </details>
+  );
+}
+
+const activities = [
+  { value: 'sawing', label: 'Sawing' },
+  { value: 'preparing', label: 'Arriving and setting up' },
+  { value: 'waiting', label: 'Waiting for the landowner' },
+  { value: 'breakdown', label: 'Own breakdown (off the clock)' },
+  { value: 'sharpening', label: 'Sharpening (off the clock)' },
+] as const;
+
+/** Hours, when they are charged or the landowner kept the mill waiting. */
+export function Hours({ view, add }: BesideProps): ReactElement {
+  const [activity, setActivity] = useState<(typeof activities)[number]['value']>(view.terms.card.basis.kind === 'hourly' ? 'sawing' : 'waiting');
+  const [from, setFrom] = useState('');
+  const [to, setTo] = useState('');
+  const [day, setDay] = useState(() => new Date().toLocaleDateString('en-CA'));
+  const [problem, setProblem] = useState<string | undefined>();
+  const take = (): void => {
+    const startsAt = new Date(`${day}T${from}`);
+    const endsAt = new Date(`${day}T${to}`);
+    if (Number.isNaN(startsAt.getTime()) || Number.isNaN(endsAt.getTime())) return setProblem('Choose the day and both times.');
+    if (endsAt <= startsAt) return setProblem('The end must be after the start.');
+    if (view.clock.some((entry) => new Date(entry.startsAt) < endsAt && startsAt < new Date(entry.endsAt))) return setProblem('This time overlaps another entry.');
+    add({ kind: 'clock', id: newId(), activity, startsAt: startsAt.toISOString(), endsAt: endsAt.toISOString() });
+    setFrom('');
+    setTo('');
+    setProblem(undefined);
+  };
+  return (
+    <details open={view.terms.card.basis.kind === 'hourly'}>
+      <summary className={summary}>Hours · {view.clock.length}</summary>
+      <div className="grid gap-3 pb-3 sm:grid-cols-2">
+        <Select name="activity" label="What the time was" options={activities} value={activity} onChange={(event) => setActivity(event.target.value as typeof activity)} />
+        <Field name="clockDay" label="Day" type="date" figure value={day} onChange={(event) => setDay(event.target.value)} />
+        <Field name="clockFrom" label="From" type="time" figure value={from} error={problem} onChange={(event) => setFrom(event.target.value)} />
+        <Field name="clockTo" label="To" type="time" figure value={to} onChange={(event) => setTo(event.target.value)} />
+        <p><button type="button" className={join(buttonKinds.outlined, gloveSize)} onClick={take}>Add the time</button></p>
+      </div>
+      <ul>{view.clock.map((entry) => <Taken key={entry.id} text={`${activities.find(({ value }) => value === entry.activity)?.label ?? entry.activity}, ${time(entry.startsAt)} to ${time(entry.endsAt)}`} onUndo={() => add({ kind: 'remove', id: entry.id })} />)}</ul>
+    </details>
+  );
+}
+
+/** Counts that the rate card charges for beside the sawing. Only what it offers is asked. */
+export function Extras({ view, add }: BesideProps): ReactElement | null {
+  const { extras: prices } = view.terms.card;
+  const asked = [
+    ...(prices.stickerEach === null ? [] : [{ field: 'stickers' as const, label: 'Stickers brought' }]),
+    ...(prices.movingMill === null ? [] : [{ field: 'millMoves' as const, label: 'Mill moved, times' }]),
+    ...(prices.deliveryPerLoad === null ? [] : [{ field: 'deliveryLoads' as const, label: 'Loads delivered' }]),
+    { field: 'rainReturns' as const, label: 'Sent home by rain and come back, times' },
+  ];
+  return (
+    <details>
+      <summary className={summary}>Extras</summary>
+      <div className="grid gap-3 pb-3 sm:grid-cols-2">
+        {asked.map(({ field, label }) => (
+          <Field key={field} name={field} label={label} type="number" min={0} step={1} figure width="short" value={view.extras[field]} onChange={(event) => {
+            const value = Math.max(0, Math.floor(Number(event.target.value) || 0));
+            if (value <= (field === 'rainReturns' ? 10 : field === 'millMoves' ? 20 : field === 'deliveryLoads' ? 50 : 5000)) add({ kind: 'extras', ...view.extras, [field]: value } as TallyEntry);
+          }} />
+        ))}
+        {view.terms.waste !== 'left' && (
+          <Select name="wasteDone" label="Slabs and sawdust" value={view.extras.wasteDone} options={[{ value: view.terms.waste, label: `${view.terms.waste} as agreed` }, { value: 'left', label: 'left at the landing' }]} onChange={(event) => add({ kind: 'extras', ...view.extras, wasteDone: event.target.value } as TallyEntry)} />
+        )}
+      </div>
+    </details>
+  );
+}

@@ -1,0 +1,150 @@
+import { useState, type ReactElement } from 'react';
+import { buttonKinds, gloveSize, join } from '~/components/classes.ts';
+import { formatFraction } from '~/domain/measure.ts';
+import { formatCents } from '~/domain/money.ts';
+import { tallyRuleOf } from '~/domain/trade/tally-count.ts';
+import { thicknessName } from '~/domain/timber/tally.ts';
+import type { TallyEntry } from '~/schemas/tally-entries.ts';
+import type { TallyView } from '~/schemas/tally-view.ts';
+import { CullLogs, Extras, Hours, MetalHits } from './Beside.tsx';
+import { bySize, countView, oneBoard, stillWanted } from './count.ts';
+import { Pad, readInches } from './Pad.tsx';
+import { useTallyQueue } from './use-tally-queue.ts';
+
+interface Props {
+  readonly view: TallyView;
+  readonly accountId: string;
+}
+
+const quarters = [1, 1.25, 1.5, 2];
+const dimension = [1, 2, 4, 6];
+const readFeet = (text: string): number | null => {
+  const feet = Number(text);
+  return feet >= 1 && feet <= 40 ? feet : null;
+};
+const sizeName = (view: TallyView, row: { thicknessIn: number; widthIn: number; lengthFt: number }): string =>
+  `${thicknessName(row.thicknessIn, tallyRuleOf(view.terms) === 'hardwood' ? 'hardwood' : 'softwood').replace(' in', '')} × ${formatFraction(row.widthIn)} × ${formatFraction(row.lengthFt)}`;
+
+/** The tally book: big keys for the next board, the sizes so far, and the money against the hold. Counts with or without signal. */
+export function TallyBook({ view: initial, accountId }: Props): ReactElement {
+  const { view, waiting, trouble, add } = useTallyQueue(initial, accountId);
+  const hardwood = tallyRuleOf(view.terms) === 'hardwood';
+  const [logAt, setLogAt] = useState(0);
+  const log = view.logs[logAt] ?? view.logs[0];
+  const [kind, setKind] = useState<'board' | 'slab' | 'out-of-size'>('board');
+  const [thicknessIn, setThickness] = useState(hardwood ? 1 : 2);
+  const [widthIn, setWidth] = useState(8);
+  const [secondWidthIn, setSecondWidth] = useState(8);
+  const [lengthFt, setLength] = useState(log?.wholeFt ?? 8);
+  const [several, setSeveral] = useState('1');
+  const counted = countView(view);
+  const next = oneBoard(view, thicknessIn, widthIn, lengthFt);
+  const lengths = [...new Set([log?.wholeFt ?? 8, 8, 10, 12, 16])].sort((a, b) => a - b);
+  const lastBoard = view.boards.at(-1);
+  const wanted = stillWanted(view).filter(({ left }) => left > 0);
+  const count = Math.max(1, Math.min(500, Math.floor(Number(several) || 1)));
+
+  const addBoards = (size: { thicknessIn: number; widthIn: number; lengthFt: number }, howMany: number): void => {
+    add({ kind: 'board', id: crypto.randomUUID(), logId: log?.id ?? null, boardKind: kind, ...size, secondWidthIn: kind === 'slab' ? secondWidthIn : null, count: howMany } satisfies TallyEntry);
+    setSeveral('1');
+  };
+  const goTo = (index: number): void => {
+    setLogAt(index);
+    const to = view.logs[index];
+    if (to) setLength(to.wholeFt);
+  };
+
+  return (
+    <div className="mx-auto max-w-[34rem]">
+      <div className="sticky top-0 z-10 flex items-center justify-between gap-3 bg-ink px-4 py-3 text-paper">
+        <p className="font-slab text-lg font-bold">Tally · {log?.label ?? 'log'} of {view.logs.length}</p>
+        <p className={join('rounded px-3 py-1 text-sm font-semibold', waiting > 0 ? 'bg-amber text-[#fff]' : 'border border-paper')} role="status">{waiting > 0 ? `${waiting} saved here, not sent` : 'All sent'}</p>
+      </div>
+      {trouble && <p className="border-l-4 border-amber bg-sheet px-4 py-2" role="alert">{trouble}</p>}
+
+      <div className="flex items-end justify-between gap-4 px-4 pt-4">
+        <div className="text-sm"><p>Sawn so far</p><p className="figure text-base">{formatCents(counted.job.costCents)} <span className="text-ink-soft">of {formatCents(view.heldCents)} held</span></p></div>
+        <p className="figure text-4xl font-bold" data-testid="sawn-so-far">{Number(counted.boardFeet.toFixed(2)).toLocaleString('en-US')} bf</p>
+      </div>
+      {counted.warning !== 'none' && <p className="mx-4 mt-2 border-l-4 border-amber bg-sheet px-3 py-2 font-semibold" role="alert">{counted.warning === 'stop' ? 'The work has reached what is held. Stop and speak with the landowner: only what is held is certain.' : `The work is at ${counted.warning === 'at-95' ? '95' : '80'} % of what is held.`}</p>}
+      {counted.metalStops && <p className="mx-4 mt-2 border-l-4 border-heartwood bg-sheet px-3 py-2 font-semibold" role="alert">Two metal hits: stop until the landowner allows more. A message has gone to them.</p>}
+
+      <div className="px-4">
+        <fieldset className="mt-4">
+          <legend className="text-sm">Log</legend>
+          <select className="mt-1 min-h-glove w-full border-2 border-ink bg-sheet px-3 text-lg" aria-label="Log" value={logAt} onChange={(event) => goTo(Number(event.target.value))}>
+            {view.logs.map((one, index) => <option key={one.id} value={index}>{one.label}: {one.speciesName}, {one.size}</option>)}
+          </select>
+        </fieldset>
+        {wanted.length > 0 && (
+          <fieldset className="mt-3">
+            <legend className="text-sm">Still wanted for the cut list</legend>
+            <div className="mt-1 flex flex-wrap gap-2">
+              {wanted.map((piece) => (
+                <button key={`${piece.label} ${sizeName(view, piece)}`} type="button" className="min-h-glove rounded border-2 border-moss bg-sheet px-3 font-mono font-bold" onClick={() => addBoards(piece, 1)}>
+                  {sizeName(view, piece)} <span className="font-normal">· {piece.left} left</span>
+                </button>
+              ))}
+            </div>
+          </fieldset>
+        )}
+        <fieldset className="mt-3">
+          <legend className="text-sm">What it is</legend>
+          <div className="mt-1 flex gap-2">
+            {([['board', 'Board'], ['slab', 'Slab'], ['out-of-size', 'Out of size']] as const).map(([value, name]) => (
+              <button key={value} type="button" aria-pressed={kind === value} className={join('min-h-glove flex-1 rounded border-2 border-ink px-2 font-bold', kind === value ? 'bg-ink text-paper' : 'bg-sheet')} onClick={() => setKind(value)}>{name}</button>
+            ))}
+          </div>
+        </fieldset>
+        <Pad label={hardwood ? 'Thickness, quarters' : 'Thickness, in'} values={hardwood ? quarters : dimension} chosen={thicknessIn} name={(value) => thicknessName(value, hardwood ? 'hardwood' : 'softwood').replace(' in', '')} onChoose={setThickness} read={readInches(24)} />
+        <Pad label={kind === 'slab' ? 'One face at mid-length, in' : 'Width, in'} values={[4, 6, 7, 8, 9, 10, 12]} chosen={widthIn} name={formatFraction} onChoose={setWidth} read={readInches(60)} />
+        {kind === 'slab' && <Pad label="The other face at mid-length, in" values={[6, 8, 10, 12, 16]} chosen={secondWidthIn} name={formatFraction} onChoose={setSecondWidth} read={readInches(60)} />}
+        <Pad label="Length, ft" values={lengths} chosen={lengthFt} name={formatFraction} onChoose={setLength} read={readFeet} />
+
+        <button type="button" className="mt-4 min-h-[72px] w-full rounded bg-crayon px-4 text-xl font-bold text-paper hover:bg-ink" onClick={() => addBoards({ thicknessIn, widthIn, lengthFt }, count)}>
+          Add {count > 1 ? `${count} ` : ''}{kind === 'board' ? (count > 1 ? 'boards' : 'board') : kind === 'slab' ? 'slab' : 'out of size'}
+          {kind === 'board' && <span className="figure"> · {next.surfaceMeasure !== null && `SM ${next.surfaceMeasure} · `}{Number(next.boardFeet.toFixed(2))} bf</span>}
+        </button>
+        <div className="mt-1 flex items-center justify-between gap-4">
+          <button type="button" className={join(buttonKinds.quiet, 'min-h-glove')} disabled={!lastBoard} onClick={() => lastBoard && add({ kind: 'remove', id: lastBoard.id })}>Undo last</button>
+          <label className="flex items-center gap-2">How many<input className="min-h-glove w-20 border-2 border-ink bg-sheet px-2 font-mono text-xl" type="number" min={1} max={500} value={several} onChange={(event) => setSeveral(event.target.value)} /></label>
+        </div>
+
+        <SizeTable view={view} add={add} />
+        {logAt < view.logs.length - 1 && <button type="button" className={join(buttonKinds.outlined, gloveSize, 'mt-4 w-full')} onClick={() => goTo(logAt + 1)}>{log?.label} done · next log</button>}
+
+        <div className="mt-6">
+          <MetalHits {...{ view, add }} logId={log?.id ?? null} />
+          <CullLogs {...{ view, add }} logId={log?.id ?? null} />
+          <Hours {...{ view, add }} logId={null} />
+          <Extras {...{ view, add }} logId={null} />
+        </div>
+      </div>
+    </div>
+  );
+}
+
+function SizeTable({ view, add }: { readonly view: TallyView; readonly add: (...entries: TallyEntry[]) => void }): ReactElement {
+  const rows = bySize(view, view.boards);
+  const takeOne = (key: string): void => {
+    const last = view.boards.findLast((board) => [board.kind, board.thicknessIn, board.widthIn, board.lengthFt].join(' ') === key);
+    if (last) add({ kind: 'remove', id: last.id });
+  };
+  if (rows.length === 0) return <p className="mt-4 text-ink-soft">No boards yet. Choose a size and add the first.</p>;
+  return (
+    <table className="ruled mt-4 w-full">
+      <caption className="sr-only">Boards so far by size</caption>
+      <thead><tr><th scope="col">Size</th><th scope="col" className="num">Boards</th><th scope="col" className="num">bf</th><th scope="col"><span className="sr-only">Correct</span></th></tr></thead>
+      <tbody>
+        {rows.map((row) => (
+          <tr key={row.key}>
+            <th scope="row" className="figure font-normal">{sizeName(view, row)}{row.kind === 'board' ? '' : ` (${row.kind === 'slab' ? 'slab' : 'out of size'})`}</th>
+            <td className="num">{row.count}</td>
+            <td className="num">{row.kind === 'board' ? Number(row.boardFeet.toFixed(2)) : '·'}</td>
+            <td className="num"><button type="button" className="min-h-target px-2 font-semibold text-crayon underline" onClick={() => takeOne(row.key)}>Take back<span className="sr-only"> the last {sizeName(view, row)}</span></button></td>
+          </tr>
+        ))}
+      </tbody>
+    </table>
+  );
+}

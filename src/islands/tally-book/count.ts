@@ -1,0 +1,74 @@
+import { priceWork, type PricedJob } from '~/domain/trade/price.ts';
+import { holdWarning, mayGoOnAfterMetal, type HoldWarning } from '~/domain/trade/on-the-day.ts';
+import { countBoards, countTally, tallyRuleOf } from '~/domain/trade/tally-count.ts';
+import { tallyBoards } from '~/domain/timber/tally.ts';
+import type { TallyBoardView, TallyView } from '~/schemas/tally-view.ts';
+
+/** The tally so far, counted on the phone by the same rules that settle it. */
+export interface Counted {
+  readonly boardFeet: number;
+  readonly job: PricedJob;
+  readonly warning: HoldWarning;
+  readonly metalStops: boolean;
+}
+
+export function countView(view: TallyView): Counted {
+  const work = countTally(
+    view.terms,
+    {
+      boards: view.boards,
+      clock: view.clock.map((entry) => ({ activity: entry.activity, startsAt: new Date(entry.startsAt), endsAt: new Date(entry.endsAt) })),
+      blades: view.hits.map(({ outcome }) => ({ blade: outcome, cause: 'metal' })),
+      culls: view.culls,
+      extras: view.extras,
+    },
+    view.logs,
+  );
+  const job = priceWork(view.terms, work);
+  return {
+    boardFeet: countBoards(tallyRuleOf(view.terms), view.boards),
+    job,
+    warning: holdWarning(job.costCents, view.heldCents),
+    metalStops: !mayGoOnAfterMetal(view.hits.length, view.metalAllowed),
+  };
+}
+
+/** One size with how many boards of it there are. */
+export interface SizeRow {
+  readonly key: string;
+  readonly kind: TallyBoardView['kind'];
+  readonly thicknessIn: number;
+  readonly widthIn: number;
+  readonly lengthFt: number;
+  readonly count: number;
+  readonly boardFeet: number;
+}
+
+/** Boards gathered by size, in the order each size was first met, counted by the bid's rule. */
+export function bySize(view: TallyView, boards: readonly TallyBoardView[]): SizeRow[] {
+  const rule = tallyRuleOf(view.terms) === 'hardwood' ? 'hardwood' : 'softwood';
+  const counted = tallyBoards(rule, boards).pieces;
+  const rows = new Map<string, SizeRow>();
+  boards.forEach((board, index) => {
+    const key = [board.kind, board.thicknessIn, board.widthIn, board.lengthFt].join(' ');
+    const before = rows.get(key);
+    const boardFeet = board.kind === 'board' ? (counted[index]?.boardFeet ?? 0) : 0;
+    rows.set(key, before ? { ...before, count: before.count + board.count, boardFeet: before.boardFeet + boardFeet } : { key, kind: board.kind, thicknessIn: board.thicknessIn, widthIn: board.widthIn, lengthFt: board.lengthFt, count: board.count, boardFeet });
+  });
+  return [...rows.values()];
+}
+
+/** What one more board of this size would add: its surface measure and board feet, as the button says them. */
+export function oneBoard(view: TallyView, thicknessIn: number, widthIn: number, lengthFt: number): { readonly surfaceMeasure: number | null; readonly boardFeet: number } {
+  const hardwood = tallyRuleOf(view.terms) === 'hardwood';
+  const [row] = tallyBoards(hardwood ? 'hardwood' : 'softwood', [{ thicknessIn, widthIn, lengthFt, count: 1 }]).pieces;
+  return { surfaceMeasure: row?.surfaceMeasureSqFt ?? null, boardFeet: row?.boardFeet ?? 0 };
+}
+
+/** How many of each wanted piece are still to be sawn. */
+export function stillWanted(view: TallyView): { readonly label: string; readonly thicknessIn: number; readonly widthIn: number; readonly lengthFt: number; readonly left: number }[] {
+  return view.cutList.map((piece) => {
+    const made = view.boards.filter((board) => board.kind === 'board' && board.thicknessIn === piece.thicknessIn && board.widthIn === piece.widthIn && board.lengthFt >= piece.lengthFt).reduce((sum, { count }) => sum + count, 0);
+    return { label: piece.label, thicknessIn: piece.thicknessIn, widthIn: piece.widthIn, lengthFt: piece.lengthFt, left: Math.max(0, piece.count - made) };
+  });
+}

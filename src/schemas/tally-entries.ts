@@ -1,0 +1,51 @@
+import { z } from 'zod';
+
+const inches = (most: number) => z.number().positive('This must be more than zero.').max(most, `At most ${most} in.`);
+const logId = z.uuid().nullable();
+
+/** Boards, slabs or boards out of size, of one size, from one log. Ids are made where they are typed; a repeated send adds nothing. */
+const board = z.strictObject({
+  kind: z.literal('board'),
+  id: z.uuid(),
+  logId,
+  boardKind: z.enum(['board', 'slab', 'out-of-size']).default('board'),
+  thicknessIn: inches(24),
+  widthIn: inches(60),
+  secondWidthIn: inches(60).nullable().default(null),
+  lengthFt: z.number().min(1, 'At least 1 ft.').max(40, 'At most 40 ft.'),
+  count: z.number().int().min(1, 'At least one.').max(500, 'At most 500 in one entry.'),
+});
+const hit = z.strictObject({ kind: z.literal('hit'), id: z.uuid(), logId, outcome: z.enum(['re-sharpened', 'destroyed']), note: z.string().max(500).default('') });
+const cull = z.strictObject({
+  kind: z.literal('cull'), id: z.uuid(), logId, reason: z.string().trim().min(1, 'Say why it is a cull log.').max(500),
+  openingMinutes: z.number().int().min(0).max(600).default(0), passes: z.number().int().min(0).max(100).default(0),
+});
+const clock = z.strictObject({ kind: z.literal('clock'), id: z.uuid(), activity: z.enum(['preparing', 'sawing', 'waiting', 'breakdown', 'sharpening']), startsAt: z.iso.datetime({ offset: true }), endsAt: z.iso.datetime({ offset: true }) });
+const remove = z.strictObject({ kind: z.literal('remove'), id: z.uuid() });
+const logIds = z.array(z.uuid()).max(200);
+const extras = z.strictObject({
+  kind: z.literal('extras'),
+  millMoves: z.number().int().min(0).max(20), stickers: z.number().int().min(0).max(5000), deliveryLoads: z.number().int().min(0).max(50),
+  wasteDone: z.enum(['left', 'hauled', 'bundled']), quartersawnLogIds: logIds, addedLogIds: logIds, draggedLogIds: logIds,
+  rainReturns: z.number().int().min(0).max(10), setUpsAgreedAgain: z.number().int().min(0).max(10),
+});
+
+export const tallyEntry = z.discriminatedUnion('kind', [board, hit, cull, clock, remove, extras]);
+export type TallyEntry = z.infer<typeof tallyEntry>;
+
+/** What a phone or page sends: entries in the order they were made. */
+export const tallyEntriesBody = z.strictObject({ entries: z.array(tallyEntry).min(1).max(500) });
+
+export const signForm = z.object({
+  sha256: z.string().regex(/^[0-9a-f]{64}$/),
+  name: z.string().trim().min(1, 'Write your name as your signature.').max(120),
+  agreed: z.literal('yes', { error: 'Tick that you have read the tally.' }),
+});
+
+const asList = (value: unknown): unknown => (value === undefined ? [] : Array.isArray(value) ? value : [value]);
+/** Queried lines as `board:ID`, with one sentence for each under the same position. */
+export const queryForm = z.object({
+  lines: z.preprocess(asList, z.array(z.string().regex(/^(board|hit|cull|clock|extras)(:[0-9a-f-]{36})?$/)).min(1, 'Choose the lines you query.').max(200)),
+  says: z.string().trim().min(1, 'Say what is wrong with these lines.').max(1000),
+});
+export const answerForm = z.object({ query: z.uuid(), answer: z.string().trim().min(1, 'Write an answer.').max(1000) });

@@ -1,0 +1,53 @@
+import type { BookingState } from '~/domain/states/booking.ts';
+import type { ClockActivity } from '~/domain/trade/clock.ts';
+import type { LogToCharge } from '~/domain/trade/log-charge.ts';
+import type { BidTerms } from '~/domain/trade/rate-card.ts';
+import type { TallyExtras } from '~/domain/trade/tally-count.ts';
+
+/** A log as the tally book lists it; the charge figures let the book count by itself, with or without signal. */
+export interface TallyLog extends LogToCharge {
+  readonly label: string;
+  readonly speciesName: string;
+  readonly size: string;
+  readonly wholeFt: number;
+}
+
+export interface TallyBoardView {
+  readonly id: string;
+  readonly logId: string | null;
+  readonly kind: 'board' | 'slab' | 'out-of-size';
+  readonly thicknessIn: number;
+  readonly widthIn: number;
+  readonly secondWidthIn: number | null;
+  readonly lengthFt: number;
+  readonly count: number;
+}
+
+export interface TallyQueryView {
+  readonly id: string;
+  readonly line: string;
+  readonly lineId: string | null;
+  readonly says: string;
+  readonly answer: string | null;
+  readonly decision: { readonly kind: 'stands' | 'struck' | 'count'; readonly count?: number } | null;
+  readonly because: string | null;
+}
+
+/** A booking's tally as its two sides read it. */
+export interface TallyView {
+  readonly booking: number;
+  readonly status: BookingState;
+  readonly revision: number;
+  readonly terms: BidTerms;
+  readonly heldCents: number;
+  readonly feeBasisPoints: number;
+  readonly logs: readonly TallyLog[];
+  readonly cutList: readonly { readonly label: string; readonly thicknessIn: number; readonly widthIn: number; readonly lengthFt: number; readonly count: number }[];
+  readonly boards: readonly TallyBoardView[];
+  readonly hits: readonly { readonly id: string; readonly logId: string | null; readonly outcome: 're-sharpened' | 'destroyed'; readonly note: string }[];
+  readonly culls: readonly { readonly id: string; readonly logId: string | null; readonly reason: string; readonly openingMinutes: number; readonly passes: number }[];
+  readonly clock: readonly { readonly id: string; readonly activity: ClockActivity; readonly startsAt: string; readonly endsAt: string }[];
+  readonly extras: TallyExtras;
+  readonly metalAllowed: number;
+  readonly queries: readonly TallyQueryView[];
+}

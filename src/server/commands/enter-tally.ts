@@ -1,0 +1,108 @@
+import { checkClock } from '~/domain/trade/clock.ts';
+import { mayGoOnAfterMetal } from '~/domain/trade/on-the-day.ts';
+import { metalStops } from '~/emails/tally-letters.ts';
+import { paths } from '~/domain/paths.ts';
+import type { TallyEntry } from '~/schemas/tally-entries.ts';
+import { authorize, rolesOnBooking } from '../authorize.ts';
+import { execute, inTransaction, oneRow } from '../db.ts';
+import { conflict, invalid } from '../errors.ts';
+import { enqueue } from '../jobs/queue.ts';
+import { lockBooking } from '../locks.ts';
+import { type Booking, Log, MetalHit, Tally } from '../models/index.ts';
+import { linkTo, partiesOf } from '../parties.ts';
+import { frozenTerms, type KeptClock } from '../tally-work.ts';
+import { record } from '../transition.ts';
+import type { Viewer } from '../viewer.ts';
+
+/** Writes one entry. Everything is keyed by the id it was made with, so a repeated send changes nothing. */
+async function enter(entry: TallyEntry, tally: Tally, sequence: number, at: Date): Promise<void> {
+  switch (entry.kind) {
+    case 'board':
+      await execute(
+        `INSERT INTO tally_board (id, tally_id, log_id, kind, thickness_in, width_in, second_width_in, length_ft, count, entered_at, sequence)
+         VALUES ($1, $2, $3, $4, $5, $6, $7, $8, $9, $10, $11) ON CONFLICT (id) DO NOTHING`,
+        [entry.id, tally.id, entry.logId, entry.boardKind, entry.thicknessIn, entry.widthIn, entry.secondWidthIn, entry.lengthFt, entry.count, at, sequence],
+      );
+      return;
+    case 'hit':
+      await execute('INSERT INTO metal_hit (id, tally_id, log_id, outcome, note, entered_at) VALUES ($1, $2, $3, $4, $5, $6) ON CONFLICT (id) DO NOTHING', [entry.id, tally.id, entry.logId, entry.outcome, entry.note, at]);
+      return;
+    case 'cull':
+      await execute('INSERT INTO cull_log (id, tally_id, log_id, reason, opening_minutes, passes, entered_at) VALUES ($1, $2, $3, $4, $5, $6, $7) ON CONFLICT (id) DO NOTHING', [entry.id, tally.id, entry.logId, entry.reason, entry.openingMinutes, entry.passes, at]);
+      return;
+    case 'clock': {
+      const { kind: _, ...kept } = entry;
+      const clock = tally.clock as KeptClock[];
+      if (!clock.some(({ id }) => id === entry.id)) tally.clock = [...clock, kept];
+      return;
+    }
+    case 'remove':
+      for (const table of ['tally_board', 'metal_hit', 'cull_log']) await execute(`UPDATE ${table} SET removed_at = $1 WHERE id = $2 AND tally_id = $3 AND removed_at IS NULL`, [at, entry.id, tally.id]);
+      tally.clock = (tally.clock as KeptClock[]).filter(({ id }) => id !== entry.id);
+      return;
+    case 'extras': {
+      const { kind: _, ...extras } = entry;
+      tally.extras = extras;
+    }
+  }
+}
+
+/** Entries may only name logs of this booking's listing. */
+async function refuseStrangeLogs(entries: readonly TallyEntry[], booking: Booking): Promise<void> {
+  const known = new Set((await Log.findAll({ where: { listingId: booking.listingId }, attributes: ['id'] })).map(({ id }) => id));
+  const problems = entries.flatMap((entry, index) => {
+    const named = 'logId' in entry && entry.logId !== null ? [entry.logId] : entry.kind === 'extras' ? [...entry.quartersawnLogIds, ...entry.addedLogIds, ...entry.draggedLogIds] : [];
+    return named.some((id) => !known.has(id)) ? [{ path: `entries.${index}.logId`, message: 'This log is not one of the listing’s.' }] : [];
+  });
+  if (problems.length > 0) throw invalid(problems);
+}
+
+/** After two metal hits sawing stops until the landowner allows more. */
+async function watchMetal(by: Viewer, booking: Booking, tally: Tally, before: number): Promise<void> {
+  const hits = await MetalHit.findAll({ where: { tallyId: tally.id, removedAt: null } });
+  if (hits.length <= before || mayGoOnAfterMetal(hits.length, tally.metalAllowed)) return;
+  const terms = await frozenTerms(booking);
+  const spent = hits.reduce((sum, { outcome }) => sum + (outcome === 'destroyed' ? terms.card.metal.destroyedCents : terms.card.metal.resharpenedCents), 0);
+  const { landowner } = await partiesOf(booking);
+  await enqueue('send-mail', metalStops(landowner, by.name, hits.length, Math.max(0, terms.metalCapCents - spent), linkTo(paths.signTally(booking.number))));
+}
+
+/**
+ * Takes entries into the tally, in the order given: while sawing, or to amend a queried tally.
+ * @throws Refusal `invalid` for strange logs or clock entries that overlap; `conflict` for boards entered while metal has stopped the saw
+ */
+export async function enterTally(by: Viewer, input: { readonly booking: number; readonly entries: readonly TallyEntry[] }, at: Date): Promise<{ readonly revision: number }> {
+  return inTransaction(async () => {
+    const booking = await lockBooking(input.booking);
+    const roles = rolesOnBooking(by, booking);
+    authorize(by, 'booking', booking.status === 'queried' ? 'amendTally' : 'enterTally', roles, booking.status);
+    const tally = await Tally.findOne({ where: { bookingId: booking.id, part: 1 }, lock: true });
+    if (!tally) throw conflict('Go through the check-list and start sawing first.');
+    await refuseStrangeLogs(input.entries, booking);
+
+    const hitsBefore = await MetalHit.count({ where: { tallyId: tally.id, removedAt: null } });
+    const last = await oneRow<{ sequence: number }>('SELECT coalesce(max(sequence), 0)::int AS sequence FROM tally_board WHERE tally_id = $1', [tally.id]);
+    for (const [index, entry] of input.entries.entries()) await enter(entry, tally, (last?.sequence ?? 0) + index + 1, at);
+
+    const checked = checkClock((tally.clock as KeptClock[]).map(({ activity, startsAt, endsAt }) => ({ activity, startsAt: new Date(startsAt), endsAt: new Date(endsAt) })));
+    if (!checked.ok) throw invalid(checked.problems.map(({ path, message }) => ({ path: `clock.${path}`, message })));
+    tally.revision += 1;
+    await tally.save();
+    await booking.update({ updatedAt: at });
+    if (booking.status === 'queried') await record(by, 'amendTally', 'booking', booking.id, at, { data: { entries: input.entries.length } });
+    await watchMetal(by, booking, tally, hitsBefore);
+    return { revision: tally.revision };
+  });
+}
+
+/** The landowner lets the sawyer go on after metal: two hits more. */
+export async function allowMetal(by: Viewer, number: number, at: Date): Promise<void> {
+  await inTransaction(async () => {
+    const booking = await lockBooking(number);
+    authorize(by, 'booking', 'allowMetal', rolesOnBooking(by, booking), booking.status);
+    const tally = await Tally.findOne({ where: { bookingId: booking.id, part: 1 }, lock: true, rejectOnEmpty: true });
+    const hits = await MetalHit.count({ where: { tallyId: tally.id, removedAt: null } });
+    await tally.update({ metalAllowed: hits });
+    await record(by, 'allowMetal', 'booking', booking.id, at, { data: { hits } });
+  });
+}
