@@ -26,9 +26,11 @@ export const paths = {
   payments: '/account/payments',
 
   newListing: '/listings/new',
+  listAgain: (number: number) => `/listings/new?from=${number}`,
   myListings: '/listings',
   listing: (number: number) => `/listings/${number}`,
   editListing: (number: number) => `/listings/${number}/edit`,
+  withdrawListing: (number: number) => `/listings/${number}/withdraw`,
   listingBids: (number: number) => `/listings/${number}/bids`,
   bidOn: (number: number) => `/listings/${number}/bid`,
 
@@ -69,3 +71,6 @@ export const paths = {
 
   photo: (id: string, rendition: string) => `/photos/${id}/${rendition}`,
 } as const;
+
+/** The public number in an address (`1042`); null for anything else, so that a strange address is simply not there. */
+export const numberIn = (text: string | undefined): number | null => (text !== undefined && /^[1-9]\d{0,8}$/.test(text) ? Number(text) : null);

@@ -4,7 +4,7 @@ import {
   barkChoices, machines, metalRisks, overheadLines, reDeckers, sawdustEnds, slabEnds, slopes, treeOwners, trucks, water, waysDown,
   type Access, type Landing, type Option, type Waste,
 } from '~/domain/listing/answers.ts';
-import { isBlankLog, isBlankPiece, MOST_LOGS, MOST_PIECES, type ListingTyped, type LogTyped, type PieceTyped } from '~/domain/listing/draft.ts';
+import { answerNames, isBlankLog, isBlankPiece, MOST_LOGS, MOST_PIECES, type ListingTyped, type LogTyped, type PieceTyped } from '~/domain/listing/draft.ts';
 import { readLogRow, readPieceRow, type LogRead, type PieceRead } from '~/domain/listing/rows.ts';
 import { parseNumber } from '~/domain/measure.ts';
 import { good, refused, type Problem, type Result } from '~/domain/result.ts';
@@ -159,8 +159,16 @@ export function readListing(typed: ListingTyped, today: Day): Result<ListingForm
     closesOn: answers.take('closesOn', readCloses(today)),
   };
   answers.take('directions', text(1_000));
-  return answers.problems.length === 0 ? good(form) : { ok: false, problems: answers.problems };
+  return answers.problems.length === 0 ? good(form) : { ok: false, problems: inFormOrder(answers.problems) };
 }
+
+const order: readonly string[] = answerNames.flatMap((name) => (name === 'measured' ? [name, 'logs'] : name === 'metalNote' ? [name, 'pieces'] : [name]));
+
+/** As the fields stand on the page, so that a list of problems is worked down without jumping. */
+const inFormOrder = (problems: readonly Problem[]): readonly Problem[] => {
+  const place = ({ path }: Problem): number => order.indexOf(path.split('.', 1)[0] ?? '');
+  return [...problems].sort((a, b) => place(a) - place(b));
+};
 
 /** A gate: a bare number is feet when it cannot be inches. */
 function readGate(typed: string): Result<number> {

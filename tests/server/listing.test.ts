@@ -6,6 +6,9 @@ import { publishListing } from '~/server/commands/publish-listing.ts';
 import { reviseListing } from '~/server/commands/revise-listing.ts';
 import { SAVED_ELSEWHERE, saveDraft } from '~/server/commands/save-draft.ts';
 import { withdrawListing } from '~/server/commands/withdraw-listing.ts';
+import { seePlace } from '~/server/commands/see-place.ts';
+import { listingPage } from '~/server/queries/listing-page.ts';
+import { myListings } from '~/server/queries/my-listings.ts';
 import { rows } from '~/server/db.ts';
 import { Refusal } from '~/server/errors.ts';
 import { Account, Bid, Event, Listing, Log, Mill, Piece } from '~/server/models/index.ts';
@@ -222,6 +225,39 @@ describe('withdrawing', () => {
   it('is not for strangers, moderators included', async () => {
     const listing = await openListing(cast.ada);
     for (const who of [cast.dora, cast.mo]) expect(await refusal(withdrawListing(who, { number: listing.number ?? 0, reason: '' }, later))).toMatchObject({ kind: 'forbidden' });
+  });
+});
+
+describe('who reads what', () => {
+  const place = { point: { lat: 43.5561, lng: -90.8884 }, pinned: true, directions: 'Blue gate, second lane on the left.' };
+
+  it('shows the exact place to the owner, and to a moderator only on the record', async () => {
+    const listing = await openListing(cast.ada);
+    const number = listing.number ?? 0;
+    expect((await listingPage(cast.ada, number)).place).toEqual(place);
+    for (const who of [null, cast.bram, cast.dora, cast.mo]) expect((await listingPage(who, number)).place).toBeNull();
+    expect(await Event.count({ where: { thingId: listing.id, action: 'seePlace' } })).toBe(0);
+    expect(await seePlace(cast.mo, number, later)).toEqual(place);
+    expect(await Event.findAll({ where: { thingId: listing.id, action: 'seePlace' }, raw: true })).toMatchObject([{ actorId: cast.mo.id }]);
+    for (const who of [cast.bram, cast.dora]) expect(await refusal(seePlace(who, number, later))).toMatchObject({ kind: 'forbidden' });
+  });
+
+  it('does not show a hidden listing or a draft to others', async () => {
+    const listing = await openListing(cast.ada);
+    const number = listing.number ?? 0;
+    await listing.update({ hiddenAt: later, hiddenReason: 'Not a tree.' });
+    for (const who of [null, cast.bram]) expect(await refusal(listingPage(who, number))).toMatchObject({ kind: 'notFound' });
+    for (const who of [cast.ada, cast.mo]) expect((await listingPage(who, number)).hiddenBecause).toBe('Not a tree.');
+    const draft = await saveDraft(cast.ada, { number: null, typedVersion: null, typed: typedListing() }, at);
+    for (const who of [null, cast.ada, cast.mo]) expect(await refusal(listingPage(who, draft.number))).toMatchObject({ kind: 'notFound' });
+  });
+
+  it('counts the bids, and lists one’s own with those that wait first', async () => {
+    const listing = await openListing(cast.dora);
+    await bidOn(listing, cast.bram);
+    await bidOn(listing, cast.cleo, 'withdrawn');
+    expect(await listingPage(cast.bram, listing.number ?? 0)).toMatchObject({ bids: 1, ownBid: 'open', closesOn: '2026-08-10', isOwner: false });
+    expect((await myListings(cast.dora)).find(({ number }) => number === listing.number)).toMatchObject({ status: 'open', openBids: 1, toConfirm: 0, booking: null, title: 'White oak, 3 logs' });
   });
 });
 

@@ -89,7 +89,7 @@ export const sizings = options(
 
 export const barkChoices = options(
   { value: 'inside', label: 'Wood only, inside the bark', said: 'inside bark' },
-  { value: 'over', label: 'Over the bark', said: 'over bark, the bark taken off by species', hint: 'We take off the usual bark of the species.' },
+  { value: 'over', label: 'Over the bark', said: 'over bark, the bark taken off by species', hint: 'We take off what is usual for the tree.' },
 );
 
 /** The words of a chosen value; the value itself when it is not known. */

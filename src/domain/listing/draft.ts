@@ -27,11 +27,11 @@ export interface PieceTyped {
 }
 
 const answers = [
-  'treeOwner', 'ownerConfirmed', 'howDown', 'cameDownOn', 'sealed', 'measured',
+  'treeOwner', 'howDown', 'ownerConfirmed', 'cameDownOn', 'sealed', 'measured',
   'zip', 'lat', 'lng', 'directions',
-  'truck', 'gateWidth', 'slope', 'lines', 'machine', 'machineNote', 'water', 'helpers',
+  'truck', 'slope', 'lines', 'machine', 'gateWidth', 'machineNote', 'helpers', 'water',
   'pad', 'offDirt', 'parallel', 'rolling', 'reDecks', 'landingNote', 'slabs', 'sawdust',
-  'metal', 'metalNote', 'note', 'closesOn',
+  'metal', 'metalNote', 'closesOn', 'note',
 ] as const;
 
 export type Answer = (typeof answers)[number];
