@@ -1,0 +1,55 @@
+import AxeBuilder from '@axe-core/playwright';
+import { expect, test } from '@playwright/test';
+
+const publicPages = ['/', '/logs?zip=54665&radiusMi=40', '/sawyers?zip=54665', '/how-it-works', '/safety', '/privacy', '/terms', '/no/such/page'];
+
+for (const path of publicPages) {
+  test(`${path} has no fault that axe finds and fits 320 px`, async ({ page }) => {
+    await page.setViewportSize({ width: 320, height: 720 });
+    for (const colorScheme of ['light', 'dark'] as const) {
+      await page.emulateMedia({ colorScheme });
+      await page.goto(path);
+      const { violations } = await new AxeBuilder({ page }).withTags(['wcag2a', 'wcag2aa', 'wcag21aa', 'wcag22aa']).analyze();
+      expect(violations.map(({ id, nodes }) => `${id}: ${nodes[0]?.html ?? ''}`)).toEqual([]);
+    }
+    expect(await page.evaluate(() => document.documentElement.scrollWidth - window.innerWidth)).toBeLessThanOrEqual(0);
+  });
+}
+
+test('a log is scaled as one types', async ({ page }) => {
+  await page.goto('/');
+  await expect(page.getByRole('button', { name: 'Work it out' })).toBeHidden();
+  await page.getByRole('textbox', { name: 'Small end' }).fill('18');
+  // 18 in × 12 ft: International ¼ prints 170, Doyle 147.
+  await expect(page.getByText('170 bf')).toBeVisible();
+  await expect(page.getByText('147 bf')).toBeVisible();
+  await page.getByRole('textbox', { name: 'Small end' }).fill('90');
+  await expect(page.getByText('The small end is between 4 and 60 in.')).toBeVisible();
+});
+
+test.describe('without JavaScript', () => {
+  test.use({ javaScriptEnabled: false });
+
+  test('the estimator and the filters of the list still answer', async ({ page }) => {
+    await page.goto('/');
+    await page.getByRole('textbox', { name: 'Small end' }).fill('18');
+    await page.getByRole('button', { name: 'Work it out' }).click();
+    await expect(page.getByText('170 bf')).toBeVisible();
+
+    await page.goto('/logs');
+    await page.getByLabel('From ZIP').fill('54665');
+    await page.getByLabel('Within').selectOption('40');
+    await page.getByLabel('Species').selectOption('white-oak');
+    await page.getByRole('button', { name: 'Show logs' }).click();
+    await expect(page).toHaveURL(/zip=54665&radiusMi=40&species=white-oak/);
+    await expect(page.getByText('within 40 miles · nearest first')).toBeVisible();
+  });
+
+  test('the menu opens on a phone', async ({ page }) => {
+    await page.setViewportSize({ width: 390, height: 844 });
+    await page.goto('/');
+    await page.getByText('Menu', { exact: true }).click();
+    await page.getByRole('navigation', { name: 'Menu' }).getByRole('link', { name: 'Logs near you' }).click();
+    await expect(page.getByRole('heading', { level: 1, name: 'Logs near you' })).toBeVisible();
+  });
+});
