@@ -2,9 +2,11 @@ import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { boardRect, closedPath, outline, ringRadii, seedOf, type Point } from '~/domain/drawing.ts';
 
-/** Distance of a side from the pith. */
+/** Distance of a side, between its two ends, from the pith. */
 function sideDistance(a: Point, b: Point): number {
-  return Math.abs(a.x * b.y - a.y * b.x) / Math.hypot(b.x - a.x, b.y - a.y);
+  const [dx, dy] = [b.x - a.x, b.y - a.y];
+  const along = Math.min(1, Math.max(0, -(a.x * dx + a.y * dy) / (dx * dx + dy * dy)));
+  return Math.hypot(a.x + along * dx, a.y + along * dy);
 }
 
 describe('the drawing of a log end', () => {
