@@ -3,6 +3,7 @@ import { dryingAnswer, dryingRequest } from './drying.ts';
 import { estimateAnswer, estimateRequest } from './estimate.ts';
 import { draftAnswer, draftRequest } from './listing-draft.ts';
 import { listingsAnswer, listingsQuery } from './listings.ts';
+import { placeAnswer, placeQuery } from './place.ts';
 import { speciesAnswer } from './species.ts';
 import { tallyAnswer, tallyRequest } from './tally.ts';
 import { tallyEntriesBody } from './tally-entries.ts';
@@ -37,5 +38,6 @@ export const operations: readonly Operation[] = [
   { method: 'post', path: '/api/webhooks/payments', summary: "The payment provider's signed messages" },
   { method: 'get', path: '/api/bookings/{number}/tally', summary: 'The tally of a booking, for its two sides', signedIn: true },
   { method: 'put', path: '/api/bookings/{number}/tally', summary: 'Enter boards, hits, cull logs, hours; each once by its id', signedIn: true, body: tallyEntriesBody },
+  { method: 'get', path: '/api/places', summary: 'What a ZIP code is called and where it lies', query: placeQuery, answer: placeAnswer },
   { method: 'post', path: '/api/listings/draft', summary: 'Keep a draft of a listing as it was typed', signedIn: true, body: draftRequest, answer: draftAnswer },
 ];
