@@ -11,7 +11,7 @@ import { listingPage } from '~/server/queries/listing-page.ts';
 import { myListings } from '~/server/queries/my-listings.ts';
 import { rows } from '~/server/db.ts';
 import { Refusal } from '~/server/errors.ts';
-import { Account, Bid, Event, Listing, Log, Mill, Piece } from '~/server/models/index.ts';
+import { Account, Bid, Booking, Event, Listing, Log, Mill, Outing, Piece } from '~/server/models/index.ts';
 import type { Viewer } from '~/server/viewer.ts';
 import { makeCast, makeAccount, viewerFor, type Cast } from '../support/cast.ts';
 import { LISTED_AT, openListing, typedListing, typedLog, typedPiece } from '../support/listings.ts';
@@ -240,6 +240,23 @@ describe('who reads what', () => {
     expect(await seePlace(cast.mo, number, later)).toEqual(place);
     expect(await Event.findAll({ where: { thingId: listing.id, action: 'seePlace' }, raw: true })).toMatchObject([{ actorId: cast.mo.id }]);
     for (const who of [cast.bram, cast.dora]) expect(await refusal(seePlace(who, number, later))).toMatchObject({ kind: 'forbidden' });
+  });
+
+  it('shows it to the chosen sawyer once the money is held, and to no other', async () => {
+    const listing = await openListing(cast.ada);
+    const number = listing.number ?? 0;
+    const bid = await bidOn(listing, cast.bram, 'chosen');
+    await bidOn(listing, cast.cleo, 'declined');
+    const outing = await Outing.create({ sawyerId: cast.bram.id, kind: 'booking', createdAt: at });
+    const booking = await Booking.create({ listingId: listing.id, bidId: bid.id, landownerId: cast.ada.id, sawyerId: cast.bram.id, outingId: outing.id, status: 'agreed', timeZone: 'America/Chicago', startsAt: later, createdAt: at, updatedAt: at });
+    expect(await listingPage(cast.bram, number)).toMatchObject({ place: null, booking: booking.number });
+    for (const status of ['held', 'sawing', 'settled'] as const) {
+      await booking.update({ status });
+      expect((await listingPage(cast.bram, number)).place).toEqual(place);
+      for (const who of [null, cast.cleo, cast.dora, cast.mo]) expect((await listingPage(who, number)).place).toBeNull();
+    }
+    await booking.update({ status: 'cancelled' });
+    expect((await listingPage(cast.bram, number)).place).toBeNull();
   });
 
   it('does not show a hidden listing or a draft to others', async () => {

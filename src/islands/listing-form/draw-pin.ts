@@ -21,6 +21,9 @@ const rings = (at: Point): FeatureCollection<LineString> => ({
   features: RINGS_MI.map((miles) => ({ type: 'Feature', properties: {}, geometry: { type: 'LineString', coordinates: Array.from({ length: 73 }, (_, step) => pointAt(at, miles, step * 5)).map(({ lat, lng }) => [lng, lat]) } })),
 });
 
+/** Only the outer ring is named: the inner ones lie under the pin when one looks from far. */
+const ringName = (at: Point): FeatureCollection => named([{ name: '1 mi', ...pointAt(at, 1, 40) }]);
+
 function pinElement(): HTMLElement {
   const button = document.createElement('button');
   button.type = 'button';
@@ -48,7 +51,7 @@ export async function drawPin(frame: HTMLElement, { at, towns }: { readonly at: 
   const shapes = await loadCounties();
   setWorkerUrl(workerUrl);
   let here: Point = { lat: at.lat, lng: at.lng };
-  const style = () => mapStyle({ ...shapes, towns: named(towns), rings: rings(here), ringNames: named(RINGS_MI.map((miles) => ({ name: `${miles} mi`, ...pointAt(here, miles, 40) }))) });
+  const style = () => mapStyle({ ...shapes, towns: named(towns), rings: rings(here), ringNames: ringName(here) });
   const map = new Map({ container: frame, style: style(), center: [here.lng, here.lat], zoom: 11.5, maxZoom: 15, minZoom: 5, dragRotate: false, pitchWithRotate: false, touchPitch: false, scrollZoom: false, attributionControl: false });
   map.touchZoomRotate.disableRotation();
   map.addControl(new NavigationControl({ showCompass: false }), 'top-right');
@@ -61,7 +64,7 @@ export async function drawPin(frame: HTMLElement, { at, towns }: { readonly at: 
     here = to;
     marker.setLngLat([to.lng, to.lat]);
     map.getSource<GeoJSONSource>('rings')?.setData(rings(to));
-    map.getSource<GeoJSONSource>('ringNames')?.setData(named(RINGS_MI.map((miles) => ({ name: `${miles} mi`, ...pointAt(to, miles, 40) }))));
+    map.getSource<GeoJSONSource>('ringNames')?.setData(ringName(to));
   };
   const byPerson = (to: Point): void => {
     place(to);
