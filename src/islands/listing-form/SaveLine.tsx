@@ -26,7 +26,7 @@ export function SaveLine({ draft, back }: { readonly draft: Draft; readonly back
       {plain(kept) !== '' && <p className="text-ink-soft">{plain(kept)}</p>}
       {kept.kind === 'failed' && (
         <p className="border-l-4 border-amber pl-3">
-          Not saved to your account. {kept.message} What you typed is kept in this browser.
+          {kept.signIn ? 'You were signed out, so this is not saved to your account.' : `Not saved to your account. ${kept.message}`} What you typed is kept in this browser.
           {kept.signIn && <> <a href={`${paths.signIn}?next=${encodeURIComponent(back)}`}>Sign in again</a></>}
         </p>
       )}
