@@ -127,14 +127,14 @@ export async function sawAndSign(booking: Booking, costCents: number, signedBy: 
 }
 
 /** The identities that must hold whatever happened: the ledger against itself, each booking, and the provider's own books. */
-export async function checkBooks(house: MoneyHouse): Promise<string[]> {
+export async function checkBooks(house: MoneyHouse, bookingIds?: readonly string[]): Promise<string[]> {
   const faults: string[] = [];
   const all = await balances();
   const sum = Object.values(all).reduce((total, cents) => total + cents, 0);
   if (sum !== 0) faults.push(`the ledger sums to ${sum}`);
   const theirs = house.fake.control.books();
   if (all['provider balance'] !== theirs.platform.net) faults.push(`provider balance: ours ${all['provider balance']}, theirs ${theirs.platform.net}`);
-  for (const booking of await Booking.findAll()) {
+  for (const booking of await Booking.findAll(bookingIds ? { where: { id: [...bookingIds] } } : {})) {
     const ours = await balances(booking.id);
     const group = theirs.groups[`booking-${booking.number}`] ?? { charged: 0, transferred: 0, refunded: 0, disputedAway: 0, reversed: 0, fees: 0 };
     const owed = -(ours['landowner held'] + ours['sawyer payable'] + ours['refund payable']);
