@@ -22,7 +22,7 @@ import { checkBooks, makeAgreedBooking, makePayoutAccount, openMoneyHouse, sawAn
  */
 const SEQUENCES = Number(process.env['MONEY_SEQUENCES'] ?? 12);
 const FIRST_SEED = Number(process.env['MONEY_SEED'] ?? Math.floor(Math.random() * 1e9));
-const STEPS = 30;
+const STEPS = 36;
 
 /** A small generator of numbers in [0, 1), the same for the same seed (mulberry32, public domain). */
 function generator(seed: number): () => number {
@@ -64,22 +64,25 @@ interface Scene {
 }
 
 const pick = <T>(scene: Scene, list: readonly T[]): T | undefined => list[Math.floor(scene.random() * list.length)];
-const CARDS = ['4242424242424242', '4242424242424242', '4242424242424242', '4000000000000002', '4000000000000259', '4000000000005126', '4000000000007726'];
+const CARDS = [...Array.from({ length: 8 }, () => '4242424242424242'), '4000000000000002', '4000000000000002', '4000000000000259', '4000000000005126', '4000000000007726'];
 const CALLS = ['POST /v1/transfers', 'POST /v1/refunds', 'POST /v1/checkout/sessions', 'GET /v1/checkout/sessions/*', 'POST /v1/checkout/sessions/*/expire', 'GET /v1/disputes/*', 'GET /v1/refunds/*'];
+
+/** A deed that comes twice as often as the others. */
+const twice = <T>(deed: T): T[] => [deed, deed];
 
 const DEEDS: readonly ((scene: Scene, booking: Booking) => Promise<unknown>)[] = [
   async (scene, booking) => void scene.urls.push(await startCheckout(cast.ada, { booking: booking.number }, new Date())),
   async (scene, booking) => void scene.urls.push(await startCheckout(cast.ada, { booking: booking.number, purpose: 'top-up' }, new Date())),
   async (scene, booking) => void scene.urls.push(await startCheckout(cast.ada, { booking: booking.number, purpose: 'increase', amountCents: 5_000 }, new Date())),
   async (scene) => house.fake.control.pay(new URL(pick(scene, scene.urls) ?? 'http://x/none').pathname.split('/').at(-1) ?? '', pick(scene, CARDS)),
-  async (scene) => house.fake.control.pay(new URL(scene.urls.at(-1) ?? 'http://x/none').pathname.split('/').at(-1) ?? ''),
-  async (scene, booking) => cancelBooking(scene.random() < 0.5 ? cast.ada : cast.bram, { booking: booking.number, reason: 'chance' }, new Date()),
-  async (scene, booking) => (scene.random() < 0.3 ? lapseUnpaid(booking.payBy ?? new Date()) : undefined),
-  async (scene, booking) => sawAndSign(booking, 1_000 * Math.ceil(scene.random() * 80), scene.random() < 0.2 ? 'deadline' : 'landowner'),
+  ...twice(async (scene: Scene) => house.fake.control.pay(new URL(scene.urls.at(-1) ?? 'http://x/none').pathname.split('/').at(-1) ?? '')),
+  async (scene, booking) => (scene.random() < 0.85 ? undefined : cancelBooking(scene.random() < 0.5 ? cast.ada : cast.bram, { booking: booking.number, reason: 'chance' }, new Date())),
+  async (scene, booking) => (scene.random() < 0.04 ? lapseUnpaid(booking.payBy ?? new Date()) : undefined),
+  ...twice(async (scene: Scene, booking: Booking) => sawAndSign(booking, 1_000 * Math.ceil(scene.random() * 80), scene.random() < 0.2 ? 'deadline' : 'landowner')),
   async (_scene, booking) => acceptHeld(cast.bram, booking.number, new Date()),
   async (scene) => {
     const charge = pick(scene, house.fake.control.objects('charge').filter(({ status, disputed }) => status === 'succeeded' && !disputed));
-    if (charge && scene.random() < 0.3 && charge.transfer_group !== null) house.fake.control.openDispute(charge.id);
+    if (charge && scene.random() < 0.12 && charge.transfer_group !== null) house.fake.control.openDispute(charge.id);
   },
   async (scene) => {
     const open = pick(scene, house.fake.control.objects('dispute').filter(({ status }) => status === 'needs_response'));
@@ -94,15 +97,15 @@ const DEEDS: readonly ((scene: Scene, booking: Booking) => Promise<unknown>)[] =
   async () => checkOpenCheckouts(new Date(), new Date(Date.now() + 1)),
   async () => reconcile(new Date()),
   // The worker: any message and any call, in any order, several at once.
-  async (scene) => {
+  ...twice(async (scene: Scene) => {
     const events = await rows<{ id: string }>('SELECT id FROM provider_event WHERE handled_at IS NULL');
     await Promise.all(Array.from({ length: 3 }, () => pick(scene, events)).map((event) => (event ? tolerating(() => handleProviderEvent(event.id, new Date())) : undefined)));
-  },
-  async (scene) => {
+  }),
+  ...twice(async (scene: Scene) => {
     const calls = await rows<{ id: string }>(`SELECT id FROM provider_call WHERE status IN ('waiting', 'failed')`);
     const later = new Date(Date.now() + scene.random() * 86_400_000);
     await Promise.all(Array.from({ length: 4 }, () => pick(scene, calls)).map((call) => (call ? tolerating(() => makeProviderCall(call.id, later)) : undefined)));
-  },
+  }),
 ];
 
 /** Lets everything come to rest: no more troubles, lost messages found, stuck calls tried again by the moderator. */
