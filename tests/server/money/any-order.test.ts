@@ -108,6 +108,13 @@ const DEEDS: readonly ((scene: Scene, booking: Booking) => Promise<unknown>)[] =
   }),
 ];
 
+/** Most sequences begin with a landowner who pays: what follows is the interesting part. */
+async function beginToPay(scene: Scene, booking: Booking): Promise<void> {
+  const url = await startCheckout(cast.ada, { booking: booking.number }, new Date());
+  scene.urls.push(url);
+  await tolerating(async () => house.fake.control.pay(new URL(url).pathname.split('/').at(-1) ?? '', pick(scene, CARDS)));
+}
+
 /** Lets everything come to rest: no more troubles, lost messages found, stuck calls tried again by the moderator. */
 async function settleDown(): Promise<void> {
   house.fake.control.clearFaults();
@@ -147,6 +154,7 @@ describe(`money in any order, seeds from ${FIRST_SEED}`, () => {
       const seed = FIRST_SEED + sequence;
       const scene: Scene = { random: generator(seed), urls: [], bookings: await Promise.all([makeAgreedBooking(cast.ada, cast.bram), makeAgreedBooking(cast.ada, cast.bram, { startsAt: new Date(Date.now() + 86_400_000) })]) };
       await makePayoutAccount(house, cast.bram);
+      for (const booking of scene.bookings) if (scene.random() < 0.8) await beginToPay(scene, booking);
       for (let step = 0; step < STEPS; step += 1) {
         // Up to three people act at the same instant.
         const together = Array.from({ length: 1 + Math.floor(scene.random() * 3) }, () => ({ deed: pick(scene, DEEDS), booking: pick(scene, scene.bookings) }));
