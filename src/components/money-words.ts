@@ -38,6 +38,7 @@ function stepLine(step: MoneyStep, money: MoneyOfBooking): MoneyLine {
 function nextLine(money: MoneyOfBooking): MoneyLine | null {
   const ahead = (words: string): MoneyLine => ({ words, at: null, tone: 'ahead' });
   const mine = money.side === 'landowner';
+  if (money.waitsFor === 'moderator') return ahead('A moderator looks at this and writes to you.');
   if (money.waitsFor === 'bank') return ahead('Nothing is paid out until the bank has decided.');
   if (money.waitsFor === 'top-up') {
     const lacking = formatCents(money.settlement?.lackingCents ?? 0);

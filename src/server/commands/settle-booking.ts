@@ -41,6 +41,11 @@ export async function settleBooking(by: Actor, bookingId: string, at: Date): Pro
 /** Promises what is held to its receivers and queues the calls that pay it. The booking and the payment are locked by the caller. */
 export async function payOut(by: Actor, booking: Booking, payment: HeldPayment, parts: Split, cause: 'settlement' | 'cancellation', at: Date): Promise<void> {
   const { transferCents, refundCents, feeCents } = parts;
+  if (transferCents + refundCents + feeCents === 0) {
+    // The bank has given the whole hold back already, after a dispute.
+    await transition(paymentStates, 'refund', payment, by, at, { updatedAt: at });
+    return;
+  }
   await post({
     at, cause, causeId: booking.id, bookingId: booking.id, actorId: by.id,
     sides: [

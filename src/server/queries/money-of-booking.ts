@@ -71,8 +71,9 @@ async function settlementOf(booking: Booking, payment: HeldPayment | null, heldC
   return { whole: signed.settlement, parts: splitNow(signed.settlement, against, feeBasisPoints), lackingCents };
 }
 
-function waitingFor(status: BookingState, disputed: boolean, steps: readonly MoneyStep[], lackingCents: number): MoneyOfBooking['waitsFor'] {
-  if (steps.some(({ state }) => state === 'stuck')) return 'moderator';
+function waitingFor(status: BookingState, disputed: boolean, steps: readonly MoneyStep[], lackingCents: number, lost: boolean): MoneyOfBooking['waitsFor'] {
+  // A hold that the bank gave back after a dispute leaves nothing to pay a signed tally from.
+  if (lost || steps.some(({ state }) => state === 'stuck')) return 'moderator';
   if (disputed) return 'bank';
   if (status === 'signed' && lackingCents > 0) return 'top-up';
   return steps.some(({ state }) => state === 'waits') ? 'payout account' : null;
@@ -111,7 +112,7 @@ export async function moneyOfBooking(viewer: Viewer, number: number): Promise<Mo
     heldCents,
     feeBasisPoints,
     settlement,
-    waitsFor: waitingFor(booking.status, disputed, steps, settlement?.lackingCents ?? 0),
+    waitsFor: waitingFor(booking.status, disputed, steps, settlement?.lackingCents ?? 0, booking.status === 'signed' && payment?.status === 'held' && heldCents === 0),
     steps,
     newestCheckout: newest ? { status: newest.status, purpose: newest.purpose, cents: newest.amountCents, createdAt: newest.createdAt } : null,
     can,

@@ -185,6 +185,16 @@ describe('a card dispute', () => {
     expect(await sawAndSign(booking, 50_000)).toBe('nothing held');
   });
 
+  it('lost while held leaves nothing to send back when the booking is then cancelled', async () => {
+    const booking = await held();
+    house.fake.control.closeDispute(house.fake.control.openDispute(await chargeOf(booking)).id, 'lost');
+    await house.work();
+    await cancel(cast.bram, booking);
+    await house.work();
+    expect(await statusOf(booking)).toEqual(['cancelled', 'refunded']);
+    expect(groupOf(booking)).toMatchObject({ refunded: 0, disputedAway: 60_000 });
+  });
+
   it('lost after paying out is owed by the sawyer, the fee stays our loss', async () => {
     const booking = await held();
     await sawAndSign(booking, 60_000);
