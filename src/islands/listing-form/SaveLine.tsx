@@ -32,8 +32,8 @@ export function SaveLine({ draft, back }: { readonly draft: Draft; readonly back
       )}
       {kept.kind === 'elsewhere' && (
         <div className="border-l-4 border-amber pl-3">
-          <p>This was saved somewhere else since you opened it here. Nothing has been overwritten.</p>
-          <p className="flex flex-wrap gap-x-4"><a className="inline-flex min-h-target items-center" href={back} target="_blank" rel="noreferrer">Look at the other one</a><Button kind="quiet" onClick={draft.keepMine}>Keep what is here</Button></p>
+          <p>This was saved somewhere else since you opened it here, on another device or in another window. Nothing has been overwritten.</p>
+          <p className="flex flex-wrap gap-x-4"><a className="inline-flex min-h-target items-center" href={draft.number === null ? paths.myListings : back} target="_blank" rel="noreferrer">Look at the other one</a><Button kind="quiet" onClick={draft.keepMine}>Keep what is here</Button></p>
         </div>
       )}
     </div>

@@ -8,12 +8,13 @@ export interface LocalDraft {
   readonly at: string;
 }
 
-const key = (number: number | null): string => `skidway:listing:${number ?? 'new'}`;
+/** Under which name this browser keeps a form. */
+export const localKey = (number: number | null): string => `skidway:listing:${number ?? 'new'}`;
 
 /** Keeps the form in this browser. @returns false where the browser keeps nothing (a private window may not). */
 export function keepLocal(number: number | null, draft: Omit<LocalDraft, 'at'>): boolean {
   try {
-    localStorage.setItem(key(number), JSON.stringify({ ...draft, at: new Date().toISOString() }));
+    localStorage.setItem(localKey(number), JSON.stringify({ ...draft, at: new Date().toISOString() }));
     return true;
   } catch {
     return false;
@@ -23,7 +24,7 @@ export function keepLocal(number: number | null, draft: Omit<LocalDraft, 'at'>):
 /** What this browser kept of a form that somebody had begun; null for none. */
 export function readLocal(number: number | null): LocalDraft | null {
   try {
-    const kept: unknown = JSON.parse(localStorage.getItem(key(number)) ?? 'null');
+    const kept: unknown = JSON.parse(localStorage.getItem(localKey(number)) ?? 'null');
     if (typeof kept !== 'object' || kept === null) return null;
     const { typed, typedVersion, at } = kept as Partial<LocalDraft>;
     const form = asListingTyped(typed);
@@ -35,7 +36,7 @@ export function readLocal(number: number | null): LocalDraft | null {
 
 export function forgetLocal(number: number | null): void {
   try {
-    localStorage.removeItem(key(number));
+    localStorage.removeItem(localKey(number));
   } catch {
     // A browser that keeps nothing has nothing to forget.
   }

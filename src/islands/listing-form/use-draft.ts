@@ -2,7 +2,7 @@ import { useCallback, useEffect, useRef, useState } from 'react';
 import { isUntouched, type ListingTyped } from '~/domain/listing/draft.ts';
 import { paths } from '~/domain/paths.ts';
 import type { DraftAnswer, DraftRequest } from '~/schemas/listing-draft.ts';
-import { forgetLocal, keepLocal } from './local-draft.ts';
+import { forgetLocal, keepLocal, localKey } from './local-draft.ts';
 
 /** How it stands with what was typed last. */
 export type Kept =
@@ -75,8 +75,8 @@ export function useDraft(start: Start, read: () => ListingTyped): Draft {
       return;
     }
     now.current.dirty = true;
-    // Trying again by itself helps when the connection or our server failed, not when a person has to decide.
-    now.current.stopped = answered.status !== 0 && answered.status < 500 && answered.status !== 422;
+    // Whoever was signed out or had not confirmed the address may have done so in another window: only what a person has to decide stops.
+    now.current.stopped = answered.status === 409 || answered.status === 404;
     setKept(answered.status === 409 ? { kind: 'elsewhere' } : { kind: 'failed', message: answered.detail, signIn: answered.status === 401 });
   }, [read]);
 
@@ -106,8 +106,22 @@ export function useDraft(start: Start, read: () => ListingTyped): Draft {
     const again = (): void => {
       if (now.current.dirty && toAccount && !now.current.stopped) void run();
     };
+    // A form that was never saved, kept by this browser, has been taken up and saved in another window: saving it here too would
+    // make a second draft of it.
+    const takenUp = (event: StorageEvent): void => {
+      if (event.key !== localKey(null) || event.newValue !== null || now.current.number !== null || !now.current.dirty) return;
+      window.clearTimeout(now.current.timer);
+      Object.assign(now.current, { stopped: true, dirty: false });
+      setKept({ kind: 'elsewhere' });
+    };
+    window.addEventListener('storage', takenUp);
     window.addEventListener('online', again);
-    return () => window.removeEventListener('online', again);
+    window.addEventListener('focus', again);
+    return () => {
+      window.removeEventListener('storage', takenUp);
+      window.removeEventListener('online', again);
+      window.removeEventListener('focus', again);
+    };
   }, [run, toAccount]);
 
   return {

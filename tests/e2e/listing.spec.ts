@@ -1,0 +1,171 @@
+import type { Page } from '@playwright/test';
+import { PASSWORD, readMail } from '../support/browser.ts';
+import { another, expect, expectAccessible, mailbox, test } from './support/check.ts';
+
+const day = (days: number): string => new Date(Date.now() + days * 86_400_000).toISOString().slice(0, 10);
+const field = (page: Page, name: string) => page.locator(`[name="${name}"]`);
+const kept = (page: Page, words: RegExp) => expect(page.getByRole('status').filter({ hasText: words, visible: true })).toBeVisible();
+
+/** Signs up from a page that leads there. */
+async function signUp(page: Page, email: string): Promise<void> {
+  await page.getByLabel('I have logs to be sawn').check();
+  await page.getByLabel('Your name').fill('Lotte Landing');
+  await page.getByLabel('E-mail address').fill(email);
+  await page.getByLabel('Password').fill(PASSWORD);
+  await page.getByLabel('I am 18 or older').check();
+  await page.getByRole('button', { name: 'Open an account' }).click();
+}
+
+/** Confirms the address by the letter's link in a window of its own, which is where a person then goes on. */
+async function confirm(page: Page, email: string): Promise<Page> {
+  const letter = await readMail(mailbox(), email, 'Confirm');
+  const window = await page.context().newPage();
+  await window.goto(letter.links.find((one) => one.includes('/confirm-email/')) ?? '');
+  await window.getByRole('button', { name: 'Confirm this address' }).click();
+  await window.waitForURL((url) => !url.pathname.startsWith('/confirm-email'));
+  return window;
+}
+
+/** Everything that a listing asks for besides its logs. */
+async function fillTheRest(page: Page): Promise<void> {
+  const choices = { treeOwner: 'mine', howDown: 'uprooted', sealed: 'no', truck: 'to-the-logs', slope: 'level', lines: 'near', machine: 'tractor', water: 'yes', reDecks: 'owner', slabs: 'left', sawdust: 'left', metal: 'lawn-tree' };
+  for (const [name, value] of Object.entries(choices)) await page.locator(`[name="${name}"][value="${value}"]`).check();
+  await field(page, 'ownerConfirmed').check();
+  await field(page, 'cameDownOn').fill(day(-6));
+  await field(page, 'zip').fill('54665');
+}
+
+test('a visitor begins, makes an account at publishing, and loses nothing', async ({ page: first }) => {
+  let page = first;
+  const email = 'lotte@e2e.example';
+  await page.goto('/listings/new');
+  await field(page, 'logs.0.species').fill('White oak');
+  await field(page, 'logs.0.smallEnd').fill('16 x 16');
+  await field(page, 'logs.0.length').fill("12' 6\"");
+  // 16 in × 12 ft by the published tables: International ¼ 130, Doyle 108.
+  await expect(page.locator('#logs').getByText('130 bf').first()).toBeVisible();
+  await expect(page.locator('#logs').getByText('108 bf').first()).toBeVisible();
+  await page.getByRole('button', { name: 'Add another log' }).click();
+  await expect(field(page, 'logs.1.smallEnd')).toBeFocused();
+  await expect(field(page, 'logs.1.species')).toHaveValue('White oak');
+  await field(page, 'logs.1.smallEnd').fill('14');
+  await field(page, 'logs.1.largeEnd').fill('12');
+  await field(page, 'logs.1.length').fill('10 ft');
+  await expect(page.getByText('The large end (12 in) is smaller than the small end (14 in).')).toBeVisible();
+  await kept(page, /Kept in this browser/);
+
+  await page.getByRole('button', { name: 'Publish this listing' }).click();
+  await expect(page.getByText('You need an account to save or publish')).toBeVisible();
+  await expect(field(page, 'logs.1.largeEnd')).toHaveValue('12');
+  await page.getByRole('link', { name: 'Make an account' }).click();
+  await signUp(page, email);
+
+  await expect(field(page, 'logs.1.largeEnd')).toHaveValue('12');
+  await kept(page, /Confirm your e-mail address first/);
+  page = await confirm(page, email);
+  await expect(field(page, 'logs.1.largeEnd')).toHaveValue('12');
+  await kept(page, /^Saved \d+:\d\d [ap]m$/);
+  await expect(page).toHaveURL(/\/listings\/\d+\/edit$/);
+  // The window left behind does not make a second draft of the same text.
+  await kept(first, /saved somewhere else/);
+
+  await page.getByRole('button', { name: 'Publish this listing' }).click();
+  await expect(page.getByRole('alert')).toContainText('The large end (12 in) is smaller');
+  await page.getByRole('link', { name: /The large end/ }).click();
+  await expect(field(page, 'logs.1.largeEnd')).toBeFocused();
+  await field(page, 'logs.1.largeEnd').fill('15 1/2');
+  await fillTheRest(page);
+  await expect(page.getByText('Near Viroqua, WI, in Vernon County')).toBeVisible();
+  await expect(page.getByRole('complementary', { name: 'Take care: Overhead lines' })).toBeVisible();
+  await expectAccessible(page);
+  await page.getByRole('button', { name: 'Publish this listing' }).click();
+  await expect(page.getByText('Your listing is on show')).toBeVisible();
+  await expect(page.getByRole('heading', { level: 1 })).toHaveText('White oak, 2 logs');
+  await expectAccessible(page);
+
+  // What this browser had kept is gone: the next listing begins empty.
+  await page.goto('/listings/new');
+  await expect(field(page, 'logs.0.smallEnd')).toHaveValue('');
+});
+
+test('two devices, a lost connection and a lost session never lose a word', async ({ page, browser }) => {
+  const email = 'lars@e2e.example';
+  await page.goto('/sign-up');
+  await signUp(page, email);
+  await (await confirm(page, email)).close();
+  await page.goto('/listings/new');
+  await field(page, 'logs.0.smallEnd').fill('15');
+  await expect(page).toHaveURL(/\/listings\/\d+\/edit$/);
+  const address = page.url();
+
+  const { page: phone, faults } = await another(browser, { phone: true });
+  await phone.goto(`/sign-in?next=${encodeURIComponent(new URL(address).pathname)}`);
+  await phone.getByLabel('E-mail address').fill(email);
+  await phone.getByLabel('Password').fill(PASSWORD);
+  await phone.getByRole('button', { name: 'Sign in' }).click();
+  await expect(field(phone, 'logs.0.smallEnd')).toHaveValue('15');
+  await field(phone, 'note').fill('from the phone');
+  await kept(phone, /^Saved/);
+
+  await field(page, 'note').fill('from the desk');
+  await kept(page, /saved somewhere else/);
+  await page.getByRole('button', { name: 'Keep what is here' }).click();
+  await kept(page, /^Saved/);
+  await phone.reload();
+  await expect(field(phone, 'note')).toHaveValue('from the desk');
+
+  const cookies = await phone.context().cookies();
+  await phone.context().clearCookies();
+  await field(phone, 'note').fill('typed after the session had ended');
+  await kept(phone, /You were signed out/);
+  await phone.context().addCookies(cookies);
+  await phone.goto(address);
+  await expect(field(phone, 'note')).toHaveValue('typed after the session had ended');
+  await kept(phone, /^Saved/);
+
+  await phone.context().setOffline(true);
+  await field(phone, 'note').fill('typed in the woods');
+  await kept(phone, /There is no connection/);
+  await phone.context().setOffline(false);
+  await kept(phone, /^Saved/);
+  await phone.goto('/listings');
+  await phone.goBack();
+  await expect(field(phone, 'note')).toHaveValue('typed in the woods');
+  expect(faults.filter((fault) => !/ERR_INTERNET_DISCONNECTED/.test(fault))).toEqual([]);
+});
+
+test('the pin is moved on the map, by pointer and by keys', async ({ page }) => {
+  await page.goto('/listings/new');
+  await field(page, 'zip').fill('54665');
+  await page.getByRole('button', { name: 'Set it on a map' }).click();
+  const pin = page.getByRole('button', { name: /^The pin/ });
+  await expect(page.getByText('Drag the pin')).toBeVisible();
+  await pin.focus();
+  await page.keyboard.press('Shift+ArrowUp');
+  await expect(field(page, 'lat')).toHaveValue(/^43\.5\d+$/);
+  const before = Number(await field(page, 'lat').inputValue());
+  await page.keyboard.press('ArrowUp');
+  await expect.poll(async () => Number(await field(page, 'lat').inputValue())).toBeGreaterThan(before);
+  const box = await page.locator('.logs-map').boundingBox();
+  if (!box) throw new Error('no map');
+  await page.mouse.click(box.x + box.width * 0.25, box.y + box.height * 0.75);
+  await expect.poll(async () => Number(await field(page, 'lat').inputValue())).toBeLessThan(before);
+});
+
+test.describe('without JavaScript', () => {
+  test.use({ javaScriptEnabled: false });
+  test('rows come and go by buttons, and figures are there after each', async ({ page }) => {
+    await page.goto('/listings/new');
+    await field(page, 'logs.0.species').fill('white oak');
+    await field(page, 'logs.0.smallEnd').fill('16');
+    await field(page, 'logs.0.length').fill('12');
+    await page.getByRole('button', { name: 'Add another log' }).click();
+    await expect(page.locator('#logs').getByText('130 bf').first()).toBeVisible();
+    await field(page, 'logs.1.smallEnd').fill('13 1/4');
+    await page.getByRole('button', { name: 'Remove log 1' }).click();
+    await expect(field(page, 'logs.0.smallEnd')).toHaveValue('13 1/4');
+    await page.getByRole('button', { name: 'Save and go on later' }).click();
+    await expect(page.getByText('You need an account to save or publish')).toBeVisible();
+    await expect(field(page, 'logs.0.smallEnd')).toHaveValue('13 1/4');
+  });
+});
