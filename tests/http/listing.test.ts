@@ -196,3 +196,12 @@ describe('keeping a draft over HTTP', () => {
     }
   });
 });
+
+describe('the place of a ZIP code', () => {
+  test('is said to anybody, and refused for what is none', async () => {
+    const answer = await visitor.get('/api/places?zip=54665');
+    expect(await answer.json()).toMatchObject({ zip: '54665', town: 'Viroqua', county: 'Vernon', state: 'WI', towns: expect.arrayContaining([expect.objectContaining({ name: 'La Crosse' })]) });
+    expect((await visitor.get('/api/places?zip=00000')).status).toBe(404);
+    for (const query of ['', '?zip=abc', '?zip=54665&zip=54666', '?zip=54665&town=x']) expect((await visitor.get(`/api/places${query}`)).status).toBe(422);
+  });
+});
