@@ -42,5 +42,7 @@ export function localEnvironment({ base, databaseUrl, dataFolder }) {
     MAIL_FROM: 'Skidway <post@skidway.example>',
     FEE_BASIS_POINTS: '500',
     LOG_LEVEL: 'warn',
+    // The storage client is pinned to the last line that runs on Node 20; it would say so at every start.
+    AWS_SDK_JS_NODE_VERSION_SUPPORT_WARNING_DISABLED: 'true',
   };
 }

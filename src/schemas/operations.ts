@@ -4,6 +4,7 @@ import { estimateAnswer, estimateRequest } from './estimate.ts';
 import { draftAnswer, draftRequest } from './listing-draft.ts';
 import { listingsAnswer, listingsQuery } from './listings.ts';
 import { placeAnswer, placeQuery } from './place.ts';
+import { beginPhotoAnswerSchema, beginPhotoSchema, changePhotoSchema, listPhotosSchema, orderPhotosSchema, photosAnswerSchema, photoViewSchema } from './photo.ts';
 import { speciesAnswer } from './species.ts';
 import { tallyAnswer, tallyRequest } from './tally.ts';
 import { tallyEntriesBody } from './tally-entries.ts';
@@ -35,6 +36,12 @@ export const operations: readonly Operation[] = [
   { method: 'post', path: '/api/tree-volume', summary: 'Board feet in a standing tree, form class 78', body: treeVolumeRequest, answer: treeVolumeAnswer },
   { method: 'post', path: '/api/drying', summary: 'What a board comes to in the air it dries in', body: dryingRequest, answer: dryingAnswer },
   { method: 'get', path: '/api/listings', summary: 'Open listings by distance, a page at a time', query: listingsQuery, answer: listingsAnswer },
+  { method: 'get', path: '/api/photos', summary: "A listing's photographs for its owner, unfinished and refused ones included", signedIn: true, query: listPhotosSchema, answer: photosAnswerSchema },
+  { method: 'post', path: '/api/photos', summary: 'Begin an upload: a photograph and the form to send its file with', signedIn: true, body: beginPhotoSchema, answer: beginPhotoAnswerSchema },
+  { method: 'put', path: '/api/photos/order', summary: "Put a listing's photographs in order", signedIn: true, body: orderPhotosSchema, answer: photosAnswerSchema },
+  { method: 'patch', path: '/api/photos/{id}', summary: "Change a photograph's caption or which log it shows", signedIn: true, body: changePhotoSchema, answer: photoViewSchema },
+  { method: 'delete', path: '/api/photos/{id}', summary: 'Take a photograph off its listing', signedIn: true },
+  { method: 'post', path: '/api/photos/{id}/arrived', summary: 'Say that the file is in storage; it is checked next', signedIn: true, answer: photoViewSchema },
   { method: 'post', path: '/api/webhooks/payments', summary: "The payment provider's signed messages" },
   { method: 'get', path: '/api/bookings/{number}/tally', summary: 'The tally of a booking, for its two sides', signedIn: true },
   { method: 'put', path: '/api/bookings/{number}/tally', summary: 'Enter boards, hits, cull logs, hours; each once by its id', signedIn: true, body: tallyEntriesBody },

@@ -39,3 +39,7 @@ export const photoViewSchema = z.object({
 export const photosAnswerSchema = z.object({ photos: z.array(photoViewSchema) });
 /** The form to send the file with: every field first, then the file as `file`. */
 export const beginPhotoAnswerSchema = z.object({ photo: photoViewSchema, upload: z.object({ url: z.string(), fields: z.record(z.string(), z.string()) }) });
+
+const NO_PHOTO = '00000000-0000-0000-0000-000000000000';
+/** An id from an address. What is not an id becomes one that no photograph has, so that both are simply not found. */
+export const photoId = (text: string | undefined): string => (id.safeParse(text).success ? (text ?? NO_PHOTO) : NO_PHOTO);

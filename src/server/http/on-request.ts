@@ -29,7 +29,8 @@ export async function onRequest(context: APIContext, next: MiddlewareNext): Prom
   if (!cookieless.test(context.routePattern)) {
     const { viewer, renew } = await viewerOf(context.cookies.get(sessionCookieName)?.value);
     context.locals.viewer = viewer;
-    if (renew) context.cookies.set(renew.name, renew.value, renew.attributes);
+    // A photograph may be kept by any cache for everyone: one person's cookie must not be kept with it.
+    if (renew && !context.routePattern.startsWith('/photos/')) context.cookies.set(renew.name, renew.value, renew.attributes);
   }
 
   try {

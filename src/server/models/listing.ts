@@ -1,3 +1,4 @@
+import type { PhotoStatus } from '~/domain/photo.ts';
 import type { ListingState } from '~/domain/states/listing.ts';
 import { day, filled, id, identity, instant, json, nullable, point, real, ref, table, text, texts, whole, yes, type Row } from './table.ts';
 
@@ -81,8 +82,6 @@ export const Piece = table('piece', {
 });
 export type Piece = Row<typeof Piece>;
 
-export type PhotoStatus = 'awaiting' | 'checking' | 'ready' | 'refused';
-
 export const Photo = table('photo', {
   id: id(),
   listingId: ref(),
@@ -101,5 +100,6 @@ export const Photo = table('photo', {
   createdAt: instant(),
   readyAt: nullable(instant()),
   removedAt: nullable(instant()),
+  filesRemovedAt: nullable(instant()),
 });
 export type Photo = Row<typeof Photo>;

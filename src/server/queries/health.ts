@@ -1,6 +1,7 @@
 import { rows } from '../db.ts';
 import { env } from '../env.ts';
 import { mailAnswers } from '../services/mail.ts';
+import { storageAnswers } from '../services/storage.ts';
 
 export interface Health {
   readonly ok: boolean;
@@ -25,7 +26,7 @@ const answersHttp = async (url: string): Promise<boolean> => (await fetch(url, {
 export async function health(): Promise<Health> {
   const [database, storage, payments, mail] = await Promise.all([
     within(2000, rows('SELECT 1 AS one').then((found) => found.length === 1)),
-    within(2000, answersHttp(env().STORAGE_ENDPOINT)),
+    within(2000, storageAnswers()),
     within(2000, answersHttp(`${env().PAYMENTS_URL}/v1/balance`)),
     within(2000, mailAnswers()),
   ]);

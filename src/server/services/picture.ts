@@ -108,7 +108,7 @@ export async function renderPicture(bytes: Buffer): Promise<Rendered> {
       const fitted = fitWithin(width, height, renditionEdges[size]);
       const sized = base().resize(fitted.width, fitted.height, { fit: 'fill' });
       renditions.push({ size, format: 'webp', bytes: await sized.clone().webp({ quality: 78 }).toBuffer() });
-      renditions.push({ size, format: 'jpg', bytes: await sized.clone().jpeg({ quality: 80, mozjpeg: true }).toBuffer() });
+      renditions.push({ size, format: 'jpg', bytes: await sized.clone().jpeg({ quality: 80, progressive: true }).toBuffer() });
     }
     const tiny = await base().resize(20, 20, { fit: 'inside' }).webp({ quality: 40 }).toBuffer();
     return { width, height, blur: `data:image/webp;base64,${tiny.toString('base64')}`, renditions };

@@ -3,11 +3,13 @@ import { handleProviderEvent } from '../../commands/handle-provider-event.ts';
 import { makeProviderCall } from '../../commands/make-provider-call.ts';
 import type { Jobs } from '../jobs.ts';
 import { sendMail } from '../../services/mail.ts';
+import { processPhoto } from './process-photo.ts';
 import { sweep } from './sweep.ts';
 
 /** What the worker does with each kind of job. A handler may run twice and must then change nothing twice. */
 export const handlers: { readonly [Name in keyof Jobs]?: (payload: Jobs[Name]) => Promise<void> } = {
   'send-mail': sendMail,
+  'process-photo': processPhoto,
   'make-provider-call': async ({ callId }) => makeProviderCall(callId, now()),
   'handle-provider-event': async ({ eventId }) => handleProviderEvent(eventId, now()),
   sweep: async () => sweep(),

@@ -2,6 +2,7 @@ import { now } from '../../clock.ts';
 import { closeToBids, lapseListings } from '../../commands/close-listings.ts';
 import { log } from '../../log.ts';
 import { moneySweeps } from './money-sweeps.ts';
+import { photoSweeps } from './photo-sweeps.ts';
 import { sweepTallies } from './sweep-tallies.ts';
 
 /** A sweep moves every stored deadline that has passed; it takes the time, finds its own rows, and may run as often as one likes. */
@@ -12,6 +13,7 @@ export const sweeps: Readonly<Record<string, Sweep>> = {
   'close to bids': closeToBids,
   'lapse listings': lapseListings,
   ...moneySweeps,
+  ...photoSweeps,
   'sign or recall tallies': sweepTallies,
 };
 
