@@ -9,3 +9,6 @@ export function placeForZip(zip: string): PlaceAnswer {
   const { point, town, county, state } = place;
   return { zip: place.zip, town, county, state, ...point, towns: townsNear(point, 25, 12).map((near) => ({ name: near.name, ...near.point })) };
 }
+
+/** Where a ZIP code lies, for pages that only need the point. */
+export { pointOfZip } from '../services/places.ts';
