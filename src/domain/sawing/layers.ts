@@ -1,0 +1,181 @@
+import { blockedHalfWidth, type Stock, type ThicknessGroup } from './pieces.ts';
+import { bestRow, centred, type RowBoard } from './row.ts';
+import { halfChord, type Units } from './units.ts';
+
+/**
+ * Layers of boards stacked away from the pith. A layer lies at `at … at + thickness` along the stack; what it is worth depends
+ * only on how far its outer edge (`far`) and its inner edge (`near`) are from the pith.
+ */
+export interface RowRule {
+  /** The row's value, its boards too when `boards` is given. Never rises with `far`, never falls with `near`. */
+  readonly value: (group: ThicknessGroup, far: Units, near: Units, boards?: RowBoard[]) => number;
+}
+
+const low: number[] = [];
+const high: number[] = [];
+
+/** Half of the gap that the heart leaves in a row whose nearest edge is `near` from the pith; 0 when the row passes clear. */
+export const heartGap = (stock: Stock, near: Units): Units => (near >= stock.heart ? 0 : Math.ceil(Math.sqrt(stock.heart ** 2 - near ** 2) - 1e-7));
+
+/** Rows right across the log between `left` and `right`, on both sides of the heart when there is one to box out. */
+export function acrossLog(stock: Stock, left = -Infinity, right = Infinity): RowRule {
+  const part = (group: ThicknessGroup, far: Units, from: Units, to: Units, boards?: RowBoard[]): number => {
+    stock.radiusSquared.forEach((radius, index) => {
+      const half = halfChord(radius, far);
+      low[index] = half < 0 ? 0 : Math.max(-half, from);
+      high[index] = half < 0 ? -1 : Math.min(half, to);
+    });
+    if (!boards) return bestRow(group, low, high, stock.kerf);
+    const row: RowBoard[] = [];
+    const value = bestRow(group, low, high, stock.kerf, row);
+    boards.push(...centred(row, high));
+    return value;
+  };
+  return {
+    value: (group, far, near, boards) => {
+      const gap = heartGap(stock, near);
+      if (gap === 0) return part(group, far, left, right, boards);
+      if (left === -right && !boards) return 2 * part(group, far, gap, right);
+      return part(group, far, left, -gap, boards) + part(group, far, gap, right, boards);
+    },
+  };
+}
+
+/** For one thickness: the value of a layer at each place from `first` on (the places below mirror them). */
+interface LayerTable {
+  readonly group: ThicknessGroup;
+  readonly first: Units;
+  readonly values: Float64Array;
+}
+
+function layerTable(stock: Stock, group: ThicknessGroup, rule: RowRule): LayerTable {
+  const t = group.thickness;
+  const first = Math.ceil(-t / 2);
+  const size = Math.max(0, stock.reach - t - first + 1);
+  const values = new Float64Array(size);
+  const clear = Math.ceil(stock.heart);
+  const worth = (far: Units, near: Units): number => rule.value(group, far, near);
+  const nearOf = (at: Units): Units => Math.max(0, at);
+  // Between two places whose best and worst cases agree, every place between has the same value.
+  const fill = (from: Units, to: Units): void => {
+    const best = worth(from + t, nearOf(to));
+    const worst = from === to && from >= 0 ? best : worth(to + t, nearOf(from));
+    if (best - worst < 1e-9) values.fill(worst, from - first, to - first + 1);
+    else if (to - from > 0) {
+      const middle = Math.floor((from + to) / 2);
+      fill(from, middle);
+      fill(middle + 1, to);
+    }
+  };
+  // Clear of the heart the value only falls: the ends of a stretch are enough, and shared.
+  const fall = (from: Units, atFrom: number, to: Units, atTo: number): void => {
+    if (atFrom - atTo < 1e-9) values.fill(atTo, from - first, to - first + 1);
+    else if (to - from <= 1) {
+      values[from - first] = atFrom;
+      values[to - first] = atTo;
+    } else {
+      const middle = Math.floor((from + to) / 2);
+      const between = worth(middle + t, nearOf(middle));
+      fall(from, atFrom, middle, between);
+      fall(middle, between, to, atTo);
+    }
+  };
+  const last = first + size - 1;
+  const split = clear > 0 ? Math.min(clear, last + 1) : first;
+  if (split > first) fill(first, split - 1);
+  if (split <= last) fall(split, worth(split + t, nearOf(split)), last, worth(last + t, nearOf(last)));
+  return { group, first, values };
+}
+
+/** A layer of a plan. */
+export interface Layer {
+  readonly group: ThicknessGroup;
+  readonly at: Units;
+}
+
+/** How far a layer's outer and inner edges are from the pith. */
+export function distances({ group, at }: Layer): { readonly far: Units; readonly near: Units } {
+  const top = at + group.thickness;
+  return { far: Math.max(Math.abs(at), Math.abs(top)), near: at <= 0 && top >= 0 ? 0 : Math.min(Math.abs(at), Math.abs(top)) };
+}
+
+/** The same layers on the other side of the pith. */
+export const mirrored = (layers: readonly Layer[]): Layer[] => layers.map(({ group, at }) => ({ group, at: -at - group.thickness }));
+
+/** The best stacks of layers above every height. */
+export interface Stack {
+  /** Best value of layers that begin at `from` or above (`from` in units from the pith; any number). */
+  readonly above: (from: Units) => number;
+  /** The layers of such a stack, lowest first. */
+  readonly layers: (from: Units) => Layer[];
+}
+
+/**
+ * Best stacks by dynamic programming over every unit of height: exact, gaps allowed.
+ * Layers whose two cuts would be wider than the mill cuts (`blocked`) are left out.
+ */
+export function stackOf(stock: Stock, rule: RowRule, blocked: Units = blockedHalfWidth(stock)): Stack {
+  const { reach, kerf } = stock;
+  const tables = stock.groups.map((group) => layerTable(stock, group, rule));
+  const best = new Float64Array(2 * reach + 2);
+  const choice = new Int8Array(2 * reach + 2).fill(-1);
+  const passes = (bottom: Units, top: Units): boolean => blocked === 0 || bottom >= blocked || top <= -blocked;
+  const worthAt = ({ group, first, values }: LayerTable, at: Units): number => {
+    const t = group.thickness;
+    if (blocked > 0 && !(passes(at - kerf, at) && passes(at + t, at + t + kerf))) return 0;
+    return values[at >= first ? at - first : -at - t - first] ?? 0;
+  };
+  for (let at = reach; at >= -reach; at--) {
+    let most = best[at + reach + 1] as number;
+    for (let index = 0; index < tables.length; index++) {
+      const table = tables[index] as LayerTable;
+      const worth = worthAt(table, at);
+      if (worth <= 0) continue;
+      const next = at + table.group.thickness + kerf;
+      const sum = worth + (next > reach ? 0 : (best[next + reach] as number));
+      if (sum > most + 1e-9) {
+        most = sum;
+        choice[at + reach] = index;
+      }
+    }
+    best[at + reach] = most;
+  }
+  const above = (from: Units): number => (from > reach ? 0 : (best[Math.max(0, Math.ceil(from) + reach)] as number));
+  const takeAt = (at: Units, target: number): LayerTable | undefined =>
+    tables.find((table) => {
+      const worth = worthAt(table, at);
+      return worth > 0 && worth + above(at + table.group.thickness + kerf) >= target - 1e-7;
+    });
+  const layers = (from: Units): Layer[] => {
+    const found: Layer[] = [];
+    let at = Math.max(-reach, Math.ceil(from));
+    let target = above(at);
+    while (at <= reach && target > 1e-7) {
+      const table = takeAt(at, target);
+      if (!table) {
+        at++;
+        continue;
+      }
+      found.push({ group: table.group, at });
+      at += table.group.thickness + kerf;
+      target = above(at);
+    }
+    return found;
+  };
+  return { above, layers };
+}
+
+/** Moves a whole stack to the middle of its play, so that what is left over is shared by the slabs on both sides. */
+export function centredStack(stock: Stock, rule: RowRule, layers: readonly Layer[]): readonly Layer[] {
+  if (stock.heart > 0 || blockedHalfWidth(stock) > 0 || layers.length === 0) return layers;
+  const worth = ({ group, at }: Layer): number => rule.value(group, distances({ group, at }).far, 0);
+  const values = layers.map(worth);
+  const holds = (shift: Units): boolean => layers.every((layer, index) => worth({ ...layer, at: layer.at + shift }) >= (values[index] as number) - 1e-9);
+  const play = (direction: 1 | -1): Units => {
+    let good = 0;
+    for (let step = stock.reach; step >= 1; step = Math.floor(step / 2)) if (holds(direction * (good + step))) good += step;
+    return good;
+  };
+  const shift = Math.floor((play(1) - play(-1)) / 2);
+  return holds(shift) ? layers.map((layer) => ({ ...layer, at: layer.at + shift })) : layers;
+}
