@@ -37,7 +37,7 @@ const SIDE_STEP = UNITS_PER_IN / 8;
 /** Prepares the search of one stock's bands. */
 export function bandWorks(stock: Stock): BandWorks {
   const { kerf, reach, groups } = stock;
-  const heart = Math.ceil(stock.heart);
+  const heart = stock.heart > 0 ? Math.max(Math.ceil(stock.heart), Math.ceil(kerf / 2)) : 0;
   const widestCut = stock.mill.widestCutIn === undefined ? Infinity : unitsDown(stock.mill.widestCutIn);
   const leastRadius = stock.radiusSquared.reduce((least, each) => Math.min(least, each), Infinity);
   const columns = new OutwardStacks(stock);

@@ -13,13 +13,19 @@ export interface Frontier {
 export function fillings(items: readonly { readonly size: Units; readonly value: number }[], kerf: Units, longest: Units): Frontier {
   const useful = items.filter((item) => item.size <= longest && item.value > 0);
   const best = new Map<Units, number>();
-  const queue: Units[] = [];
+  const queue: Units[] = []; // sizes reached, rising; those before `next` are done
+  let next = 0;
   const offer = (size: Units, value: number): void => {
     const known = best.get(size);
     if (known === undefined) {
-      let slot = queue.length;
-      while (slot > 0 && (queue[slot - 1] as Units) > size) slot--;
-      queue.splice(slot, 0, size);
+      let low = next;
+      let high = queue.length;
+      while (low < high) {
+        const middle = (low + high) >> 1;
+        if ((queue[middle] as Units) > size) high = middle;
+        else low = middle + 1;
+      }
+      queue.splice(low, 0, size);
     }
     if (known === undefined || value > known) best.set(size, value);
   };
@@ -27,7 +33,8 @@ export function fillings(items: readonly { readonly size: Units; readonly value:
   const sizes: Units[] = [];
   const values: number[] = [];
   let most = 0;
-  for (let size = queue.shift(); size !== undefined; size = queue.shift()) {
+  while (next < queue.length) {
+    const size = queue[next++] as Units;
     const value = best.get(size) as number;
     if (value <= most + 1e-9) continue;
     most = value;

@@ -14,8 +14,9 @@ export interface RowRule {
 const low: number[] = [];
 const high: number[] = [];
 
-/** Half of the gap that the heart leaves in a row whose nearest edge is `near` from the pith; 0 when the row passes clear. */
-export const heartGap = (stock: Stock, near: Units): Units => (near >= stock.heart ? 0 : Math.ceil(Math.sqrt(stock.heart ** 2 - near ** 2) - 1e-7));
+/** Half of the gap that the heart (and at least a kerf) leaves in a row whose nearest edge is `near` from the pith; 0 when the row passes clear. */
+export const heartGap = (stock: Stock, near: Units): Units =>
+  near >= stock.heart ? 0 : Math.max(Math.ceil(stock.kerf / 2), Math.ceil(Math.sqrt(stock.heart ** 2 - near ** 2) - 1e-7));
 
 /** Rows right across the log between `left` and `right`, on both sides of the heart when there is one to box out. */
 export function acrossLog(stock: Stock, left = -Infinity, right = Infinity): RowRule {

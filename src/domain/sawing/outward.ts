@@ -15,6 +15,9 @@ export interface Limits {
   readonly above: Units;
 }
 
+/** Where boards may have many lengths, a column is first planned with about so many of them; its rows are then filled with all. */
+const LENGTHS_TRIED = 4;
+
 /**
  * Stacks of layers outward from the pith, as a step function: from `places[i]` or nearer outward, the best stack is worth
  * `values[i]`. Rows hold boards of one length each, so the answer is exact when every thickness has one length.
@@ -34,8 +37,10 @@ export class OutwardStacks {
 
   constructor(private readonly stock: Stock) {
     const { groups, kerf, reach } = stock;
+    const step = Math.max(1, Math.ceil(stock.lengthsFt.length / LENGTHS_TRIED));
     this.rows = groups.map((group) =>
       stock.radiusSquared.flatMap((radiusSquared, length) => {
+        if (!stock.oneLength && length % step !== 0) return [];
         const items = group.widths.flatMap(({ width, choices }) => choices.filter((choice) => choice.length === length).map((choice) => ({ size: width, value: choice.value })));
         const { sizes, values } = fillings(items, kerf, 2 * reach);
         return sizes.map((size, index) => ({ size, value: values[index] as number, radiusSquared }));

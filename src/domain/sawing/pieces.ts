@@ -156,6 +156,20 @@ export function stockOf(log: LogShape, mill: Mill, pieces: readonly Piece[], wan
   };
 }
 
+/** How much work a stock is: boards to choose from times the log's radius in inches. Six fixed sizes in a 30-inch log are about 100. */
+export const workOf = (stock: Stock): number =>
+  stock.groups.reduce((sum, group) => sum + group.widths.reduce((count, width) => count + width.choices.length, 0), 0) * (stock.reach / UNITS_PER_IN);
+
+/**
+ * The same pieces with fewer of the free lengths: every second, third … foot down from the longest, so that the work stays within
+ * `most`. Pieces with a length of their own stay as they are.
+ */
+export function withFewerLengths(pieces: readonly Piece[], logFt: number, work: number, most: number): readonly Piece[] {
+  const step = Math.ceil(work / most);
+  if (step <= 1) return pieces;
+  return pieces.map((piece) => (piece.lengthFt === undefined ? { ...piece, lengthsFt: lengthsOf(piece, logFt).filter((_, index) => index % step === 0) } : piece));
+}
+
 /** Distance from the pith within which a cut's chord would be wider than the mill's widest cut; 0 when any cut passes. */
 export function blockedHalfWidth(stock: Stock): Units {
   const widest = stock.mill.widestCutIn;

@@ -6,8 +6,9 @@ import { type Cut, cutsOf } from './cuts.ts';
 import { flatStack, livePlan } from './live.ts';
 import type { LogShape } from './log-shape.ts';
 import type { Stack } from './layers.ts';
-import { type Mill, type Piece, type Stock, stockOf } from './pieces.ts';
+import { type Mill, type Piece, type Stock, stockOf, withFewerLengths, workOf } from './pieces.ts';
 import { quartersawnPlan } from './quartersawn.ts';
+import { inches } from './units.ts';
 
 export type Pattern = 'live' | 'cant' | 'quartersawn';
 export const PATTERNS: readonly Pattern[] = ['live', 'cant', 'quartersawn'];
@@ -53,13 +54,20 @@ export class Planner {
     this.flats ??= flatStack(stock);
     const live = this.flats.above(-stock.reach);
     if (pattern === 'live') return { boards: livePlan(stock, this.flats), bound: live };
-    const { boards, bound } = cantPlan(stock, this.flats, live, this.effort);
     const most = areaBound(stock);
-    return { boards: boards.length > 0 ? boards : livePlan(stock, this.flats), bound: stock.oneLength ? Math.min(bound, most) : most };
+    // Very many thicknesses in a very large log: the live plan stands, under a bound that covers every cant too.
+    if (stock.groups.length * inches(stock.reach) > MOST_CANT_WORK) return { boards: livePlan(stock, this.flats), bound: most };
+    const { boards, bound } = cantPlan(stock, this.flats, live, this.effort);
+    return { boards: boards.length > 0 ? boards : livePlan(stock, this.flats), bound: stock.oneLength ? Math.min(bound, most) : Math.max(live, most) };
   }
 }
 
 const COUNT_ROUNDS = 14;
+/** Work (see `workOf`) up to which the search is at its full length, and the most that is taken on. */
+const ORDINARY_WORK = 2000;
+const MOST_WORK = 30_000;
+/** Thicknesses times radius in inches beyond which no cant is searched. */
+const MOST_CANT_WORK = 320;
 
 /** Why nothing can be cut, or null when it is worth planning. */
 function hindrance({ log, mill, pieces }: SawPlanRequest): string | null {
@@ -88,26 +96,33 @@ export function sawPlan(request: SawPlanRequest): SawPlan {
   const { log, mill, pieces, pattern, waneAllowanceIn = 0, effort = THOROUGH } = request;
   const hindered = hindrance(request);
   if (hindered !== null) return empty(pattern, hindered);
-  const whole = stockOf(log, mill, pieces, waneAllowanceIn);
+  const full = stockOf(log, mill, pieces, waneAllowanceIn);
+  const work = workOf(full);
+  const fewer = withFewerLengths(pieces, log.lengthFt, work, MOST_WORK);
+  const whole = fewer === pieces ? full : stockOf(log, mill, fewer, waneAllowanceIn);
+  const share = Math.max(0.05, Math.min(1, ORDINARY_WORK / workOf(whole)));
   const planners = new Map<Stock, Planner>();
   const plannerOf = (stock: Stock): Planner => {
-    const planner = planners.get(stock) ?? new Planner(stock, effort);
+    const planner = planners.get(stock) ?? new Planner(stock, Math.ceil(effort * share));
     planners.set(stock, planner);
     return planner;
   };
+  const rounds = Math.max(3, Math.ceil(COUNT_ROUNDS * share));
   const tried = (pattern === 'best' ? PATTERNS : [pattern]).map((each) => ({
     pattern: each,
-    ...withCounts(whole, waneAllowanceIn, (stock) => plannerOf(stock).solve(each), COUNT_ROUNDS),
+    ...withCounts(whole, waneAllowanceIn, (stock) => plannerOf(stock).solve(each), rounds),
   }));
   const won = tried.reduce((best, each) => (totalValue(each.boards, pieces) > totalValue(best.boards, pieces) + 1e-9 ? each : best));
   if (won.boards.length === 0) return { ...empty(pattern, nothingFits(request)), upperBoundValue: Math.max(0, ...tried.map((each) => each.bound)) };
   const value = totalValue(won.boards, pieces);
+  // With fewer lengths the patterns' own bounds would leave plans out.
+  const bound = fewer === pieces ? Math.max(...tried.map((each) => each.bound)) : areaBound(full);
   return {
     pattern: won.pattern,
     boards: won.boards,
     boardFeet: totalBoardFeet(won.boards),
     value,
-    upperBoundValue: Math.max(value, ...tried.map((each) => each.bound)),
+    upperBoundValue: Math.max(value, bound),
     boundCovers: BOUND_COVERS[pattern],
     cuts: cutsOf(log, mill.kerfIn, won.boards, won.pattern === 'quartersawn'),
   };
