@@ -6,6 +6,7 @@ import { listingsAnswer, listingsQuery } from './listings.ts';
 import { placeAnswer, placeQuery } from './place.ts';
 import { beginPhotoAnswerSchema, beginPhotoSchema, changePhotoSchema, listPhotosSchema, orderPhotosSchema, photosAnswerSchema, photoViewSchema } from './photo.ts';
 import { speciesAnswer } from './species.ts';
+import { sawPlanAnswer, sawPlanRequest } from './saw-plan.ts';
 import { tallyAnswer, tallyRequest } from './tally.ts';
 import { tallyEntriesBody } from './tally-entries.ts';
 import { treeVolumeAnswer, treeVolumeRequest } from './tree-volume.ts';
@@ -35,6 +36,7 @@ export const operations: readonly Operation[] = [
   { method: 'post', path: '/api/tally', summary: 'Board feet of boards by the hardwood or the softwood rule', body: tallyRequest, answer: tallyAnswer },
   { method: 'post', path: '/api/tree-volume', summary: 'Board feet in a standing tree, form class 78', body: treeVolumeRequest, answer: treeVolumeAnswer },
   { method: 'post', path: '/api/drying', summary: 'What a board comes to in the air it dries in', body: dryingRequest, answer: dryingAnswer },
+  { method: 'post', path: '/api/saw-plan', summary: 'The best boards of a log on a mill, with an upper bound that no plan of the pattern passes (for a cant: wherever its faces lie), and the order of cuts', body: sawPlanRequest, answer: sawPlanAnswer },
   { method: 'get', path: '/api/listings', summary: 'Open listings by distance, a page at a time', query: listingsQuery, answer: listingsAnswer },
   { method: 'get', path: '/api/photos', summary: "A listing's photographs for its owner, unfinished and refused ones included", signedIn: true, query: listPhotosSchema, answer: photosAnswerSchema },
   { method: 'post', path: '/api/photos', summary: 'Begin an upload: a photograph and the form to send its file with', signedIn: true, body: beginPhotoSchema, answer: beginPhotoAnswerSchema },

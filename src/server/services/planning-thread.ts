@@ -1,19 +1,20 @@
 import { parentPort } from 'node:worker_threads';
 import { sawPlan, type SawPlanRequest } from '../../domain/sawing/saw-plan.ts';
 
-/** A task for the planning thread, and its answer. */
+/** A task for a planning thread. */
 export interface Task {
   readonly id: number;
   readonly kind: 'saw-plan';
   readonly request: SawPlanRequest;
 }
 
-const port = parentPort;
-if (!port) throw new Error('The planning thread is started by planning.ts.');
-port.on('message', (task: Task) => {
+export type Answer = { readonly id: number } & ({ readonly value: unknown } | { readonly error: string } | { readonly late: true });
+
+parentPort?.on('message', ({ id, request }: Task) => {
+  const answered = (answer: Answer): void => parentPort?.postMessage(answer);
   try {
-    port.postMessage({ id: task.id, answer: sawPlan(task.request) });
+    answered({ id, value: sawPlan(request) });
   } catch (error) {
-    port.postMessage({ id: task.id, error: error instanceof Error ? (error.stack ?? error.message) : String(error) });
+    answered({ id, error: error instanceof Error ? (error.stack ?? error.message) : String(error) });
   }
 });

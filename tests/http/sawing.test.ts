@@ -1,0 +1,43 @@
+import { describe, expect, inject, test } from 'vitest';
+import { sawPlanRequest } from '~/schemas/saw-plan.ts';
+import type { SawPlan } from '~/domain/sawing/saw-plan.ts';
+
+const origin = inject('origin');
+const post = (path: string, body: unknown): Promise<Response> =>
+  fetch(new URL(path, origin), { method: 'POST', headers: { 'content-type': 'application/json' }, body: JSON.stringify(body) });
+
+const log = { smallEndIn: 16, lengthFt: 12 };
+const asked = { log, mill: { kerfIn: 0.125 }, pattern: 'best', pieces: [{ thicknessIn: 1, widthIn: 6, lengthFt: 12 }] };
+
+describe('a saw plan over HTTP, without Origin or session', () => {
+  test('boards, value, bound and cuts', async () => {
+    expect(sawPlanRequest.safeParse(asked).success).toBe(true);
+    const response = await post('/api/saw-plan', asked);
+    expect(response.status).toBe(200);
+    const plan = (await response.json()) as SawPlan;
+    expect(plan.boards.length).toBeGreaterThan(10);
+    expect(plan.boardFeet).toBeCloseTo(plan.boards.length * 6, 9);
+    expect(plan.value).toBeLessThanOrEqual(plan.upperBoundValue);
+    expect(plan.cuts[0]).toMatchObject({ order: 1, turnDeg: 0, kind: 'slab' });
+    expect(Object.keys(plan).sort()).toEqual(['boardFeet', 'boards', 'cuts', 'pattern', 'upperBoundValue', 'value']);
+  });
+
+  test('a log longer than the mill takes has no boards, and says why', async () => {
+    const plan = (await (await post('/api/saw-plan', { ...asked, mill: { kerfIn: 0.125, longestFt: 10 } })).json()) as SawPlan;
+    expect(plan).toMatchObject({ boards: [], boardFeet: 0, value: 0 });
+    expect(plan.reason).toContain('10 ft');
+  });
+
+  test.each([
+    [{ ...asked, pieces: [] }, 'pieces'],
+    [{ ...asked, pieces: Array.from({ length: 21 }, () => ({ thicknessIn: 1 })) }, 'pieces'],
+    [{ ...asked, pieces: [{ thicknessIn: 1, count: 0 }] }, 'pieces.0.count'],
+    [{ ...asked, mill: { kerfIn: 0 } }, 'mill.kerfIn'],
+    [{ ...asked, log: { ...log, largeEndIn: 12 } }, 'log.largeEndIn'],
+    [{ ...asked, colour: 'red' }, 'colour'],
+  ])('bad input is refused beside its field', async (body, path) => {
+    const response = await post('/api/saw-plan', body);
+    expect(response.status).toBe(422);
+    expect(((await response.json()) as { errors: { path: string }[] }).errors.map((error) => error.path)).toContain(path);
+  });
+});
