@@ -64,58 +64,58 @@ export default function Estimator(): ReactElement {
   };
 
   return (
-    <div data-ready={ready}>
+    <div data-ready={ready} inert={!ready}>
       <div className="no-print mb-6 flex flex-wrap gap-x-6 border-b border-rule" role="group" aria-label="What to estimate">
         {[{ label: 'Logs on the ground', on: false }, { label: 'A standing tree', on: true }].map((tab) => (
           <button key={tab.label} type="button" aria-pressed={tree === tab.on} onClick={() => setTree(tab.on)} className={tree === tab.on ? 'min-h-target border-b-4 border-heartwood font-bold' : 'min-h-target border-b-4 border-transparent font-semibold text-crayon'}>{tab.label}</button>
         ))}
       </div>
       {trouble !== '' && <p role="alert" className="mb-6 border-l-4 border-heartwood pl-3">{trouble}</p>}
-      {tree ? <StandingTree units={units} /> : (
-        <>
-          <section id="one-log" aria-labelledby="one-log-title" className="no-print grid gap-8 lg:grid-cols-[minmax(0,26rem)_minmax(0,1fr)]">
-            <div>
-              <h2 id="one-log-title" className="mb-4">{changing === null ? 'Measure a log' : `Change line ${changing + 1}`}</h2>
-              <LogForm draft={draft} settings={settings} units={units} changing={changing !== null} onChange={(next) => change({ draft: next })} onAdd={save} onCancel={() => { setChanging(null); change({ draft: emptyDraft }); }} />
-            </div>
-            <div className="sheet self-start p-5 sm:p-7">
-              <h2 className="mb-4">What is in this log</h2>
-              {log ? (
-                <div className="grid gap-6 md:grid-cols-[15rem_minmax(0,1fr)]">
-                  <LogPicture log={log} settings={settings} units={units} onDrawRot={(widthIn, heightIn) => change({ draft: { ...draft, defects: [...draft.defects, { kind: 'interiorRot', values: { widthIn: sayInches(widthIn, units), heightIn: sayInches(heightIn, units), lengthFt: sayFeet(log.lengthFt, units) } }] } })} />
-                  <LogFigures log={log} settings={settings} units={units} />
-                </div>
-              ) : (
-                <p className="max-w-prose text-ink-soft">Choose a species and write the small end and the length: the log appears here, drawn to scale, with its board feet by three rules and its weight.</p>
-              )}
-            </div>
-          </section>
-
-          <p className="no-print mt-6" role="status">{said} {removed && <Button kind="quiet" onClick={restore}>Put {speciesOf(removed.log.species).name.toLowerCase()} back</Button>}</p>
-
-          <section aria-labelledby="list-title" className="mt-8">
-            <h2 id="list-title" className="mb-3">Your logs</h2>
-            {logs.length === 0 ? <p className="max-w-prose text-ink-soft">No logs yet. Add the first one above, or paste a table.</p> : (
-              <>
-                <LogTable
-                  logs={logs} settings={settings} units={units} caption="Board feet are net of defects. Weights are green, with bark."
-                  action={(index) => (
-                    <span className="flex gap-4">
-                      <Button kind="quiet" aria-label={`Change line ${index + 1}`} onClick={() => edit(index)}>Change</Button>
-                      <Button kind="quiet" aria-label={`Remove line ${index + 1}`} onClick={() => remove(index)}>Remove</Button>
-                    </span>
-                  )}
-                />
-                <RangeOfList logs={logs} settings={settings} />
-                <div className="mt-5"><Actions logs={logs} settings={settings} units={units} /></div>
-                <details className="no-print mt-4 border-t border-rule"><summary className={disclosure}>Trips and lifting</summary><Loads logs={logs} units={units} /></details>
-              </>
+      {/* Both stay, so that looking at the other loses nothing typed. */}
+      <div hidden={!tree}><StandingTree units={units} /></div>
+      <div hidden={tree}>
+        <section id="one-log" aria-labelledby="one-log-title" className="no-print grid gap-8 lg:grid-cols-[minmax(0,26rem)_minmax(0,1fr)]">
+          <div>
+            <h2 id="one-log-title" className="mb-4">{changing === null ? 'Measure a log' : `Change line ${changing + 1}`}</h2>
+            <LogForm draft={draft} settings={settings} units={units} changing={changing !== null} onChange={(next) => change({ draft: next })} onAdd={save} onCancel={() => { setChanging(null); change({ draft: emptyDraft }); }} />
+          </div>
+          <div className="sheet self-start p-5 sm:p-7">
+            <h2 className="mb-4">What is in this log</h2>
+            {log ? (
+              <div className="grid gap-6 md:grid-cols-[15rem_minmax(0,1fr)]">
+                <LogPicture log={log} settings={settings} units={units} onDrawRot={(widthIn, heightIn) => change({ draft: { ...draft, defects: [...draft.defects, { kind: 'interiorRot', values: { widthIn: sayInches(widthIn, units), heightIn: sayInches(heightIn, units), lengthFt: sayFeet(log.lengthFt, units) } }] } })} />
+                <LogFigures log={log} settings={settings} units={units} />
+              </div>
+            ) : (
+              <p className="max-w-prose text-ink-soft">Choose a species and write the small end and the length: the log appears here, drawn to scale, with its board feet by three rules and its weight.</p>
             )}
-            <details className="no-print border-t border-rule"><summary className={disclosure}>Paste or open a table of logs</summary><PasteTable onAdd={add} /></details>
-            <details className="no-print border-y border-rule"><summary className={disclosure}>Units and scaling practice</summary><div className="py-3"><SettingFields settings={settings} units={units} onChange={change} /></div></details>
-          </section>
-        </>
-      )}
+          </div>
+        </section>
+
+        <p className="no-print mt-6" role="status">{said} {removed && <Button kind="quiet" onClick={restore}>Put {speciesOf(removed.log.species).name.toLowerCase()} back</Button>}</p>
+
+        <section aria-labelledby="list-title" className="mt-8">
+          <h2 id="list-title" className="mb-3">Your logs</h2>
+          {logs.length === 0 ? <p className="max-w-prose text-ink-soft">No logs yet. Add the first one above, or paste a table.</p> : (
+            <>
+              <LogTable
+                logs={logs} settings={settings} units={units} caption="Board feet are net of defects. Weights are green, with bark."
+                action={(index) => (
+                  <span className="flex gap-4">
+                    <Button kind="quiet" aria-label={`Change line ${index + 1}`} onClick={() => edit(index)}>Change</Button>
+                    <Button kind="quiet" aria-label={`Remove line ${index + 1}`} onClick={() => remove(index)}>Remove</Button>
+                  </span>
+                )}
+              />
+              <RangeOfList logs={logs} settings={settings} />
+              <div className="mt-5"><Actions logs={logs} settings={settings} units={units} /></div>
+              <details className="no-print mt-4 border-t border-rule"><summary className={disclosure}>Trips and lifting</summary><Loads logs={logs} units={units} /></details>
+            </>
+          )}
+          <details className="no-print border-t border-rule"><summary className={disclosure}>Paste or open a table of logs</summary><PasteTable onAdd={add} /></details>
+          <details className="no-print border-y border-rule"><summary className={disclosure}>Units and scaling practice</summary><div className="py-3"><SettingFields settings={settings} units={units} onChange={change} /></div></details>
+        </section>
+      </div>
     </div>
   );
 }
