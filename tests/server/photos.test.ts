@@ -5,15 +5,17 @@ import { allKeys, renditionKey } from '~/domain/photo-keys.ts';
 import { beginPhotoUpload, type BegunUpload } from '~/server/commands/begin-photo-upload.ts';
 import { changePhoto } from '~/server/commands/change-photo.ts';
 import { finishPhotoUpload } from '~/server/commands/finish-photo-upload.ts';
+import { publishListing } from '~/server/commands/publish-listing.ts';
 import { orderPhotos } from '~/server/commands/order-photos.ts';
 import { removePhoto } from '~/server/commands/remove-photo.ts';
 import { saveDraft } from '~/server/commands/save-draft.ts';
 import { withdrawListing } from '~/server/commands/withdraw-listing.ts';
 import { execute, oneRow, rows } from '~/server/db.ts';
+import type { Refusal } from '~/server/errors.ts';
 import { processPhoto } from '~/server/jobs/handlers/process-photo.ts';
 import { photoSweeps } from '~/server/jobs/handlers/photo-sweeps.ts';
 import { Event, Listing, Photo } from '~/server/models/index.ts';
-import { firstPictures, onePhoto, photoAudience, photosForOwner, shownPhotos } from '~/server/queries/photos.ts';
+import { firstPictures, onePhoto, photoAudience, photoEditor, photosForOwner, shownPhotos } from '~/server/queries/photos.ts';
 import { MissingObject, readObject, storageAnswers } from '~/server/services/storage.ts';
 import { makeCast, type Cast } from '../support/cast.ts';
 import { LISTED_AT, openListing, typedListing } from '../support/listings.ts';
@@ -125,20 +127,30 @@ describe('who may do what', () => {
     }
   });
 
-  it('everyone sees those of an open listing; of others only who is part of it', async () => {
-    const own = await openListing(cast.dora);
-    const begun = await beginPhotoUpload(cast.dora, { listingId: own.id, fileName: 'a.jpg', type: 'image/jpeg', bytes: 10 }, at);
+  it('everyone sees those of a published listing, only its owner those of a draft or a hidden one', async () => {
+    const draft = await saveDraft(cast.dora, { number: null, typedVersion: null, typed: typedListing() }, at);
+    const begun = await beginPhotoUpload(cast.dora, { listingId: draft.id, fileName: 'a.jpg', type: 'image/jpeg', bytes: 10 }, at);
     await sendFile(begun.upload, await plainJpeg(60, 40));
     await expect(photoAudience(cast.dora, begun.photo.id)).rejects.toMatchObject({ kind: 'notFound' });
     await finishPhotoUpload(cast.dora, begun.photo.id, at);
     await processPhoto({ photoId: begun.photo.id });
-    expect(await photoAudience(null, begun.photo.id)).toBe('everyone');
-    await withdrawListing(cast.dora, { number: own.number ?? 0, reason: '' }, at);
-    await expect(photoAudience(null, begun.photo.id)).rejects.toMatchObject({ kind: 'notFound' });
-    await expect(photoAudience(cast.bram, begun.photo.id)).rejects.toMatchObject({ kind: 'notFound' });
-    expect(await photoAudience(cast.dora, begun.photo.id)).toBe('viewer');
-    expect(await photoAudience(cast.mo, begun.photo.id)).toBe('viewer');
-    await expect(beginPhotoUpload(cast.dora, { listingId: own.id, fileName: 'a.jpg', type: 'image/jpeg', bytes: 10 }, at)).rejects.toMatchObject({ kind: 'conflict' });
+    const seenBy = async (): Promise<string[]> => Promise.all([null, cast.bram, cast.mo, cast.dora].map((viewer) => photoAudience(viewer, begun.photo.id).catch((error: Error) => (error as Refusal).kind)));
+    expect(await seenBy()).toEqual(['notFound', 'notFound', 'notFound', 'viewer']);
+    await publishListing(cast.dora, { number: draft.number, typedVersion: draft.typedVersion, typed: draft.typed }, at);
+    expect(await seenBy()).toEqual(['everyone', 'everyone', 'everyone', 'everyone']);
+    await execute('UPDATE listing SET hidden_at = $2 WHERE id = $1', [draft.id, at]);
+    expect(await seenBy()).toEqual(['notFound', 'notFound', 'viewer', 'viewer']);
+    await execute('UPDATE listing SET hidden_at = NULL WHERE id = $1', [draft.id]);
+    await withdrawListing(cast.dora, { number: draft.number, reason: '' }, at);
+    expect(await seenBy()).toEqual(['viewer', 'viewer', 'viewer', 'viewer']);
+    await expect(beginPhotoUpload(cast.dora, { listingId: draft.id, fileName: 'a.jpg', type: 'image/jpeg', bytes: 10 }, at)).rejects.toMatchObject({ kind: 'conflict' });
+    expect(await photoEditor(cast.dora, draft.number)).toBeNull();
+  });
+
+  it('the board is for the owner, with the logs by name', async () => {
+    expect(await photoEditor(cast.bram, listing.number ?? 0)).toBeNull();
+    expect(await photoEditor(null, listing.number ?? 0)).toBeNull();
+    expect((await photoEditor(cast.ada, listing.number ?? 0))?.logs[0]?.label).toMatch(/^Log 1, [a-z ]+$/);
   });
 });
 

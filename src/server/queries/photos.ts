@@ -1,8 +1,11 @@
 import { photoAlt, pictureView, type PhotoStatus, type PhotoView, type PictureView } from '~/domain/photo.ts';
+import { may } from '~/domain/permissions.ts';
+import type { ListingState } from '~/domain/states/listing.ts';
+import { speciesOf } from '~/domain/timber/species.ts';
 import { rolesOnListing } from '../authorize.ts';
 import { oneRow, rows } from '../db.ts';
 import { notFound } from '../errors.ts';
-import { Listing } from '../models/index.ts';
+import { Listing, Log } from '../models/index.ts';
 import type { Viewer } from '../viewer.ts';
 
 interface PhotoRow {
@@ -91,21 +94,41 @@ export async function photosForOwner(viewer: Viewer, listingId: string): Promise
   return allPhotos(listingId);
 }
 
+/** What the board of photographs is given. */
+export interface PhotoEditor {
+  readonly listingId: string;
+  readonly logs: readonly { readonly id: string; readonly label: string }[];
+  readonly photos: readonly PhotoView[];
+}
+
+/** The board of photographs of a listing, by its number; null when the viewer may not change them. */
+export async function photoEditor(viewer: Viewer | null, number: number): Promise<PhotoEditor | null> {
+  const listing = viewer ? await Listing.findOne({ where: { number } }) : null;
+  if (!listing || !may('listing', 'addPhoto', rolesOnListing(viewer, listing), listing.status)) return null;
+  const logs = await Log.findAll({ where: { listingId: listing.id, removedAt: null }, order: ['position'] });
+  return {
+    listingId: listing.id,
+    logs: logs.map(({ id, position, label, species }) => ({ id, label: label || `Log ${position}, ${speciesOf(species).name.toLowerCase()}` })),
+    photos: await allPhotos(listing.id),
+  };
+}
+
 /**
- * Whether the viewer may see a photograph's renditions now, and whether everyone may: then any cache may keep them for a while.
- * Everyone sees those of a listing open to bids and not hidden; otherwise its owner, who has bid on it, and moderators.
+ * Whether the viewer may see a photograph's renditions now, and whether everyone may keep them: then any cache may, for a while.
+ * They are seen by whoever may read the listing's page: everyone once it is published and while it is not hidden, its owner
+ * always, moderators except for drafts.
  * @throws Refusal `notFound`, the same for what does not exist and what is not theirs to see.
  */
 export async function photoAudience(viewer: Viewer | null, photoId: string): Promise<'everyone' | 'viewer'> {
-  const found = await oneRow<{ ownerId: string; isOpen: boolean; hasBid: boolean }>(
-    `SELECT listing.owner_id AS "ownerId", listing.status = 'open' AND listing.hidden_at IS NULL AS "isOpen",
-       listing.status <> 'draft' AND EXISTS (SELECT 1 FROM bid WHERE bid.listing_id = listing.id AND bid.sawyer_id = $2) AS "hasBid"
+  const found = await oneRow<{ ownerId: string; status: ListingState; isHidden: boolean }>(
+    `SELECT listing.owner_id AS "ownerId", listing.status, listing.hidden_at IS NOT NULL AS "isHidden"
      FROM photo JOIN listing ON listing.id = photo.listing_id
      WHERE photo.id = $1 AND photo.status = 'ready' AND photo.removed_at IS NULL`,
-    [photoId, viewer?.id ?? null],
+    [photoId],
   );
   if (!found) throw notFound('photograph');
-  if (found.isOpen) return 'everyone';
-  if (viewer?.active && (viewer.id === found.ownerId || found.hasBid || viewer.isModerator)) return 'viewer';
+  const isShown = found.status !== 'draft' && !found.isHidden;
+  if (isShown) return found.status === 'open' ? 'everyone' : 'viewer';
+  if (viewer?.active && (viewer.id === found.ownerId || (viewer.isModerator && found.status !== 'draft'))) return 'viewer';
   throw notFound('photograph');
 }
