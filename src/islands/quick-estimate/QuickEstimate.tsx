@@ -3,6 +3,7 @@ import { problemAt } from '~/components/field-ids.ts';
 import { formatFeet, formatInches } from '~/domain/measure.ts';
 import { paths } from '~/domain/paths.ts';
 import { writeLogs } from '~/domain/timber/logs-in-url.ts';
+import { FIRST_YIELD } from '~/domain/sawing/expected.ts';
 import { logRuleNames } from '~/domain/timber/log-rules.ts';
 import { LogEnd } from '../drawing/LogEnd.tsx';
 import { Button } from '../form/choices.tsx';
@@ -41,7 +42,7 @@ export default function QuickEstimate({ typed: given = firstTyped, species }: Pr
 }
 
 function Answer({ worked, stale }: { readonly worked: WorkedOut; readonly stale: boolean }): ReactElement {
-  const { log, estimate, weightLb, barkIn, speciesName } = worked;
+  const { log, estimate, weightLb, barkIn, speciesName, boards, bestBoardFeet } = worked;
   const lines = [
     { label: logRuleNames.internationalQuarter, value: `${whole(estimate.boardFeet.internationalQuarter)} bf` },
     { label: logRuleNames.scribnerDecimalC, value: `${whole(estimate.boardFeet.scribnerDecimalC)} bf` },
@@ -51,7 +52,7 @@ function Answer({ worked, stale }: { readonly worked: WorkedOut; readonly stale:
   return (
     <div className={`mt-5 grid items-center gap-6 sm:grid-cols-[184px_1fr] ${stale ? 'opacity-50' : ''}`}>
       <div className="mx-auto max-w-[184px]">
-        <LogEnd smallEndIn={log.smallEndIn} barkIn={barkIn} seed="first page" scaleBarIn={log.smallEndIn >= 12 ? 12 : 6} label={`The small end of the log to scale, ${formatInches(log.smallEndIn)} across`} />
+        <LogEnd smallEndIn={log.smallEndIn} barkIn={barkIn} boards={boards} seed="first page" scaleBarIn={log.smallEndIn >= 12 ? 12 : 6} label={`The small end of the log to scale, ${formatInches(log.smallEndIn)} across, with its ${boards.length} boards`} />
       </div>
       <div>
         <dl aria-live="polite">
@@ -62,7 +63,10 @@ function Answer({ worked, stale }: { readonly worked: WorkedOut; readonly stale:
             </div>
           ))}
         </dl>
-        <p className="mt-2 text-sm text-ink-soft">{`${speciesName}, ${formatFeet(log.lengthFt)}. The three log scales disagree by design; an inch of measuring error moves all of them.`}</p>
+        <p className="mt-2 text-sm text-ink-soft">
+          {`${speciesName}, ${formatFeet(log.lengthFt)}. `}
+          {boards.length > 0 && <>Sawn live into 5/4 on a band mill, kerf 3/32 in: at best <strong className="figure">{whole(bestBoardFeet)} bf</strong> of lumber, about <strong className="figure">{whole(bestBoardFeet * FIRST_YIELD)} bf</strong> to expect.</>}
+        </p>
         <p className="mt-1"><a className="inline-flex min-h-target items-center font-semibold" href={`${paths.estimator}?logs=${writeLogs([log])}`}>Add more logs</a></p>
       </div>
     </div>

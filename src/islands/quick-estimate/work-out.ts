@@ -1,10 +1,15 @@
 import { parseLengthFt, parseLengthIn } from '~/domain/measure.ts';
 import type { Problem } from '~/domain/result.ts';
+import { sawPlan } from '~/domain/sawing/saw-plan.ts';
+import type { Board } from '~/domain/sawing/board.ts';
 import { estimateLog, type LogEstimate } from '~/domain/timber/estimate.ts';
 import type { LogGroup } from '~/domain/timber/logs-in-url.ts';
 import { findSpecies } from '~/domain/timber/species.ts';
 import { barkRatio } from '~/domain/timber/taper-and-bark.ts';
 import { greenWeightWithBark } from '~/domain/timber/weight.ts';
+
+/** The mill and boards of the first page's picture: 5/4 boards, green, on a thin band. */
+export const pictureMill = { kerfIn: 3 / 32, thicknessIn: 1.25 } as const;
 
 /** What is typed into the estimator of the first page. */
 export interface Typed {
@@ -21,6 +26,9 @@ export interface WorkedOut {
   /** Bark on one side at the small end. */
   readonly barkIn: number;
   readonly speciesName: string;
+  /** The 5/4 boards of a live-sawn plan on a thin band mill, and their board feet: the best possible. */
+  readonly boards: readonly Board[];
+  readonly bestBoardFeet: number;
 }
 
 export const firstTyped: Typed = { species: 'white-oak', smallEnd: '16', length: '12' };
@@ -37,6 +45,13 @@ export function workOut(typed: Typed): { readonly worked: WorkedOut | null; read
   if (!length.ok) problems.push(...length.problems);
   else if (length.value < 4 || length.value > 40) problems.push({ path: 'length', message: 'The length is between 4 and 40 ft.' });
   if (problems.length > 0 || !species || !smallEnd.ok || !length.ok) return { worked: null, problems };
+  const plan = sawPlan({
+    log: { smallEndIn: smallEnd.value, lengthFt: length.value },
+    mill: { kerfIn: pictureMill.kerfIn },
+    pattern: 'live',
+    // Few lengths, so that the largest log is planned between two keystrokes.
+    pieces: [{ thicknessIn: pictureMill.thicknessIn, lengthsFt: [0, 4, 8].map((less) => Math.floor(length.value) - less).filter((feet) => feet >= 4) }],
+  });
   const log: LogGroup = { species: species.code, smallEndIn: smallEnd.value, lengthFt: length.value, count: 1 };
   return {
     worked: {
@@ -45,6 +60,8 @@ export function workOut(typed: Typed): { readonly worked: WorkedOut | null; read
       weightLb: greenWeightWithBark(log, species),
       barkIn: (smallEnd.value * (barkRatio(species) - 1)) / 2,
       speciesName: species.name,
+      boards: plan.boards,
+      bestBoardFeet: plan.boardFeet,
     },
     problems,
   };
