@@ -6,6 +6,7 @@ import { AGREEMENT_VERSION, type AgreedTerms, canonicalJson } from '~/domain/tra
 import type { BidMill } from '~/domain/trade/bid-estimate.ts';
 import { bidChosen, bidDeclined, choiceConfirmed } from '~/emails/bids.ts';
 import { authorize, rolesOnBid, rolesOnListing } from '../authorize.ts';
+import { refuseBlocked } from '../blocks.ts';
 import { inTransaction, refusedBy } from '../db.ts';
 import { env } from '../env.ts';
 import { conflict } from '../errors.ts';
@@ -37,6 +38,7 @@ export async function chooseBid(by: Viewer, bidId: string, listingRevision: numb
         throw conflict('The listing has changed since this page was shown, so these bids are out of date. Load it again: bids must be confirmed on the new logs first.');
       }
       authorize(by, 'bid', 'choose', rolesOnBid(by, bid, listing), bid.status);
+      await refuseBlocked(by.id, bid.sawyerId);
       const sawyer = await Account.findByPk(bid.sawyerId, { rejectOnEmpty: true });
       if (sawyer.status !== 'active') throw conflict('This sawyer’s account is not active at present. Choose another bid.');
       const others = await Bid.findAll({ where: { listingId: listing.id, status: ['open', 'toConfirm'] }, order: [['id', 'ASC']], lock: true });

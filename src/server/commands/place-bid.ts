@@ -2,6 +2,7 @@ import { paths } from '~/domain/paths.ts';
 import type { BidForm } from '~/schemas/bid-form.ts';
 import { bidReceived } from '~/emails/bids.ts';
 import { authorize, rolesOnListing } from '../authorize.ts';
+import { refuseBlocked } from '../blocks.ts';
 import { inTransaction, refusedBy } from '../db.ts';
 import { conflict, invalid, notFound } from '../errors.ts';
 import { enqueue } from '../jobs/queue.ts';
@@ -24,6 +25,7 @@ export async function placeBid(by: Viewer, listingNumber: number, form: BidForm,
       const listing = await Listing.findOne({ where: { number: listingNumber }, lock: true });
       if (!listing || listing.status === 'draft') throw notFound('listing');
       authorize(by, 'listing', 'bid', rolesOnListing(by, listing), listing.status);
+      await refuseBlocked(by.id, listing.ownerId);
       await checkBiddable(listing, by.id, form.listingRevision, at);
       const card = await currentCard(by.id);
       if (card === null) throw invalid([{ path: '', message: 'Fill in your rate card before you bid.' }]);

@@ -1,7 +1,8 @@
 import { messageWaiting } from '~/emails/booking-letters.ts';
 import { paths } from '~/domain/paths.ts';
 import { authorize, rolesOnListing } from '../authorize.ts';
-import { inTransaction, oneRow } from '../db.ts';
+import { refuseBlocked } from '../blocks.ts';
+import { inTransaction } from '../db.ts';
 import { forbidden, invalid, notFound } from '../errors.ts';
 import { countTry } from '../http/limits.ts';
 import { enqueue } from '../jobs/queue.ts';
@@ -17,12 +18,6 @@ function checkedBody(text: string): string {
   if (body === '') throw invalid([{ path: 'body', message: 'Write something first.' }]);
   if (body.length > LONGEST_MESSAGE) throw invalid([{ path: 'body', message: `Keep it under ${LONGEST_MESSAGE.toLocaleString('en-US')} characters.` }]);
   return body;
-}
-
-/** @throws Refusal `forbidden` when either has blocked the other. */
-export async function refuseBlocked(one: string, other: string): Promise<void> {
-  const blocked = await oneRow('SELECT 1 AS yes FROM account_block WHERE (blocker_id = $1 AND blocked_id = $2) OR (blocker_id = $2 AND blocked_id = $1)', [one, other]);
-  if (blocked) throw forbidden('One of you has blocked the other, so you cannot write to each other.');
 }
 
 /** Opens the conversation of a sawyer about a listing, or finds it. */
