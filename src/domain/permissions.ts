@@ -1,3 +1,4 @@
+import type { AccountState } from './states/account.ts';
 import type { BidState } from './states/bid.ts';
 import type { BookingState } from './states/booking.ts';
 import type { ListingState } from './states/listing.ts';
@@ -46,6 +47,7 @@ export const permissions = {
     confirmDay: { who: ['landowner', 'sawyer'], states: ['proposed', 'agreed', 'held'] },
     pay: { who: ['landowner'], states: ['agreed'] },
     cancel: { who: ['landowner', 'sawyer'], states: ['proposed', 'agreed', 'held'] },
+    cancelForBoth: { who: ['moderator'], states: ['proposed', 'agreed', 'held'] },
     seePlace: { who: ['landowner', 'sawyer', 'moderator'], states: ['held', 'sawing', 'tallied', 'queried', 'signed', 'settled'] },
     startSawing: { who: ['sawyer'], states: ['held'] },
     enterTally: { who: ['sawyer'], states: ['held', 'sawing'] },
@@ -63,6 +65,15 @@ export const permissions = {
     keepProfile: { who: ['anySawyer'] },
     keepMill: { who: ['anySawyer'] },
     keepRates: { who: ['anySawyer'] },
+  }),
+  account: rules<AccountState>()({
+    suspend: { who: ['moderator'], states: ['active'] },
+    restore: { who: ['moderator'], states: ['suspended'] },
+    seeCertificate: { who: ['moderator'], states: ['active', 'suspended'] },
+    endSecondFactor: { who: ['moderator'], states: ['active', 'suspended'] },
+  }),
+  report: rules<never>()({
+    handle: { who: ['moderator'] },
   }),
   desk: rules<never>()({
     open: { who: ['moderator'] },

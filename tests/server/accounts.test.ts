@@ -336,7 +336,7 @@ describe('one’s own account', () => {
     const left = await oneRow<{ text: string }>('SELECT to_jsonb(account)::text AS text FROM account WHERE id = $1', [viewer.id]);
     expect(left?.text).not.toContain(email);
     expect(left?.text).not.toContain('Nell');
-    expect(await Event.count({ where: { actorId: viewer.id, action: 'closeAccount' } })).toBe(1);
+    expect(await Event.count({ where: { actorId: viewer.id, action: 'close' } })).toBe(1);
     await signUp({ name: 'Nell again', email, password: PASSWORD, as: ['landowner'], zip: null, clientAddress: null }, at);
   });
 });

@@ -1,5 +1,6 @@
 import { beforeAll, describe, expect, it } from 'vitest';
 import type { Model, ModelStatic } from 'sequelize';
+import { accountStates } from '~/domain/states/account.ts';
 import { bidStates } from '~/domain/states/bid.ts';
 import { bookingStates } from '~/domain/states/booking.ts';
 import { listingStates } from '~/domain/states/listing.ts';
@@ -19,7 +20,7 @@ beforeAll(async () => {
 });
 
 describe('the database has the last word', () => {
-  it.each([['listing', listingStates], ['bid', bidStates], ['booking', bookingStates], ['held_payment', paymentStates]] as const)('%s: its CHECK lists the states of its table', async (name, table) => {
+  it.each([['account', accountStates], ['listing', listingStates], ['bid', bidStates], ['booking', bookingStates], ['held_payment', paymentStates]] as const)('%s: its CHECK lists the states of its table', async (name, table) => {
     const found = await oneRow<{ text: string }>(
       `SELECT pg_get_constraintdef(oid) AS text FROM pg_constraint WHERE conrelid = $1::regclass AND conname = $2`,
       [name, `${name}_status_check`],

@@ -10,7 +10,7 @@ import { conflict } from '../errors.ts';
 import { afterEnding } from '../end-booking.ts';
 import { enqueue } from '../jobs/queue.ts';
 import { lockBooking } from '../locks.ts';
-import { Checkout, HeldPayment } from '../models/index.ts';
+import { Checkout, HeldPayment, type Booking } from '../models/index.ts';
 import { bookingLink, partiesOf } from '../parties.ts';
 import { transition } from '../transition.ts';
 import type { Actor, Viewer } from '../viewer.ts';
@@ -38,21 +38,33 @@ export async function cancelBooking(by: Viewer, input: { readonly booking: numbe
   await inTransaction(async () => {
     const booking = await lockBooking(input.booking);
     authorize(by, 'booking', 'cancel', rolesOnBooking(by, booking), booking.status);
-    const payment = await HeldPayment.findOne({ where: { bookingId: booking.id }, lock: true });
-    const side = by.id === booking.landownerId ? 'landowner' : 'sawyer';
-    const wasHeld = booking.status === 'held';
-    const parts = wasHeld ? await cancellationOf(booking, side, at) : null;
-    if (parts && input.expects !== undefined && parts.payableCents > input.expects) {
-      throw conflict(`It is now less than 48 hours to the start: cancelling costs ${formatCents(parts.payableCents)} for set-up and travel. Look again before you cancel.`);
-    }
-    if (parts && payment?.disputedAt) throw conflict('The card payment is disputed at the bank. A moderator ends this booking when the bank has decided.');
-    await transition(bookingStates, 'cancel', booking, by, at, { cancelledBy: by.id, cancelReason: input.reason, updatedAt: at });
-    if (payment?.status === 'due') await voidPayment(by, payment, at);
-    if (parts && payment) await payOut(by, booking, payment, parts, 'cancellation', at);
-    await afterEnding(by, booking, at);
-    const parties = await partiesOf(booking);
-    for (const person of [parties.landowner, parties.sawyer]) {
-      await enqueue('send-mail', bookingCancelled(person, by.name, input.reason, parts ? moneyWords(parts) : 'No money was held.', bookingLink(booking)));
-    }
+    await endBeforeSawing(by, booking, by.id === booking.landownerId ? 'landowner' : 'sawyer', input, at);
   });
+}
+
+/** A moderator cancels before sawing, for one of the two who cannot or must not: everything goes back. */
+export async function cancelForBoth(by: Viewer, input: { readonly booking: number; readonly reason: string }, at: Date): Promise<void> {
+  await inTransaction(async () => {
+    const booking = await lockBooking(input.booking);
+    authorize(by, 'booking', 'cancelForBoth', rolesOnBooking(by, booking), booking.status);
+    await endBeforeSawing(by, booking, 'sawyer', input, at);
+  });
+}
+
+/** @param side who counts as the one that cancels: it decides what is owed */
+async function endBeforeSawing(by: Viewer, booking: Booking, side: 'landowner' | 'sawyer', input: { readonly reason: string; readonly expects?: number }, at: Date): Promise<void> {
+  const payment = await HeldPayment.findOne({ where: { bookingId: booking.id }, lock: true });
+  const parts = booking.status === 'held' ? await cancellationOf(booking, side, at) : null;
+  if (parts && input.expects !== undefined && parts.payableCents > input.expects) {
+    throw conflict(`It is now less than 48 hours to the start: cancelling costs ${formatCents(parts.payableCents)} for set-up and travel. Look again before you cancel.`);
+  }
+  if (parts && payment?.disputedAt) throw conflict('The card payment is disputed at the bank. A moderator ends this booking when the bank has decided.');
+  await transition(bookingStates, 'cancel', booking, by, at, { cancelledBy: by.id, cancelReason: input.reason, updatedAt: at });
+  if (payment?.status === 'due') await voidPayment(by, payment, at);
+  if (parts && payment) await payOut(by, booking, payment, parts, 'cancellation', at);
+  await afterEnding(by, booking, at);
+  const parties = await partiesOf(booking);
+  for (const person of [parties.landowner, parties.sawyer]) {
+    await enqueue('send-mail', bookingCancelled(person, by.name, input.reason, parts ? moneyWords(parts) : 'No money was held.', bookingLink(booking)));
+  }
 }

@@ -1,3 +1,4 @@
+import { accountStates } from '~/domain/states/account.ts';
 import { accountClosed } from '~/emails/account-letters.ts';
 import { execute, inTransaction } from '../db.ts';
 import { conflict, forbidden } from '../errors.ts';
@@ -5,7 +6,7 @@ import { enqueue } from '../jobs/queue.ts';
 import { Account } from '../models/account.ts';
 import { openAffairs, openAffairsWords } from '../queries/open-affairs.ts';
 import { takeBack } from '../take-back.ts';
-import { record } from '../transition.ts';
+import { transition } from '../transition.ts';
 import type { Viewer } from '../viewer.ts';
 import { provePassword } from './change-password.ts';
 
@@ -29,8 +30,6 @@ const blanked = [
   "UPDATE bid SET message = '', updated_at = $2 WHERE sawyer_id = $1 AND message <> ''",
   "UPDATE message SET body = 'The account that wrote this is closed.', read_at = coalesce(read_at, $2) WHERE sender_id = $1",
   'UPDATE message SET read_at = coalesce(read_at, $2) WHERE recipient_id = $1',
-  `UPDATE account SET email = 'closed-' || id || '@closed.invalid', email_confirmed_at = NULL, password_hash = '', name = 'Closed account', is_landowner = false, is_sawyer = false,
-     is_moderator = false, status = 'closed', totp_secret = NULL, totp_confirmed_at = NULL, totp_last_step = NULL, zip = NULL, closed_at = $2 WHERE id = $1`,
 ];
 
 /**
@@ -49,8 +48,11 @@ export async function closeAccount(by: Viewer, input: { readonly password: strin
     const open = openAffairsWords(await openAffairs(by.id));
     if (open !== null) throw conflict(open);
     await enqueue('send-mail', accountClosed(account));
-    await record(by, 'closeAccount', 'account', by.id, at);
     for (const sql of gone) await execute(sql, [by.id]);
     for (const sql of blanked) await execute(sql, [by.id, at]);
+    await transition(accountStates, 'close', account, by, at, {
+      email: `closed-${by.id}@closed.invalid`, emailConfirmedAt: null, passwordHash: '', name: 'Closed account', isLandowner: false, isSawyer: false, isModerator: false,
+      totpSecret: null, totpConfirmedAt: null, totpLastStep: null, zip: null, closedAt: at,
+    });
   });
 }

@@ -1,6 +1,5 @@
+import type { AccountState } from '~/domain/states/account.ts';
 import { filled, id, instant, keyRef, keyText, nullable, ref, table, text, whole, yes, type Row } from './table.ts';
-
-export type AccountStatus = 'active' | 'suspended' | 'closed';
 
 export const Account = table('account', {
   id: id(),
@@ -11,7 +10,7 @@ export const Account = table('account', {
   isLandowner: filled(yes()),
   isSawyer: filled(yes()),
   isModerator: filled(yes()),
-  status: filled(text<AccountStatus>()),
+  status: filled(text<AccountState>()),
   suspendedReason: nullable(text()),
   totpSecret: nullable(text()),
   totpConfirmedAt: nullable(instant()),
