@@ -25,3 +25,27 @@ export const sawyerProfileForm = z.object({
 });
 
 export type SawyerProfileForm = z.output<typeof sawyerProfileForm>;
+
+/** What a kept profile says, as the form's fields ask for it. */
+interface Kept {
+  readonly businessName: string;
+  readonly about: string;
+  readonly zip: string | null;
+  readonly travelMiles: number;
+  readonly services: readonly string[];
+  readonly languages: readonly string[];
+  readonly workingDays: readonly number[];
+  readonly noticeDays: number;
+}
+
+/** A profile as the form's fields, to fill it in again; without one, what most sawyers would say. */
+export const sawyerProfileTyped = (kept: Kept | null): Record<string, string | readonly string[]> => ({
+  businessName: kept?.businessName ?? '',
+  about: kept?.about ?? '',
+  zip: kept?.zip ?? '',
+  travelMiles: String(kept?.travelMiles ?? 50),
+  services: kept?.services ?? [],
+  languages: kept?.languages.join(', ') ?? '',
+  workingDays: (kept?.workingDays ?? [1, 2, 3, 4, 5, 6]).map(String),
+  noticeDays: String(kept?.noticeDays ?? 2),
+});

@@ -6,6 +6,9 @@ export const MOST_DAYS = 10;
 /** The days of a booking lie within this many days of each other. */
 export const WIDEST_SPAN_DAYS = 31;
 
+/** The days of the week in the order of their numbers: 1 Monday … 7 Sunday. */
+export const WEEKDAYS = ['Monday', 'Tuesday', 'Wednesday', 'Thursday', 'Friday', 'Saturday', 'Sunday'] as const;
+
 /** What stands on a sawyer's day, for those who want to book it. */
 export type DayState = 'open' | 'offered' | 'booked' | 'off';
 
