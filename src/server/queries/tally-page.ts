@@ -54,7 +54,11 @@ export async function tallyPage(viewer: Viewer, number: number): Promise<TallyPa
   if (!work) throw notFound('tally: sawing has not begun');
   const listing = await Listing.findByPk(booking.listingId, { rejectOnEmpty: true });
   const pieces = await Piece.findAll({ where: { listingId: listing.id }, order: [['position', 'ASC']] });
-  const queries = await TallyQuery.findAll({ where: { tallyId: work.tally.id }, order: [['createdAt', 'ASC'], ['id', 'ASC']] });
+  const lineIds = [...work.boards, ...work.hits, ...work.culls, ...work.clock].map((line) => line.id);
+  const asked = await TallyQuery.findAll({ where: { tallyId: work.tally.id }, order: [['createdAt', 'ASC'], ['id', 'ASC']] });
+  // Lines queried in one go stand as they stand in the tally; what is about the whole comes last.
+  const place = (query: TallyQuery): number => (query.lineId === null ? lineIds.length : lineIds.indexOf(query.lineId));
+  const queries = asked.sort((one, other) => one.createdAt.getTime() - other.createdAt.getTime() || place(one) - place(other));
   const { landowner, sawyer } = await partiesOf(booking);
   return {
     number: booking.number,
