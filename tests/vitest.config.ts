@@ -16,7 +16,7 @@ export default defineConfig({
       {
         root,
         resolve,
-        test: { name: 'pure', include: ['tests/{unit,reference,architecture,fakes,bench}/**/*.test.ts'], testTimeout: 20_000 },
+        test: { name: 'pure', include: ['tests/{unit,reference,architecture,fakes}/**/*.test.ts'], testTimeout: 20_000, benchmark: { include: ['tests/bench/**/*.bench.ts'] } },
       },
       {
         root,
