@@ -32,7 +32,9 @@ export const paths = {
   editListing: (number: number) => `/listings/${number}/edit`,
   withdrawListing: (number: number) => `/listings/${number}/withdraw`,
   listingBids: (number: number) => `/listings/${number}/bids`,
+  listingBid: (number: number, bidId: string) => `/listings/${number}/bids/${bidId}`,
   bidOn: (number: number) => `/listings/${number}/bid`,
+  withdrawBid: (number: number) => `/listings/${number}/bid/withdraw`,
 
   sawyerHome: '/sawyer',
   mill: '/sawyer/mill',

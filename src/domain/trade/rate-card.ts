@@ -91,6 +91,13 @@ export const offBearerCents = (price: OffBearerPrice, offBearer: OffBearer): Cen
 /** The basis's price: per bf, or per hour. */
 export const basisPrice = (basis: SawingBasis): OffBearerPrice => (basis.kind === 'hourly' ? basis.perHour : basis.perBf);
 
+/** What may become of slabs and sawdust under this card: leaving them is always possible, the rest needs a price. */
+export const wastesOffered = ({ extras }: RateCard): readonly Waste[] => [
+  'left',
+  ...(extras.wasteHauled === null ? [] : (['hauled'] as const)),
+  ...(extras.wasteBundled === null ? [] : (['bundled'] as const)),
+];
+
 /** `$0.55 / bf` or `$95.00 / hour`: the rate in its shortest honest form, for a column of a comparison. */
 export function describeRate(card: RateCard, offBearer: OffBearer): string {
   const amount = formatCents(offBearerCents(basisPrice(card.basis), offBearer));

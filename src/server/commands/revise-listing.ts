@@ -61,7 +61,8 @@ export async function reviseListing(by: Viewer | null, input: ListingInput, at: 
     listing.set(columnsOf(understood));
     const changed = changedParts(before, await partsOf(listing));
     const columns = { ...columnsOf(understood), typed: { ...typed }, typedVersion: listing.typedVersion + 1, updatedAt: at };
-    await transition(listingStates, 'revise', listing, by, at, { ...columns, revision: listing.revision + (isBinding(changed) ? 1 : 0) }, { data: { changed } });
+    const revision = listing.revision + (isBinding(changed) ? 1 : 0);
+    await transition(listingStates, 'revise', listing, by, at, { ...columns, revision }, { data: { changed, revision } });
     if (changed.length > 0) await tellBidders(by, listing, changed, at);
     return { changed };
   });

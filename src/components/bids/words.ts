@@ -1,0 +1,30 @@
+import { formatFraction } from '~/domain/measure.ts';
+import { formatCents } from '~/domain/money.ts';
+import type { BidMill } from '~/domain/trade/bid-estimate.ts';
+import { MILL_KIND_NAMES } from '~/domain/trade/mill-fit.ts';
+import type { Line } from '~/domain/trade/price.ts';
+import type { Waste } from '~/domain/trade/rate-card.ts';
+
+/** `400 bf at $0.50`: how a line came about; nothing for a line that is only an amount. */
+export function lineWords({ kind, quantity, unit, unitCents }: Line): string {
+  const count = quantity.toLocaleString('en-US', { maximumFractionDigits: 2 });
+  if (unit === '%') return `${count} % of ${formatCents(unitCents)}`;
+  if (kind === 'minimum' || unit === 'job') return '';
+  if (unit === 'each') return `${count} at ${formatCents(unitCents)}`;
+  return `${count} ${unit}${quantity !== 1 && !['bf', 'sq ft'].includes(unit) ? 's' : ''} at ${formatCents(unitCents)}`;
+}
+
+/** `band, kerf 3/32 in` */
+export const millWords = (mill: Pick<BidMill, 'kind' | 'kerfIn'>): string => `${MILL_KIND_NAMES[mill.kind]}, kerf ${formatFraction(mill.kerfIn, 32)} in`;
+
+/** What becomes of slabs and sawdust, as a bid's choice. */
+export const wasteChoices: Readonly<Record<Waste, string>> = { left: 'They stay at the landing', hauled: 'I haul them away', bundled: 'I bundle the slabs and leave them' };
+
+/** `The logs and the access have changed.` */
+export function changedWords(parts: readonly string[]): string {
+  if (parts.length === 0) return 'Something it was worked out on has changed.';
+  const named = parts.map((part) => (part === 'how it came down' ? 'how it came down' : `the ${part}`));
+  const last = named.at(-1) ?? '';
+  const list = named.length === 1 ? last : `${named.slice(0, -1).join(', ')} and ${last}`;
+  return `${list.charAt(0).toUpperCase()}${list.slice(1)} changed.`;
+}

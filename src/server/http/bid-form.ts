@@ -1,0 +1,68 @@
+import type { Waste as ListedWaste } from '~/domain/listing/answers.ts';
+import { formatDollars } from '~/domain/money.ts';
+import { wastesOffered } from '~/domain/trade/rate-card.ts';
+import { bidForm, bidTermsForm } from '~/schemas/bid-form.ts';
+import type { FrozenEstimate } from '../bid-work.ts';
+import { changeBid } from '../commands/change-bid.ts';
+import { placeBid } from '../commands/place-bid.ts';
+import { Refusal } from '../errors.ts';
+import { type BidPage, type BidPreview, previewBid } from '../queries/bid-page.ts';
+import type { Viewer } from '../viewer.ts';
+import type { Typed } from './read-form.ts';
+import { type Taken, takeForm } from './take-form.ts';
+
+/** What posting the bid's form came to: only looked at, or kept. */
+export type BidTaken = 'looked' | 'placed' | 'changed';
+
+type PostedPage = Parameters<typeof takeForm>[0];
+
+/** Takes the posted form: works it out when the sawyer only looks, else places the bid or changes the live one. */
+export function takeBid(page: PostedPage, look: boolean, by: Viewer, seen: BidPage, at: Date): Promise<Taken<BidTaken>> {
+  if (look) {
+    return takeForm(page, bidTermsForm, async (form): Promise<BidTaken> => {
+      await previewBid(seen, form, at);
+      return 'looked';
+    });
+  }
+  return takeForm(page, bidForm, async (form): Promise<BidTaken> => {
+    const { bid } = seen;
+    if (bid === null) await placeBid(by, seen.listing.number, form, at);
+    else await changeBid(by, bid.id, form, at);
+    return bid === null ? 'placed' : 'changed';
+  });
+}
+
+const dollars = (cents: number): string => formatDollars(cents).replace('$', '');
+const count = (value: number | undefined): string => (value === undefined ? '' : String(value));
+
+/** The form as it is opened: with the live bid as it stands, or begun from the mill, the rate card and what the landowner asks for. */
+export function bidTyped({ listing, setUp, mills, miles, bid }: BidPage): Typed {
+  if (bid !== null) {
+    const { terms, options } = bid.estimate as FrozenEstimate;
+    const own = bid.status === 'open' && bid.overrideReason !== null;
+    return {
+      millId: bid.millId, offBearer: bid.offBearer, waste: terms.waste, roadMiles: String(bid.roadMiles), metalCap: dollars(bid.metalCapCents),
+      stickers: count(options.stickers), deliveryLoads: count(options.deliveryLoads), ownBf: own ? String(bid.expectedBfHundredths / 100) : '', ownReason: own ? (bid.overrideReason ?? '') : '',
+      days: bid.daysOffered, message: bid.message,
+    };
+  }
+  const asked = (listing.waste as ListedWaste | null)?.slabs ?? 'left';
+  const helpers = (listing.access as { readonly helpers?: number } | null)?.helpers ?? 0;
+  return {
+    millId: (mills.find(({ fit }) => fit.fits) ?? mills[0])?.mill.id ?? '', offBearer: helpers > 0 ? 'landowner-provides' : 'sawyer-brings',
+    waste: setUp.card && wastesOffered(setUp.card).includes(asked) ? asked : 'left', roadMiles: count(miles ?? undefined), metalCap: setUp.card ? dollars(setUp.card.metal.capCents) : '',
+    stickers: '', deliveryLoads: '', ownBf: '', ownReason: '', days: [], message: '',
+  };
+}
+
+/** The figures of a form as it stands, or null while something in it cannot be read. */
+export async function previewTyped(seen: BidPage, typed: Typed, at: Date): Promise<BidPreview | null> {
+  const read = bidTermsForm.safeParse({ ...typed, days: [], listingRevision: String(seen.listing.revision) });
+  if (!read.success) return null;
+  try {
+    return await previewBid(seen, read.data, at);
+  } catch (error) {
+    if (error instanceof Refusal) return null;
+    throw error;
+  }
+}
