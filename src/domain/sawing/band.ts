@@ -31,6 +31,8 @@ export interface BandWorks {
 
 /** Cants whose corners pass the bark are tried so often in a band before their bound is left standing. */
 const WANEY_TRIES = 3;
+/** Sides of a cant passed over together when none of them can win. */
+const TOGETHER = 12;
 /** Step of the widths for which stacks between two sides are kept. */
 const SIDE_STEP = UNITS_PER_IN / 8;
 
@@ -47,6 +49,8 @@ export function bandWorks(stock: Stock): BandWorks {
   const cantRows: Frontier[] = groups.map((group) => fillings(group.widths.map(({ width, choices }) => ({ size: width, value: choices[0]?.value ?? 0 })), kerf, Math.min(2 * reach, widestCut)));
   const cantWidths = [...new Set(cantRows.flatMap((rows) => rows.sizes))].sort((a, b) => a - b);
   const widthClass: Frontier = { sizes: cantWidths, values: cantWidths };
+  // Of the band being looked at: what a cant of each width holds in its height, -1 until asked.
+  const insides = new Float64Array(cantWidths.length);
   const cants = new Map<number, Frontier>();
   const cantOf = (index: number): Frontier => {
     let found = cants.get(index);
@@ -80,35 +84,61 @@ export function bandWorks(stock: Stock): BandWorks {
     let bound = whole.value;
     let value = heart > 0 ? 2 * columns.valueFrom(heart) : whole.value;
     let plan: BandPlan = { kind: 'columns', split: heart > 0 ? heart : whole.split };
-    const trials: { hoped: number; sides: number; inside: number; left: Units; right: Units }[] = [];
+    insides.fill(-1);
+    const { places, values } = columns;
+    const insideOf = (right: Units, left: Units): number => {
+      const width = fitting(widthClass, Math.min(left + right, widestCut));
+      if (width < 0) return 0;
+      if ((insides[width] as number) < 0) insides[width] = valueIn(cantOf(width), height);
+      return insides[width] as number;
+    };
+    const rightOf = (i: number): Units => (places[i] as number) - kerf;
+    const leftOf = (j: number): Units => (j < 0 ? reach : rightOf(j));
+    const sidesOf = (i: number, j: number): number => (values[i] as number) + (j < 0 ? 0 : (values[j] as number));
+    // Right sides with stretches of left sides, from as near to the bark last: what lies beside falls, what the cant holds rises.
+    const stretches: { readonly i: number; readonly first: number; readonly last: number; readonly most: number; readonly hoped: number }[] = [];
+    let likeliest: (typeof stretches)[number] | undefined;
     for (let i = 0; i < columns.count; i++) {
-      const right = (columns.places[i] as number) - kerf;
+      const right = rightOf(i);
       if (right + reach <= 0) break;
       const most = heldTo(right, reach, band);
-      if (2 * (columns.values[i] as number) + most <= bound) continue;
-      let known = -1;
-      for (let j = i; j >= -1; j--) {
-        const left = j < 0 ? reach : (columns.places[j] as number) - kerf;
-        const width = fitting(widthClass, Math.min(left + right, widestCut));
-        if (width <= known) continue; // no wider a row than with more beside it
-        known = width;
-        const inside = valueIn(cantOf(width), height);
-        const sides = (columns.values[i] as number) + (j < 0 ? 0 : (columns.values[j] as number));
-        const hoped = sides + Math.min(inside, most);
-        if (hoped > bound + 1e-9) trials.push({ hoped, sides, inside, left, right });
+      for (let first = i; first >= -1; first -= TOGETHER) {
+        const last = Math.max(-1, first - TOGETHER + 1);
+        const beside = sidesOf(i, first);
+        if (beside + most <= bound) break;
+        const hoped = beside + Math.min(most, insideOf(right, leftOf(last)));
+        if (hoped <= bound + 1e-9) continue;
+        const stretch = { i, first, last, most, hoped };
+        stretches.push(stretch);
+        if (hoped > (likeliest?.hoped ?? 0)) likeliest = stretch;
       }
     }
-    trials.sort((a, b) => b.hoped - a.hoped);
+    const hopes: { readonly hope: number; readonly exact: boolean; readonly sides: number; readonly left: Units; readonly right: Units }[] = [];
+    const tryAll = ({ i, first, last, most }: (typeof stretches)[number]): void => {
+      const right = rightOf(i);
+      let known = 0;
+      for (let j = first; j >= last; j--) {
+        const left = leftOf(j);
+        const inside = insideOf(right, left);
+        if (inside <= known) continue; // holds nothing, or no more than with more beside it
+        known = inside;
+        const sides = sidesOf(i, j);
+        if (sides + Math.min(inside, most) <= bound + 1e-9) continue;
+        const room = heldTo(right, left, band);
+        const hope = sides + Math.min(inside, room);
+        bound = Math.max(bound, hope);
+        if (hope > Math.max(value, enough) + 1e-9) hopes.push({ hope, exact: inside <= room, sides, left, right });
+      }
+    };
+    if (likeliest) tryAll(likeliest);
+    for (const stretch of stretches) if (stretch.hoped > bound + 1e-9) tryAll(stretch);
+    hopes.sort((a, b) => b.hope - a.hope);
     let tries = 0;
-    for (const { hoped, sides, inside, left, right } of trials) {
-      if (hoped <= bound + 1e-9) break;
-      const most = heldTo(right, left, band);
-      const hope = sides + Math.min(inside, most);
-      bound = Math.max(bound, hope);
-      const clear = heart === 0 || Math.min(left, right) + kerf >= heart;
-      if (!clear || hope <= Math.max(value, enough) + 1e-9 || tries >= WANEY_TRIES) continue;
+    for (const { hope, exact: fits, sides, left, right } of hopes) {
+      if (hope <= Math.max(value, enough) + 1e-9 || tries >= WANEY_TRIES) break;
+      if (heart > 0 && Math.min(left, right) + kerf < heart) continue;
       const from = Math.max(-left, right - widestCut);
-      const exact = heart === 0 && inside <= most && Math.max(-from, right) ** 2 + Math.max(band.below, band.above) ** 2 <= leastRadius;
+      const exact = heart === 0 && fits && Math.max(-from, right) ** 2 + Math.max(band.below, band.above) ** 2 <= leastRadius;
       if (!exact) tries++;
       const rule = acrossLog(stock, from, right);
       const found = exact ? hope : sides + layersValue(rule, cantStack(stock, rule, band));

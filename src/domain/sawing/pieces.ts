@@ -156,6 +156,14 @@ export function stockOf(log: LogShape, mill: Mill, pieces: readonly Piece[], wan
   };
 }
 
+/** A stock that holds no less: every board has the worth of its longest choice and the room of the shortest board. */
+export const roomierStock = (stock: Stock): Stock => ({
+  ...stock,
+  radiusSquared: [stock.radiusSquared.reduce((most, each) => Math.max(most, each), 0)],
+  groups: stock.groups.map((group) => ({ ...group, widths: group.widths.map(({ width, choices }) => ({ width, choices: choices.slice(0, 1).map((choice) => ({ ...choice, length: 0 })) })) })),
+  oneLength: true,
+});
+
 /** How much work a stock is: boards to choose from times the log's radius in inches. Six fixed sizes in a 30-inch log are about 100. */
 export const workOf = (stock: Stock): number =>
   stock.groups.reduce((sum, group) => sum + group.widths.reduce((count, width) => count + width.choices.length, 0), 0) * (stock.reach / UNITS_PER_IN);

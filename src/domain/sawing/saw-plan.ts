@@ -1,12 +1,12 @@
 import { type Board, totalBoardFeet, totalValue } from './board.ts';
 import { areaBound, BOUND_COVERS } from './bound.ts';
-import { cantPlan, THOROUGH } from './cant.ts';
+import { cantPlan, QUICK, THOROUGH } from './cant.ts';
 import { type Solved, withCounts } from './counted.ts';
 import { type Cut, cutsOf } from './cuts.ts';
 import { flatStack, livePlan } from './live.ts';
 import type { LogShape } from './log-shape.ts';
 import type { Stack } from './layers.ts';
-import { type Mill, type Piece, type Stock, stockOf, withFewerLengths, workOf } from './pieces.ts';
+import { type Mill, type Piece, roomierStock, type Stock, stockOf, withFewerLengths, workOf } from './pieces.ts';
 import { quartersawnPlan } from './quartersawn.ts';
 import { inches } from './units.ts';
 
@@ -58,11 +58,19 @@ export class Planner {
     // Very many thicknesses in a very large log: the live plan stands, under a bound that covers every cant too.
     if (stock.groups.length * inches(stock.reach) > MOST_CANT_WORK) return { boards: livePlan(stock, this.flats), bound: most };
     const { boards, bound } = cantPlan(stock, this.flats, live, this.effort);
-    return { boards: boards.length > 0 ? boards : livePlan(stock, this.flats), bound: stock.oneLength ? Math.min(bound, most) : Math.max(live, most) };
+    const found = boards.length > 0 ? boards : livePlan(stock, this.flats);
+    if (stock.oneLength) return { boards: found, bound: Math.min(bound, most) };
+    // Of several lengths: no more than when every board had the longest one's worth and the shortest one's room.
+    const roomy = roomierStock(stock);
+    const roomyFlats = flatStack(roomy);
+    const relaxed = cantPlan(roomy, roomyFlats, live, Math.ceil(this.effort / 2)).bound;
+    return { boards: found, bound: Math.max(live, Math.min(most, Math.max(relaxed, roomyFlats.above(-roomy.reach)))) };
   }
 }
 
 const COUNT_ROUNDS = 14;
+/** Logs up to this diameter are searched at the full length; the search of a larger one grows with the square of it. */
+const FULL_SEARCH_IN = 21;
 /** Work (see `workOf`) up to which the search is at its full length, and the most that is taken on. */
 const ORDINARY_WORK = 2000;
 const MOST_WORK = 30_000;
@@ -100,17 +108,17 @@ export function sawPlan(request: SawPlanRequest): SawPlan {
   const work = workOf(full);
   const fewer = withFewerLengths(pieces, log.lengthFt, work, MOST_WORK);
   const whole = fewer === pieces ? full : stockOf(log, mill, fewer, waneAllowanceIn);
-  const share = Math.max(0.05, Math.min(1, ORDINARY_WORK / workOf(whole)));
+  const share = Math.max(0.05, Math.min(1, ORDINARY_WORK / workOf(whole), (FULL_SEARCH_IN / (2 * inches(whole.reach))) ** 3));
   const planners = new Map<Stock, Planner>();
   const plannerOf = (stock: Stock): Planner => {
-    const planner = planners.get(stock) ?? new Planner(stock, Math.ceil(effort * share));
+    const planner = planners.get(stock) ?? new Planner(stock, Math.ceil((stock === whole ? effort : Math.min(effort, QUICK)) * share));
     planners.set(stock, planner);
     return planner;
   };
   const rounds = Math.max(3, Math.ceil(COUNT_ROUNDS * share));
   const tried = (pattern === 'best' ? PATTERNS : [pattern]).map((each) => ({
     pattern: each,
-    ...withCounts(whole, waneAllowanceIn, (stock) => plannerOf(stock).solve(each), rounds),
+    ...withCounts(whole, waneAllowanceIn, (stock) => plannerOf(stock).solve(each), rounds, each !== 'quartersawn'),
   }));
   const won = tried.reduce((best, each) => (totalValue(each.boards, pieces) > totalValue(best.boards, pieces) + 1e-9 ? each : best));
   if (won.boards.length === 0) return { ...empty(pattern, nothingFits(request)), upperBoundValue: Math.max(0, ...tried.map((each) => each.bound)) };
