@@ -5,14 +5,17 @@ import type { ListingState } from './states/listing.ts';
 
 /**
  * What an account is to a thing. `owner` made the listing, `bidder` made the bid, `landowner` and `sawyer` are the two sides of
- * a booking, `member` is any active account with a confirmed address, `anySawyer` one that works as a sawyer.
+ * a booking, `member` is any active account with a confirmed address, `anySawyer` one that works as a sawyer. `suspended` takes away:
+ * such an account reads its own things and finishes what has begun, nothing else.
  */
-export type Role = 'owner' | 'bidder' | 'landowner' | 'sawyer' | 'anySawyer' | 'member' | 'moderator';
+export type Role = 'owner' | 'bidder' | 'landowner' | 'sawyer' | 'anySawyer' | 'member' | 'moderator' | 'suspended';
 
 interface Rule<State extends string> {
   readonly who: readonly Role[];
   /** The states in which the deed is allowed; absent means any. */
   readonly states?: readonly State[];
+  /** Whether a suspended account may still do it: `true`, or only in these states. */
+  readonly whileSuspended?: true | readonly State[];
 }
 
 const rules = <State extends string>() => <const Action extends string>(table: Readonly<Record<Action, Rule<State>>>) => table;
@@ -26,22 +29,22 @@ export const permissions = {
     publish: { who: ['owner'], states: ['draft'] },
     withdraw: { who: ['owner'], states: ['open'] },
     addPhoto: { who: ['owner'], states: ['draft', 'open', 'closed', 'matched'] },
-    seeBids: { who: ['owner', 'moderator'], states: ['open', 'closed', 'matched', 'done', 'withdrawn', 'lapsed'] },
+    seeBids: { who: ['owner', 'moderator'], states: ['open', 'closed', 'matched', 'done', 'withdrawn', 'lapsed'], whileSuspended: true },
     chooseBid: { who: ['owner'], states: ['open', 'closed'] },
     seePlace: { who: ['owner', 'moderator'] },
     bid: { who: ['anySawyer'], states: ['open'] },
     ask: { who: ['anySawyer', 'owner'], states: ['open', 'closed', 'matched'] },
-    hide: { who: ['moderator'] },
+    hide: { who: ['moderator'], states: ['open', 'closed', 'matched', 'done', 'withdrawn', 'lapsed'] },
   }),
   bid: rules<BidState>()({
-    see: { who: ['bidder', 'owner', 'moderator'] },
+    see: { who: ['bidder', 'owner', 'moderator'], whileSuspended: true },
     change: { who: ['bidder'], states: ['open', 'toConfirm'] },
     confirm: { who: ['bidder'], states: ['toConfirm'] },
     withdraw: { who: ['bidder'], states: ['open', 'toConfirm'] },
     choose: { who: ['owner'], states: ['open'] },
   }),
   booking: rules<BookingState>()({
-    see: { who: ['landowner', 'sawyer', 'moderator'] },
+    see: { who: ['landowner', 'sawyer', 'moderator'], whileSuspended: true },
     message: { who: ['landowner', 'sawyer'] },
     proposeDay: { who: ['landowner', 'sawyer'], states: ['proposed', 'agreed', 'held'] },
     confirmDay: { who: ['landowner', 'sawyer'], states: ['proposed', 'agreed', 'held'] },
@@ -50,15 +53,15 @@ export const permissions = {
     cancelForBoth: { who: ['moderator'], states: ['proposed', 'agreed', 'held'] },
     seePlace: { who: ['landowner', 'sawyer', 'moderator'], states: ['held', 'sawing', 'tallied', 'queried', 'signed', 'settled'] },
     startSawing: { who: ['sawyer'], states: ['held'] },
-    enterTally: { who: ['sawyer'], states: ['held', 'sawing'] },
-    allowMetal: { who: ['landowner'], states: ['sawing'] },
-    offerTally: { who: ['sawyer'], states: ['sawing'] },
-    amendTally: { who: ['sawyer'], states: ['queried'] },
-    signTally: { who: ['landowner'], states: ['tallied', 'queried'] },
-    queryTally: { who: ['landowner'], states: ['tallied'] },
+    enterTally: { who: ['sawyer'], states: ['held', 'sawing'], whileSuspended: ['sawing'] },
+    allowMetal: { who: ['landowner'], states: ['sawing'], whileSuspended: true },
+    offerTally: { who: ['sawyer', 'moderator'], states: ['sawing'], whileSuspended: true },
+    amendTally: { who: ['sawyer'], states: ['queried'], whileSuspended: true },
+    signTally: { who: ['landowner'], states: ['tallied', 'queried'], whileSuspended: true },
+    queryTally: { who: ['landowner'], states: ['tallied'], whileSuspended: true },
     decideTally: { who: ['moderator'], states: ['queried'] },
-    topUp: { who: ['landowner'], states: ['sawing', 'tallied', 'queried', 'signed'] },
-    acceptHeld: { who: ['sawyer'], states: ['signed'] },
+    topUp: { who: ['landowner'], states: ['sawing', 'tallied', 'queried', 'signed'], whileSuspended: true },
+    acceptHeld: { who: ['sawyer'], states: ['signed'], whileSuspended: true },
     review: { who: ['landowner', 'sawyer'], states: ['settled'] },
   }),
   sawyer: rules<never>()({
@@ -71,6 +74,9 @@ export const permissions = {
     restore: { who: ['moderator'], states: ['suspended'] },
     seeCertificate: { who: ['moderator'], states: ['active', 'suspended'] },
     endSecondFactor: { who: ['moderator'], states: ['active', 'suspended'] },
+  }),
+  message: rules<never>()({
+    hide: { who: ['moderator'] },
   }),
   report: rules<never>()({
     handle: { who: ['moderator'] },
@@ -90,6 +96,7 @@ export function may<S extends Subject>(subject: S, action: Action<S>, roles: Rea
   const rule = (permissions[subject] as Readonly<Record<string, Rule<string>>>)[action];
   if (!rule) return false;
   if (rule.states && (state === undefined || !rule.states.includes(state))) return false;
+  if (roles.has('suspended') && rule.whileSuspended !== true && !(state !== undefined && rule.whileSuspended?.includes(state))) return false;
   return rule.who.some((role) => roles.has(role));
 }
 

@@ -19,7 +19,7 @@ interface BookingLike {
 /** What this viewer is to a listing. Nobody is a sawyer on their own listing. */
 export function rolesOnListing(viewer: Viewer | null, listing: ListingLike): Set<Role> {
   const roles = baseRoles(viewer);
-  if (viewer?.active && viewer.id === listing.ownerId) {
+  if (viewer && viewer.id === listing.ownerId) {
     roles.add('owner');
     roles.delete('anySawyer');
   }
@@ -29,15 +29,15 @@ export function rolesOnListing(viewer: Viewer | null, listing: ListingLike): Set
 /** What this viewer is to a bid. */
 export function rolesOnBid(viewer: Viewer | null, bid: BidLike, listing: ListingLike): Set<Role> {
   const roles = rolesOnListing(viewer, listing);
-  if (viewer?.active && viewer.id === bid.sawyerId) roles.add('bidder');
+  if (viewer && viewer.id === bid.sawyerId) roles.add('bidder');
   return roles;
 }
 
 /** What this viewer is to a booking. */
 export function rolesOnBooking(viewer: Viewer | null, booking: BookingLike): Set<Role> {
   const roles = baseRoles(viewer);
-  if (viewer?.active && viewer.id === booking.landownerId) roles.add('landowner');
-  if (viewer?.active && viewer.id === booking.sawyerId) roles.add('sawyer');
+  if (viewer && viewer.id === booking.landownerId) roles.add('landowner');
+  if (viewer && viewer.id === booking.sawyerId) roles.add('sawyer');
   return roles;
 }
 
@@ -49,9 +49,10 @@ export function rolesOnBooking(viewer: Viewer | null, booking: BookingLike): Set
 export function authorize<S extends Subject>(viewer: Viewer | null, subject: S, action: Action<S>, roles: ReadonlySet<Role>, state?: string): asserts viewer is Viewer {
   if (!viewer) throw signedOut();
   if (may(subject, action, roles, state)) return;
+  if (!viewer.active) throw forbidden('This account is suspended: it can read and finish what has begun, nothing else.');
   const rule = (permissions[subject] as Readonly<Record<string, { who: readonly Role[] }>>)[action];
   if (rule?.who.some((role) => roles.has(role))) throw conflict('That can no longer be done: things have moved on. Load the page again to see where it stands.');
-  if (viewer.active && !viewer.emailConfirmed) throw forbidden('Confirm your e-mail address first: the link is in the message we sent you.');
+  if (!viewer.emailConfirmed) throw forbidden('Confirm your e-mail address first: the link is in the message we sent you.');
   throw forbidden();
 }
 

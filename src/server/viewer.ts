@@ -32,7 +32,8 @@ export const system = (name: string): System => ({ id: null, name });
 /** The roles an account has everywhere, before any thing is looked at. */
 export function baseRoles(viewer: Viewer | null): Set<Role> {
   const roles = new Set<Role>();
-  if (!viewer?.active) return roles;
+  if (!viewer) return roles;
+  if (!viewer.active) return roles.add('suspended');
   if (viewer.emailConfirmed) roles.add('member');
   if (viewer.emailConfirmed && viewer.isSawyer) roles.add('anySawyer');
   if (viewer.isModerator) roles.add('moderator');

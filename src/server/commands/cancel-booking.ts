@@ -38,7 +38,7 @@ export async function cancelBooking(by: Viewer, input: { readonly booking: numbe
   await inTransaction(async () => {
     const booking = await lockBooking(input.booking);
     authorize(by, 'booking', 'cancel', rolesOnBooking(by, booking), booking.status);
-    await endBeforeSawing(by, booking, by.id === booking.landownerId ? 'landowner' : 'sawyer', input, at);
+    await endBeforeSawing(by, booking, { side: by.id === booking.landownerId ? 'landowner' : 'sawyer', saidBy: by.name, ...input }, at);
   });
 }
 
@@ -47,24 +47,33 @@ export async function cancelForBoth(by: Viewer, input: { readonly booking: numbe
   await inTransaction(async () => {
     const booking = await lockBooking(input.booking);
     authorize(by, 'booking', 'cancelForBoth', rolesOnBooking(by, booking), booking.status);
-    await endBeforeSawing(by, booking, 'sawyer', input, at);
+    await endBeforeSawing(by, booking, { side: 'sawyer', saidBy: 'A moderator', reason: input.reason }, at);
   });
 }
 
-/** @param side who counts as the one that cancels: it decides what is owed */
-async function endBeforeSawing(by: Viewer, booking: Booking, side: 'landowner' | 'sawyer', input: { readonly reason: string; readonly expects?: number }, at: Date): Promise<void> {
+interface Ending {
+  /** Who counts as the one that cancels: it decides what is owed. For `sawyer` everything goes back. */
+  readonly side: 'landowner' | 'sawyer';
+  /** How letters name who did it. */
+  readonly saidBy: string;
+  readonly reason: string;
+  readonly expects?: number;
+}
+
+/** Ends a booking that the caller has locked and allowed to be cancelled. @throws Refusal `conflict` while the card payment is disputed */
+export async function endBeforeSawing(by: Actor, booking: Booking, { side, saidBy, reason, expects }: Ending, at: Date): Promise<void> {
   const payment = await HeldPayment.findOne({ where: { bookingId: booking.id }, lock: true });
   const parts = booking.status === 'held' ? await cancellationOf(booking, side, at) : null;
-  if (parts && input.expects !== undefined && parts.payableCents > input.expects) {
+  if (parts && expects !== undefined && parts.payableCents > expects) {
     throw conflict(`It is now less than 48 hours to the start: cancelling costs ${formatCents(parts.payableCents)} for set-up and travel. Look again before you cancel.`);
   }
   if (parts && payment?.disputedAt) throw conflict('The card payment is disputed at the bank. A moderator ends this booking when the bank has decided.');
-  await transition(bookingStates, 'cancel', booking, by, at, { cancelledBy: by.id, cancelReason: input.reason, updatedAt: at });
+  await transition(bookingStates, 'cancel', booking, by, at, { cancelledBy: by.id, cancelReason: reason, updatedAt: at });
   if (payment?.status === 'due') await voidPayment(by, payment, at);
   if (parts && payment) await payOut(by, booking, payment, parts, 'cancellation', at);
   await afterEnding(by, booking, at);
   const parties = await partiesOf(booking);
   for (const person of [parties.landowner, parties.sawyer]) {
-    await enqueue('send-mail', bookingCancelled(person, by.name, input.reason, parts ? moneyWords(parts) : 'No money was held.', bookingLink(booking)));
+    await enqueue('send-mail', bookingCancelled(person, saidBy, reason, parts ? moneyWords(parts) : 'No money was held.', bookingLink(booking)));
   }
 }

@@ -9,13 +9,14 @@ import { authorize, rolesOnBid, rolesOnListing } from '../authorize.ts';
 import { refuseBlocked } from '../blocks.ts';
 import { inTransaction, refusedBy } from '../db.ts';
 import { env } from '../env.ts';
-import { conflict } from '../errors.ts';
+import { conflict, forbidden } from '../errors.ts';
 import { enqueue } from '../jobs/queue.ts';
 import { linkTo } from '../parties.ts';
 import { Account } from '../models/account.ts';
 import { Booking, Conversation, Outing, WorkAgreement } from '../models/booking.ts';
 import type { Listing } from '../models/listing.ts';
 import { Bid } from '../models/sawyer.ts';
+import { holdActive } from '../standing.ts';
 import { record, transition } from '../transition.ts';
 import type { Viewer } from '../viewer.ts';
 import type { FrozenEstimate } from '../bid-work.ts';
@@ -39,8 +40,10 @@ export async function chooseBid(by: Viewer, bidId: string, listingRevision: numb
       }
       authorize(by, 'bid', 'choose', rolesOnBid(by, bid, listing), bid.status);
       await refuseBlocked(by.id, bid.sawyerId);
+      if (listing.hiddenAt !== null) throw conflict('A moderator has taken this listing off show, so no bid can be chosen now.');
       const sawyer = await Account.findByPk(bid.sawyerId, { rejectOnEmpty: true });
-      if (sawyer.status !== 'active') throw conflict('This sawyer’s account is not active at present. Choose another bid.');
+      if (!(await holdActive(by.id))) throw forbidden('This account is suspended.');
+      if (!(await holdActive(bid.sawyerId))) throw conflict('This sawyer’s account is not active at present. Choose another bid.');
       const others = await Bid.findAll({ where: { listingId: listing.id, status: ['open', 'toConfirm'] }, order: [['id', 'ASC']], lock: true });
       await transition(bidStates, 'choose', bid, by, at, { decidedAt: at, updatedAt: at });
       for (const other of others.filter(({ id }) => id !== bid.id)) await decline(other, listing, by, at);

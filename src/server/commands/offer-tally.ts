@@ -13,15 +13,17 @@ import { transition } from '../transition.ts';
 import type { Viewer } from '../viewer.ts';
 
 /**
- * The sawyer offers the tally for signing. From now on the landowner has 72 hours; unanswered it counts as signed, up to the hold.
+ * The sawyer offers the tally for signing, or a moderator does when the sawyer has left: then it may be empty. From now on the landowner has 72 hours; unanswered it counts as signed, up to the hold.
  * @throws Refusal `conflict` for a tally with nothing in it
  */
 export async function offerTally(by: Viewer, input: { readonly booking: number; readonly endedBySawyer: boolean; readonly note: string }, at: Date): Promise<void> {
   await inTransaction(async () => {
     const booking = await lockBooking(input.booking);
-    authorize(by, 'booking', 'offerTally', rolesOnBooking(by, booking), booking.status);
+    const roles = rolesOnBooking(by, booking);
+    authorize(by, 'booking', 'offerTally', roles, booking.status);
     const work = await tallyWork(booking);
-    if (!work || work.boards.length + work.culls.length + work.clock.length === 0) throw conflict('There is nothing in the tally yet. Enter boards, a cull log or hours first.');
+    const mayBeEmpty = input.endedBySawyer && !roles.has('sawyer');
+    if (!work || (work.boards.length + work.culls.length + work.clock.length === 0 && !mayBeEmpty)) throw conflict('There is nothing in the tally yet. Enter boards, a cull log or hours first.');
     const signBy = signingDeadline(at);
     await work.tally.update({ offeredAt: at, contentSha256: work.sha256, endedBySawyer: input.endedBySawyer, note: input.note.trim().slice(0, 1000) });
     await transition(bookingStates, 'offerTally', booking, by, at, { signBy, signReminders: 0, updatedAt: at });

@@ -10,6 +10,7 @@ import { conflict, forbidden } from '../errors.ts';
 import { enqueue } from '../jobs/queue.ts';
 import { lockListing } from '../locks.ts';
 import { linkTo } from '../parties.ts';
+import { holdActive } from '../standing.ts';
 import { transition } from '../transition.ts';
 import type { Viewer } from '../viewer.ts';
 import { columnsOf, understand } from './listing-answers.ts';
@@ -33,6 +34,7 @@ export async function publishListing(by: Viewer | null, input: ListingInput, at:
     const listing = await lockListing(input.number);
     authorize(by, 'listing', 'publish', rolesOnListing(by, listing), listing.status);
     if (!by.emailConfirmed) throw forbidden('Confirm your e-mail address first: the link is in the message we sent you.');
+    if (!(await holdActive(by.id))) throw forbidden('This account is suspended.');
     if (input.typedVersion !== listing.typedVersion) throw conflict(SAVED_ELSEWHERE);
     const typed = await withLogIds(input.typed, listing.id);
     await writeLogs(listing.id, understoodLogs(typed), at);

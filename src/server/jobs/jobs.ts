@@ -6,6 +6,7 @@ export interface Jobs {
   'process-photo': { photoId: string };
   'make-provider-call': { callId: string };
   'handle-provider-event': { eventId: string };
+  'wind-up-account': { accountId: string };
   sweep: { which?: string };
 }
 
@@ -15,5 +16,6 @@ export const queues: Readonly<Record<keyof Jobs, { retryLimit: number; retryDela
   'process-photo': { retryLimit: 3, retryDelay: 5, retryBackoff: true },
   'make-provider-call': { retryLimit: 10, retryDelay: 2, retryBackoff: true },
   'handle-provider-event': { retryLimit: 10, retryDelay: 1, retryBackoff: true },
+  'wind-up-account': { retryLimit: 8, retryDelay: 5, retryBackoff: true },
   sweep: { retryLimit: 0, retryDelay: 1, retryBackoff: false },
 };

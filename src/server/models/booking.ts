@@ -72,6 +72,7 @@ export const Message = table('message', {
   sentAt: instant(),
   readAt: nullable(instant()),
   hiddenAt: nullable(instant()),
+  hiddenReason: nullable(text()),
 });
 export type Message = Row<typeof Message>;
 

@@ -11,13 +11,15 @@ const roles: readonly Role[] = ['owner', 'bidder', 'landowner', 'sawyer', 'anySa
 
 /** Every role × action × state that is allowed, as lines a reviewer can read. */
 function matrix(): string[] {
-  const states = { listing: listingStates.states, bid: bidStates.states, booking: bookingStates.states, sawyer: [], account: accountStates.states, report: [], desk: [] } as const;
+  const states = { listing: listingStates.states, bid: bidStates.states, booking: bookingStates.states, sawyer: [], account: accountStates.states, message: [], report: [], desk: [] } as const;
   const lines: string[] = [];
   for (const subject of Object.keys(permissions) as (keyof typeof permissions)[]) {
     for (const action of Object.keys(permissions[subject])) {
       for (const role of roles) {
         const where = [undefined, ...states[subject]].filter((state) => may(subject, action as never, new Set([role]), state));
         if (where.length > 0) lines.push(`${subject}.${action} ${role}: ${where.includes(undefined) ? 'any' : where.join(' ')}`);
+        const suspended = [undefined, ...states[subject]].filter((state) => may(subject, action as never, new Set([role, 'suspended']), state));
+        if (suspended.length > 0) lines.push(`  ${role} while suspended: ${suspended.includes(undefined) ? 'any' : suspended.join(' ')}`);
       }
     }
   }

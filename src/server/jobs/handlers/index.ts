@@ -1,6 +1,7 @@
 import { now } from '../../clock.ts';
 import { handleProviderEvent } from '../../commands/handle-provider-event.ts';
 import { makeProviderCall } from '../../commands/make-provider-call.ts';
+import { windUpAccount } from '../../commands/wind-up-account.ts';
 import type { Jobs } from '../jobs.ts';
 import { sendMail } from '../../services/mail.ts';
 import { processPhoto } from './process-photo.ts';
@@ -12,5 +13,6 @@ export const handlers: { readonly [Name in keyof Jobs]?: (payload: Jobs[Name]) =
   'process-photo': processPhoto,
   'make-provider-call': async ({ callId }) => makeProviderCall(callId, now()),
   'handle-provider-event': async ({ eventId }) => handleProviderEvent(eventId, now()),
+  'wind-up-account': async ({ accountId }) => void (await windUpAccount(accountId, now())),
   sweep: async () => sweep(),
 };

@@ -1,0 +1,34 @@
+import { formatDayWithYear, type Day } from '~/domain/time.ts';
+import { letter } from './letter.ts';
+import type { MailMessage } from '~/server/services/mail.ts';
+
+interface To {
+  readonly name: string;
+  readonly email: string;
+}
+
+/** To someone whose second factor a moderator ended. */
+export const secondFactorEnded = (to: To): MailMessage =>
+  letter(to.email, 'Signing in no longer asks for a code', to.name, [
+    'A moderator ended the second step of signing in for your account, because you asked for it. Every session was ended: sign in again with your password.',
+    'Set up the second step anew under Account. If you did not ask for this, change your password now and answer this letter.',
+  ]);
+
+/** To someone who reported something, once it was looked at. What came of it concerns another person and is not told. */
+export const reportHandled = (to: To, reportedAt: Date): MailMessage =>
+  letter(to.email, 'We have looked at your report', to.name, [
+    `A moderator has looked at what you reported on ${formatDayWithYear(reportedAt.toISOString().slice(0, 10))}, and done what was needed.`,
+    'What came of it concerns someone else, so we do not write it here. If it happens again, report it again.',
+  ]);
+
+/** To a sawyer whose certificate of insurance a moderator has seen. */
+export const certificateSeen = (to: To, expiresOn: Day, link: string): MailMessage =>
+  letter(to.email, 'Your certificate of insurance was seen', to.name, [
+    `Landowners now read beside your name: certificate seen, expires on ${formatDayWithYear(expiresOn)}.`,
+    'Send the next one before that day.',
+    { button: 'See your page', href: link },
+  ]);
+
+/** To a sawyer whose certificate a moderator could not take. */
+export const certificateRefused = (to: To, reason: string, link: string): MailMessage =>
+  letter(to.email, 'Your certificate of insurance cannot be taken', to.name, [reason, { button: 'Send another', href: link }]);
