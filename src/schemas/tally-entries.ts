@@ -23,18 +23,21 @@ const cull = z.strictObject({
 const clock = z.strictObject({ kind: z.literal('clock'), id: z.uuid(), activity: z.enum(['preparing', 'sawing', 'waiting', 'breakdown', 'sharpening']), startsAt: z.iso.datetime({ offset: true }), endsAt: z.iso.datetime({ offset: true }) });
 const remove = z.strictObject({ kind: z.literal('remove'), id: z.uuid() });
 const logIds = z.array(z.uuid()).max(200);
+/** What is charged beside the sawing. Only what changed is sent, so that two phones do not undo each other. */
 const extras = z.strictObject({
-  kind: z.literal('extras'),
-  millMoves: z.number().int().min(0).max(20), stickers: z.number().int().min(0).max(5000), deliveryLoads: z.number().int().min(0).max(50),
-  wasteDone: z.enum(['left', 'hauled', 'bundled']), quartersawnLogIds: logIds, addedLogIds: logIds, draggedLogIds: logIds,
-  rainReturns: z.number().int().min(0).max(10), setUpsAgreedAgain: z.number().int().min(0).max(10),
+  kind: z.literal('extras'), id: z.uuid(),
+  millMoves: z.number().int().min(0).max(20).optional(), stickers: z.number().int().min(0).max(5000).optional(), deliveryLoads: z.number().int().min(0).max(50).optional(),
+  wasteDone: z.enum(['left', 'hauled', 'bundled']).optional(), quartersawnLogIds: logIds.optional(), draggedLogIds: logIds.optional(),
+  rainReturns: z.number().int().min(0).max(10).optional(),
 });
+/** The check-list has been gone through: sawing begins. */
+const start = z.strictObject({ kind: z.literal('start'), id: z.uuid() });
 
-export const tallyEntry = z.discriminatedUnion('kind', [board, hit, cull, clock, remove, extras]);
+export const tallyEntry = z.discriminatedUnion('kind', [board, hit, cull, clock, remove, extras, start]);
 export type TallyEntry = z.infer<typeof tallyEntry>;
 
-/** What a phone or page sends: entries in the order they were made. */
-export const tallyEntriesBody = z.strictObject({ entries: z.array(tallyEntry).min(1).max(500) });
+/** What a phone or page sends: entries in the order they were made. `account` is who made them: nobody else's session may send them. */
+export const tallyEntriesBody = z.strictObject({ account: z.uuid().optional(), entries: z.array(tallyEntry).min(1).max(500) });
 
 export const signForm = z.object({
   sha256: z.string().regex(/^[0-9a-f]{64}$/),

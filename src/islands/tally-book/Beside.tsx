@@ -124,11 +124,11 @@ export function Extras({ view, add }: BesideProps): ReactElement | null {
         {asked.map(({ field, label }) => (
           <Field key={field} name={field} label={label} type="number" min={0} step={1} figure width="short" value={view.extras[field]} onChange={(event) => {
             const value = Math.max(0, Math.floor(Number(event.target.value) || 0));
-            if (value <= (field === 'rainReturns' ? 10 : field === 'millMoves' ? 20 : field === 'deliveryLoads' ? 50 : 5000)) add({ kind: 'extras', ...view.extras, [field]: value } as TallyEntry);
+            if (value <= (field === 'rainReturns' ? 10 : field === 'millMoves' ? 20 : field === 'deliveryLoads' ? 50 : 5000)) add({ kind: 'extras', id: newId(), [field]: value });
           }} />
         ))}
         {view.terms.waste !== 'left' && (
-          <Select name="wasteDone" label="Slabs and sawdust" value={view.extras.wasteDone} options={[{ value: view.terms.waste, label: `${view.terms.waste} as agreed` }, { value: 'left', label: 'left at the landing' }]} onChange={(event) => add({ kind: 'extras', ...view.extras, wasteDone: event.target.value } as TallyEntry)} />
+          <Select name="wasteDone" label="Slabs and sawdust" value={view.extras.wasteDone} options={[{ value: view.terms.waste, label: `${view.terms.waste} as agreed` }, { value: 'left', label: 'left at the landing' }]} onChange={(event) => add({ kind: 'extras', id: newId(), wasteDone: event.target.value === 'left' ? 'left' : view.terms.waste })} />
         )}
       </div>
     </details>

@@ -13,6 +13,7 @@ import { linkTo, partiesOf } from '../parties.ts';
 import { frozenTerms, type KeptClock } from '../tally-work.ts';
 import { record } from '../transition.ts';
 import type { Viewer } from '../viewer.ts';
+import { beginSawing } from './start-sawing.ts';
 
 /** Writes one entry. Everything is keyed by the id it was made with, so a repeated send changes nothing. */
 async function enter(entry: TallyEntry, tally: Tally, sequence: number, at: Date): Promise<void> {
@@ -41,17 +42,29 @@ async function enter(entry: TallyEntry, tally: Tally, sequence: number, at: Date
       tally.clock = (tally.clock as KeptClock[]).filter(({ id }) => id !== entry.id);
       return;
     case 'extras': {
-      const { kind: _, ...extras } = entry;
-      tally.extras = extras;
+      const { kind: _, id: __, ...changed } = entry;
+      tally.extras = { ...tally.extras, ...changed };
+      return;
     }
+    case 'start':
+      return;
   }
+}
+
+/** Entries without a row of their own, which are known again by this table. */
+const remembered: ReadonlySet<TallyEntry['kind']> = new Set(['extras', 'start']);
+
+/** Whether an entry is new. A repeated one was done before and is left alone. */
+async function isNew(entry: TallyEntry, by: Viewer, booking: Booking, at: Date): Promise<boolean> {
+  if (!remembered.has(entry.kind)) return true;
+  return (await execute('INSERT INTO tally_entry (id, booking_id, kind, entered_by, entered_at) VALUES ($1, $2, $3, $4, $5) ON CONFLICT (id) DO NOTHING', [entry.id, booking.id, entry.kind, by.id, at])) === 1;
 }
 
 /** Entries may only name logs of this booking's listing. */
 async function refuseStrangeLogs(entries: readonly TallyEntry[], booking: Booking): Promise<void> {
   const known = new Set((await Log.findAll({ where: { listingId: booking.listingId }, attributes: ['id'] })).map(({ id }) => id));
   const problems = entries.flatMap((entry, index) => {
-    const named = 'logId' in entry && entry.logId !== null ? [entry.logId] : entry.kind === 'extras' ? [...entry.quartersawnLogIds, ...entry.addedLogIds, ...entry.draggedLogIds] : [];
+    const named = 'logId' in entry && entry.logId !== null ? [entry.logId] : entry.kind === 'extras' ? [...(entry.quartersawnLogIds ?? []), ...(entry.draggedLogIds ?? [])] : [];
     return named.some((id) => !known.has(id)) ? [{ path: `entries.${index}.logId`, message: 'This log is not one of the listing’s.' }] : [];
   });
   if (problems.length > 0) throw invalid(problems);
@@ -75,6 +88,7 @@ export async function enterTally(by: Viewer, input: { readonly booking: number; 
   return inTransaction(async () => {
     const booking = await lockBooking(input.booking);
     const roles = rolesOnBooking(by, booking);
+    if (input.entries.some(({ kind }) => kind === 'start') && booking.status === 'held') await beginSawing(by, booking, at);
     authorize(by, 'booking', booking.status === 'queried' ? 'amendTally' : 'enterTally', roles, booking.status);
     const tally = await Tally.findOne({ where: { bookingId: booking.id, part: 1 }, lock: true });
     if (!tally) throw conflict('Go through the check-list and start sawing first.');
@@ -82,7 +96,7 @@ export async function enterTally(by: Viewer, input: { readonly booking: number; 
 
     const hitsBefore = await MetalHit.count({ where: { tallyId: tally.id, removedAt: null } });
     const last = await oneRow<{ sequence: number }>('SELECT coalesce(max(sequence), 0)::int AS sequence FROM tally_board WHERE tally_id = $1', [tally.id]);
-    for (const [index, entry] of input.entries.entries()) await enter(entry, tally, (last?.sequence ?? 0) + index + 1, at);
+    for (const [index, entry] of input.entries.entries()) if (await isNew(entry, by, booking, at)) await enter(entry, tally, (last?.sequence ?? 0) + index + 1, at);
 
     const checked = checkClock((tally.clock as KeptClock[]).map(({ activity, startsAt, endsAt }) => ({ activity, startsAt: new Date(startsAt), endsAt: new Date(endsAt) })));
     if (!checked.ok) throw invalid(checked.problems.map(({ path, message }) => ({ path: `clock.${path}`, message })));
