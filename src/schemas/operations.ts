@@ -45,6 +45,7 @@ export const operations: readonly Operation[] = [
   { method: 'delete', path: '/api/photos/{id}', summary: 'Take a photograph off its listing', signedIn: true },
   { method: 'post', path: '/api/photos/{id}/arrived', summary: 'Say that the file is in storage; it is checked next', signedIn: true, answer: photoViewSchema },
   { method: 'post', path: '/api/webhooks/payments', summary: "The payment provider's signed messages" },
+  { method: 'get', path: '/api/day', summary: 'The bookings to come with all that a phone keeps of them for the milling day', signedIn: true },
   { method: 'get', path: '/api/bookings/{number}/tally', summary: 'The tally of a booking, for its two sides', signedIn: true },
   { method: 'put', path: '/api/bookings/{number}/tally', summary: 'Enter boards, hits, cull logs, hours; each once by its id', signedIn: true, body: tallyEntriesBody },
   { method: 'get', path: '/api/places', summary: 'What a ZIP code is called and where it lies', query: placeQuery, answer: placeAnswer },

@@ -39,7 +39,7 @@ export interface TallyWork {
 }
 
 /** What was held for a booking: all that was charged for it, less what came when it was no longer due and went back. */
-async function heldCentsOf(bookingId: string): Promise<number> {
+export async function heldCentsOf(bookingId: string): Promise<number> {
   const row = await oneRow<{ cents: number }>(
     `SELECT coalesce(sum(charge.amount_cents), 0)::int AS cents FROM charge JOIN held_payment ON held_payment.id = charge.payment_id
      WHERE held_payment.booking_id = $1 AND charge.returned_because IS NULL`,
@@ -57,6 +57,10 @@ export async function frozenTerms(booking: Booking): Promise<BidTerms> {
 const chargeable = (log: Log) =>
   logToCharge({ id: log.id, species: log.species, smallEndIn: log.smallEndIn, lengthFt: log.lengthFt, ...(log.largeEndIn === null ? {} : { largeEndIn: log.largeEndIn }), defects: log.defects as Defect[] });
 
+/** The logs of the job: as listed, and those added on the day. */
+export const jobLogs = (booking: Booking): Promise<Log[]> =>
+  Log.findAll({ where: { listingId: booking.listingId, [Op.or]: [{ removedAt: null }, { addedOnTheDay: true }] }, order: [['position', 'ASC']] });
+
 /** Reads the tally of a booking and counts it. @returns null while none has been begun */
 export async function tallyWork(booking: Booking): Promise<TallyWork | null> {
   const tally = await Tally.findOne({ where: { bookingId: booking.id, part: 1 } });
@@ -65,7 +69,7 @@ export async function tallyWork(booking: Booking): Promise<TallyWork | null> {
   const boards = await TallyBoard.findAll({ ...standing, order: [['sequence', 'ASC'], ['id', 'ASC']] });
   const hits = await MetalHit.findAll({ ...standing, order: [['enteredAt', 'ASC'], ['id', 'ASC']] });
   const culls = await CullLog.findAll({ ...standing, order: [['enteredAt', 'ASC'], ['id', 'ASC']] });
-  const logs = await Log.findAll({ where: { listingId: booking.listingId, [Op.or]: [{ removedAt: null }, { addedOnTheDay: true }] }, order: [['position', 'ASC']] });
+  const logs = await jobLogs(booking);
   const clock = tally.clock as KeptClock[];
   const terms = await frozenTerms(booking);
   const job: JobTally = {

@@ -64,7 +64,7 @@ export function createFront(handler: Handler, clientFolder: string, settings: En
   const files = sirv(clientFolder, {
     etag: true,
     setHeaders: (response, path) => {
-      response.setHeader('cache-control', path.startsWith('/_astro/') ? 'public, max-age=31536000, immutable' : path === '/sw.js' ? 'no-cache' : 'public, max-age=600');
+      response.setHeader('cache-control', path.startsWith('/_astro/') ? 'public, max-age=31536000, immutable' : path === '/service-worker.js' ? 'no-cache' : 'public, max-age=600');
     },
   });
 

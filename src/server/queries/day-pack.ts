@@ -1,0 +1,55 @@
+import { accessSaid, landingSaid, treeSaid } from '~/domain/listing/page-words.ts';
+import type { Access, Landing, Waste } from '~/domain/listing/answers.ts';
+import { abilities } from '~/domain/permissions.ts';
+import { formatDayWithYear } from '~/domain/time.ts';
+import type { DayBooking, DayPack } from '~/schemas/day.ts';
+import { rolesOnBooking } from '../authorize.ts';
+import { bookedDaysOf } from '../invitations.ts';
+import { Booking, Listing } from '../models/index.ts';
+import { otherParty, partiesOf } from '../parties.ts';
+import { tallyView } from '../tally-view.ts';
+import { tallyWork } from '../tally-work.ts';
+import type { Viewer } from '../viewer.ts';
+import { exactPlace } from './listing-page.ts';
+
+/** A phone keeps at most this many bookings: the nearest days first. */
+const MOST = 20;
+
+async function dayBooking(viewer: Viewer, booking: Booking): Promise<DayBooking> {
+  const can = abilities('booking', rolesOnBooking({ ...viewer, isModerator: false }, booking), booking.status);
+  const listing = await Listing.findByPk(booking.listingId, { rejectOnEmpty: true });
+  const other = otherParty(await partiesOf(booking), viewer.id);
+  const exact = can.seePlace && listing.place ? exactPlace(listing) : null;
+  const { access, landing, waste } = listing;
+  return {
+    number: booking.number,
+    title: listing.title ?? '',
+    side: viewer.id === booking.landownerId ? 'landowner' : 'sawyer',
+    status: booking.status,
+    otherName: other.name,
+    otherEmail: other.email,
+    town: [listing.town, listing.state].filter(Boolean).join(', '),
+    place: exact ? { ...exact.point, directions: exact.directions } : null,
+    days: await bookedDaysOf(booking.id),
+    startsAt: booking.startsAt?.toISOString() ?? null,
+    timeZone: booking.timeZone,
+    tree: treeSaid({ howDown: listing.howDown ?? '', endsSealed: listing.endsSealed ?? false, metalRisk: listing.metalRisk ?? '', metalNote: listing.metalNote }, listing.cameDownOn ? formatDayWithYear(listing.cameDownOn) : ''),
+    access: access ? accessSaid(access as unknown as Access) : [],
+    landing: landing && waste ? landingSaid(landing as unknown as Landing, waste as unknown as Waste) : [],
+    note: listing.note,
+    tally: await tallyView(booking, await tallyWork(booking)),
+  };
+}
+
+/**
+ * The bookings whose work lies ahead, is going on or waits for a signature, with everything a phone needs in a field without signal.
+ * Leans on the indexes of `booking` by landowner and by sawyer.
+ */
+export async function dayPack(viewer: Viewer, at: Date): Promise<DayPack> {
+  const mine = await Booking.findAll({ where: { status: ['held', 'sawing', 'tallied', 'queried'], landownerId: viewer.id } });
+  const asSawyer = await Booking.findAll({ where: { status: ['held', 'sawing', 'tallied', 'queried'], sawyerId: viewer.id } });
+  const all = [...mine, ...asSawyer].sort((a, b) => (a.startsAt?.getTime() ?? 0) - (b.startsAt?.getTime() ?? 0)).slice(0, MOST);
+  const bookings: DayBooking[] = [];
+  for (const booking of all) bookings.push(await dayBooking(viewer, booking));
+  return { account: { id: viewer.id, name: viewer.name }, at: at.toISOString(), bookings };
+}
