@@ -2,18 +2,44 @@ import { defineConfig } from 'astro/config';
 import node from '@astrojs/node';
 import react from '@astrojs/react';
 import tailwind from '@astrojs/tailwind';
+import pwa from '@vite-pwa/astro';
 import { serverOnly } from './src/launch/server-only.mjs';
+import { shellFiles } from './src/launch/shell-files.mjs';
 
 // One build runs anywhere: these two stand for the payment page's and the storage's origins, which the middleware puts into
 // the policy from the environment of the running server.
 const payments = 'https://payments.skidway.invalid';
 const storage = 'https://storage.skidway.invalid';
 
+// Pages that open without signal. They are made at build time and hold nobody's data.
+const shells = ['day/index.html', 'estimator/index.html'];
+const clientFolder = new URL('./dist/client/', import.meta.url).pathname;
+
+const offline = pwa({
+  strategies: 'injectManifest',
+  srcDir: 'src/islands/day',
+  filename: 'service-worker.ts',
+  // The manifest is a file of ours, and the page registers the worker by a script of its own.
+  manifest: false,
+  injectRegister: null,
+  injectManifest: {
+    globPatterns: ['{day,estimator}/index.html', '_astro/*.{js,css,woff2,svg}', 'icon-192.png', 'favicon.svg', 'manifest.webmanifest'],
+    maximumFileSizeToCacheInBytes: 4_000_000,
+    manifestTransforms: [
+      async (entries) => {
+        const needed = shellFiles(clientFolder, shells);
+        const kept = entries.filter(({ url }) => needed.has(url) || !/^_astro\//.test(url));
+        return { manifest: kept.map((entry) => ({ ...entry, url: `/${entry.url.replace(/\/index\.html$/, '')}` })), warnings: [] };
+      },
+    ],
+  },
+});
+
 export default defineConfig({
   output: 'server',
   // Behind our own HTTP front (src/server/http): it caps bodies, checks Host and Origin and strips forwarded headers.
   adapter: node({ mode: 'middleware' }),
-  integrations: [react(), tailwind({ applyBaseStyles: false })],
+  integrations: [react(), tailwind({ applyBaseStyles: false }), offline],
   trailingSlash: 'ignore',
   devToolbar: { enabled: false },
   build: { inlineStylesheets: 'never' },

@@ -43,6 +43,9 @@ export const paths = {
   bids: '/sawyer/bids',
   calendar: '/sawyer/calendar',
 
+  /** What is kept on the phone of the days to come; opens without signal. `#1042` opens that booking. */
+  day: '/day',
+  dayOf: (number: number) => `/day#${number}`,
   bookings: '/bookings',
   booking: (number: number) => `/bookings/${number}`,
   agreement: (number: number) => `/bookings/${number}/agreement`,

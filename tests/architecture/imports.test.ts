@@ -17,7 +17,7 @@ const rooms: Readonly<Record<string, readonly string[]>> = {
   'src/server': ['src/server', 'src/domain', 'src/schemas', 'src/emails'],
   'src/emails': ['src/emails', 'src/domain'],
   'src/components': ['src/components', 'src/domain', 'src/schemas', 'src/islands', 'src/styles', 'src/layouts'],
-  'src/layouts': ['src/layouts', 'src/components', 'src/domain', 'src/styles', 'fonts'],
+  'src/layouts': ['src/layouts', 'src/components', 'src/islands/day/register.ts', 'src/domain', 'src/styles', 'fonts'],
   'src/islands': ['src/islands', 'src/domain', 'src/schemas', 'src/components'],
   'src/pages': ['src/pages', 'src/layouts', 'src/components', 'src/islands', 'src/domain', 'src/schemas', 'src/styles', 'src/server'],
   'src/middleware.ts': ['src/server', 'src/domain'],

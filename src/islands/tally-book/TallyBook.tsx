@@ -6,6 +6,7 @@ import { tallyRuleOf } from '~/domain/trade/tally-count.ts';
 import { thicknessName } from '~/domain/timber/tally.ts';
 import type { TallyEntry } from '~/schemas/tally-entries.ts';
 import type { TallyView } from '~/schemas/tally-view.ts';
+import { SavedBadge, SendingTrouble } from '~/islands/day/SavedLine.tsx';
 import { CullLogs, Extras, Hours, MetalHits } from './Beside.tsx';
 import { bySize, countView, oneBoard, stillWanted } from './count.ts';
 import { Pad, readInches } from './Pad.tsx';
@@ -14,6 +15,8 @@ import { useTallyQueue } from './use-tally-queue.ts';
 interface Props {
   readonly view: TallyView;
   readonly accountId: string;
+  /** Whether `view` has just come from the server; otherwise it is the phone's own copy. */
+  readonly fresh: boolean;
 }
 
 const quarters = [1, 1.25, 1.5, 2];
@@ -26,8 +29,9 @@ const sizeName = (view: TallyView, row: { thicknessIn: number; widthIn: number; 
   `${thicknessName(row.thicknessIn, tallyRuleOf(view.terms) === 'hardwood' ? 'hardwood' : 'softwood').replace(' in', '')} × ${formatFraction(row.widthIn)} × ${formatFraction(row.lengthFt)}`;
 
 /** The tally book: big keys for the next board, the sizes so far, and the money against the hold. Counts with or without signal. */
-export function TallyBook({ view: initial, accountId }: Props): ReactElement {
-  const { view, waiting, trouble, add } = useTallyQueue(initial, accountId);
+export function TallyBook({ view: initial, accountId, fresh }: Props): ReactElement {
+  const queue = useTallyQueue(initial, accountId, fresh);
+  const { view, add } = queue;
   const hardwood = tallyRuleOf(view.terms) === 'hardwood';
   const [logAt, setLogAt] = useState(0);
   const log = view.logs[logAt] ?? view.logs[0];
@@ -55,12 +59,12 @@ export function TallyBook({ view: initial, accountId }: Props): ReactElement {
   };
 
   return (
-    <div className="mx-auto max-w-[34rem]">
+    <div className="mx-auto max-w-[34rem]" data-pad>
       <div className="sticky top-0 z-10 flex items-center justify-between gap-3 bg-ink px-4 py-3 text-paper">
         <p className="font-slab text-lg font-bold">Tally · {log?.label ?? 'log'} of {view.logs.length}</p>
-        <p className={join('rounded px-3 py-1 text-sm font-semibold', waiting > 0 ? 'bg-amber text-[#fff]' : 'border border-paper')} role="status">{waiting > 0 ? `${waiting} saved here, not sent` : 'All sent'}</p>
+        <SavedBadge queue={queue} />
       </div>
-      {trouble && <p className="border-l-4 border-amber bg-sheet px-4 py-2" role="alert">{trouble}</p>}
+      <SendingTrouble queue={queue} />
 
       <div className="flex items-end justify-between gap-4 px-4 pt-4">
         <div className="text-sm"><p>Sawn so far</p><p className="figure text-base">{formatCents(counted.job.costCents)} <span className="text-ink-soft">of {formatCents(view.heldCents)} held</span></p></div>

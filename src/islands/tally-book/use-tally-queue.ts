@@ -1,122 +1,106 @@
-import { useCallback, useEffect, useRef, useState } from 'react';
+import { useCallback, useEffect, useMemo, useState } from 'react';
+import { dropRefused, entriesOf, putEntries, tryRefusedAgain } from '~/islands/day/queue.ts';
+import { sendAll, type Sending } from '~/islands/day/send.ts';
+import { database, keepTally, onChange, type Refused } from '~/islands/day/store.ts';
 import type { TallyEntry } from '~/schemas/tally-entries.ts';
 import type { TallyView } from '~/schemas/tally-view.ts';
-
-/** Where entries are kept on this device until the server has them: per account and booking. */
-const keyOf = (accountId: string, booking: number): string => `skidway.tally.${accountId}.${booking}`;
-
-function keptEntries(key: string): TallyEntry[] {
-  try {
-    const kept: unknown = JSON.parse(localStorage.getItem(key) ?? '[]');
-    return Array.isArray(kept) ? (kept as TallyEntry[]) : [];
-  } catch {
-    return [];
-  }
-}
-
-/** Lays entries that have not been sent yet over the tally as the server last told it. */
-export function withEntries(view: TallyView, entries: readonly TallyEntry[]): TallyView {
-  return entries.reduce<TallyView>((now, entry) => {
-    switch (entry.kind) {
-      case 'board': {
-        const { kind: _, boardKind, ...row } = entry;
-        return now.boards.some(({ id }) => id === entry.id) ? now : { ...now, boards: [...now.boards, { ...row, kind: boardKind }] };
-      }
-      case 'hit': {
-        const { kind: _, ...row } = entry;
-        return now.hits.some(({ id }) => id === entry.id) ? now : { ...now, hits: [...now.hits, row] };
-      }
-      case 'cull': {
-        const { kind: _, ...row } = entry;
-        return now.culls.some(({ id }) => id === entry.id) ? now : { ...now, culls: [...now.culls, row] };
-      }
-      case 'clock': {
-        const { kind: _, ...row } = entry;
-        return now.clock.some(({ id }) => id === entry.id) ? now : { ...now, clock: [...now.clock, row] };
-      }
-      case 'remove': {
-        const others = <Row extends { readonly id: string }>(rows: readonly Row[]): Row[] => rows.filter(({ id }) => id !== entry.id);
-        return { ...now, boards: others(now.boards), hits: others(now.hits), culls: others(now.culls), clock: others(now.clock) };
-      }
-      case 'extras': {
-        const { kind: _, ...extras } = entry;
-        return { ...now, extras };
-      }
-    }
-  }, view);
-}
+import { withEntries } from './with-entries.ts';
 
 export interface TallyQueue {
+  /** The tally with everything entered on this phone, sent or not. */
   readonly view: TallyView;
-  /** Entries kept here that the server does not have yet. */
+  /** How many entries are kept here that the server does not have yet. */
   readonly waiting: number;
-  /** Why the last sending failed, in words; null when it did not. */
+  readonly refused: readonly Refused[];
+  /** When something was last sent from this phone, as an instant. */
+  readonly sentAt: string | null;
+  readonly sending: Sending;
+  /** Why an entry could not be kept on this phone; null when all is well. */
   readonly trouble: string | null;
   readonly add: (...entries: TallyEntry[]) => void;
+  readonly tryAgain: () => void;
+  readonly drop: (item: Refused) => void;
+}
+
+const SEND_EVERY_MS = 10_000;
+/** How often the other phone's entries are asked for: signal in the woods is slow and metered. */
+const LOOK_EVERY_MS = 60_000;
+const FULL = 'This phone could not keep that entry: its storage is full or shut. Write it on paper, make room, and enter it again.';
+
+/** Asks the server how the tally stands when this phone has nothing to say: the other phone may have. */
+async function look(accountId: string, booking: number): Promise<void> {
+  const response = await fetch(`/api/bookings/${booking}/tally`);
+  if (!response.ok) return;
+  const view: TallyView = await response.json();
+  await keepTally(accountId, view);
 }
 
 /**
- * Keeps entries on the device first and sends them in order when there is signal: after each entry, when the browser comes online or
- * the page comes back into view, and every ten seconds while any wait. A repeated send adds nothing, because ids are made here.
+ * Keeps entries on the phone first and sends them in order when there is signal: after each entry, when the browser comes online, when
+ * the page is opened or comes back into view, and every ten seconds. Several pages and phones may do so at once.
+ * @param initial the tally to begin with; a later one that the phone keeps takes its place
+ * @param fresh whether the server has just told `initial`, or it comes from the phone itself
  */
-export function useTallyQueue(initial: TallyView, accountId: string): TallyQueue {
-  const key = keyOf(accountId, initial.booking);
+export function useTallyQueue(initial: TallyView, accountId: string, fresh: boolean): TallyQueue {
+  const { booking } = initial;
   const [server, setServer] = useState(initial);
-  const [queued, setQueued] = useState<readonly TallyEntry[]>([]);
+  const [kept, setKept] = useState<Awaited<ReturnType<typeof entriesOf>>>({ waiting: [], refused: [], sentAt: null });
+  const [sending, setSending] = useState<Sending>('sent');
   const [trouble, setTrouble] = useState<string | null>(null);
-  const queue = useRef<TallyEntry[]>([]);
-  const sending = useRef(false);
 
-  const keep = useCallback(() => {
-    localStorage.setItem(key, JSON.stringify(queue.current));
-    setQueued([...queue.current]);
-  }, [key]);
+  const read = useCallback(async () => {
+    // In this order: what leaves the queue is in the tally before, so that no entry is missing for a moment.
+    const entries = await entriesOf(accountId, booking);
+    const tally = await (await database()).get('tally', [accountId, booking]);
+    if (tally) setServer(tally);
+    setKept(entries);
+  }, [accountId, booking]);
 
-  const send = useCallback(async () => {
-    if (sending.current || queue.current.length === 0) return;
-    sending.current = true;
-    const batch = queue.current.slice(0, 200);
-    try {
-      const response = await fetch(`/api/bookings/${initial.booking}/tally`, { method: 'PUT', headers: { 'content-type': 'application/json' }, body: JSON.stringify({ entries: batch }) });
-      if (response.ok) {
-        setServer((await response.json()) as TallyView);
-        queue.current = queue.current.slice(batch.length);
-        setTrouble(null);
-        keep();
-      } else {
-        const problem = (await response.json().catch(() => null)) as { detail?: string; errors?: { message: string }[] } | null;
-        setTrouble(response.status === 401 ? 'You are signed out. Your entries are kept here; sign in again and they are sent.' : (problem?.errors?.[0]?.message ?? problem?.detail ?? 'The server could not take the entries. They are kept here.'));
-      }
-    } catch {
-      setTrouble('No signal. Your entries are kept on this phone and sent when it returns.');
-    } finally {
-      sending.current = false;
-    }
-  }, [initial.booking, keep]);
+  const send = useCallback(async () => setSending(await sendAll()), []);
 
   useEffect(() => {
-    queue.current = keptEntries(key);
-    setQueued([...queue.current]);
-    void send();
+    const stop = onChange(() => void read());
     const again = (): void => void send();
-    const timer = setInterval(again, 10_000);
-    window.addEventListener('online', again);
-    document.addEventListener('visibilitychange', again);
-    return () => {
-      clearInterval(timer);
-      window.removeEventListener('online', again);
-      document.removeEventListener('visibilitychange', again);
+    const seen = (): void => void looking();
+    const looking = async (): Promise<void> => {
+      if (document.visibilityState !== 'visible') return;
+      await send();
+      await look(accountId, booking).catch(() => undefined);
     };
-  }, [key, send]);
+    void (fresh ? keepTally(accountId, initial) : read()).then(looking);
+    const sendTimer = setInterval(again, SEND_EVERY_MS);
+    const lookTimer = setInterval(() => void looking(), LOOK_EVERY_MS);
+    window.addEventListener('online', again);
+    document.addEventListener('visibilitychange', seen);
+    return () => {
+      stop();
+      clearInterval(sendTimer);
+      clearInterval(lookTimer);
+      window.removeEventListener('online', again);
+      document.removeEventListener('visibilitychange', seen);
+    };
+    // `initial` is what this page was opened with: the phone's own copy takes over from there.
+  }, [accountId, booking, read, send]);
 
   const add = useCallback(
     (...entries: TallyEntry[]) => {
-      queue.current = [...queue.current, ...entries];
-      keep();
-      void send();
+      putEntries(accountId, booking, entries).then(
+        () => {
+          setTrouble(null);
+          void send();
+        },
+        () => setTrouble(FULL),
+      );
     },
-    [keep, send],
+    [accountId, booking, send],
   );
-
-  return { view: withEntries(server, queued), waiting: queued.length, trouble, add };
+  const view = useMemo(() => withEntries(server, kept.waiting.map(({ entry }) => entry)), [server, kept]);
+  return {
+    view, sending, trouble, add,
+    waiting: kept.waiting.length,
+    refused: kept.refused,
+    sentAt: kept.sentAt,
+    tryAgain: () => void tryRefusedAgain(kept.refused).then(send),
+    drop: (item) => void dropRefused(item),
+  };
 }

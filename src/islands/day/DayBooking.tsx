@@ -1,0 +1,108 @@
+import { useEffect, useState, type ReactElement } from 'react';
+import { buttonKinds, gloveSize, join } from '~/components/classes.ts';
+import type { Said } from '~/domain/listing/page-words.ts';
+import { paths } from '~/domain/paths.ts';
+import { formatDay, formatInstant } from '~/domain/time.ts';
+import { TallyBook } from '~/islands/tally-book/TallyBook.tsx';
+import type { TallyView } from '~/schemas/tally-view.ts';
+import { CheckList } from './CheckList.tsx';
+import { entriesOf, putEntries } from './queue.ts';
+import { sendAll } from './send.ts';
+import { database, onChange, type KeptBooking } from './store.ts';
+
+/** Where the work stands on this phone: the check-list may have been gone through without signal. */
+function useKeptTally(booking: KeptBooking): { readonly view: TallyView | null; readonly begun: boolean } {
+  const [kept, setKept] = useState<{ view: TallyView | null; begun: boolean }>({ view: null, begun: false });
+  useEffect(() => {
+    const read = async (): Promise<void> => {
+      const { waiting } = await entriesOf(booking.accountId, booking.number);
+      const view = await (await database()).get('tally', [booking.accountId, booking.number]);
+      setKept({ view: view ?? null, begun: view?.status !== 'held' || waiting.some(({ entry }) => entry.kind === 'start') });
+    };
+    void read();
+    return onChange(() => void read());
+  }, [booking.accountId, booking.number]);
+  return kept;
+}
+
+/** One booking of the day: where, who, the ground and the logs; then the check-list and the tally book. */
+export function DayBooking({ booking }: { readonly booking: KeptBooking }): ReactElement {
+  const { view, begun } = useKeptTally(booking);
+  const start = (): void => void putEntries(booking.accountId, booking.number, [{ kind: 'start', id: crypto.randomUUID() }]).then(sendAll);
+  const mine = booking.side === 'sawyer';
+  return (
+    <div data-ready={view ? 'true' : undefined}>
+      <nav className="mx-auto max-w-[34rem] px-4" aria-label="Back"><a className="inline-flex min-h-glove items-center" href="#">All milling days</a></nav>
+      {view && mine && begun && view.status !== 'tallied' && <TallyBook view={view} accountId={booking.accountId} fresh={false} />}
+      <div className="mx-auto max-w-[34rem] px-4 pb-12">
+        {mine && begun && view?.status === 'sawing' && <p className="mt-8 border-t border-rule pt-4">All sawn? <a className={join(buttonKinds.primary, gloveSize, 'mt-2 w-full')} href={`${paths.tally(booking.number)}`}>Offer the tally for signing</a></p>}
+        <h1 className={begun && mine ? 'mt-10 text-2xl' : 'mt-2'}>{booking.title}</h1>
+        <p className="mt-1">{booking.startsAt ? `${booking.days.map(formatDay).join(', ')}. Starts ${formatInstant(new Date(booking.startsAt), booking.timeZone)}.` : 'No day yet.'}</p>
+        {mine && view && !begun && <CheckList place={booking.place} onStart={start} />}
+        {!mine && <p className="mt-4"><a className={join(buttonKinds.primary, gloveSize, 'w-full')} href={paths.signTally(booking.number)}>Read the tally</a></p>}
+        <Facts booking={booking} />
+        {view && <Logs view={view} />}
+      </div>
+    </div>
+  );
+}
+
+function Facts({ booking }: { readonly booking: KeptBooking }): ReactElement {
+  const { place } = booking;
+  return (
+    <>
+      <h2 className="mt-8">{booking.side === 'sawyer' ? 'Landowner' : 'Sawyer'}</h2>
+      <p className="mt-1">{booking.otherName} · <a className="inline-flex min-h-target items-center" href={`mailto:${booking.otherEmail}`}>{booking.otherEmail}</a></p>
+      <h2 className="mt-8">Place</h2>
+      {place ? (
+        <>
+          <p className="figure mt-1 text-lg">{place.lat.toFixed(5)}, {place.lng.toFixed(5)}</p>
+          <p><a className="inline-flex min-h-glove items-center" href={`geo:${place.lat},${place.lng}`}>Open in this phone’s map</a></p>
+          {place.directions && <p className="whitespace-pre-line">{place.directions}</p>}
+        </>
+      ) : <p className="mt-1">{booking.town}</p>}
+      <SaidList title="Access" said={booking.access} />
+      <SaidList title="Landing" said={booking.landing} />
+      <SaidList title="Tree" said={booking.tree} />
+      {booking.note && <><h2 className="mt-8">Note</h2><p className="mt-1 whitespace-pre-line">{booking.note}</p></>}
+    </>
+  );
+}
+
+function SaidList({ title, said }: { readonly title: string; readonly said: readonly Said[] }): ReactElement | null {
+  if (said.length === 0) return null;
+  return (
+    <>
+      <h2 className="mt-8">{title}</h2>
+      <dl className="mt-1 border-t border-rule">
+        {said.map(({ label, value, note }) => (
+          <div key={label} className="border-b border-rule py-2">
+            <dt className="text-sm text-ink-soft">{label}</dt>
+            <dd>{value}{note && <span className="block whitespace-pre-line text-ink-soft">{note}</span>}</dd>
+          </div>
+        ))}
+      </dl>
+    </>
+  );
+}
+
+function Logs({ view }: { readonly view: TallyView }): ReactElement {
+  return (
+    <>
+      <h2 className="mt-8">Logs</h2>
+      <table className="ruled mt-1 w-full">
+        <thead><tr><th scope="col">Log</th><th scope="col" className="num">Size</th><th scope="col" className="num">Intl ¼, bf</th></tr></thead>
+        <tbody>{view.logs.map((log) => <tr key={log.id}><th scope="row" className="font-normal">{log.label}: {log.speciesName}</th><td className="num">{log.size}</td><td className="num">{log.netBoardFeet.internationalQuarter}</td></tr>)}</tbody>
+      </table>
+      {view.cutList.length > 0 && (
+        <>
+          <h2 className="mt-8">Cut list</h2>
+          <table className="ruled mt-1 w-full">
+            <thead><tr><th scope="col">Piece</th><th scope="col" className="num">t × w, in</th><th scope="col" className="num">ft</th><th scope="col" className="num">Count</th></tr></thead>
+            <tbody>{view.cutList.map((piece, index) => <tr key={index}><th scope="row" className="font-normal">{piece.label || 'Boards'}</th><td className="num">{piece.thicknessIn} × {piece.widthIn}</td><td className="num">{piece.lengthFt}</td><td className="num">{piece.count}</td></tr>)}</tbody>
+          </table>
+        </>
+      )}
+    </>
+  );
+}
