@@ -1,0 +1,212 @@
+import { mkdtempSync, rmSync } from 'node:fs';
+import { tmpdir } from 'node:os';
+import { join } from 'node:path';
+import { chromium, expect, test, type BrowserContext, type Page } from '@playwright/test';
+import type { TallyView } from '../../src/schemas/tally-view.ts';
+import { expectAccessible } from './support/check.ts';
+import { expireSessions, makeJob, ownWeb, type Job, type OwnWeb } from './support/job.ts';
+
+/** A phone that can be switched off: its browser's files outlive the browser. */
+interface Phone {
+  readonly folder: string;
+  context: BrowserContext;
+  page: Page;
+}
+
+let web: OwnWeb;
+const folders: string[] = [];
+
+async function switchOn(folder: string, offline: boolean): Promise<Phone> {
+  const { launchOptions } = test.info().project.use;
+  const context = await chromium.launchPersistentContext(folder, { ...launchOptions, baseURL: web.origin, locale: 'en-US', timezoneId: 'America/Chicago', viewport: { width: 390, height: 844 }, hasTouch: true, isMobile: true });
+  await context.setOffline(offline);
+  return { folder, context, page: context.pages()[0] ?? (await context.newPage()) };
+}
+
+async function newPhone(): Promise<Phone> {
+  const folder = mkdtempSync(join(tmpdir(), 'skidway-phone-'));
+  folders.push(folder);
+  return switchOn(folder, false);
+}
+
+async function signIn(page: Page, email: string, password: string): Promise<void> {
+  await page.getByLabel('E-mail').fill(email);
+  await page.getByLabel('Password').fill(password);
+  await page.locator('main').getByRole('button', { name: 'Sign in' }).click();
+}
+
+/** Signs in and opens the day once with signal: from then on the phone has everything. */
+async function prepare(phone: Phone, job: Job): Promise<void> {
+  await phone.page.goto('/sign-in?next=/day');
+  await signIn(phone.page, job.sawyer, job.password);
+  await expect(phone.page.getByTestId('kept')).toContainText('Saved on this phone');
+  await phone.page.evaluate(async () => void (await navigator.serviceWorker.ready));
+  await expect.poll(() => phone.page.evaluate(() => navigator.serviceWorker.controller !== null)).toBe(true);
+}
+
+/** Goes through the check-list and begins; on a phone whose signal is gone. */
+async function begin(page: Page, job: Job): Promise<void> {
+  await page.goto(`/day#${job.number}`);
+  await page.getByRole('button', { name: 'Start sawing' }).click();
+  await expect(page.getByText('Go through every point')).toBeVisible();
+  for (const point of await page.getByRole('checkbox').all()) await point.check();
+  await page.getByRole('button', { name: 'Start sawing' }).click();
+  await expect(page.getByText('Sawn so far')).toBeVisible();
+}
+
+async function enterBoards(page: Page, width: string, count: number): Promise<void> {
+  await page.getByRole('group', { name: 'Width, in' }).getByRole('button', { name: width, exact: true }).click();
+  const add = page.getByRole('button', { name: /^Add board/ });
+  for (let board = 0; board < count; board += 1) await add.click();
+}
+
+const tallyOf = async (page: Page, job: Job): Promise<TallyView> => (await page.request.get(`${web.origin}/api/bookings/${job.number}/tally`)).json();
+
+test.beforeAll(async () => void (web = await ownWeb()));
+test.afterAll(async () => {
+  await web.stop();
+  for (const folder of folders) rmSync(folder, { recursive: true, force: true });
+});
+
+test('200 boards entered without signal on two phones arrive once each', async () => {
+  test.setTimeout(600_000);
+  const job = makeJob();
+  const [one, two] = [await newPhone(), await newPhone()];
+  await prepare(one, job);
+  await prepare(two, job);
+  await one.context.setOffline(true);
+  await two.context.setOffline(true);
+
+  // Both phones begin and count by themselves; the second phone's clock is years wrong.
+  await begin(one.page, job);
+  await two.page.clock.setSystemTime(new Date('2031-03-01T12:00:00Z'));
+  await begin(two.page, job);
+  await enterBoards(one.page, '8', 100);
+  await enterBoards(two.page, '6', 100);
+  // 100 boards 4/4 × 8 × 12: 8 bf each.
+  await expect(one.page.getByTestId('sawn-so-far')).toHaveText('800 bf');
+  // The start is an entry too.
+  await expect(one.page.getByTestId('saved')).toHaveText('No signal · 101 saved here');
+
+  // Reloaded, then the battery dies: the browser is closed and opened again, still without signal.
+  await one.page.reload();
+  await expect(one.page.getByTestId('sawn-so-far')).toHaveText('800 bf');
+  await one.context.close();
+  Object.assign(one, await switchOn(one.folder, true));
+  await one.page.goto('/');
+  await expect(one.page.getByText('That page needs signal')).toBeVisible();
+  await expect(one.page.getByTestId('kept')).toContainText('101 entries are saved here');
+  await one.page.goto(`/bookings/${job.number}/tally`);
+  await expect(one.page).toHaveURL(new RegExp(`/day#${job.number}$`));
+  await expect(one.page.getByTestId('sawn-so-far')).toHaveText('800 bf');
+
+  // Signal returns when the sign-in has run out: nothing is lost, and signing in again sends it.
+  expireSessions(job.sawyer);
+  await one.context.setOffline(false);
+  await expect(one.page.getByTestId('saved')).toHaveText('Signed out · 101 saved here');
+  await one.page.getByRole('link', { name: 'Sign in again' }).first().click();
+  await signIn(one.page, job.sawyer, job.password);
+  await one.page.getByRole('link', { name: /White oak/ }).click();
+  await expect(one.page.getByTestId('saved')).toHaveText(/^All sent at/);
+  expect((await tallyOf(one.page, job)).boards).toHaveLength(100);
+
+  // The second phone has signal while the server is down, and sends by itself once it is up again.
+  await two.page.goto('/sign-in?next=/day').catch(() => undefined);
+  await web.stop();
+  await two.context.setOffline(false);
+  await two.page.goto(`/day#${job.number}`);
+  await expect(two.page.getByTestId('saved')).toHaveText('No signal · 101 saved here');
+  await web.start();
+  await expect(two.page.getByTestId('saved')).toHaveText(/Signed out · 101 saved here/, { timeout: 20_000 });
+  const sent: string[] = [];
+  two.page.on('request', (request) => {
+    if (request.method() === 'PUT') sent.push(request.postData() ?? '');
+  });
+  await two.page.getByRole('link', { name: 'Sign in again' }).first().click();
+  await signIn(two.page, job.sawyer, job.password);
+  await two.page.getByRole('link', { name: /White oak/ }).click();
+  await expect(two.page.getByTestId('saved')).toHaveText(/^All sent at/);
+  // 100 more of 4/4 × 6 × 12: 6 bf each.
+  await expect(two.page.getByTestId('sawn-so-far')).toHaveText('1,400 bf');
+
+  // Everything that was sent is sent once more, as when an answer is lost on the way.
+  for (const body of sent) {
+    const again = await two.page.request.put(`${web.origin}/api/bookings/${job.number}/tally`, { headers: { 'content-type': 'application/json', origin: web.origin }, data: body });
+    expect(again.status()).toBe(200);
+  }
+  const tally = await tallyOf(two.page, job);
+  expect(tally.boards.reduce((sum, { count }) => sum + count, 0)).toBe(200);
+  expect(new Set(tally.boards.map(({ id }) => id)).size).toBe(200);
+  expect(tally.boards.filter(({ widthIn }) => widthIn === 6)).toHaveLength(100);
+  for (const { context } of [one, two]) await context.close();
+});
+
+test('signing out asks about entries that were not sent, and takes the days off the phone', async () => {
+  const job = makeJob();
+  const phone = await newPhone();
+  await prepare(phone, job);
+  await phone.context.setOffline(true);
+  await begin(phone.page, job);
+  await enterBoards(phone.page, '8', 3);
+  await phone.context.setOffline(false);
+  await phone.page.route('**/api/bookings/*/tally', (route) => route.abort());
+  await phone.page.goto('/bookings');
+  await phone.page.getByText('Menu').click();
+  const asked = phone.page.waitForEvent('dialog');
+  const click = phone.page.getByRole('button', { name: 'Sign out' }).click();
+  const dialog = await asked;
+  expect(dialog.message()).toContain('not sent yet');
+  await dialog.accept();
+  await click;
+  await expect(phone.page).toHaveURL(`${web.origin}/`);
+  await phone.page.unroute('**/api/bookings/*/tally');
+  await phone.page.goto('/day');
+  await expect(phone.page.getByRole('main').getByRole('link', { name: 'Sign in' })).toBeVisible();
+  await expect(phone.page.getByText('White oak')).toHaveCount(0);
+  await phone.page.getByRole('main').getByRole('link', { name: 'Sign in' }).click();
+  await signIn(phone.page, job.sawyer, job.password);
+  await expect.poll(async () => (await tallyOf(phone.page, job)).boards.length).toBe(3);
+  await phone.context.close();
+});
+
+test('is installable by the browser’s own criteria, and the estimator opens without signal', async () => {
+  const phone = await newPhone();
+  await phone.page.goto('/estimator');
+  await phone.page.evaluate(async () => void (await navigator.serviceWorker.ready));
+  const devtools = await phone.context.newCDPSession(phone.page);
+  const { installabilityErrors } = await devtools.send('Page.getInstallabilityErrors');
+  expect(installabilityErrors).toEqual([]);
+  const cached = await phone.page.evaluate(async () => {
+    const names = await caches.keys();
+    const requests = await Promise.all(names.map(async (name) => (await caches.open(name)).keys()));
+    return requests.flat().map(({ url }) => new URL(url).pathname);
+  });
+  expect(cached.filter((path) => !/^\/(_astro\/|day$|estimator$|icon-192\.png|favicon\.svg|manifest\.webmanifest)/.test(path)), 'only shells are kept').toEqual([]);
+  await phone.context.setOffline(true);
+  await phone.page.goto('/estimator?logs=white-oak_18');
+  await expect(phone.page.locator('[data-ready="true"]')).toBeVisible();
+  await phone.page.getByRole('combobox', { name: 'Species' }).fill('white oak');
+  await phone.page.keyboard.press('Enter');
+  await phone.page.getByLabel('Small end, inside bark').fill('18');
+  await phone.page.getByLabel('Length, with trim').fill('12');
+  await expect(phone.page.getByTestId('internationalQuarter')).toHaveText('170');
+  await phone.context.close();
+});
+
+test('the pad is for gloves and sun: big keys, strong contrast, 200 % text, landscape', async () => {
+  const job = makeJob();
+  const phone = await newPhone();
+  await prepare(phone, job);
+  await begin(phone.page, job);
+  await enterBoards(phone.page, '8', 2);
+  const small = await phone.page.locator('[data-pad] :is(button, input, select, summary)').evaluateAll((all) => all.map((one) => ({ name: one.textContent?.trim().slice(0, 30), box: one.getBoundingClientRect() })).filter(({ box }) => box.height > 0 && (box.height < 56 || box.width < 56)).map(({ name, box }) => `${name}: ${box.width} × ${box.height}`));
+  expect(small).toEqual([]);
+  await expectAccessible(phone.page);
+  for (const viewport of [{ width: 390, height: 844 }, { width: 320, height: 700 }, { width: 844, height: 390 }]) {
+    await phone.page.setViewportSize(viewport);
+    await phone.page.addStyleTag({ url: `data:text/css,` }).catch(() => undefined);
+    const over = await phone.page.evaluate(() => document.documentElement.scrollWidth - document.documentElement.clientWidth);
+    expect(over, `${viewport.width} px wide`).toBeLessThanOrEqual(0);
+  }
+  await phone.context.close();
+});
