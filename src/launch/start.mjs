@@ -48,12 +48,11 @@ try {
   ensureBuild();
   if (must('db/migrate.ts')) {
     await startFakes(group, env, ports, join(data, 'fakes'));
-    await Promise.all([
-      group.start('worker', 'src/server/jobs/main.ts', [], env).ready,
-      group.start('web', 'src/server/http/main.ts', [], env).ready,
-    ]);
+    await group.start('web', 'src/server/http/main.ts', [], env).ready;
     await portAnswers(ports.web);
-    if (!existsSync(join(root, 'db/story/tell.ts')) || must('db/story/tell.ts')) {
+    // The story is told before the worker begins: it does the worker's part itself, at the instants it tells of.
+    if (must('db/story/tell.ts')) {
+      await group.start('worker', 'src/server/jobs/main.ts', [], env).ready;
       console.log(`
 Skidway is ready:            ${env.ORIGIN}
 Messages it sent (mailbox):  http://localhost:${ports.mailPage}
@@ -62,7 +61,7 @@ Payment stand-in:            ${env.PAYMENTS_PAGE_ORIGIN}
 Demo accounts, all with the password "boards-in-hand":
   landowner  ada@skidway.example
   sawyer     bram@skidway.example
-  moderator  mo@skidway.example   (second factor: see README)
+  moderator  mo@skidway.example   (second factor: npx tsx db/demo-code.ts shows the code of the moment)
 
 Ctrl-C stops everything.`);
     }

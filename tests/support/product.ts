@@ -45,9 +45,11 @@ export async function startProduct(name: string, options: { story?: boolean } = 
   };
   try {
     await startFakes(group, environment, ports, join(data, 'fakes'));
-    await Promise.all([group.start('worker', 'src/server/jobs/main.ts', [], environment).ready, group.start('web', 'src/server/http/main.ts', [], environment).ready]);
+    await group.start('web', 'src/server/http/main.ts', [], environment).ready;
     await portAnswers(ports.web);
+    // As `npm start` does it: the worker begins when the story is told.
     if (options.story) script('db/story/tell.ts');
+    await group.start('worker', 'src/server/jobs/main.ts', [], environment).ready;
   } catch (error) {
     await stop();
     throw error;

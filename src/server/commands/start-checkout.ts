@@ -62,7 +62,7 @@ async function prepare(by: Viewer, input: CheckoutInput, at: Date): Promise<Step
     const fits = live && live.purpose === purpose && live.amountCents === amountCents && live.expiresAt.getTime() - at.getTime() > TOO_SHORT_MS;
     const checkout = fits || live
       ? live
-      : await Checkout.create({ paymentId: payment.id, purpose, amountCents, idempotencyKey: `checkout-${crypto.randomUUID()}`, expiresAt: addHours(at, LIVES_HOURS), createdAt: at });
+      : await Checkout.create({ paymentId: payment.id, purpose, amountCents, idempotencyKey: `checkout-${crypto.randomUUID()}`, expiresAt: input.cardPageUntil ?? addHours(at, LIVES_HOURS), createdAt: at });
     if (!live) await record(by, 'startCheckout', 'heldPayment', payment.id, at, { data: { purpose, amountCents } });
     const listing = await Listing.findByPk(booking.listingId, { rejectOnEmpty: true });
     const wanted: CheckoutWanted = {
@@ -117,6 +117,8 @@ export interface CheckoutInput {
   readonly purpose?: Purpose;
   /** For an increase: how much the landowner adds. */
   readonly amountCents?: Cents;
+  /** When the card page closes; an hour after `at` when left out. For a payment told of the past, whose page is open today. */
+  readonly cardPageUntil?: Date;
 }
 
 /**
