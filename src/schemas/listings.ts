@@ -5,7 +5,7 @@ import { listingSorts } from '~/domain/finding/sorts.ts';
 import { speciesCode } from './timber-fields.ts';
 
 /** A number written in a query string, between two limits. */
-const numberText = (low: number, high: number, what: string) =>
+export const numberText = (low: number, high: number, what: string) =>
   z
     .string()
     .trim()

@@ -1,14 +1,24 @@
 import { z } from 'zod';
+import { logsPageSorts } from '~/domain/finding/sorts.ts';
 import type { Problem } from '~/domain/result.ts';
-import { checkWhereabouts, findingFields } from './listings.ts';
+import { checkWhereabouts, findingFields, numberText } from './listings.ts';
 
 /** How far to look when nothing is said. */
 export const usualRadiusMi = 50;
 
 const flag = z.enum(['1'], { error: 'This is 1 or left out.' }).optional();
 
-/** The address of the page of logs: what the endpoint takes, with two boxes of its own. */
-const logsPage = z.object({ ...findingFields, closing: flag, fits: flag }).superRefine(checkWhereabouts);
+/** The address of the page of logs: what the endpoint takes, with what is a sawyer's own. */
+const logsPage = z
+  .object({
+    ...findingFields,
+    sort: z.enum(logsPageSorts, { error: 'Choose one of the orders.' }).optional(),
+    closing: flag,
+    fits: flag,
+    /** Dollars for each hour on the road and at work, on the signed-in sawyer's own mill and rates. */
+    minPerHour: numberText(0, 10_000, 'The least money an hour').optional(),
+  })
+  .superRefine(checkWhereabouts);
 export type LogsAsked = z.output<typeof logsPage>;
 
 export interface LogsPage {

@@ -8,3 +8,9 @@ export const listingSortNames: Readonly<Record<ListingSort, string>> = {
   sawBy: 'Saw by soonest',
   newest: 'Newest first',
 };
+
+/** How the page of logs may be ordered for a sawyer: as above, or by what a job brings for each hour on the road and at work. */
+export const logsPageSorts = [...listingSorts, 'perHour'] as const;
+export type LogsPageSort = (typeof logsPageSorts)[number];
+
+export const logsPageSortNames: Readonly<Record<LogsPageSort, string>> = { ...listingSortNames, perHour: 'Most money an hour' };

@@ -1,25 +1,29 @@
+import type { LogsPageSort } from '~/domain/finding/sorts.ts';
 import type { Point } from '~/domain/geo.ts';
-import type { ListingSort } from '~/domain/finding/sorts.ts';
 import type { Problem } from '~/domain/result.ts';
 import { addHours } from '~/domain/time.ts';
-import { usualRadiusMi, type LogsPage } from '~/schemas/logs-page.ts';
+import { usualRadiusMi, type LogsAsked, type LogsPage } from '~/schemas/logs-page.ts';
 import { oneRow } from '../db.ts';
 import { pointOfZip, townsNear, type Town } from '../services/places.ts';
 import type { Viewer } from '../viewer.ts';
-import { openListings, type FoundListings } from './open-listings.ts';
+import { viewerAtWork, type SawyerAtWork } from './jobs-for-sawyer.ts';
+import { logsByWorth, weigh, type WeighedListings } from './logs-by-worth.ts';
+import { openListings } from './open-listings.ts';
 
 const WEEK_HOURS = 7 * 24;
 
 export interface LogsView {
-  readonly found: FoundListings;
+  readonly found: WeighedListings;
   readonly from: Point | null;
   /** The ZIP that distances are measured from; empty when none or when a point was given. */
   readonly zip: string;
   readonly radiusMi: number | null;
-  readonly sort: ListingSort;
+  readonly sort: LogsPageSort;
   readonly problems: readonly Problem[];
   /** Names for the map. */
   readonly towns: readonly Town[];
+  /** Whether listings can be put in order by money an hour: the sawyer has a mill, rates and a base. */
+  readonly weighs: boolean;
 }
 
 /** A sawyer's own ZIP, so that the list begins at home. */
@@ -29,28 +33,40 @@ async function homeZip(viewer: Viewer | null): Promise<string> {
   return row?.zip ?? '';
 }
 
+function sortOf(asked: LogsAsked, from: Point | null, weighs: boolean): LogsPageSort {
+  const { sort } = asked;
+  const possible = sort !== undefined && (sort !== 'distance' || from !== null) && (sort !== 'perHour' || (weighs && from !== null));
+  return possible ? sort : from ? 'distance' : 'newest';
+}
+
+/** The listings in the order asked for, each with what it is to the sawyer who looks. */
+async function listed(asked: LogsAsked, sort: LogsPageSort, from: Point | null, radiusMi: number | null, sawyer: SawyerAtWork | null, weighs: boolean, at: Date): Promise<WeighedListings> {
+  const conditions = {
+    limit: asked.limit,
+    ...(radiusMi === null ? {} : { radiusMi }),
+    species: asked.species,
+    minBoardFeet: asked.minBoardFeet,
+    maxLargestEndIn: asked.maxLargestEndIn,
+    closesBefore: asked.closing ? addHours(at, WEEK_HOURS) : undefined,
+    fitsMillsOf: asked.fits && sawyer ? sawyer.id : undefined,
+    cursor: asked.cursor,
+  };
+  if (sawyer && weighs && from && (sort === 'perHour' || asked.minPerHour !== undefined)) {
+    return logsByWorth({ ...conditions, from, sort, minPerHourCents: Math.round((asked.minPerHour ?? 0) * 100) }, sawyer, at);
+  }
+  return weigh(await openListings({ ...conditions, from, sort: sort === 'perHour' ? 'newest' : sort }, at), sawyer);
+}
+
 /** Everything the page of logs shows for an address. */
 export async function logsPageView({ asked, problems }: LogsPage, viewer: Viewer | null, at: Date): Promise<LogsView> {
+  const sawyer = await viewerAtWork(viewer);
+  const weighs = sawyer?.card != null && sawyer.base !== null;
   const pointed = asked.lat !== undefined && asked.lng !== undefined ? { lat: asked.lat, lng: asked.lng } : null;
   const zip = pointed || problems.some(({ path }) => path === 'zip') ? '' : (asked.zip ?? (await homeZip(viewer)));
   const from = pointed ?? (zip === '' ? null : pointOfZip(zip));
   const unknownZip = asked.zip !== undefined && !from ? [{ path: 'zip', message: 'We do not know where this ZIP code is. Try one nearby.' }] : [];
-  const sort = asked.sort === undefined || (asked.sort === 'distance' && !from) ? (from ? 'distance' : 'newest') : asked.sort;
+  const sort = sortOf(asked, from, weighs);
   const radiusMi = from ? (asked.radiusMi ?? usualRadiusMi) : null;
-  const found = await openListings(
-    {
-      from,
-      sort,
-      limit: asked.limit,
-      ...(radiusMi === null ? {} : { radiusMi }),
-      species: asked.species,
-      minBoardFeet: asked.minBoardFeet,
-      maxLargestEndIn: asked.maxLargestEndIn,
-      closesBefore: asked.closing ? addHours(at, WEEK_HOURS) : undefined,
-      fitsMillsOf: asked.fits && viewer?.isSawyer ? viewer.id : undefined,
-      cursor: asked.cursor,
-    },
-    at,
-  );
-  return { found, from, zip, radiusMi, sort, problems: [...problems, ...unknownZip], towns: from && radiusMi ? townsNear(from, Math.min(radiusMi * 2, 300), 40) : [] };
+  const found = await listed(asked, sort, from, radiusMi, sawyer, weighs, at);
+  return { found, from, zip, radiusMi, sort, weighs, problems: [...problems, ...unknownZip], towns: from && radiusMi ? townsNear(from, Math.min(radiusMi * 2, 300), 40) : [] };
 }

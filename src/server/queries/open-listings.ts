@@ -23,6 +23,8 @@ export interface ListingsAsked {
   /** Only what some mill of this sawyer takes whole. */
   readonly fitsMillsOf?: string | undefined;
   readonly sort: ListingSort;
+  /** Only among so many nearest to `from`: bounds the work of what cannot be asked of an index. */
+  readonly among?: number | undefined;
   /** A text that `readCursor` accepts for this sort. */
   readonly cursor?: string | undefined;
   readonly limit: number;
@@ -30,6 +32,12 @@ export interface ListingsAsked {
 
 /** An item with what a row of the page shows beside it. */
 export interface FoundListing extends ListingItem {
+  /** The row's own id; `id` is the public number. */
+  readonly rowId: string;
+  /** Where the list goes on after this row. */
+  readonly cursor: string;
+  /** Grown people who can help. */
+  readonly helpers: number;
   readonly howDown: string;
   readonly metalRisk: string;
   readonly closesInDays: number;
@@ -61,6 +69,7 @@ interface Row {
   bidCount: number;
   howDown: string;
   metalRisk: string;
+  helpers: number;
   photoId: string | null;
   photoWidth: number | null;
   photoHeight: number | null;
@@ -86,11 +95,15 @@ function conditions(sql: Sql, asked: ListingsAsked, at: Date, here: string | nul
     ...(fitsMillsOf !== undefined
       ? [
           `EXISTS (SELECT 1 FROM mill m WHERE m.sawyer_id = ${sql.value(fitsMillsOf)} AND m.retired_at IS NULL AND l.largest_end_ob_in <= m.largest_log_in + 0.005
-            AND NOT EXISTS (SELECT 1 FROM log g WHERE g.listing_id = l.id AND g.removed_at IS NULL AND (g.length_ft > m.longest_ft OR g.length_ft < m.shortest_ft)))`,
+            AND l.longest_log_ft <= m.longest_ft AND l.shortest_log_ft >= m.shortest_ft)`,
         ]
       : []),
   ];
 }
+
+/** The rows a list is drawn from: every listing, or the nearest few of those that meet the conditions. */
+const drawnFrom = (among: number | undefined, where: readonly string[], here: string | null): string =>
+  among === undefined || here === null ? 'listing' : `(SELECT l.* FROM listing l WHERE ${where.join(' AND ')} ORDER BY l.coarse <-> ${here} LIMIT ${among})`;
 
 /** The order of each sort, its key as exact text, and the condition for going on after a cursor. */
 function ordering(sql: Sql, asked: ListingsAsked, here: string | null): { key: string; order: string; after: string | null } {
@@ -127,13 +140,13 @@ export async function openListings(asked: ListingsAsked, at: Date): Promise<Foun
   const found = await rows<Row>(
     `WITH page AS (
        SELECT l.*, ${key} AS sort_key, ${here ? `l.coarse <-> ${here}` : 'NULL::float8'} AS metres, row_number() OVER () AS place_in_page
-       FROM (SELECT * FROM listing l WHERE ${[...where, ...(after ? [after] : [])].join(' AND ')} ORDER BY ${order} LIMIT ${asked.limit + 1}) l
+       FROM (SELECT * FROM ${drawnFrom(asked.among, where, here)} l WHERE ${[...where, ...(after ? [after] : [])].join(' AND ')} ORDER BY ${order} LIMIT ${asked.limit + 1}) l
      )
      SELECT l.id, l.number, l.title, l.species, l.log_count AS "logCount", l.board_feet AS "boardFeet", l.largest_end_ob_in AS largest, l.metres,
        ST_Y(l.coarse::geometry) AS lat, ST_X(l.coarse::geometry) AS lng, coalesce(l.town, '') AS town, l.sort_key AS "sortKey",
        ((l.closes_at - interval '1 second') AT TIME ZONE l.time_zone)::date::text AS "closesOn",
        floor(extract(epoch FROM l.closes_at - ${sql.value(at)}::timestamptz) / 86400)::int AS "closesIn",
-       l.saw_by::text AS "sawBy", l.how_down AS "howDown", l.metal_risk AS "metalRisk",
+       l.saw_by::text AS "sawBy", l.how_down AS "howDown", l.metal_risk AS "metalRisk", coalesce((l.access->>'helpers')::int, 0) AS helpers,
        (SELECT count(*)::int FROM bid b WHERE b.listing_id = l.id AND b.status IN ('open', 'toConfirm')) AS "bidCount",
        p.id AS "photoId", p.width AS "photoWidth", p.height AS "photoHeight", p.blur AS "photoBlur", p.caption AS "photoCaption"
      FROM page l
@@ -147,8 +160,8 @@ export async function openListings(asked: ListingsAsked, at: Date): Promise<Foun
   const shown = found.slice(0, asked.limit);
   const last = shown.at(-1);
   return {
-    items: shown.map(asItem),
-    nextCursor: found.length > asked.limit && last ? writeCursor(asked.sort, { key: last.sortKey, id: last.id }) : null,
+    items: shown.map((row) => asItem(row, asked.sort)),
+    nextCursor: found.length > asked.limit && last ? cursorAfter(last, asked.sort) : null,
     total: Math.min(count, COUNT_TO),
     totalIsExact: count <= COUNT_TO,
   };
@@ -162,7 +175,9 @@ async function countUpTo(most: number, asked: ListingsAsked, at: Date): Promise<
   return counted?.count ?? 0;
 }
 
-function asItem(row: Row): FoundListing {
+const cursorAfter = (row: Row, sort: ListingSort): string => writeCursor(sort, { key: row.sortKey, id: row.id });
+
+function asItem(row: Row, sort: ListingSort): FoundListing {
   const photo =
     row.photoId !== null && row.photoWidth !== null && row.photoHeight !== null
       ? pictureView({ id: row.photoId, width: row.photoWidth, height: row.photoHeight, blur: row.photoBlur ?? '' }, photoAlt(row.photoCaption ?? '', null))
@@ -182,11 +197,14 @@ function asItem(row: Row): FoundListing {
     ...(photo ? { photo } : {}),
     howDown: row.howDown,
     metalRisk: row.metalRisk,
+    rowId: row.id,
+    cursor: cursorAfter(row, sort),
+    helpers: row.helpers,
     closesInDays: row.closesIn,
   };
 }
 
 /** The item as the endpoint answers it, without what only the page shows. */
-export function publicItem({ howDown: _howDown, metalRisk: _metalRisk, closesInDays: _days, ...item }: FoundListing): ListingItem {
+export function publicItem({ howDown: _howDown, metalRisk: _metalRisk, closesInDays: _days, rowId: _rowId, cursor: _cursor, helpers: _helpers, ...item }: FoundListing): ListingItem {
   return item;
 }
