@@ -42,6 +42,9 @@ export const paths = {
   profile: '/sawyer/profile',
   bids: '/sawyer/bids',
   calendar: '/sawyer/calendar',
+  searches: '/sawyer/searches',
+  saveSearch: '/sawyer/searches/new',
+  stopSearch: (token: string) => `/searches/stop/${token}`,
 
   /** What is kept on the phone of the days to come; opens without signal. `#1042` opens that booking. */
   day: '/day',

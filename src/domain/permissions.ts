@@ -68,6 +68,7 @@ export const permissions = {
     keepProfile: { who: ['anySawyer'] },
     keepMill: { who: ['anySawyer'] },
     keepRates: { who: ['anySawyer'] },
+    keepSearches: { who: ['anySawyer'] },
   }),
   account: rules<AccountState>()({
     suspend: { who: ['moderator'], states: ['active'] },

@@ -1,14 +1,14 @@
 import type { MailMessage } from '~/server/services/mail.ts';
 
-/** One part of a letter: a paragraph, a list of facts (label and value), or a button that leads somewhere. */
-export type Part = string | { readonly facts: readonly (readonly [label: string, value: string])[] } | { readonly button: string; readonly href: string };
+/** One part of a letter: a paragraph, a list of facts (label and value), a button that leads somewhere, or a plain link. */
+export type Part = string | { readonly facts: readonly (readonly [label: string, value: string])[] } | { readonly button: string; readonly href: string } | { readonly link: string; readonly href: string };
 
 const escape = (text: string): string => text.replaceAll('&', '&amp;').replaceAll('<', '&lt;').replaceAll('>', '&gt;').replaceAll('"', '&quot;');
 
 function partText(part: Part): string {
   if (typeof part === 'string') return part;
   if ('facts' in part) return part.facts.map(([label, value]) => `${label}: ${value}`).join('\n');
-  return `${part.button}: ${part.href}`;
+  return `${'link' in part ? part.link : part.button}: ${part.href}`;
 }
 
 function partHtml(part: Part): string {
@@ -18,6 +18,7 @@ function partHtml(part: Part): string {
       `<tr><td style="padding:6px 16px 6px 0;color:#55605A">${escape(label)}</td><td style="padding:6px 0;font-family:monospace">${escape(value)}</td></tr>`;
     return `<table role="presentation" style="margin:0 0 16px;border-collapse:collapse">${part.facts.map(row).join('')}</table>`;
   }
+  if ('link' in part) return `<p style="margin:0 0 8px"><a href="${escape(part.href)}" style="color:#1B559B">${escape(part.link)}</a></p>`;
   return `<p style="margin:0 0 16px"><a href="${escape(part.href)}" style="display:inline-block;padding:12px 20px;background:#1B559B;color:#FFFFFF;text-decoration:none;border-radius:4px;font-weight:bold">${escape(part.button)}</a></p>`;
 }
 

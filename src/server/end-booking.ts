@@ -1,6 +1,7 @@
 import { bidStates } from '~/domain/states/bid.ts';
 import { listingStates } from '~/domain/states/listing.ts';
 import { addSiteDays, LISTING_LAPSES_DAYS } from '~/domain/time.ts';
+import { enqueue } from './jobs/queue.ts';
 import { bookedDaysOf, sendInvitations } from './invitations.ts';
 import { Bid, BookedDay, DayProposal, Listing, type Booking } from './models/index.ts';
 import { transition } from './transition.ts';
@@ -21,4 +22,5 @@ export async function afterEnding(by: Actor, booking: Booking, at: Date): Promis
   if (listing.status !== 'matched') return;
   const soonest = addSiteDays(at, LISTING_LAPSES_DAYS, booking.timeZone);
   await transition(listingStates, 'reopen', listing, by, at, { updatedAt: at, ...(listing.closesAt && listing.closesAt > soonest ? {} : { closesAt: soonest }) });
+  await enqueue('match-searches', { listingId: listing.id });
 }

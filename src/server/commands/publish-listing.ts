@@ -44,6 +44,7 @@ export async function publishListing(by: Viewer | null, input: ListingInput, at:
       ...columns, typed: { ...typed }, typedVersion: listing.typedVersion + 1, revision: 1, treeOwnerConfirmedAt: at, publishedAt: at, updatedAt: at,
     });
     await enqueue('send-mail', listingPublished(await readerOf(listing.ownerId), columns.title, formatDayWithYear(understood.form.closesOn), linkTo(paths.listing(input.number))));
+    await enqueue('match-searches', { listingId: listing.id });
     return { number: input.number };
   });
 }

@@ -63,6 +63,7 @@ export async function reviseListing(by: Viewer | null, input: ListingInput, at: 
     const columns = { ...columnsOf(understood), typed: { ...typed }, typedVersion: listing.typedVersion + 1, updatedAt: at };
     const revision = listing.revision + (isBinding(changed) ? 1 : 0);
     await transition(listingStates, 'revise', listing, by, at, { ...columns, revision }, { data: { changed, revision } });
+    if (isBinding(changed)) await enqueue('match-searches', { listingId: listing.id });
     if (changed.length > 0) await tellBidders(by, listing, changed, at);
     return { changed };
   });

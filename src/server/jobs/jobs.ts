@@ -4,6 +4,8 @@ import type { MailMessage } from '../services/mail.ts';
 export interface Jobs {
   'send-mail': MailMessage;
   'process-photo': { photoId: string };
+  /** A listing has come on show or changed: who asked to be told of such? */
+  'match-searches': { listingId: string };
   'make-provider-call': { callId: string };
   'handle-provider-event': { eventId: string };
   'wind-up-account': { accountId: string };
@@ -13,6 +15,7 @@ export interface Jobs {
 /** How often a failing job is tried again, and how far apart (seconds, doubling). */
 export const queues: Readonly<Record<keyof Jobs, { retryLimit: number; retryDelay: number; retryBackoff: boolean }>> = {
   'send-mail': { retryLimit: 8, retryDelay: 5, retryBackoff: true },
+  'match-searches': { retryLimit: 8, retryDelay: 5, retryBackoff: true },
   'process-photo': { retryLimit: 3, retryDelay: 5, retryBackoff: true },
   'make-provider-call': { retryLimit: 10, retryDelay: 2, retryBackoff: true },
   'handle-provider-event': { retryLimit: 10, retryDelay: 1, retryBackoff: true },

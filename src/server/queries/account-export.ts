@@ -18,6 +18,7 @@ const parts: Readonly<Record<string, string>> = {
   daysOff: 'SELECT day FROM day_off WHERE sawyer_id = $1',
   mills: 'SELECT * FROM mill WHERE sawyer_id = $1',
   rateCards: 'SELECT revision, card, created_at FROM rate_card WHERE sawyer_id = $1',
+  savedSearches: 'SELECT name, tells, zip, radius_mi, species, min_board_feet, max_largest_end_in, closing, fits, min_per_hour_cents, created_at FROM saved_search WHERE sawyer_id = $1',
   bids: `SELECT listing.number AS listing, bid.listing_revision, bid.status, mill, card, estimate, road_miles, expected_cents, hold_cents, metal_cap_cents, off_bearer, days_offered, message,
     bid.created_at, bid.updated_at FROM bid JOIN listing ON listing.id = listing_id WHERE sawyer_id = $1`,
   bookings: `SELECT booking.number, listing.number AS listing, CASE WHEN landowner_id = $1 THEN 'landowner' ELSE 'sawyer' END AS as, booking.status, booking.time_zone, starts_at, pay_by, sign_by,

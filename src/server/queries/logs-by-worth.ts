@@ -33,7 +33,8 @@ export interface AskedByWorth extends Omit<ListingsAsked, 'sort' | 'from' | 'amo
 }
 
 /** Cents an hour, 0 when the logs do not fit. */
-export const perHourOf = ({ job }: WeighedListing): number => (job?.fit.fits && job.worth ? Math.max(0, job.worth.perHourCents) : 0);
+export const perHourOfJob = ({ fit, worth }: JobForMill): number => (fit.fits && worth ? Math.max(0, worth.perHourCents) : 0);
+export const perHourOf = ({ job }: WeighedListing): number => (job ? perHourOfJob(job) : 0);
 const cursorOf = (item: WeighedListing, sort: LogsPageSort): string => (sort === 'perHour' ? writeCursor('perHour', { key: String(perHourOf(item)), id: item.rowId }) : item.cursor);
 
 function firstAfter(items: readonly WeighedListing[], sort: LogsPageSort, cursor: string | undefined): number {

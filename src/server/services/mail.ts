@@ -11,6 +11,8 @@ export interface MailMessage {
   readonly attachments?: readonly { readonly filename: string; readonly contentType: string; readonly content: string }[];
   /** A calendar event that mail programs offer to accept. */
   readonly calendar?: { readonly method: 'REQUEST' | 'CANCEL' | 'PUBLISH'; readonly ics: string };
+  /** The address that ends such letters: mail programs post to it (RFC 2369, RFC 8058). */
+  readonly unsubscribe?: string;
 }
 
 let transport: Transporter | undefined;
@@ -25,6 +27,7 @@ export async function sendMail(message: MailMessage): Promise<void> {
     text: message.text,
     html: message.html,
     attachments: (message.attachments ?? []).map((file) => ({ filename: file.filename, contentType: file.contentType, content: Buffer.from(file.content, 'base64') })),
+    ...(message.unsubscribe ? { headers: { 'List-Unsubscribe': `<${message.unsubscribe}>`, 'List-Unsubscribe-Post': 'List-Unsubscribe=One-Click' } } : {}),
     ...(message.calendar ? { icalEvent: { method: message.calendar.method, content: message.calendar.ics, filename: 'invitation.ics' } } : {}),
   });
 }

@@ -1,6 +1,7 @@
 import { now } from '../../clock.ts';
 import { handleProviderEvent } from '../../commands/handle-provider-event.ts';
 import { makeProviderCall } from '../../commands/make-provider-call.ts';
+import { matchSearches } from '../../commands/match-searches.ts';
 import { windUpAccount } from '../../commands/wind-up-account.ts';
 import type { Jobs } from '../jobs.ts';
 import { sendMail } from '../../services/mail.ts';
@@ -11,6 +12,7 @@ import { sweep } from './sweep.ts';
 export const handlers: { readonly [Name in keyof Jobs]?: (payload: Jobs[Name]) => Promise<void> } = {
   'send-mail': sendMail,
   'process-photo': processPhoto,
+  'match-searches': async ({ listingId }) => matchSearches(listingId, now()),
   'make-provider-call': async ({ callId }) => makeProviderCall(callId, now()),
   'handle-provider-event': async ({ eventId }) => handleProviderEvent(eventId, now()),
   'wind-up-account': async ({ accountId }) => void (await windUpAccount(accountId, now())),

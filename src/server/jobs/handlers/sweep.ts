@@ -1,5 +1,6 @@
 import { now } from '../../clock.ts';
 import { closeToBids, lapseListings } from '../../commands/close-listings.ts';
+import { tellSearches } from '../../commands/tell-searches.ts';
 import { log } from '../../log.ts';
 import { moneySweeps } from './money-sweeps.ts';
 import { photoSweeps } from './photo-sweeps.ts';
@@ -14,6 +15,7 @@ export const sweeps: Readonly<Record<string, Sweep>> = {
   'lapse listings': lapseListings,
   ...moneySweeps,
   ...photoSweeps,
+  'tell of logs found': tellSearches,
   'sign or recall tallies': sweepTallies,
 };
 
