@@ -1,4 +1,5 @@
 import type { z } from 'zod';
+import { cutListAnswer, cutListRequest } from './cut-list.ts';
 import { dryingAnswer, dryingRequest } from './drying.ts';
 import { estimateAnswer, estimateRequest } from './estimate.ts';
 import { draftAnswer, draftRequest } from './listing-draft.ts';
@@ -37,6 +38,7 @@ export const operations: readonly Operation[] = [
   { method: 'post', path: '/api/tree-volume', summary: 'Board feet in a standing tree, form class 78', body: treeVolumeRequest, answer: treeVolumeAnswer },
   { method: 'post', path: '/api/drying', summary: 'What a board comes to in the air it dries in', body: dryingRequest, answer: dryingAnswer },
   { method: 'post', path: '/api/saw-plan', summary: 'The best boards of a log on a mill, with an upper bound that no plan of the pattern passes (for a cant: wherever its faces lie), and the order of cuts', body: sawPlanRequest, answer: sawPlanAnswer },
+  { method: 'post', path: '/api/cut-list', summary: 'A plan for each log that together cover a cut list: least board feet short first, then least log volume used, with a bound for every plan of the patterns', body: cutListRequest, answer: cutListAnswer },
   { method: 'get', path: '/api/listings', summary: 'Open listings by distance, a page at a time', query: listingsQuery, answer: listingsAnswer },
   { method: 'get', path: '/api/photos', summary: "A listing's photographs for its owner, unfinished and refused ones included", signedIn: true, query: listPhotosSchema, answer: photosAnswerSchema },
   { method: 'post', path: '/api/photos', summary: 'Begin an upload: a photograph and the form to send its file with', signedIn: true, body: beginPhotoSchema, answer: beginPhotoAnswerSchema },

@@ -1,5 +1,6 @@
 import { describe, expect, inject, test } from 'vitest';
 import { sawPlanRequest } from '~/schemas/saw-plan.ts';
+import type { CutListAnswer } from '~/domain/sawing/cut-list.ts';
 import type { SawPlan } from '~/domain/sawing/saw-plan.ts';
 
 const origin = inject('origin');
@@ -37,6 +38,31 @@ describe('a saw plan over HTTP, without Origin or session', () => {
     [{ ...asked, colour: 'red' }, 'colour'],
   ])('bad input is refused beside its field', async (body, path) => {
     const response = await post('/api/saw-plan', body);
+    expect(response.status).toBe(422);
+    expect(((await response.json()) as { errors: { path: string }[] }).errors.map((error) => error.path)).toContain(path);
+  });
+});
+
+describe('a cut list over HTTP', () => {
+  const list = { logs: [{ id: 'butt', smallEndIn: 16, lengthFt: 12 }, { id: 'top', smallEndIn: 10, lengthFt: 8 }], mill: { kerfIn: 0.125 }, pieces: [{ id: 'bench', thicknessIn: 2, widthIn: 6, lengthFt: 8, count: 4 }] };
+
+  test('plans, what is covered, bound and gap', async () => {
+    const response = await post('/api/cut-list', list);
+    expect(response.status).toBe(200);
+    const answer = (await response.json()) as CutListAnswer;
+    expect(Object.keys(answer).sort()).toEqual(['boardFeetShort', 'boundBoardFeetShort', 'covered', 'gapBoardFeet', 'plans', 'provenBest', 'surplusBoardFeet']);
+    expect(answer.covered).toEqual([{ id: 'bench', made: 4, short: 0 }]);
+    expect(answer.plans.map((plan) => plan.logId)).toEqual(['butt', 'top']);
+    expect(answer.plans.flatMap((plan) => plan.boards)).toHaveLength(4);
+  });
+
+  test.each([
+    [{ ...list, pieces: [{ ...list.pieces[0], count: 0 }] }, 'pieces.0.count'],
+    [{ ...list, pieces: [list.pieces[0], list.pieces[0]] }, 'pieces.1.id'],
+    [{ ...list, logs: [] }, 'logs'],
+    [{ ...list, pieces: [{ id: 'x', thicknessIn: 1, widthIn: 6, count: 1 }] }, 'pieces.0.lengthFt'],
+  ])('bad input is refused beside its field', async (body, path) => {
+    const response = await post('/api/cut-list', body);
     expect(response.status).toBe(422);
     expect(((await response.json()) as { errors: { path: string }[] }).errors.map((error) => error.path)).toContain(path);
   });

@@ -1,20 +1,38 @@
 import { parentPort } from 'node:worker_threads';
+import { cutList, type CutListRequest, type Patience } from '../../domain/sawing/cut-list.ts';
 import { sawPlan, type SawPlanRequest } from '../../domain/sawing/saw-plan.ts';
+import { highsSolver } from './solver.ts';
 
 /** A task for a planning thread. */
-export interface Task {
-  readonly id: number;
-  readonly kind: 'saw-plan';
-  readonly request: SawPlanRequest;
-}
+export type Task = { readonly id: number } & Work;
+export type Work = { readonly kind: 'saw-plan'; readonly request: SawPlanRequest } | { readonly kind: 'cut-list'; readonly request: CutListRequest };
 
 export type Answer = { readonly id: number } & ({ readonly value: unknown } | { readonly error: string } | { readonly late: true });
 
-parentPort?.on('message', ({ id, request }: Task) => {
-  const answered = (answer: Answer): void => parentPort?.postMessage(answer);
-  try {
-    answered({ id, value: sawPlan(request) });
-  } catch (error) {
-    answered({ id, error: error instanceof Error ? (error.stack ?? error.message) : String(error) });
-  }
+/** How long a cut list's logs are planned: by the processor's clock, or by the wall's where others have the processor. */
+const PLANNING_CPU_MS = 900;
+const PLANNING_MS = 3500;
+const SOLVER_SECONDS = 0.4;
+
+function patience(): Patience {
+  const [from, wall] = [process.cpuUsage(), performance.now()];
+  const cpuMs = (): number => {
+    const { user, system } = process.cpuUsage(from);
+    return (user + system) / 1000;
+  };
+  return { toPlan: () => cpuMs() < PLANNING_CPU_MS && performance.now() - wall < PLANNING_MS, solverSeconds: SOLVER_SECONDS };
+}
+
+async function done(task: Task): Promise<unknown> {
+  if (task.kind === 'saw-plan') return sawPlan(task.request);
+  const solve = await highsSolver();
+  return cutList(task.request, solve, patience());
+}
+
+parentPort?.on('message', (task: Task) => {
+  const { id } = task;
+  done(task).then(
+    (value) => parentPort?.postMessage({ id, value } satisfies Answer),
+    (error: unknown) => parentPort?.postMessage({ id, error: error instanceof Error ? (error.stack ?? error.message) : String(error) } satisfies Answer),
+  );
 });

@@ -1,57 +1,74 @@
 import { join } from 'node:path';
 import { Worker } from 'node:worker_threads';
+import type { CutListAnswer, CutListRequest } from '~/domain/sawing/cut-list.ts';
 import type { SawPlan, SawPlanRequest } from '~/domain/sawing/saw-plan.ts';
 import { unavailable } from '../errors.ts';
-import type { Answer, Task } from './planning-thread.ts';
+import type { Answer, Work } from './planning-thread.ts';
 
-/** Plans are worked out in threads of their own, so that a large log never holds up a page. */
-interface Thread {
-  readonly worker: Worker;
-  readonly waiting: Map<number, { readonly done: (answer: Answer) => void }>;
+/** Plans are worked out in threads of their own, so that a large log never holds up a page. A thread does one task after another. */
+class Thread {
+  private worker: Worker | undefined;
+  private readonly tasks = new Map<number, (answer: Answer) => void>();
+  private lastId = 0;
+
+  get waiting(): number {
+    return this.tasks.size;
+  }
+
+  private started(): Worker {
+    if (this.worker) return this.worker;
+    // Run from its source, like the programs that load the built pages: a thread needs a file of its own.
+    const worker = new Worker(join(process.cwd(), 'src/server/services/planning-thread.ts'), { execArgv: ['--import', 'tsx'] });
+    worker.unref();
+    const finish = (answer: Answer): void => {
+      this.tasks.get(answer.id)?.(answer);
+      this.tasks.delete(answer.id);
+    };
+    const lost = (error?: unknown): void => {
+      if (this.worker !== worker) return;
+      this.worker = undefined;
+      for (const id of [...this.tasks.keys()]) finish({ id, error: String(error ?? 'the planning thread ended') });
+    };
+    worker.on('message', finish);
+    worker.on('error', lost);
+    worker.on('exit', () => lost());
+    return (this.worker = worker);
+  }
+
+  /** Hands over a task. @throws unavailable when it takes longer than `waitMs`. */
+  async planned<T>(work: Work, waitMs: number): Promise<T> {
+    const worker = this.started();
+    const id = ++this.lastId;
+    const answer = await new Promise<Answer>((done) => {
+      const late = setTimeout(() => {
+        done({ id, late: true });
+        void worker.terminate();
+      }, waitMs);
+      this.tasks.set(id, (found) => (clearTimeout(late), done(found)));
+      worker.postMessage({ ...work, id });
+    });
+    if ('late' in answer) throw unavailable('This takes too long just now. Try again in a moment.', 10);
+    if ('error' in answer) throw new Error(answer.error);
+    return answer.value as T;
+  }
 }
 
-const WAIT_MS = 25_000;
 const MOST_WAITING = 40;
-let thread: Thread | undefined;
-let lastId = 0;
+const WAIT_MS = 25_000;
+const plans = new Thread();
+/** Two cut lists at a time. */
+const lists = [new Thread(), new Thread()];
+const LIST_WAIT_MS = 15_000;
 
-function started(): Thread {
-  if (thread) return thread;
-  // Run from its source, like the programs that load the built pages: a thread needs a file of its own.
-  const worker = new Worker(join(process.cwd(), 'src/server/services/planning-thread.ts'), { execArgv: ['--import', 'tsx'] });
-  worker.unref();
-  const mine: Thread = { worker, waiting: new Map() };
-  worker.on('message', (answer: Answer) => {
-    mine.waiting.get(answer.id)?.done(answer);
-    mine.waiting.delete(answer.id);
-  });
-  const lost = (error?: unknown): void => {
-    if (thread === mine) thread = undefined;
-    for (const [id, { done }] of mine.waiting) done({ id, error: String(error ?? 'the planning thread ended') });
-    mine.waiting.clear();
-  };
-  worker.on('error', lost);
-  worker.on('exit', () => lost());
-  return (thread = mine);
+/** The saw plan of one log, worked out in a thread. @throws unavailable when too many wait. */
+export async function planLog(request: SawPlanRequest): Promise<SawPlan> {
+  if (plans.waiting >= MOST_WAITING) throw unavailable('Too many plans are being worked out just now. Try again in a moment.', 5);
+  return plans.planned({ kind: 'saw-plan', request }, WAIT_MS);
 }
 
-/** Hands a task to the planning thread. @throws unavailable when too many wait or it takes too long. */
-async function planned<T>(task: Omit<Task, 'id'>): Promise<T> {
-  const { worker, waiting } = started();
-  if (waiting.size >= MOST_WAITING) throw unavailable('Too many plans are being worked out just now. Try again in a moment.', 5);
-  const id = ++lastId;
-  const answer = await new Promise<Answer>((done) => {
-    const late = setTimeout(() => {
-      done({ id, late: true });
-      void worker.terminate();
-    }, WAIT_MS);
-    waiting.set(id, { done: (found) => (clearTimeout(late), done(found)) });
-    worker.postMessage({ ...task, id });
-  });
-  if ('late' in answer) throw unavailable('This plan takes too long just now. Try again in a moment.', 10);
-  if ('error' in answer) throw new Error(answer.error);
-  return answer.value as T;
+/** A cut list over many logs, worked out in a thread. @throws unavailable when two are being worked out already. */
+export async function planCutList(request: CutListRequest): Promise<CutListAnswer> {
+  const idle = lists.find(({ waiting }) => waiting === 0);
+  if (!idle) throw unavailable('Two cut lists are being worked out just now. Try again in a moment.', 3);
+  return idle.planned({ kind: 'cut-list', request }, LIST_WAIT_MS);
 }
-
-/** The saw plan of one log, worked out in a thread. */
-export const planLog = (request: SawPlanRequest): Promise<SawPlan> => planned({ kind: 'saw-plan', request });

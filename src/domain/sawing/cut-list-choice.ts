@@ -1,0 +1,78 @@
+import { type Pool, VOLUME_WEIGHT } from './cut-list-patterns.ts';
+import type { Demand } from './demand.ts';
+import type { Model, Solution, Solver } from './solver.ts';
+
+/** How often each plan of the pool is cut, and what stays short of each size. */
+export interface Choice {
+  readonly times: readonly number[];
+  readonly short: readonly number[];
+}
+
+const TINY = 1e-6;
+
+/** Least board feet short, then least log volume. */
+const isBetter = (pool: Pool, a: Choice, b: Choice): boolean => {
+  const gain = boardFeetShort(pool.demand, b) - boardFeetShort(pool.demand, a);
+  return gain > TINY || (gain > -TINY && volumeOf(pool, a) < volumeOf(pool, b) - TINY);
+};
+
+export const boardFeetShort = (demand: readonly Demand[], { short }: Choice): number => demand.reduce((sum, { boardFeet }, index) => sum + boardFeet * (short[index] ?? 0), 0);
+
+const volumeOf = (pool: Pool, { times }: Choice): number => times.reduce((sum, count, plan) => sum + count * (pool.shapes[pool.made[plan]?.shape ?? 0]?.cubicFeet ?? 0), 0);
+
+/** A choice by how often each plan is cut. */
+function choiceOf(pool: Pool, times: readonly number[]): Choice {
+  const made = pool.demand.map((_, size) => times.reduce((sum, count, plan) => sum + count * (pool.made[plan]?.counts[size] ?? 0), 0));
+  return { times, short: pool.demand.map(({ count }, size) => Math.max(0, count - (made[size] ?? 0))) };
+}
+
+/** Starts from plans taken in fractions, rounded down, and adds log after log the plan that covers most of what is left; then leaves out logs that nothing needs. */
+function completed(pool: Pool, fractions: readonly number[]): Choice {
+  const times = pool.made.map((_, index) => Math.floor((fractions[index] ?? 0) + TINY));
+  const free = pool.shapes.map(({ ids }, shape) => ids.length - times.reduce((sum, count, plan) => (pool.made[plan]?.shape === shape ? sum + count : sum), 0));
+  const { short } = choiceOf(pool, times);
+  const left = [...short];
+  for (;;) {
+    let best = -1;
+    let most = TINY;
+    pool.made.forEach(({ shape, counts }, index) => {
+      if ((free[shape] ?? 0) <= 0) return;
+      const covers = counts.reduce((sum, count, size) => sum + Math.min(count, left[size] ?? 0) * (pool.demand[size]?.boardFeet ?? 0), 0);
+      if (covers > most) [best, most] = [index, covers];
+    });
+    const plan = pool.made[best];
+    if (!plan) break;
+    times[best] = (times[best] ?? 0) + 1;
+    free[plan.shape] = (free[plan.shape] ?? 0) - 1;
+    plan.counts.forEach((count, size) => (left[size] = Math.max(0, (left[size] ?? 0) - count)));
+  }
+  let choice = choiceOf(pool, times);
+  for (let plan = 0; plan < times.length; plan++) {
+    while ((choice.times[plan] ?? 0) > 0) {
+      const without = choiceOf(pool, choice.times.map((count, index) => (index === plan ? count - 1 : count)));
+      if (!isBetter(pool, without, choice)) break;
+      choice = without;
+    }
+  }
+  return choice;
+}
+
+/** The plans in whole numbers: least board feet short, then, with no more than that short, least log volume. */
+export function choose(pool: Pool, solve: Solver, seconds: number): Choice {
+  const plans = pool.made.length;
+  const { demand } = pool;
+  if (plans === 0) return choiceOf(pool, []);
+  const boardFeetOf = (_: number, index: number): number => demand[index]?.boardFeet ?? 0;
+  let best = completed(pool, []);
+  const offer = (solution: Solution | null): void => {
+    if (!solution) return;
+    const found = [choiceOf(pool, solution.columns.slice(0, plans).map((value) => Math.floor(value + 0.01))), completed(pool, solution.columns)];
+    for (const each of found) if (isBetter(pool, each, best)) best = each;
+  };
+  offer(solve(pool.model(false, boardFeetOf, (cubicFeet) => cubicFeet * VOLUME_WEIGHT), seconds));
+  if (boardFeetShort(demand, best) > TINY) offer(solve(pool.model(true, boardFeetOf, () => 0), seconds));
+  const model = pool.model(true, () => 0, (cubicFeet) => cubicFeet);
+  const noMoreShort: Model = { ...model, rows: [...model.rows, { terms: demand.map(({ boardFeet }, index) => [plans + index, boardFeet] as const), sign: '<=', rest: boardFeetShort(demand, best) + TINY }] };
+  offer(solve(noMoreShort, seconds));
+  return best;
+}

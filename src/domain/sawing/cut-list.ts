@@ -1,0 +1,116 @@
+import { totalBoardFeet } from './board.ts';
+import { leastShort, leastVolume } from './cut-list-bound.ts';
+import { Pool } from './cut-list-patterns.ts';
+import { boardFeetShort, choose } from './cut-list-choice.ts';
+import { assembled, type LogPlan } from './cut-list-plans.ts';
+import { type Demand, demandOf } from './demand.ts';
+import { cubicFeet, type LogShape } from './log-shape.ts';
+import type { Mill } from './pieces.ts';
+import type { Pattern } from './saw-plan.ts';
+import type { Solver } from './solver.ts';
+
+export interface ListedShape extends LogShape {
+  readonly id: string;
+}
+
+/** A wanted size, green, and how many. */
+export interface WantedPiece {
+  readonly id: string;
+  readonly thicknessIn: number;
+  readonly widthIn: number;
+  readonly lengthFt: number;
+  readonly count: number;
+}
+
+export interface CutListRequest {
+  readonly logs: readonly ListedShape[];
+  readonly mill: Mill;
+  /** `best` when left out. */
+  readonly pattern?: Pattern | 'best' | undefined;
+  readonly waneAllowanceIn?: number | undefined;
+  readonly pieces: readonly WantedPiece[];
+}
+
+export interface Covered {
+  readonly id: string;
+  readonly made: number;
+  readonly short: number;
+}
+
+export interface CutListAnswer {
+  readonly covered: readonly Covered[];
+  /** A plan for every log, in the order given; without boards where the log is not needed or gives nothing, with the reason. */
+  readonly plans: readonly LogPlan[];
+  /** Board feet in the plans beyond what was asked for. */
+  readonly surplusBoardFeet: number;
+  readonly boardFeetShort: number;
+  /** No plans of these patterns leave less board feet short. */
+  readonly boundBoardFeetShort: number;
+  readonly gapBoardFeet: number;
+  /** Neither fewer board feet short nor, with as few, less log volume is possible. */
+  readonly provenBest: boolean;
+}
+
+/** How long to look: each answers whether there is still time to begin one more thing. */
+export interface Patience {
+  /** For planning logs at new prices. */
+  readonly toPlan: () => boolean;
+  /** Seconds that one solving may take. */
+  readonly solverSeconds: number;
+}
+
+/** Rounds of planning every log at the prices of the round before. */
+const MOST_ROUNDS = 8;
+const FEW_SHAPES = 6;
+const NEAR = 1e-6;
+
+/**
+ * Chooses a plan for each log so that the wanted pieces are covered: least board feet short first, then least cubic feet of logs
+ * used. Plans are made at prices that the solver puts on the pieces (column generation); which plan each log takes is then solved in
+ * whole numbers over all plans made. The bound holds for every plan of the pattern, made or not.
+ * @param solve a solver of linear models in whole numbers. @param patience how long to look; with no time at all, still an answer.
+ */
+export function cutList(request: CutListRequest, solve: Solver, patience: Patience): CutListAnswer {
+  const demand = demandOf(request.pieces);
+  const pool = new Pool(request, demand);
+  pool.planAt(demand.map(({ boardFeet }) => boardFeet), patience.toPlan);
+  pool.planOneByOne(patience.toPlan);
+  // Of few logs, how many of each size they hold alone makes the bound sharp.
+  if (pool.shapes.length <= FEW_SHAPES) for (let size = 0; size < demand.length && patience.toPlan(); size++) pool.planAt(demand.map(({ boardFeet }, index) => (index === size ? boardFeet : 0)), patience.toPlan);
+  for (let round = 0; round < MOST_ROUNDS && patience.toPlan(); round++) {
+    const prices = pool.pricesBy(solve, patience.solverSeconds);
+    if (!prices || !pool.planAt(prices, patience.toPlan)) break;
+  }
+  const choice = choose(pool, solve, patience.solverSeconds);
+  const short = boardFeetShort(demand, choice);
+  const bound = Math.min(short, leastShort(pool, demand, solve, patience.solverSeconds));
+  const plans = assembled(request, pool, choice, demand);
+  const proven = short <= bound + NEAR && usedVolume(request.logs, plans) <= leastVolume(pool, demand, choice.short, solve, patience.solverSeconds) + NEAR;
+  const covered = coveredBy(request.pieces, demand, choice.short);
+  const made = request.pieces.reduce((sum, piece, index) => sum + (covered[index]?.made ?? 0) * ((piece.thicknessIn * piece.widthIn * piece.lengthFt) / 12), 0);
+  const surplus = plans.reduce((sum, { boards }) => sum + totalBoardFeet(boards), 0) - made;
+  return {
+    covered,
+    plans,
+    surplusBoardFeet: Math.abs(surplus) < NEAR ? 0 : surplus,
+    boardFeetShort: short,
+    boundBoardFeetShort: bound,
+    gapBoardFeet: short - bound < NEAR ? 0 : short - bound,
+    provenBest: proven,
+  };
+}
+
+const usedVolume = (logs: readonly ListedShape[], plans: readonly LogPlan[]): number =>
+  logs.reduce((sum, log, index) => sum + ((plans[index]?.boards.length ?? 0) > 0 ? cubicFeet(log) : 0), 0);
+
+/** Shares what is short of a size among the pieces that ask for it, the last in the list first. */
+function coveredBy(pieces: readonly WantedPiece[], demand: readonly Demand[], short: readonly number[]): Covered[] {
+  const left = [...short];
+  const covered = [...pieces].reverse().map((piece): Covered => {
+    const size = demand.findIndex(({ ids }) => ids.includes(piece.id));
+    const missing = Math.min(piece.count, left[size] ?? 0);
+    left[size] = (left[size] ?? 0) - missing;
+    return { id: piece.id, made: piece.count - missing, short: missing };
+  });
+  return covered.reverse();
+}

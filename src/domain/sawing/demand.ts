@@ -1,0 +1,24 @@
+import type { WantedPiece } from './cut-list.ts';
+import { boardFeet } from './pieces.ts';
+
+/** One wanted size, all pieces of it together. */
+export interface Demand {
+  readonly ids: readonly string[];
+  readonly thicknessIn: number;
+  readonly widthIn: number;
+  readonly lengthFt: number;
+  readonly count: number;
+  /** Of one piece. */
+  readonly boardFeet: number;
+}
+
+/** The wanted sizes, each once. */
+export function demandOf(pieces: readonly WantedPiece[]): Demand[] {
+  const found = new Map<string, Demand>();
+  for (const { id, thicknessIn, widthIn, lengthFt, count } of pieces) {
+    const key = `${thicknessIn} ${widthIn} ${lengthFt}`;
+    const same = found.get(key);
+    found.set(key, { ids: [...(same?.ids ?? []), id], thicknessIn, widthIn, lengthFt, count: (same?.count ?? 0) + count, boardFeet: boardFeet(thicknessIn, widthIn, lengthFt) });
+  }
+  return [...found.values()];
+}
