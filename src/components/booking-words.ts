@@ -60,6 +60,8 @@ const deeds: Readonly<Record<string, string>> = {
   returnMoney: 'Money that was not due goes back',
   acceptHeld: 'The held amount was accepted as full pay',
   dispute: 'The card payment is disputed at the bank',
+  winDispute: 'The bank decided for the payment',
+  loseDispute: 'The bank gave the payment back to the card',
   retryProviderCall: 'A moderator had a payment tried again',
   hold: 'The booking is held',
   startSawing: 'Sawing began',

@@ -28,6 +28,9 @@ function stepLine(step: MoneyStep, money: MoneyOfBooking): MoneyLine {
       if (step.state === 'done') return done(`${cents} released to ${to}; the bank takes some days`);
       if (step.state === 'stuck') return trouble(`${cents} could not be released to ${to}; a moderator is looking at it`);
       return ahead(step.state === 'waits' ? `${cents} for ${to} waits for a payout account` : `${cents} is being released to ${to}`);
+    case 'reversal':
+      if (step.state === 'done') return done(`${cents} was taken back from ${to} after the dispute`);
+      return step.state === 'stuck' ? trouble(`${cents} is owed back by ${to} after the dispute; a moderator writes about it`) : ahead(`${cents} is being taken back from ${to} after the dispute`);
     case 'dispute':
       if (step.state === 'won') return done(`The card dispute over ${cents} was decided for the payment`);
       return trouble(step.state === 'lost' ? `The bank gave ${cents} back to ${card} after a dispute` : `The card payment of ${cents} is disputed at the bank`);
@@ -42,6 +45,7 @@ function nextLine(money: MoneyOfBooking): MoneyLine | null {
   if (money.waitsFor === 'bank') return ahead('Nothing is paid out until the bank has decided.');
   if (money.waitsFor === 'top-up') {
     const lacking = formatCents(money.settlement?.lackingCents ?? 0);
+    if (money.heldCents === 0) return ahead(`The bank took the hold back, so nothing is held: ${mine ? 'pay' : `it waits for ${money.landownerName} to pay`} the ${lacking} that the tally came to.`);
     return ahead(mine ? `The tally is ${lacking} more than the hold: pay the rest, unless ${money.sawyerName} accepts what is held.` : `The tally is ${lacking} more than the hold: it waits for ${money.landownerName} to pay the rest, or for ${money.side === 'sawyer' ? 'you' : money.sawyerName} to accept what is held.`);
   }
   switch (money.status) {

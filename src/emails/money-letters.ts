@@ -47,13 +47,16 @@ export const paidOut = (to: To, figures: readonly (readonly [label: string, valu
     { button: 'See the receipt', href: link },
   ]);
 
-/** A card payment is disputed, or the dispute has ended. */
-export const disputeNews = (to: To, bookingNumber: number, news: 'open' | 'won' | 'lost', cents: Cents, link: string): MailMessage =>
-  letter(to.email, `Card payment of booking ${bookingNumber} ${news === 'open' ? 'is disputed' : `: dispute ${news}`}`, to.name, [
+/** A card payment is disputed, or the dispute has ended. `ended`: the booking is over. */
+export function disputeNews(to: To, bookingNumber: number, news: 'open' | 'won' | 'lost', cents: Cents, about: { readonly mine: 'landowner' | 'sawyer'; readonly ended: boolean }, link: string): MailMessage {
+  const lost = `The bank gave ${formatCents(cents)} back to ${about.mine === 'landowner' ? 'your card' : 'the card'}.`;
+  const follows = about.ended ? ' The booking is over.' : about.mine === 'sawyer' ? ' What had been released to you from this payment is owed back, and is taken out of your balance at the payment provider where it can be.' : '';
+  return letter(to.email, `Card payment of booking ${bookingNumber} ${news === 'open' ? 'is disputed' : `: dispute ${news}`}`, to.name, [
     {
-      open: `The bank was told that the card payment of ${formatCents(cents)} is disputed. Until the bank decides, nothing more is paid out from it.`,
+      open: `The card payment of ${formatCents(cents)} is disputed at the bank. Nothing more is paid out from it until the bank has decided.`,
       won: `The bank decided for the payment: ${formatCents(cents)} stands.`,
-      lost: `The bank gave ${formatCents(cents)} back to the card. A moderator looks at what follows.`,
+      lost: `${lost}${follows}`,
     }[news],
     { button: 'See the booking', href: link },
   ]);
+}

@@ -140,9 +140,10 @@ export async function checkBooks(house: MoneyHouse, bookingIds?: readonly string
     const owed = -(ours['landowner held'] + ours['sawyer payable'] + ours['refund payable']);
     const fee = -ours['platform fee'];
     const apart = ours['dispute loss'] + ours['sawyer receivable'];
-    if (group.charged !== group.transferred + group.refunded + fee + owed + (group.disputedAway - apart)) {
-      faults.push(`booking ${booking.number}: charged ${group.charged}, transferred ${group.transferred}, refunded ${group.refunded}, fee ${fee}, owed or held ${owed}, disputed ${group.disputedAway}, ${apart}`);
+    if (group.charged !== group.transferred - group.reversed + group.refunded + fee + owed + (group.disputedAway - apart)) {
+      faults.push(`booking ${booking.number}: charged ${group.charged}, transferred ${group.transferred}, reversed ${group.reversed}, refunded ${group.refunded}, fee ${fee}, owed or held ${owed}, disputed ${group.disputedAway}, ${apart}`);
     }
+    for (const account of ['dispute loss', 'sawyer receivable'] as const) if (ours[account] < 0) faults.push(`booking ${booking.number}: ${account} is ${ours[account]}`);
     if (owed < 0 || fee < 0) faults.push(`booking ${booking.number}: owes ${owed}, fee ${fee}`);
   }
   return faults;

@@ -27,11 +27,11 @@ export async function voidPayment(by: Actor, payment: HeldPayment, at: Date): Pr
 const moneyWords = (parts: Settlement): string =>
   parts.payableCents === 0
     ? `The whole hold of ${formatCents(parts.refundCents)} goes back to the card; the bank takes some days.`
-    : `Set-up and travel of ${formatCents(parts.payableCents)} are owed, for it is less than 48 hours to the start; ${formatCents(parts.refundCents)} goes back to the card.`;
+    : `Set-up and travel of ${formatCents(parts.payableCents)} are owed; ${formatCents(parts.refundCents)} goes back to the card.`;
 
 /**
  * Either side cancels before sawing. Free until 48 hours before the first day's start; later by the landowner, set-up and travel are
- * owed; by the sawyer, everything goes back.
+ * owed; by the sawyer, everything goes back. While the bank decides a dispute the money waits; the day is free at once.
  * @param expects what the person was shown of what is owed, in cents; a cancellation that would cost more is refused
  */
 export async function cancelBooking(by: Viewer, input: { readonly booking: number; readonly reason: string; readonly expects?: number }, at: Date): Promise<void> {
@@ -57,23 +57,33 @@ interface Ending {
   /** How letters name who did it. */
   readonly saidBy: string;
   readonly reason: string;
+  /** The side that is at fault, where that is not the one who does it. */
+  readonly cancelledBy?: string;
+  /** When it counts as cancelled; now unless given. */
+  readonly asOf?: Date;
   readonly expects?: number;
 }
 
-/** Ends a booking that the caller has locked and allowed to be cancelled. @throws Refusal `conflict` while the card payment is disputed */
-export async function endBeforeSawing(by: Actor, booking: Booking, { side, saidBy, reason, expects }: Ending, at: Date): Promise<void> {
+/**
+ * Ends a booking that the caller has locked and allowed to be cancelled. While the bank decides a dispute the money waits and is
+ * settled as of the cancellation afterwards; the day is free at once.
+ */
+export async function endBeforeSawing(by: Actor, booking: Booking, ending: Ending, at: Date): Promise<void> {
+  const { side, saidBy, reason, expects } = ending;
+  const cancelledAt = ending.asOf ?? at;
   const payment = await HeldPayment.findOne({ where: { bookingId: booking.id }, lock: true });
-  const parts = booking.status === 'held' ? await cancellationOf(booking, side, at) : null;
+  const parts = booking.status === 'held' ? await cancellationOf(booking, side, cancelledAt) : null;
   if (parts && expects !== undefined && parts.payableCents > expects) {
     throw conflict(`It is now less than 48 hours to the start: cancelling costs ${formatCents(parts.payableCents)} for set-up and travel. Look again before you cancel.`);
   }
-  if (parts && payment?.disputedAt) throw conflict('The card payment is disputed at the bank. A moderator ends this booking when the bank has decided.');
-  await transition(bookingStates, 'cancel', booking, by, at, { cancelledBy: by.id, cancelReason: reason, updatedAt: at });
+  await transition(bookingStates, 'cancel', booking, by, at, { cancelledBy: ending.cancelledBy ?? by.id, cancelReason: reason, cancelledAt, updatedAt: at });
   if (payment?.status === 'due') await voidPayment(by, payment, at);
-  if (parts && payment) await payOut(by, booking, payment, parts, 'cancellation', at);
+  const waits = payment?.disputedAt != null;
+  if (parts && payment && !waits) await payOut(by, booking, payment, parts, 'cancellation', at);
   await afterEnding(by, booking, at);
   const parties = await partiesOf(booking);
+  const money = waits ? 'The card payment is disputed at the bank. What is owed is settled when the bank has decided.' : parts ? moneyWords(parts) : 'No money was held.';
   for (const person of [parties.landowner, parties.sawyer]) {
-    await enqueue('send-mail', bookingCancelled(person, saidBy, reason, parts ? moneyWords(parts) : 'No money was held.', bookingLink(booking)));
+    await enqueue('send-mail', bookingCancelled(person, saidBy, reason, money, bookingLink(booking)));
   }
 }

@@ -1,5 +1,5 @@
 import { ProviderCall, ProviderEvent } from '../models/money.ts';
-import { readCheckout, readDispute, readRefund } from '../services/card-payments.ts';
+import { findReversal, readCheckout, readDispute, readRefund } from '../services/card-payments.ts';
 import { readPayoutAccount } from '../services/payments.ts';
 import { finishProviderCall } from './finish-provider-call.ts';
 import { noteDispute } from './note-dispute.ts';
@@ -49,6 +49,14 @@ async function outcomeOf(event: ProviderEvent, at: Date): Promise<string> {
       const call = await callOf(subject);
       if (!call) return 'not ours';
       await finishProviderCall(call.id, { providerId: subject.id, status: 'moved' }, at);
+      return 'noted';
+    }
+    case 'transfer.reversed': {
+      const transfer = await ProviderCall.findOne({ where: { providerId: subject.id, kind: 'transfer' } });
+      const call = transfer && (await ProviderCall.findOne({ where: { reverses: transfer.id } }));
+      const made = call && (await findReversal(subject.id, call.id));
+      if (!made) return 'not ours';
+      await finishProviderCall(call.id, made, at);
       return 'noted';
     }
     case 'charge.dispute.created':

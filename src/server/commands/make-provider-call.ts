@@ -1,8 +1,9 @@
 import { execute, oneRow } from '../db.ts';
 import { Booking, Charge, HeldPayment, ProviderCall, SawyerProfile } from '../models/index.ts';
-import { expireCheckout, findRefund, findTransfer, makeRefund, makeTransfer, readRefund, type Moved } from '../services/card-payments.ts';
+import { expireCheckout, findRefund, findReversal, findTransfer, makeRefund, makeReversal, makeTransfer, readRefund, type Moved } from '../services/card-payments.ts';
+import { disputeOf } from '../lost-charges.ts';
 import { PaymentsProblem } from '../services/payments.ts';
-import { centsOf, finishProviderCall } from './finish-provider-call.ts';
+import { centsOf, dropProviderCall, finishProviderCall } from './finish-provider-call.ts';
 import { receiveCheckout } from './receive-checkout.ts';
 
 /** After this many tries a call is left to a moderator. */
@@ -18,6 +19,8 @@ interface Work {
   readonly charge: Charge | null;
   readonly payment: HeldPayment;
   readonly destination: string | null;
+  /** For a reversal: the transfer at the provider. */
+  readonly transfer: string | null;
 }
 
 async function workOf(callId: string): Promise<Work | null> {
@@ -31,6 +34,7 @@ async function workOf(callId: string): Promise<Work | null> {
     charge: call.chargeId === null ? null : await Charge.findByPk(call.chargeId),
     payment: await HeldPayment.findByPk(call.paymentId, { rejectOnEmpty: true }),
     destination: profile?.payoutsReady ? profile.payoutAccount : null,
+    transfer: call.reverses === null ? null : ((await ProviderCall.findByPk(call.reverses, { rejectOnEmpty: true })).providerId),
   };
 }
 
@@ -42,21 +46,23 @@ const claim = (callId: string, at: Date): Promise<{ id: string } | undefined> =>
   );
 
 /** What the provider has already done for this call, when it was tried before. */
-async function doneBefore({ call, charge, payment }: Work): Promise<Moved | null> {
+async function doneBefore({ call, charge, payment, transfer }: Work): Promise<Moved | null> {
   if (call.providerId !== null && call.kind === 'refund') {
     const seen = await readRefund(call.providerId);
     if (seen.status !== 'came back') return seen;
   }
   if (call.attempts <= 1 || !charge) return null;
+  if (call.kind === 'reversal') return transfer === null ? null : findReversal(transfer, call.id);
   return call.kind === 'transfer' ? findTransfer(payment.transferGroup, call.id) : findRefund(charge.providerChargeId, call.id);
 }
 
 async function make(work: Work): Promise<Moved> {
-  const { call, charge, payment, bookingNumber, destination } = work;
+  const { call, charge, payment, bookingNumber, destination, transfer } = work;
   const before = await doneBefore(work);
   if (before) return before;
   if (!charge) throw new Error(`The call ${call.id} names no charge.`);
   const common = { callId: call.id, idempotencyKey: call.idempotencyKey, amountCents: centsOf(call), bookingNumber };
+  if (call.kind === 'reversal' && transfer !== null) return makeReversal({ ...common, transfer });
   if (call.kind === 'refund') return makeRefund({ ...common, charge: charge.providerChargeId });
   if (call.kind !== 'transfer' || destination === null) throw new Error(`The call ${call.id} cannot be made.`);
   return makeTransfer({ ...common, destination, sourceCharge: charge.providerChargeId, transferGroup: payment.transferGroup });
@@ -71,8 +77,10 @@ async function make(work: Work): Promise<Moved> {
 export async function makeProviderCall(callId: string, at: Date): Promise<void> {
   const found = await workOf(callId);
   if (!found) return;
-  // Pay waits, untried, until the sawyer's payout account is ready.
-  if (found.call.kind === 'transfer' && found.destination === null) return;
+  const paysFrom = found.call.kind === 'transfer' || found.call.kind === 'refund' ? found.call.chargeId : null;
+  const dispute = paysFrom === null ? null : await disputeOf(paysFrom);
+  // Nothing is paid out of a charge until the bank has decided, and pay waits, untried, until the payout account is ready.
+  if (dispute === 'open' || (dispute === null && found.call.kind === 'transfer' && found.destination === null)) return;
   if (!(await claim(callId, at))) return;
   const work = await workOf(callId);
   if (!work) return;
@@ -80,6 +88,10 @@ export async function makeProviderCall(callId: string, at: Date): Promise<void> 
     if (work.call.kind === 'expire-checkout') {
       await receiveCheckout(await expireCheckout(String(work.call.request['sessionId'])), at);
       await work.call.update({ status: 'done', doneAt: at, claimedUntil: null, error: null });
+    } else if (dispute === 'lost') {
+      const before = await doneBefore(work);
+      if (before && before.status !== 'came back') await finishProviderCall(callId, before, at);
+      else await dropProviderCall(callId, at);
     } else await finishProviderCall(callId, await make(work), at);
   } catch (error) {
     if (!(error instanceof PaymentsProblem)) throw error;

@@ -1,12 +1,15 @@
+import { bookingStates } from '~/domain/states/booking.ts';
 import { disputeNews } from '~/emails/money-letters.ts';
 import { lockBookingMoney } from '../booking-money.ts';
-import { inTransaction, oneRow } from '../db.ts';
+import { inTransaction } from '../db.ts';
+import { afterEnding } from '../end-booking.ts';
 import { enqueue } from '../jobs/queue.ts';
 import { heldFor, post } from '../ledger.ts';
-import { CardDispute, Charge, HeldPayment, type Booking } from '../models/index.ts';
+import { oweBack } from '../lost-charges.ts';
+import { CardDispute, Charge, HeldPayment, ProviderCall, type Booking } from '../models/index.ts';
 import { bookingLink, partiesOf } from '../parties.ts';
 import type { DisputeSeen } from '../services/card-payments.ts';
-import { record } from '../transition.ts';
+import { record, transition } from '../transition.ts';
 import { system } from '../viewer.ts';
 import { settleBooking } from './settle-booking.ts';
 
@@ -14,8 +17,9 @@ const provider = system('payment provider');
 
 /**
  * Takes in a card dispute as it stands at the provider now; told in any order, each step is entered once.
- * Opened: the money and the provider's fee have left. Won: the money is back. Lost: it comes out of what is still held, and
- * what was paid out already is owed by the sawyer.
+ * Opened: the money and the provider's fee have left, and nothing is paid out of the charge. Won: the money is back, and what waited
+ * goes on. Lost: it comes out of what is still held or promised, and what was paid out already is owed by the sawyer and taken back
+ * where it can be had. A booking that has no hold left before sawing ends.
  */
 export async function noteDispute(seen: DisputeSeen, at: Date): Promise<'not ours' | 'noted' | 'nothing new'> {
   const charge = await Charge.findOne({ where: { providerChargeId: seen.chargeId } });
@@ -29,9 +33,13 @@ export async function noteDispute(seen: DisputeSeen, at: Date): Promise<'not our
     const dispute = known ?? (await CardDispute.findByPk(seen.id, { rejectOnEmpty: true }));
     if (seen.status === 'open' || dispute.status !== 'open') return known ? 'nothing new' : 'noted';
     await dispute.update({ status: seen.status, closedAt: at });
-    await close(booking, charge, seen, at);
+    await record(provider, seen.status === 'won' ? 'winDispute' : 'loseDispute', 'heldPayment', payment.id, at, { data: { dispute: seen.id, cents: seen.amountCents } });
+    if (seen.status === 'won') await win(booking, seen, at);
+    else await lose(booking, charge, seen, at);
     const others = await CardDispute.count({ where: { bookingId: booking.id, status: 'open' } });
     if (others === 0) await payment.update({ disputedAt: null, updatedAt: at });
+    await goOn(charge);
+    await endUnheld(booking, at);
     await tell(booking, seen);
     await settleBooking(provider, booking.id, at);
     return 'noted';
@@ -53,35 +61,40 @@ async function open(booking: Booking, payment: HeldPayment, charge: Charge, seen
   await tell(booking, { ...seen, status: 'open' });
 }
 
-async function close(booking: Booking, charge: Charge, seen: DisputeSeen, at: Date): Promise<void> {
-  if (seen.status === 'won') {
-    await post({
-      at, cause: 'dispute won', causeId: seen.id, bookingId: booking.id,
-      sides: [{ account: 'provider balance', amountCents: seen.amountCents }, { account: 'dispute loss', amountCents: -seen.amountCents }],
-    });
-    return;
-  }
-  const fromHeld = charge.returnedBecause === null ? Math.min(seen.amountCents, Math.max(0, await heldFor(booking.id))) : 0;
-  const bySawyer = Math.min(seen.amountCents - fromHeld, await transferredFrom(charge.id));
-  if (fromHeld + bySawyer === 0) return;
+async function win(booking: Booking, seen: DisputeSeen, at: Date): Promise<void> {
   await post({
-    at, cause: 'dispute lost', causeId: seen.id, bookingId: booking.id,
-    note: 'Out of what was held; what had been paid out is owed by the sawyer.',
-    sides: [
-      { account: 'landowner held', amountCents: fromHeld },
-      { account: 'sawyer receivable', amountCents: bySawyer },
-      { account: 'dispute loss', amountCents: -(fromHeld + bySawyer) },
-    ],
+    at, cause: 'dispute won', causeId: seen.id, bookingId: booking.id,
+    sides: [{ account: 'provider balance', amountCents: seen.amountCents }, { account: 'dispute loss', amountCents: -seen.amountCents }],
   });
 }
 
-async function transferredFrom(chargeId: string): Promise<number> {
-  const sum = await oneRow<{ cents: number }>(`SELECT coalesce(sum((request->>'amountCents')::int), 0)::int AS cents FROM provider_call WHERE charge_id = $1 AND kind = 'transfer' AND status = 'done'`, [chargeId]);
-  return sum?.cents ?? 0;
+async function lose(booking: Booking, charge: Charge, seen: DisputeSeen, at: Date): Promise<void> {
+  const fromHeld = charge.returnedBecause === null ? Math.min(seen.amountCents, Math.max(0, await heldFor(booking.id))) : 0;
+  if (fromHeld > 0) {
+    await post({
+      at, cause: 'dispute lost', causeId: seen.id, bookingId: booking.id, note: 'Out of what was held.',
+      sides: [{ account: 'landowner held', amountCents: fromHeld }, { account: 'dispute loss', amountCents: -fromHeld }],
+    });
+  }
+  for (const transfer of await ProviderCall.findAll({ where: { chargeId: charge.id, kind: 'transfer', status: 'done' }, lock: true })) await oweBack(booking, transfer, at);
+}
+
+/** What waited for the bank is taken up again: made when the dispute was won, given up when it was lost. */
+async function goOn(charge: Charge): Promise<void> {
+  await ProviderCall.update({ status: 'waiting' }, { where: { chargeId: charge.id, kind: ['transfer', 'refund'], status: 'stuck' } });
+  for (const call of await ProviderCall.findAll({ where: { chargeId: charge.id, kind: ['transfer', 'refund'], status: ['waiting', 'failed'] } })) await enqueue('make-provider-call', { callId: call.id });
+}
+
+/** Before sawing, a booking whose whole hold the bank gave back ends: the sawyer does not set out on nothing. */
+async function endUnheld(booking: Booking, at: Date): Promise<void> {
+  if (booking.status !== 'held' || (await heldFor(booking.id)) > 0) return;
+  await transition(bookingStates, 'cancel', booking, provider, at, { cancelReason: 'The bank gave the hold back to the card after a dispute.', cancelledAt: at, updatedAt: at });
+  await afterEnding(provider, booking, at);
 }
 
 async function tell(booking: Booking, seen: DisputeSeen): Promise<void> {
-  const { sawyer } = await partiesOf(booking);
-  await enqueue('send-mail', disputeNews(sawyer, booking.number, seen.status, seen.amountCents, bookingLink(booking)));
+  const { landowner, sawyer } = await partiesOf(booking);
+  const ended = booking.status === 'cancelled';
+  await enqueue('send-mail', disputeNews(sawyer, booking.number, seen.status, seen.amountCents, { mine: 'sawyer', ended }, bookingLink(booking)));
+  await enqueue('send-mail', disputeNews(landowner, booking.number, seen.status, seen.amountCents, { mine: 'landowner', ended }, bookingLink(booking)));
 }
-

@@ -15,6 +15,15 @@ export async function queueProviderCalls(kind: 'transfer' | 'refund', payment: H
   }
 }
 
+/** Takes a made transfer back, once. */
+export async function queueReversal(transfer: ProviderCall, amountCents: number, at: Date): Promise<void> {
+  const call = await ProviderCall.create({
+    kind: 'reversal', bookingId: transfer.bookingId, paymentId: transfer.paymentId, chargeId: transfer.chargeId, reverses: transfer.id,
+    idempotencyKey: `reversal-${crypto.randomUUID()}`, request: { amountCents }, createdAt: at,
+  });
+  await enqueue('make-provider-call', { callId: call.id });
+}
+
 /** Ends a checkout that nobody should pay any more. */
 export async function queueCheckoutEnd(payment: HeldPayment, sessionId: string, at: Date): Promise<void> {
   const call = await ProviderCall.create({

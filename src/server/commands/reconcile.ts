@@ -3,7 +3,7 @@ import { inTransaction, oneRow, rows } from '../db.ts';
 import { log } from '../log.ts';
 import { balances, post } from '../ledger.ts';
 import { CardDispute, ProviderCall, Reconciliation, type Finding } from '../models/index.ts';
-import { callNamedBy, checkoutOfCharge, movementsSince, providerBalance, readDispute, readRefund, type Movement } from '../services/card-payments.ts';
+import { callNamedBy, checkoutOfCharge, findReversal, movementsSince, providerBalance, readDispute, readRefund, type Movement } from '../services/card-payments.ts';
 import { checkOpenCheckouts } from './check-checkouts.ts';
 import { finishProviderCall } from './finish-provider-call.ts';
 import { noteDispute } from './note-dispute.ts';
@@ -29,6 +29,15 @@ async function finishCall(kind: 'refund' | 'transfer', id: string, at: Date): Pr
   await finishProviderCall(callId, kind === 'refund' ? await readRefund(id) : { providerId: id, status: 'moved' }, at);
 }
 
+/** A reversal's own id does not say which transfer it belongs to, so every one that is not entered yet is asked about. */
+async function finishReversals(at: Date): Promise<void> {
+  for (const call of await ProviderCall.findAll({ where: { kind: 'reversal', status: { [Op.ne]: 'done' } } })) {
+    const transfer = call.reverses === null ? null : await ProviderCall.findByPk(call.reverses);
+    const made = transfer?.providerId ? await findReversal(transfer.providerId, call.id) : null;
+    if (made) await finishProviderCall(call.id, made, at);
+  }
+}
+
 /**
  * Our own payout of earned fees, money of our own paid in (both against what we have earned), or a fee that the provider took: nobody
  * decides these in the application, so they are only entered.
@@ -49,6 +58,7 @@ async function repair(movement: Movement, at: Date): Promise<void> {
     if (seen) await receiveCheckout(seen, at);
   } else if (movement.type === 'refund' || movement.type === 'refund_failure') await finishCall('refund', movement.sourceId, at);
   else if (movement.type === 'transfer') await finishCall('transfer', movement.sourceId, at);
+  else if (movement.type === 'transfer_refund') await finishReversals(at);
   else if (movement.type === 'adjustment' && movement.category.startsWith('dispute')) await noteDispute(await readDispute(movement.sourceId), at);
   else if (movement.type === 'payout' || movement.type === 'payout_failure' || movement.type === 'topup') await enterOwn(movement, 'platform fee', at);
   else if (movement.type === 'stripe_fee') await enterOwn(movement, 'provider fee', at);

@@ -21,6 +21,8 @@ export const Booking = table('booking', {
   signReminders: filled(whole()),
   cancelledBy: nullable(ref()),
   cancelReason: nullable(text()),
+  /** What is owed for a cancellation is reckoned from here. */
+  cancelledAt: nullable(instant()),
   createdAt: instant(),
   updatedAt: instant(),
 });

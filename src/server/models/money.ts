@@ -49,7 +49,8 @@ export const ProviderCall = table('provider_call', {
   chargeId: nullable(ref()),
   idempotencyKey: text(),
   request: json<Record<string, unknown>>(),
-  status: filled(text<'waiting' | 'done' | 'failed' | 'stuck'>()),
+  /** `dropped`: the bank had given the money back to the card before the call was made. */
+  status: filled(text<'waiting' | 'done' | 'failed' | 'stuck' | 'dropped'>()),
   attempts: filled(whole()),
   providerId: nullable(text()),
   response: nullable(json<unknown>()),
@@ -57,6 +58,8 @@ export const ProviderCall = table('provider_call', {
   createdAt: instant(),
   claimedUntil: nullable(instant()),
   doneAt: nullable(instant()),
+  /** For a reversal: the call whose transfer it takes back. */
+  reverses: nullable(ref()),
 });
 export type ProviderCall = Row<typeof ProviderCall>;
 

@@ -4,7 +4,7 @@ import type { PaymentState } from '~/domain/states/payment.ts';
 import type { Settlement, Split } from '~/domain/trade/settlement.ts';
 import { rolesOnBooking } from '../authorize.ts';
 import { signedSettlement, splitNow } from '../booking-money.ts';
-import { rows } from '../db.ts';
+import { oneRow, rows } from '../db.ts';
 import { notFound } from '../errors.ts';
 import { heldFor, balances } from '../ledger.ts';
 import { Booking, Checkout, HeldPayment, Listing, WorkAgreement } from '../models/index.ts';
@@ -13,7 +13,7 @@ import type { Viewer } from '../viewer.ts';
 
 /** One movement of a booking's money, in the order it began. */
 export interface MoneyStep {
-  readonly kind: 'charge' | 'returned' | 'refund' | 'transfer' | 'dispute';
+  readonly kind: 'charge' | 'returned' | 'refund' | 'transfer' | 'reversal' | 'dispute';
   readonly purpose: Checkout['purpose'] | null;
   readonly cents: number;
   readonly state: 'done' | 'under way' | 'waits' | 'stuck' | 'open' | 'won' | 'lost';
@@ -35,7 +35,7 @@ export interface MoneyOfBooking {
   readonly heldCents: number;
   readonly feeBasisPoints: number;
   /** What the signed tally came to, and how it is split against what was or is held. */
-  readonly settlement: { readonly whole: Settlement; readonly parts: Split; readonly lackingCents: number } | null;
+  readonly settlement: { readonly whole: Settlement; readonly parts: Split; readonly lackingCents: number; /** Given back to the card by the bank. */ readonly lostCents: number } | null;
   readonly waitsFor: 'payout account' | 'top-up' | 'bank' | 'moderator' | null;
   readonly steps: readonly MoneyStep[];
   readonly newestCheckout: { readonly status: Checkout['status']; readonly purpose: Checkout['purpose']; readonly cents: number; readonly createdAt: Date } | null;
@@ -53,7 +53,7 @@ const stepsOf = (bookingId: string): Promise<MoneyStep[]> =>
          CASE WHEN call.status = 'done' THEN 'done' WHEN call.status = 'stuck' THEN 'stuck' WHEN call.kind = 'transfer' AND NOT coalesce(profile.payouts_ready, false) THEN 'waits' ELSE 'under way' END,
          coalesce(call.done_at, call.created_at)
        FROM provider_call call JOIN booking ON booking.id = call.booking_id LEFT JOIN sawyer_profile profile ON profile.account_id = booking.sawyer_id
-       WHERE call.booking_id = $1 AND call.kind IN ('transfer', 'refund')
+       WHERE call.booking_id = $1 AND call.kind IN ('transfer', 'refund', 'reversal') AND call.status <> 'dropped'
        UNION ALL
        SELECT 'dispute', NULL, amount_cents, status, coalesce(closed_at, opened_at) FROM card_dispute WHERE booking_id = $1
      ) step ORDER BY at`,
@@ -68,12 +68,12 @@ async function settlementOf(booking: Booking, payment: HeldPayment | null, heldC
   const [sum] = await rows<{ cents: number }>('SELECT coalesce(sum(amount_cents), 0)::int AS cents FROM charge WHERE payment_id = $1 AND returned_because IS NULL', [payment?.id ?? null]);
   const against = ledger['landowner held'] === 0 ? (sum?.cents ?? 0) : heldCents;
   const lackingCents = payment?.status === 'held' && !payment.heldAcceptedAt && signed.signedBy !== 'deadline' ? Math.max(0, signed.settlement.costCents - heldCents) : 0;
-  return { whole: signed.settlement, parts: splitNow(signed.settlement, against, feeBasisPoints), lackingCents };
+  const lost = await oneRow<{ cents: number }>(`SELECT coalesce(sum(amount_cents), 0)::int AS cents FROM card_dispute JOIN charge ON charge.id = charge_id WHERE booking_id = $1 AND status = 'lost' AND returned_because IS NULL`, [booking.id]);
+  return { whole: signed.settlement, lostCents: lost?.cents ?? 0, parts: splitNow(signed.settlement, against, feeBasisPoints), lackingCents };
 }
 
-function waitingFor(status: BookingState, disputed: boolean, steps: readonly MoneyStep[], lackingCents: number, lost: boolean): MoneyOfBooking['waitsFor'] {
-  // A hold that the bank gave back after a dispute leaves nothing to pay a signed tally from.
-  if (lost || steps.some(({ state }) => state === 'stuck')) return 'moderator';
+function waitingFor(status: BookingState, disputed: boolean, steps: readonly MoneyStep[], lackingCents: number): MoneyOfBooking['waitsFor'] {
+  if (steps.some(({ state }) => state === 'stuck')) return 'moderator';
   if (disputed) return 'bank';
   if (status === 'signed' && lackingCents > 0) return 'top-up';
   return steps.some(({ state }) => state === 'waits') ? 'payout account' : null;
@@ -93,7 +93,9 @@ export async function moneyOfBooking(viewer: Viewer, number: number): Promise<Mo
   const agreement = await WorkAgreement.findByPk(booking.id);
   const feeBasisPoints = (agreement?.terms as { feeBasisPoints?: number } | undefined)?.feeBasisPoints ?? 0;
   const heldCents = await heldFor(booking.id);
-  const steps = await stepsOf(booking.id);
+  const all = await stepsOf(booking.id);
+  // What a sawyer owes back is between them and Skidway.
+  const steps = viewer.id === booking.landownerId ? all.filter(({ kind }) => kind !== 'reversal') : all;
   const settlement = await settlementOf(booking, payment, heldCents, feeBasisPoints);
   const newest = payment && (await Checkout.findOne({ where: { paymentId: payment.id }, order: [['createdAt', 'DESC']] }));
   const disputed = payment?.disputedAt != null;
@@ -112,7 +114,7 @@ export async function moneyOfBooking(viewer: Viewer, number: number): Promise<Mo
     heldCents,
     feeBasisPoints,
     settlement,
-    waitsFor: waitingFor(booking.status, disputed, steps, settlement?.lackingCents ?? 0, booking.status === 'signed' && payment?.status === 'held' && heldCents === 0),
+    waitsFor: waitingFor(booking.status, disputed, steps, settlement?.lackingCents ?? 0),
     steps,
     newestCheckout: newest ? { status: newest.status, purpose: newest.purpose, cents: newest.amountCents, createdAt: newest.createdAt } : null,
     can,

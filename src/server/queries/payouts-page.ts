@@ -48,7 +48,7 @@ export async function payoutsPage(viewer: Viewer): Promise<PayoutsPage> {
        CASE WHEN bool_and(call.status = 'done') THEN 'released' WHEN bool_or(call.status = 'stuck') THEN 'stuck' WHEN NOT coalesce(bool_and(profile.payouts_ready), false) THEN 'waits' ELSE 'under way' END AS state,
        max(coalesce(call.done_at, call.created_at)) AS at
      FROM provider_call call JOIN booking ON booking.id = call.booking_id JOIN listing ON listing.id = booking.listing_id LEFT JOIN sawyer_profile profile ON profile.account_id = booking.sawyer_id
-     WHERE call.kind = 'transfer' AND booking.sawyer_id = $1 GROUP BY booking.number, listing.title ORDER BY at DESC LIMIT 100`,
+     WHERE call.kind = 'transfer' AND call.status <> 'dropped' AND booking.sawyer_id = $1 GROUP BY booking.number, listing.title ORDER BY at DESC LIMIT 100`,
     [viewer.id],
   );
   const months = await rows<MonthOfPay>(

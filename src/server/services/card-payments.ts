@@ -134,6 +134,27 @@ export async function findTransfer(transferGroup: string, callId: string): Promi
   return null;
 }
 
+export interface ReversalWanted {
+  readonly callId: string;
+  readonly idempotencyKey: string;
+  readonly amountCents: number;
+  readonly transfer: string;
+}
+
+/** Takes a transfer back out of the sawyer's balance at the provider, which must cover it. */
+export async function makeReversal(wanted: ReversalWanted): Promise<Moved> {
+  const made = await asked(provider().transfers.createReversal(wanted.transfer, { amount: wanted.amountCents, metadata: { call: wanted.callId } }, { idempotencyKey: wanted.idempotencyKey }));
+  return { providerId: made.id, status: 'moved' };
+}
+
+/** The reversal that a call has made already, if it has. */
+export async function findReversal(transfer: string, callId: string): Promise<Moved | null> {
+  for (const reversal of await asked(provider().transfers.listReversals(transfer, { limit: 100 }).autoPagingToArray({ limit: 1_000 }))) {
+    if (reversal.metadata?.['call'] === callId) return { providerId: reversal.id, status: 'moved' };
+  }
+  return null;
+}
+
 export interface RefundWanted {
   readonly callId: string;
   readonly idempotencyKey: string;

@@ -67,7 +67,7 @@ interface Scene {
 
 const pick = <T>(scene: Scene, list: readonly T[]): T | undefined => list[Math.floor(scene.random() * list.length)];
 const CARDS = [...Array.from({ length: 8 }, () => '4242424242424242'), '4000000000000002', '4000000000000002', '4000000000000259', '4000000000005126', '4000000000007726'];
-const CALLS = ['POST /v1/transfers', 'POST /v1/refunds', 'POST /v1/checkout/sessions', 'GET /v1/checkout/sessions/*', 'POST /v1/checkout/sessions/*/expire', 'GET /v1/disputes/*', 'GET /v1/refunds/*'];
+const CALLS = ['POST /v1/transfers', 'POST /v1/refunds', 'POST /v1/transfers/*/reversals', 'POST /v1/checkout/sessions', 'GET /v1/checkout/sessions/*', 'POST /v1/checkout/sessions/*/expire', 'GET /v1/disputes/*', 'GET /v1/refunds/*'];
 
 /** A deed that comes twice as often as the others. */
 const twice = <T>(deed: T): T[] => [deed, deed];
@@ -138,16 +138,16 @@ async function wrongs(bookings: readonly Booking[]): Promise<string[]> {
   const groups = house.fake.control.books().groups;
   for (const booking of bookings) {
     const group = groups[`booking-${booking.number}`];
-    if (group && group.transferred + group.refunded > group.charged) faults.push(`booking ${booking.number}: paid out ${group.transferred + group.refunded} of ${group.charged}`);
+    if (group && group.transferred - group.reversed + group.refunded > group.charged) faults.push(`booking ${booking.number}: paid out ${group.transferred - group.reversed + group.refunded} of ${group.charged}`);
     const payment = await HeldPayment.findOne({ where: { bookingId: booking.id }, rejectOnEmpty: true });
     const calls = await ProviderCall.findAll({ where: { bookingId: booking.id } });
     const disputed = (await Charge.findAll({ where: { paymentId: payment.id } })).some((charge) => house.fake.control.objects('dispute').some((each) => each.charge === charge.providerChargeId && each.status !== 'won'));
-    const open = calls.filter(({ status }) => status !== 'done' && status !== 'stuck');
+    const open = calls.filter(({ status }) => !['done', 'stuck', 'dropped'].includes(status));
     if (!disputed && open.length > 0) faults.push(`booking ${booking.number}: ${open.map((call) => `${call.kind} ${call.status} ${call.attempts} ${call.error ?? ''}`).join('; ')}`);
     const now = await Booking.findByPk(booking.id, { rejectOnEmpty: true });
     if (now.status === 'held' && payment.status !== 'held') faults.push(`booking ${booking.number} is held, its payment ${payment.status}`);
     if (now.status === 'settled' && payment.status !== 'settled') faults.push(`booking ${booking.number} is settled, its payment ${payment.status}`);
-    if (['cancelled', 'lapsed'].includes(now.status) && !['void', 'refunded', 'settled'].includes(payment.status) && !disputed && calls.every(({ status }) => status === 'done')) faults.push(`booking ${booking.number} is ${now.status}, its payment ${payment.status}`);
+    if (['cancelled', 'lapsed'].includes(now.status) && !['void', 'refunded', 'settled'].includes(payment.status) && !disputed && calls.every(({ status }) => status === 'done' || status === 'dropped')) faults.push(`booking ${booking.number} is ${now.status}, its payment ${payment.status}`);
   }
   return faults;
 }

@@ -6,13 +6,13 @@ import { recordProviderEvent } from '~/server/commands/record-provider-event.ts'
 import { settleBooking } from '~/server/commands/settle-booking.ts';
 import { startCheckout } from '~/server/commands/start-checkout.ts';
 import { inTransaction, rows } from '~/server/db.ts';
-import { balances, heldFor, post } from '~/server/ledger.ts';
+import { balances, post } from '~/server/ledger.ts';
 import { env } from '~/server/env.ts';
 import { Bid, BookedDay, Booking, Charge, Checkout, HeldPayment, Listing, ProviderCall, ProviderEvent } from '~/server/models/index.ts';
 import { system } from '~/server/viewer.ts';
 import { signatureHeader } from '../../../fakes/stripe/deliveries.ts';
 import { makeCast, type Cast } from '../../support/cast.ts';
-import { checkBooks, makeAgreedBooking, makePayoutAccount, openMoneyHouse, sawAndSign, type MoneyHouse } from '../../support/money-market.ts';
+import { checkBooks, makeAgreedBooking, makePayoutAccount, openMoneyHouse, type MoneyHouse } from '../../support/money-market.ts';
 
 let house: MoneyHouse;
 let cast: Cast;
@@ -160,50 +160,6 @@ describe('the payment deadline', () => {
     await house.work();
     expect((await Checkout.findOne({ where: { providerSessionId: session }, rejectOnEmpty: true })).status).toBe('expired');
     expect(await statusOf(booking)).toEqual(['agreed', 'due']);
-  });
-});
-
-describe('a card dispute', () => {
-  it('holds back paying out until it is won, then pays', async () => {
-    const booking = await held();
-    const dispute = house.fake.control.openDispute(await chargeOf(booking));
-    await house.work();
-    expect(await sawAndSign(booking, 50_000)).toBe('disputed');
-    house.fake.control.closeDispute(dispute.id, 'won');
-    await house.work();
-    expect(await statusOf(booking)).toEqual(['settled', 'settled']);
-    expect(await balances(booking.id)).toMatchObject({ 'dispute loss': 0, 'sawyer receivable': 0 });
-  });
-
-  it('lost while held takes the money out of the hold', async () => {
-    const booking = await held();
-    const dispute = house.fake.control.openDispute(await chargeOf(booking));
-    house.fake.control.closeDispute(dispute.id, 'lost');
-    await house.work();
-    expect(await heldFor(booking.id)).toBe(0);
-    expect(await balances(booking.id)).toMatchObject({ 'dispute loss': 0, 'provider fee': 1_770 + 1_500 });
-    expect(await sawAndSign(booking, 50_000)).toBe('nothing held');
-  });
-
-  it('lost while held leaves nothing to send back when the booking is then cancelled', async () => {
-    const booking = await held();
-    house.fake.control.closeDispute(house.fake.control.openDispute(await chargeOf(booking)).id, 'lost');
-    await house.work();
-    await cancel(cast.bram, booking);
-    await house.work();
-    expect(await statusOf(booking)).toEqual(['cancelled', 'refunded']);
-    expect(groupOf(booking)).toMatchObject({ refunded: 0, disputedAway: 60_000 });
-  });
-
-  it('lost after paying out is owed by the sawyer, the fee stays our loss', async () => {
-    const booking = await held();
-    await sawAndSign(booking, 60_000);
-    await house.work();
-    expect(await statusOf(booking)).toEqual(['settled', 'settled']);
-    const dispute = house.fake.control.openDispute(await chargeOf(booking));
-    house.fake.control.closeDispute(dispute.id, 'lost');
-    await house.work();
-    expect(await balances(booking.id)).toMatchObject({ 'sawyer receivable': 57_000, 'dispute loss': 3_000, 'platform fee': -3_000 });
   });
 });
 
