@@ -36,7 +36,7 @@ test.describe('without JavaScript', () => {
 
     await page.goto('/logs');
     await page.getByLabel('From ZIP').fill('54665');
-    await page.getByLabel('Within').selectOption('40');
+    await page.getByLabel('Within', { exact: true }).selectOption('40');
     await page.getByLabel('Species').selectOption('white-oak');
     await page.getByRole('button', { name: 'Show logs' }).click();
     await expect(page).toHaveURL(/zip=54665&radiusMi=40&species=white-oak/);
