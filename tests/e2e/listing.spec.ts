@@ -1,39 +1,11 @@
 import type { Page } from '@playwright/test';
-import { PASSWORD, readMail } from '../support/browser.ts';
-import { another, expect, expectAccessible, mailbox, test } from './support/check.ts';
+import { another, expect, expectAccessible, test } from './support/check.ts';
+import { field, fillTheRest } from './support/listing-form.ts';
+import { confirmAddress, fillSignUp, openAccount, signIn } from './support/people.ts';
 
-const day = (days: number): string => new Date(Date.now() + days * 86_400_000).toISOString().slice(0, 10);
-const field = (page: Page, name: string) => page.locator(`[name="${name}"]`);
 const kept = (page: Page, words: RegExp) => expect(page.getByRole('status').filter({ hasText: words, visible: true })).toBeVisible();
 
-/** Signs up from a page that leads there. */
-async function signUp(page: Page, email: string): Promise<void> {
-  await page.getByLabel('I have logs to be sawn').check();
-  await page.getByLabel('Your name').fill('Lotte Landing');
-  await page.getByLabel('E-mail address').fill(email);
-  await page.getByLabel('Password').fill(PASSWORD);
-  await page.getByLabel('I am 18 or older').check();
-  await page.getByRole('button', { name: 'Open an account' }).click();
-}
-
-/** Confirms the address by the letter's link in a window of its own, which is where a person then goes on. */
-async function confirm(page: Page, email: string): Promise<Page> {
-  const letter = await readMail(mailbox(), email, 'Confirm');
-  const window = await page.context().newPage();
-  await window.goto(letter.links.find((one) => one.includes('/confirm-email/')) ?? '');
-  await window.getByRole('button', { name: 'Confirm this address' }).click();
-  await window.waitForURL((url) => !url.pathname.startsWith('/confirm-email'));
-  return window;
-}
-
-/** Everything that a listing asks for besides its logs. */
-async function fillTheRest(page: Page): Promise<void> {
-  const choices = { treeOwner: 'mine', howDown: 'uprooted', sealed: 'no', truck: 'to-the-logs', slope: 'level', lines: 'near', machine: 'tractor', water: 'yes', reDecks: 'owner', slabs: 'left', sawdust: 'left', metal: 'lawn-tree' };
-  for (const [name, value] of Object.entries(choices)) await page.locator(`[name="${name}"][value="${value}"]`).check();
-  await field(page, 'ownerConfirmed').check();
-  await field(page, 'cameDownOn').fill(day(-6));
-  await field(page, 'zip').fill('54665');
-}
+const lotte = { name: 'Lotte Landing', as: 'landowner' } as const;
 
 test('a visitor begins, makes an account at publishing, and loses nothing', async ({ page: first }) => {
   let page = first;
@@ -58,11 +30,11 @@ test('a visitor begins, makes an account at publishing, and loses nothing', asyn
   await expect(page.getByText('You need an account to save or publish')).toBeVisible();
   await expect(field(page, 'logs.1.largeEnd')).toHaveValue('12');
   await page.getByRole('link', { name: 'Make an account' }).click();
-  await signUp(page, email);
+  await fillSignUp(page, { ...lotte, email });
 
   await expect(field(page, 'logs.1.largeEnd')).toHaveValue('12');
   await kept(page, /Confirm your e-mail address first/);
-  page = await confirm(page, email);
+  page = await confirmAddress(page, email);
   await expect(field(page, 'logs.1.largeEnd')).toHaveValue('12');
   await kept(page, /^Saved \d+:\d\d [ap]m$/);
   await expect(page).toHaveURL(/\/listings\/\d+\/edit$/);
@@ -90,19 +62,14 @@ test('a visitor begins, makes an account at publishing, and loses nothing', asyn
 
 test('two devices, a lost connection and a lost session never lose a word', async ({ page, browser }) => {
   const email = 'lars@e2e.example';
-  await page.goto('/sign-up');
-  await signUp(page, email);
-  await (await confirm(page, email)).close();
+  await openAccount(page, { ...lotte, email });
   await page.goto('/listings/new');
   await field(page, 'logs.0.smallEnd').fill('15');
   await expect(page).toHaveURL(/\/listings\/\d+\/edit$/);
   const address = page.url();
 
   const { page: phone, faults } = await another(browser, { phone: true });
-  await phone.goto(`/sign-in?next=${encodeURIComponent(new URL(address).pathname)}`);
-  await phone.getByLabel('E-mail address').fill(email);
-  await phone.getByLabel('Password').fill(PASSWORD);
-  await phone.getByRole('button', { name: 'Sign in' }).click();
+  await signIn(phone, email, undefined, new URL(address).pathname);
   await expect(field(phone, 'logs.0.smallEnd')).toHaveValue('15');
   await field(phone, 'note').fill('from the phone');
   await kept(phone, /^Saved/);
