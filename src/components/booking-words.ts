@@ -13,6 +13,13 @@ export interface NextStep {
 
 const when = (page: BookingPage, instant: Date | null): string => (instant ? formatInstant(instant, page.timeZone) : 'the agreed day');
 
+function noShowStep(page: BookingPage, report: { readonly absentMe: boolean; readonly contested: boolean; readonly answerBy: Date }): NextStep {
+  const read = { label: 'Read the report', href: paths.noShow(page.number) };
+  if (report.contested) return { kind: 'note', title: 'A moderator decides who did not come', text: 'The money stays held until then.', action: read };
+  if (report.absentMe) return { kind: 'care', title: `${page.otherName} says that you did not come`, text: `Answer by ${when(page, report.answerBy)}. Unanswered, the report stands and the booking ends.`, action: { label: 'Answer', href: paths.noShow(page.number) } };
+  return { kind: 'note', title: 'Reported: waiting for an answer', text: `Until ${when(page, report.answerBy)}. Unanswered, the report stands and the booking ends.`, action: read };
+}
+
 /** The next step of a booking for the side that reads it. */
 export function nextStep(page: BookingPage): NextStep {
   const landowner = page.side === 'landowner';
@@ -28,6 +35,7 @@ export function nextStep(page: BookingPage): NextStep {
         ? { kind: 'care', title: `Pay the hold of ${formatCents(page.holdCents)}`, text: `By ${when(page, page.payBy)}, or the booking lapses. It is held until you sign the tally; what is not used returns to your card.`, action: { label: 'Pay the hold', href: paths.pay(page.number) } }
         : { kind: 'note', title: `Waiting for ${other} to pay the hold`, text: `Until ${when(page, page.payBy)}. Do not set out before this page says that the money is held.` };
     case 'held':
+      if (page.noShow.open) return noShowStep(page, page.noShow.open);
       return { kind: 'good', title: `Set for ${when(page, page.startsAt)}`, text: landowner ? 'The money is held until you sign the tally. Have the logs off the dirt and within reach, dry stickers ready, and children and animals away.' : 'The money is held. The place and the access notes are below.', ...(landowner ? {} : { action: tally }) };
     case 'sawing':
       return { kind: 'good', title: 'Sawing', text: landowner ? `${other} tallies the boards. You sign the tally when it is offered to you.` : 'Tally each board, then offer the tally for signing.', action: landowner ? tally : tally };
@@ -59,6 +67,11 @@ const deeds: Readonly<Record<string, string>> = {
   addToHold: 'Money was added to the hold',
   returnMoney: 'Money that was not due goes back',
   acceptHeld: 'The held amount was accepted as full pay',
+  reportNoShow: 'One side was reported not to have come',
+  withdrawNoShow: 'The report was taken back',
+  contestNoShow: 'The report was contested',
+  dismissNoShow: 'A moderator decided that the booking goes on',
+  endForNoShow: 'The report stands',
   dispute: 'The card payment is disputed at the bank',
   winDispute: 'The bank decided for the payment',
   loseDispute: 'The bank gave the payment back to the card',

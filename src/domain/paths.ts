@@ -63,6 +63,7 @@ export const paths = {
 
   messages: '/messages',
   askAbout: (listingNumber: number) => `/messages/about/${listingNumber}`,
+  noShow: (number: number) => `/bookings/${number}/no-show`,
   cancelBooking: (number: number) => `/bookings/${number}/cancel`,
   conversation: (id: string) => `/messages/${id}`,
   report: (thing: string, id: string) => `/report/${thing}/${id}`,

@@ -50,6 +50,8 @@ export const permissions = {
     confirmDay: { who: ['landowner', 'sawyer'], states: ['proposed', 'agreed', 'held'] },
     pay: { who: ['landowner'], states: ['agreed'] },
     cancel: { who: ['landowner', 'sawyer'], states: ['proposed', 'agreed', 'held'] },
+    reportNoShow: { who: ['landowner', 'sawyer'], states: ['held'] },
+    decideNoShow: { who: ['moderator'], states: ['held'] },
     cancelForBoth: { who: ['moderator'], states: ['proposed', 'agreed', 'held'] },
     seePlace: { who: ['landowner', 'sawyer', 'moderator'], states: ['held', 'sawing', 'tallied', 'queried', 'signed', 'settled'] },
     startSawing: { who: ['sawyer'], states: ['held'] },

@@ -15,6 +15,8 @@ const DAY_MS = 24 * HOUR_MS;
 export const DAY_STARTS_AT = '08:00';
 export const CANCEL_FREE_HOURS = 48;
 export const SIGNING_HOURS = 72;
+/** How long somebody who is said not to have come has to answer. */
+export const NO_SHOW_ANSWER_HOURS = 48;
 export const PAYMENT_DAYS = 5;
 export const FURTHEST_DAYS = 60;
 export const LISTING_LAPSES_DAYS = 7;

@@ -39,6 +39,13 @@ export const payoutNeeded = (to: To, bookingNumber: number, link: string): MailM
     { button: 'Set up payouts', href: link },
   ]);
 
+/** Pay still waits for a payout account. */
+export const payoutReminder = (to: To, cents: Cents, jobs: number, link: string): MailMessage =>
+  letter(to.email, `${formatCents(cents)} waits for your payout account`, to.name, [
+    `Your pay for ${jobs === 1 ? 'a signed tally' : `${jobs} signed tallies`}, ${formatCents(cents)} in all, waits until the payment provider has what it needs to pay you out.`,
+    { button: 'Set up payouts', href: link },
+  ]);
+
 /** Paid out: the receipt of each side. */
 export const paidOut = (to: To, figures: readonly (readonly [label: string, value: string])[], mine: 'landowner' | 'sawyer', link: string): MailMessage =>
   letter(to.email, mine === 'sawyer' ? 'Your pay is released' : 'Receipt: settled', to.name, [

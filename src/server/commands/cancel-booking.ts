@@ -10,7 +10,7 @@ import { conflict } from '../errors.ts';
 import { afterEnding } from '../end-booking.ts';
 import { enqueue } from '../jobs/queue.ts';
 import { lockBooking } from '../locks.ts';
-import { Checkout, HeldPayment, type Booking } from '../models/index.ts';
+import { Checkout, HeldPayment, NoShow, type Booking } from '../models/index.ts';
 import { bookingLink, partiesOf } from '../parties.ts';
 import { transition } from '../transition.ts';
 import type { Actor, Viewer } from '../viewer.ts';
@@ -38,8 +38,16 @@ export async function cancelBooking(by: Viewer, input: { readonly booking: numbe
   await inTransaction(async () => {
     const booking = await lockBooking(input.booking);
     authorize(by, 'booking', 'cancel', rolesOnBooking(by, booking), booking.status);
+    await refuseReporter(by, booking);
     await endBeforeSawing(by, booking, { side: by.id === booking.landownerId ? 'landowner' : 'sawyer', saidBy: by.name, ...input }, at);
   });
+}
+
+/** Who reported that the other did not come waits for the answer: cancelling now would cost them what the other owes. */
+async function refuseReporter(by: Viewer, { id, startsAt, landownerId }: Booking): Promise<void> {
+  const absent = by.id === landownerId ? 'sawyer' : 'landowner';
+  if (!startsAt || !(await NoShow.findOne({ where: { bookingId: id, status: ['reported', 'contested'], startsAt, absent } }))) return;
+  throw conflict('You reported that the other side did not come. Wait for the answer, or take the report back first.');
 }
 
 /** A moderator cancels before sawing, for one of the two who cannot or must not: everything goes back. */

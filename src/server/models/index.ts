@@ -4,5 +4,6 @@ export * from './event.ts';
 export * from './finding.ts';
 export * from './listing.ts';
 export * from './money.ts';
+export * from './no-show.ts';
 export * from './sawyer.ts';
 export * from './tally.ts';

@@ -7,7 +7,7 @@ import { rolesOnBooking } from '../authorize.ts';
 import { oneRow, rows } from '../db.ts';
 import { notFound } from '../errors.ts';
 import { bookedDaysOf, startTimeOf } from '../invitations.ts';
-import { Booking, DayProposal, HeldPayment, Listing, Review } from '../models/index.ts';
+import { Booking, DayProposal, HeldPayment, Listing, NoShow, Review } from '../models/index.ts';
 import { otherParty, partiesOf } from '../parties.ts';
 import { record } from '../transition.ts';
 import type { Viewer } from '../viewer.ts';
@@ -46,6 +46,8 @@ export interface BookingPage {
   readonly reviews: readonly { readonly byName: string; readonly mine: boolean; readonly stars: number; readonly body: string }[];
   readonly history: readonly Happened[];
   readonly cancelReason: string | null;
+  /** From the day's start on: whether somebody is said not to have come, and whether this reader may say so. */
+  readonly noShow: { readonly open: { readonly absentMe: boolean; readonly contested: boolean; readonly answerBy: Date } | null; readonly mayReport: boolean };
   readonly can: Record<Action<'booking'>, boolean>;
 }
 
@@ -63,6 +65,12 @@ async function reviewsOf(bookingId: string, viewerId: string): Promise<BookingPa
   const found = await Review.findAll({ where: { bookingId, hiddenAt: null }, order: [['createdAt', 'ASC']] });
   const names = await rows<{ id: string; name: string }>('SELECT id, name FROM account WHERE id = ANY($1::uuid[])', [found.map((review) => review.authorId)]);
   return found.map((review) => ({ byName: names.find(({ id }) => id === review.authorId)?.name ?? '', mine: review.authorId === viewerId, stars: review.stars, body: review.body }));
+}
+
+async function noShowOf(booking: Booking, side: BookingPage['side'], may: boolean, at: Date): Promise<BookingPage['noShow']> {
+  if (booking.status !== 'held' || !booking.startsAt || booking.startsAt > at) return { open: null, mayReport: false };
+  const report = await NoShow.findOne({ where: { bookingId: booking.id, status: ['reported', 'contested'], startsAt: booking.startsAt } });
+  return { open: report && { absentMe: report.absent === side, contested: report.status === 'contested', answerBy: report.answerBy }, mayReport: may && !report };
 }
 
 /**
@@ -107,6 +115,7 @@ export async function bookingPage(viewer: Viewer, number: number, at: Date): Pro
     reviews: await reviewsOf(booking.id, viewer.id),
     history: await historyOf(booking.id),
     cancelReason: booking.cancelReason,
+    noShow: await noShowOf(booking, side, can.reportNoShow, at),
     can: { ...can, review: can.review && (await Review.count({ where: { bookingId: booking.id, authorId: viewer.id } })) === 0 },
   };
 }

@@ -1,6 +1,8 @@
 import { checkOpenCheckouts } from '../../commands/check-checkouts.ts';
 import { lapseUnpaid } from '../../commands/lapse-unpaid.ts';
 import { reconcile } from '../../commands/reconcile.ts';
+import { sweepNoShows } from '../../commands/no-show.ts';
+import { remindOfPayouts } from '../../commands/remind-of-payouts.ts';
 import { oneRow, rows } from '../../db.ts';
 import { enqueue } from '../queue.ts';
 import type { Sweep } from './sweep.ts';
@@ -33,7 +35,9 @@ export const moneySweeps: Readonly<Record<string, Sweep>> = {
   // Before anything lapses, a payment whose message was lost is looked for.
   'check open checkouts': (at) => checkOpenCheckouts(at, minutesBefore(at, 2)),
   'lapse unpaid bookings': lapseUnpaid,
+  'let no-show reports stand': sweepNoShows,
   'make provider calls again': callAgain,
+  'remind of payout accounts': remindOfPayouts,
   'handle provider messages again': handleAgain,
   'reconcile nightly': reconcileNightly,
 };
