@@ -35,3 +35,6 @@ export type BidForm = z.output<typeof bidForm>;
 
 /** Confirming a bid on a revised listing: the revision the sawyer saw. */
 export const confirmBidForm = z.object({ listingRevision: fieldOf(whole(0, 1_000_000)) });
+
+/** Choosing a bid: the revision of the listing that the landowner read. */
+export const chooseBidForm = z.object({ listingRevision: fieldOf(whole(0, 1_000_000)) });

@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { isId } from '~/domain/id.ts';
 import { parseLengthFt, parseLengthIn, parseNumber } from '~/domain/measure.ts';
 import { type Cents, parseCents } from '~/domain/money.ts';
 import { good, refused, type Result } from '~/domain/result.ts';
@@ -67,10 +68,8 @@ export const day = (typed: string): Result<string> => {
   return read.ok ? read : refused('', read.problems[0]?.message ?? '');
 };
 
-const uuid = /^[0-9a-f]{8}(-[0-9a-f]{4}){3}-[0-9a-f]{12}$/i;
-
 /** The id of a thing of ours that was offered as a choice. */
-export const idOf = (missing: string) => (typed: string): Result<string> => (uuid.test(typed) ? good(typed) : refused('', missing));
+export const idOf = (missing: string) => (typed: string): Result<string> => (isId(typed) ? good(typed) : refused('', missing));
 
 /** A box that posts `on` or nothing. */
 export const ticked = z.string().optional().transform((typed) => typed !== undefined && typed !== '');

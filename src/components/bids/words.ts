@@ -3,6 +3,7 @@ import { formatCents } from '~/domain/money.ts';
 import type { BidMill } from '~/domain/trade/bid-estimate.ts';
 import { MILL_KIND_NAMES } from '~/domain/trade/mill-fit.ts';
 import type { Line } from '~/domain/trade/price.ts';
+import type { BidSort } from '~/domain/trade/comparison.ts';
 import type { Waste } from '~/domain/trade/rate-card.ts';
 
 /** `400 bf at $0.50`: how a line came about; nothing for a line that is only an amount. */
@@ -28,3 +29,9 @@ export function changedWords(parts: readonly string[]): string {
   const list = named.length === 1 ? last : `${named.slice(0, -1).join(', ')} and ${last}`;
   return `${list.charAt(0).toUpperCase()}${list.slice(1)} changed.`;
 }
+
+/** `12 settled jobs` */
+export const jobsWords = (count: number): string => (count === 0 ? 'no settled jobs yet' : count === 1 ? 'one settled job' : `${count} settled jobs`);
+
+/** What a comparison can be ordered by, as its links say it. */
+export const sortNames: Readonly<Record<BidSort, string>> = { estimate: 'estimate', perBf: 'cost per bf sawn', day: 'earliest open day', distance: 'distance' };

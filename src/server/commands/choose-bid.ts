@@ -2,13 +2,12 @@ import { createHash } from 'node:crypto';
 import { paths } from '~/domain/paths.ts';
 import { bidStates } from '~/domain/states/bid.ts';
 import { listingStates } from '~/domain/states/listing.ts';
-import { AGREEMENT_VERSION, type AgreedTerms, canonicalJson } from '~/domain/trade/agreement.ts';
-import type { BidMill } from '~/domain/trade/bid-estimate.ts';
+import { AGREEMENT_VERSION, canonicalJson } from '~/domain/trade/agreement.ts';
 import { bidChosen, bidDeclined, choiceConfirmed } from '~/emails/bids.ts';
+import { agreedTerms } from '../agreed-terms.ts';
 import { authorize, rolesOnBid, rolesOnListing } from '../authorize.ts';
 import { refuseBlocked } from '../blocks.ts';
 import { inTransaction, refusedBy } from '../db.ts';
-import { env } from '../env.ts';
 import { conflict, forbidden } from '../errors.ts';
 import { enqueue } from '../jobs/queue.ts';
 import { linkTo } from '../parties.ts';
@@ -19,7 +18,6 @@ import { Bid } from '../models/sawyer.ts';
 import { holdActive } from '../standing.ts';
 import { record, transition } from '../transition.ts';
 import type { Viewer } from '../viewer.ts';
-import type { FrozenEstimate } from '../bid-work.ts';
 import { lockListingAndBid } from './lock-listing-and-bid.ts';
 
 const MOVED_ON = 'Someone chose on this listing already. Load the page again to see where it stands.';
@@ -83,13 +81,7 @@ async function openBooking(by: Viewer, bid: Bid, listing: Listing, at: Date): Pr
 }
 
 async function freezeTerms(booking: Booking, bid: Bid, listing: Listing, landowner: string, sawyer: string, at: Date): Promise<void> {
-  const { terms, estimate } = bid.estimate as FrozenEstimate;
-  const agreed: AgreedTerms = {
-    listing: { number: listing.number, title: listing.title ?? '', revision: listing.revision, logCount: listing.logCount },
-    landowner, sawyer, mill: (bid.mill as BidMill).name, terms,
-    figures: { lowCents: bid.lowCents, expectedCents: bid.expectedCents, highCents: bid.highCents, holdCents: bid.holdCents, expectedBf: estimate.lumber.bf.expected, expectedBy: bid.expectedBy },
-    feeBasisPoints: env().FEE_BASIS_POINTS, daysOffered: bid.daysOffered, message: bid.message,
-  };
+  const agreed = agreedTerms(bid, listing, landowner, sawyer);
   const sha256 = createHash('sha256').update(canonicalJson(agreed)).digest('hex');
   await WorkAgreement.create({ bookingId: booking.id, textVersion: AGREEMENT_VERSION, terms: agreed, sha256, frozenAt: at });
 }

@@ -1,12 +1,11 @@
+import { isId } from '~/domain/id.ts';
 import { notFound } from '../errors.ts';
 import { Listing } from '../models/listing.ts';
 import { Bid } from '../models/sawyer.ts';
 
-const uuid = /^[0-9a-f]{8}(-[0-9a-f]{4}){3}-[0-9a-f]{12}$/i;
-
 /** Locks a bid and its listing for a deed, always the listing first, so that two deeds never wait for each other. */
 export async function lockListingAndBid(bidId: string): Promise<{ readonly bid: Bid; readonly listing: Listing }> {
-  const seen = uuid.test(bidId) ? await Bid.findByPk(bidId, { attributes: ['listingId'] }) : null;
+  const seen = isId(bidId) ? await Bid.findByPk(bidId, { attributes: ['listingId'] }) : null;
   if (!seen) throw notFound('bid');
   const listing = await Listing.findByPk(seen.listingId, { lock: true, rejectOnEmpty: true });
   const bid = await Bid.findByPk(bidId, { lock: true, rejectOnEmpty: true });

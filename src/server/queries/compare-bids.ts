@@ -2,6 +2,7 @@ import type { Cents } from '~/domain/money.ts';
 import { abilities } from '~/domain/permissions.ts';
 import type { BidState } from '~/domain/states/bid.ts';
 import { formatDayWithYear, type Day } from '~/domain/time.ts';
+import type { BidSort } from '~/domain/trade/comparison.ts';
 import type { BidMill } from '~/domain/trade/bid-estimate.ts';
 import { authorize, rolesOnListing } from '../authorize.ts';
 import type { FrozenEstimate } from '../bid-work.ts';
@@ -12,8 +13,6 @@ import { Listing } from '../models/listing.ts';
 import type { Viewer } from '../viewer.ts';
 import { sawyerDays } from './open-days.ts';
 import { earliestOpenDay } from '~/domain/trade/milling-days.ts';
-
-export type BidSort = 'estimate' | 'perBf' | 'day' | 'distance';
 
 export interface ComparedBid {
   readonly id: string;
@@ -78,7 +77,7 @@ const SQL = `
   WHERE b.listing_id = $1 AND b.status IN ('open', 'toConfirm', 'chosen') AND a.status = 'active'
   ORDER BY b.created_at, b.id`;
 
-/** Every live bid on a listing, worked on the same logs, for its owner to compare. */
+/** Every live bid on a listing, worked on the same logs, for its owner to compare. Those to confirm come last: theirs are the old logs. */
 export async function compareBids(viewer: Viewer | null, listingNumber: number, sort: BidSort, at: Date) {
   if (!viewer) throw signedOut();
   const listing = Number.isSafeInteger(listingNumber) ? await Listing.findOne({ where: { number: listingNumber } }) : null;
@@ -93,14 +92,14 @@ export async function compareBids(viewer: Viewer | null, listingNumber: number, 
     bids.push(toBid(row, earliestOpenDay(days)));
   }
   const booking = await Booking.findOne({ where: { listingId: listing.id }, order: [['createdAt', 'DESC']] });
-  return { listing, bids: bids.sort(order[sort]), booking: listing.status === 'matched' || listing.status === 'done' ? booking : null, can: abilities('listing', roles, listing.status) };
+  return { listing, bids: bids.sort((a, b) => Number(a.status === 'toConfirm') - Number(b.status === 'toConfirm') || order[sort](a, b)), booking: listing.status === 'matched' || listing.status === 'done' ? booking : null, can: abilities('listing', roles, listing.status) };
 }
 
 const perBf = (bid: ComparedBid): number => bid.frozen.estimate.quote.costPerBfCents ?? Number.POSITIVE_INFINITY;
 const order: Readonly<Record<BidSort, (a: ComparedBid, b: ComparedBid) => number>> = {
   estimate: (a, b) => a.expectedCents - b.expectedCents,
   perBf: (a, b) => perBf(a) - perBf(b),
-  day: (a, b) => ((a.earliestOpenDay ?? '9') < (b.earliestOpenDay ?? '9') ? -1 : 1),
+  day: (a, b) => (a.earliestOpenDay ?? '9').localeCompare(b.earliestOpenDay ?? '9'),
   distance: (a, b) => a.roadMiles - b.roadMiles,
 };
 
