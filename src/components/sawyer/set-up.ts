@@ -9,11 +9,13 @@ const pages: Readonly<Record<SetUpPart, string>> = { profile: paths.profile, mil
  * Where to go after one part was saved: the next part that is still missing, the sawyer's home once nothing is, or the same page when
  * the part had been there before.
  * @param missingBefore what was missing before this part was saved
+ * @param next a page of ours that led here, gone back to once nothing is missing
  */
-export function afterSaving(part: SetUpPart, missingBefore: readonly SetUpPart[]): string {
+export function afterSaving(part: SetUpPart, missingBefore: readonly SetUpPart[], next: string | null): string {
+  const missing = missingBefore.find((one) => one !== part);
+  if (next !== null) return missing === undefined ? next : `${pages[missing]}?done=${part}&next=${encodeURIComponent(next)}`;
   if (!missingBefore.includes(part)) return `${pages[part]}?done=saved`;
-  const next = missingBefore.find((one) => one !== part);
-  return next === undefined ? `${paths.sawyerHome}?done=set-up` : `${pages[next]}?done=${part}`;
+  return missing === undefined ? `${paths.sawyerHome}?done=set-up` : `${pages[missing]}?done=${part}`;
 }
 
 /** What the notice on top of a set-up page says after a save, by the `done` of its address; undefined for a strange one. */
