@@ -15,13 +15,9 @@ const guest = new Browser(origin);
 let number = 0;
 
 beforeAll(async () => {
-  await ada.signUp({ name: 'Ada', email: 'ada@bidding.example', as: ['landowner'] }, mailPage);
-  await bram.signUp({ name: 'Bram', email: 'bram@bidding.example', as: ['sawyer'] }, mailPage);
-  await cleo.signUp({ name: 'Cleo', email: 'cleo@bidding.example', as: ['sawyer'] }, mailPage);
-  await eve.signUp({ name: 'Eve', email: 'eve@bidding.example', as: ['landowner'] }, mailPage);
-  await nina.signUp({ name: 'Nina', email: 'nina@bidding.example', as: ['sawyer'] }, mailPage);
-  await setUpSawing(bram, 'Bram Band');
-  await setUpSawing(cleo, 'Cleo Cuts', { ...OAK_CARD, setUpPerLanding: 20_000 });
+  const people: readonly (readonly [Browser, string, 'landowner' | 'sawyer'])[] = [[ada, 'Ada', 'landowner'], [bram, 'Bram', 'sawyer'], [cleo, 'Cleo', 'sawyer'], [eve, 'Eve', 'landowner'], [nina, 'Nina', 'sawyer']];
+  await Promise.all(people.map(([who, name, as]) => who.signUp({ name, email: `${name.toLowerCase()}@bidding.example`, as: [as] }, mailPage)));
+  await Promise.all([setUpSawing(bram, 'Bram Band'), setUpSawing(cleo, 'Cleo Cuts', { ...OAK_CARD, setUpPerLanding: 20_000 })]);
   number = await publishListing(ada);
 });
 
@@ -138,8 +134,8 @@ describe('from two bids to one agreement', () => {
     const seen = await revisionOf(choose);
     const stale = await bidFields(bram, number, { message: 'Typed on the old logs' });
     const form = await (await ada.get(`/listings/${number}/edit`)).text();
-    const version = /name="typedVersion" value="(\d+)"/.exec(form)?.[1] ?? '';
-    const revised = await ada.post(`/listings/${number}/edit`, listingFields(typedListing({ cameDownOn: dayAhead(-10), closesOn: dayAhead(20), logs: [typedLog({ smallEnd: '20', largeEnd: '23' }), typedLog()] }), 'publish', version));
+    const version = /name="typedVersion"[^>]*value="(\d+)"/.exec(form)?.[1] ?? '';
+    const revised = await ada.post(`/listings/${number}/edit`, listingFields(typedListing({ cameDownOn: dayAhead(-10), closesOn: dayAhead(20), logs: [typedLog({ smallEnd: '20', largeEnd: '23' }), typedLog()] }), 'revise', version));
     expect(revised.status).toBe(303);
 
     const refused = await bram.post(`/listings/${number}/bid`, stale);
