@@ -12,6 +12,8 @@ export interface DrawnBoard {
   readonly thicknessIn: number;
   readonly widthIn: number;
   readonly turned: boolean;
+  /** Where it begins, ft from the small end: a script can then leave out boards that are not there yet. */
+  readonly startFt?: number | undefined;
 }
 
 /** Turns any name or number into a 32-bit seed (FNV-1a), so that one log is always drawn the same. */

@@ -1,14 +1,16 @@
 import { Op } from 'sequelize';
 import { roadMiles } from '~/domain/trade/road-miles.ts';
-import { type BidEstimate, type BidMill, estimateBid, type ListedLog, lumberByLogScale, withOwnFigure } from '~/domain/trade/bid-estimate.ts';
+import { type BidEstimate, type BidMill, estimateBid, type ExpectedLumber, type ListedLog, lumberByPlan, withOwnFigure } from '~/domain/trade/bid-estimate.ts';
+import { greenSize } from '~/domain/sawing/green-size.ts';
 import type { BidTerms, RateCard as Card } from '~/domain/trade/rate-card.ts';
 import type { QuoteOptions } from '~/domain/trade/quote.ts';
 import type { Defect } from '~/domain/timber/defects.ts';
 import { checkMillingDay } from '~/domain/time.ts';
 import type { BidForm } from '~/schemas/bid-form.ts';
 import { AccountBlock } from './models/account.ts';
-import { type Listing, Log } from './models/listing.ts';
+import { type Listing, Log, Piece } from './models/listing.ts';
 import { Mill, RateCard, SawyerProfile } from './models/sawyer.ts';
+import { planLumber } from './services/planning.ts';
 import { conflict, forbidden, invalid, notFound } from './errors.ts';
 
 /** What a bid keeps in `bid.estimate`: everything it was worked out from and to, frozen. */
@@ -48,21 +50,57 @@ export async function milesTo(sawyerId: string, listing: Listing): Promise<numbe
   return roadMiles({ lat: a[1], lng: a[0] }, { lat: b[1], lng: b[0] });
 }
 
+/**
+ * The lumber that a mill is expected to saw from a listing as it stands: its sawing plans on these logs, for the sizes wanted. It
+ * takes the planner some time, so commands ask for it before their transaction and check the revision inside it.
+ */
+export async function lumberOn(listing: Listing, mill: BidMill): Promise<Foreseen> {
+  const logs = await listedLogs(listing.id);
+  const pieces = await Piece.findAll({ where: { listingId: listing.id }, order: [['position', 'ASC']] });
+  const wanted = pieces.map((piece) => ({ ...greenSize(piece), writtenThicknessIn: piece.thicknessIn, writtenWidthIn: piece.widthIn }));
+  const { kerfIn, widestCutIn, widestBoardIn, longestFt, paceBfPerHour, realisedYield } = mill;
+  const shapes = logs.map(({ id: _, ...log }) => log);
+  const expected = await planLumber({ logs: shapes, mill: { kerfIn, widestCutIn, widestBoardIn, longestFt, paceBfPerHour, realisedYield }, wanted, measuredBy: 'landowner' });
+  return { listingId: listing.id, revision: listing.revision, millId: mill.id, lumber: lumberByPlan(expected) };
+}
+
+/** Lumber worked out on a listing at a revision. */
+export interface Foreseen {
+  readonly listingId: string;
+  readonly revision: number;
+  readonly millId: string;
+  readonly lumber: ExpectedLumber;
+}
+
+/** `lumberOn` for a command that has not locked anything yet; null when there is no such listing or mill, which the command then says itself. */
+export async function foresee(sawyerId: string, listing: Listing | null, millId: string): Promise<Foreseen | null> {
+  const mill = await Mill.findOne({ where: { id: millId, sawyerId, retiredAt: null } });
+  return listing && mill ? lumberOn(listing, bidMill(mill)) : null;
+}
+
+/** The lumber foreseen, when it is of this listing as it now stands and of this mill. */
+function stillOf(foreseen: Foreseen | null, listing: Listing, mill: BidMill): ExpectedLumber {
+  if (!foreseen || foreseen.listingId !== listing.id || foreseen.revision !== listing.revision || foreseen.millId !== mill.id) {
+    throw conflict('The listing was changed while you wrote. Load the page again: your bid must be worked out on the logs as they stand now.');
+  }
+  return foreseen.lumber;
+}
+
 /** Works a form out on a listing's logs with one mill and card. Refuses days that cannot be. */
-export async function workOut(form: BidForm, listing: Listing, mill: BidMill, card: Card, at: Date): Promise<FrozenEstimate> {
+export async function workOut(form: BidForm, listing: Listing, mill: BidMill, card: Card, at: Date, foreseen: Foreseen | null): Promise<FrozenEstimate> {
   checkDays(form.days, listing, at);
   const terms: BidTerms = { card, roadMiles: form.roadMiles, metalCapCents: form.metalCap, offBearer: form.offBearer, waste: form.waste, landings: 1 };
   if ((form.waste === 'hauled' && card.extras.wasteHauled === null) || (form.waste === 'bundled' && card.extras.wasteBundled === null)) {
     throw invalid([{ path: 'waste', message: 'Your rate card has no price for this. Put one there first; 0 when it costs nothing.' }]);
   }
   const options: QuoteOptions = { ...(form.stickers ? { stickers: form.stickers } : {}), ...(form.deliveryLoads ? { deliveryLoads: form.deliveryLoads } : {}) };
-  return estimateOn(listing, mill, terms, options, form.ownBf);
+  return estimateOn(listing, mill, terms, options, form.ownBf, foreseen);
 }
 
 /** The estimate of frozen terms on the listing's logs as they stand now. */
-export async function estimateOn(listing: Listing, mill: BidMill, terms: BidTerms, options: QuoteOptions, ownBf: number | null): Promise<FrozenEstimate> {
+export async function estimateOn(listing: Listing, mill: BidMill, terms: BidTerms, options: QuoteOptions, ownBf: number | null, foreseen: Foreseen | null): Promise<FrozenEstimate> {
   const logs = await listedLogs(listing.id);
-  const worked = lumberByLogScale(logs);
+  const worked = stillOf(foreseen, listing, mill);
   const lumber = ownBf === null ? worked : withOwnFigure(worked, ownBf);
   return { terms, options, estimate: estimateBid({ logs, mill, terms, options, lumber }) };
 }

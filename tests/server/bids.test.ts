@@ -36,9 +36,10 @@ const revise = async (): Promise<void> => {
 describe('a bid', () => {
   it('is worked out on the logs and frozen with the mill and the card', async () => {
     const bid = await Bid.findByPk(await placeBid(cast.bram, listing.number, bidOf(bramsMill), MARKET_AT), { rejectOnEmpty: true });
-    // 400 × 0.50 + 75 + 6 × 2 × 2 = 299.00
-    expect(bid).toMatchObject({ status: 'open', listingRevision: 1, expectedCents: 29_900, expectedBfHundredths: 40_000, expectedBy: 'log scale, International ¼', roadMiles: 31 });
-    expect(bid.lowCents).toBeLessThan(29_900);
+    // The mill's plans give 444.5 bf; × 0.85 = 377.82 bf; × 0.50 + 75 + 6 × 2 × 2 = 287.91
+    expect(bid).toMatchObject({ status: 'open', listingRevision: 1, expectedCents: 28_791, expectedBfHundredths: 37_782, expectedBy: 'plan × 0.85', roadMiles: 31 });
+    expect((bid.estimate as FrozenEstimate).estimate.lumber.best?.expected).toBeCloseTo(444.5, 6);
+    expect(bid.lowCents).toBeLessThan(28_791);
     expect(bid.holdCents).toBe(bid.highCents + 10_500);
     expect((bid.estimate as FrozenEstimate).terms.card).toEqual(OAK_CARD);
     const mail = await rows<{ data: { to: string; subject: string } }>(`SELECT data FROM pgboss.job WHERE name = 'send-mail' ORDER BY created_on DESC LIMIT 1`);
@@ -48,9 +49,9 @@ describe('a bid', () => {
   it('stands though the rate card changes afterwards', async () => {
     const id = await placeBid(cast.bram, listing.number, bidOf(bramsMill), MARKET_AT);
     await saveRateCard(cast.bram, { ...OAK_CARD, setUpPerLanding: 20_000 }, MARKET_AT);
-    expect((await Bid.findByPk(id, { rejectOnEmpty: true })).expectedCents).toBe(29_900);
+    expect((await Bid.findByPk(id, { rejectOnEmpty: true })).expectedCents).toBe(28_791);
     await changeBid(cast.bram, id, bidOf(bramsMill), MARKET_AT);
-    expect((await Bid.findByPk(id, { rejectOnEmpty: true })).expectedCents).toBe(42_400); // 200 + 200 + 24
+    expect((await Bid.findByPk(id, { rejectOnEmpty: true })).expectedCents).toBe(41_291); // 188.91 + 200 + 24
     await saveRateCard(cast.bram, OAK_CARD, MARKET_AT);
   });
 
@@ -105,8 +106,8 @@ describe('a bid on a revised listing', () => {
     await revise();
     await expect(confirmBid(cast.bram, id, 1, MARKET_AT)).rejects.toMatchObject({ kind: 'conflict' });
     await confirmBid(cast.bram, id, 2, MARKET_AT);
-    // International ¼ 20 × 12 is 210 in place of 170: 440 × 0.50 + 99 = 319.00
-    expect(await Bid.findByPk(id)).toMatchObject({ status: 'open', listingRevision: 2, expectedCents: 31_900 });
+    // The plans give 490.33 bf; × 0.85 × 0.50 + 99 = 307.39
+    expect(await Bid.findByPk(id)).toMatchObject({ status: 'open', listingRevision: 2, expectedCents: 30_739 });
   });
   it('asks for new days when those offered have passed', async () => {
     const id = await placeBid(cast.bram, listing.number, bidOf(bramsMill), MARKET_AT);

@@ -82,7 +82,7 @@ describe('comparing', () => {
   it('shows every live bid on the same logs, in the order asked for, to the owner only', async () => {
     const { bids: compared } = await compareBids(cast.ada, listing.number, 'estimate', MARKET_AT);
     expect(compared.map(({ sawyer }) => sawyer)).toEqual(Array.from({ length: 8 }, (_, i) => `Sawyer ${i + 1}`));
-    expect(compared[0]).toMatchObject({ expectedBf: 400, expectedBy: 'log scale, International ¼', roadMiles: 31, settledJobs: 0, certificate: null });
+    expect(compared[0]).toMatchObject({ expectedBf: 377.82, expectedBy: 'plan × 0.85', roadMiles: 31, settledJobs: 0, certificate: null });
     await expect(compareBids(cast.bram, listing.number, 'estimate', MARKET_AT)).rejects.toMatchObject({ kind: 'notFound' });
     await expect(compareBids(null, listing.number, 'estimate', MARKET_AT)).rejects.toMatchObject({ kind: 'signedOut' });
   });

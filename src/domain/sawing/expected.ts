@@ -13,11 +13,25 @@ export interface MillAtWork {
   readonly realisedYield: number;
 }
 
-/** A size the landowner wants, green. */
+/** A size the landowner wants, green, and as it was written: a tally counts the written size. */
 export interface WantedSize {
   readonly thicknessIn: number;
   readonly widthIn: number;
+  readonly writtenThicknessIn?: number | undefined;
+  readonly writtenWidthIn?: number | undefined;
 }
+
+/** What `expectedLumber` is asked. */
+export interface LumberRequest {
+  readonly logs: readonly LogInput[];
+  readonly mill: MillAtWork;
+  readonly wanted: readonly WantedSize[];
+  readonly measuredBy: MeasuredBy;
+}
+
+/** So few logs without timbers are planned in some tens of milliseconds. */
+const QUICK_LOGS = 6;
+export const isQuick = ({ logs, wanted }: LumberRequest): boolean => logs.length <= QUICK_LOGS && wanted.every((size) => size.thicknessIn < TIMBER_IN);
 
 export interface OverRange {
   readonly low: number;
@@ -60,7 +74,9 @@ export function sizesToPlan(logFt: number, wanted: readonly WantedSize[]): Piece
     const key = timber ? `${size.thicknessIn} ${size.widthIn}` : String(size.thicknessIn);
     if (keys.has(key) || keys.size >= MOST_SIZES || size.thicknessIn === GREEN_FOUR_QUARTER_IN) return [];
     keys.add(key);
-    return [{ thicknessIn: size.thicknessIn, lengthsFt, ...(timber ? { widthIn: size.widthIn } : {}) }];
+    const { writtenThicknessIn = size.thicknessIn, writtenWidthIn = size.widthIn } = size;
+    const value = (writtenThicknessIn / size.thicknessIn) * (timber ? writtenWidthIn / size.widthIn : 1);
+    return [{ thicknessIn: size.thicknessIn, lengthsFt, value, ...(timber ? { widthIn: size.widthIn } : {}) }];
   });
   return [...sizes, jacket];
 }

@@ -2,6 +2,7 @@ import { type ByRule, logRuleNames } from '~/domain/timber/log-rules.ts';
 import { estimateLog, type LogInput, measuringErrorIn, type MeasuredBy, withDiametersChanged } from '~/domain/timber/estimate.ts';
 import { speciesOf } from '~/domain/timber/species.ts';
 import { largestEndOutsideBark } from '~/domain/timber/taper-and-bark.ts';
+import type { Expected } from '../sawing/expected.ts';
 import { chargedLogScale, type LogToCharge } from './log-charge.ts';
 import { type Fit, fitLogs, type MillKind, type MillLimits } from './mill-fit.ts';
 import { quote, type Quote, type QuoteOptions, type Range, type WorkVolume } from './quote.ts';
@@ -26,6 +27,8 @@ export interface BidMill extends MillLimits {
 /** Board feet of lumber the mill is expected to saw, with its range and how it was found. */
 export interface ExpectedLumber {
   readonly bf: Range;
+  /** Best possible lumber by the sawing plan of this mill; absent where no plan was made. Shown apart from what is expected. */
+  readonly best?: Range;
   /** `log scale, International ¼`, `plan × 0.85`, or the sawyer's own figure. Shown wherever the figure is. */
   readonly by: string;
 }
@@ -63,10 +66,13 @@ export function lumberByLogScale(logs: readonly ListedLog[], measuredBy: Measure
   return { bf: overEnds((end) => total(ends[end].map(logToCharge), 'internationalQuarter')), by: `log scale, ${logRuleNames.internationalQuarter}` };
 }
 
+/** Lumber by the sawing plans of a mill: best possible, and apart from it the expected share of it. */
+export const lumberByPlan = ({ best, bf, by }: Expected): ExpectedLumber => ({ best, bf, by });
+
 /** The sawyer's own expected figure, the range kept in proportion to the one worked out. */
 export function withOwnFigure(lumber: ExpectedLumber, ownBf: number): ExpectedLumber {
   const scale = lumber.bf.expected > 0 ? ownBf / lumber.bf.expected : 1;
-  return { bf: { low: lumber.bf.low * scale, expected: ownBf, high: lumber.bf.high * scale }, by: 'the sawyer’s own figure' };
+  return { ...lumber, bf: { low: lumber.bf.low * scale, expected: ownBf, high: lumber.bf.high * scale }, by: 'the sawyer’s own figure' };
 }
 
 export interface BidInput {

@@ -19,12 +19,14 @@ export interface LogEndProps {
   readonly sizePx?: number;
   /** Draws a bar of this many inches below the log. */
   readonly scaleBarIn?: number | undefined;
+  /** A dashed circle of this diameter, in: the small end of a log drawn at its large end. */
+  readonly ringIn?: number | undefined;
   /** What the picture shows, in words; left out, the picture is decoration beside its figures. */
   readonly label?: string | undefined;
 }
 
 /** A log end to scale with its sawing plan: bark, sapwood, heartwood, rings, and the boards it gives. Static SVG, no script. */
-export function LogEnd({ smallEndIn, barkIn = smallEndIn * 0.025, heartShare = 0.72, heartDefectIn, seed, boards = [], frameIn, sizePx = 184, scaleBarIn, label }: LogEndProps): ReactElement {
+export function LogEnd({ smallEndIn, barkIn = smallEndIn * 0.025, heartShare = 0.72, heartDefectIn, seed, boards = [], frameIn, sizePx = 184, scaleBarIn, ringIn, label }: LogEndProps): ReactElement {
   const radius = smallEndIn / 2;
   const number = seedOf(seed);
   const frame = Math.max(frameIn ?? 0, (radius + barkIn) * 2 * 1.075);
@@ -35,6 +37,7 @@ export function LogEnd({ smallEndIn, barkIn = smallEndIn * 0.025, heartShare = 0
   const grown = 1 + barkIn / radius;
   return (
     <svg className="log-drawing" width={sizePx} height={Math.round((sizePx * (frame + foot)) / frame)} viewBox={`${-half} ${-half} ${frame} ${frame + foot}`} focusable="false" {...words}>
+      <g data-wood="">
       <path className="log-bark" d={closedPath(wood.map((point) => ({ x: point.x * grown, y: point.y * grown })))} />
       <path className="log-sapwood" d={closedPath(wood)} />
       {heartShare > 0 && <path className="log-heartwood" d={smoothPath(outline(radius * heartShare, number + 1, 0.05))} />}
@@ -42,8 +45,10 @@ export function LogEnd({ smallEndIn, barkIn = smallEndIn * 0.025, heartShare = 0
         <path className="log-ring" key={ring} d={smoothPath(outline(ring, number + 1, 0.035 + index * 0.003))} />
       ))}
       {heartDefectIn ? <circle className="log-rot" r={heartDefectIn / 2} /> : <circle className="log-pith" r={Math.max(smallEndIn * 0.012, frame * 0.012)} />}
+      </g>
+      {ringIn ? <circle className="log-small-end" r={ringIn / 2} /> : null}
       {boards.map((board) => (
-        <rect className={Math.min(board.thicknessIn, board.widthIn) >= 5 ? 'log-board-timber' : 'log-board'} key={`${board.xIn},${board.yIn}`} {...boardRect(board)} />
+        <rect data-start={board.startFt} className={Math.min(board.thicknessIn, board.widthIn) >= 5 ? 'log-board-timber' : 'log-board'} key={`${board.xIn},${board.yIn}`} {...boardRect(board)} />
       ))}
       {scaleBarIn ? <ScaleBar lengthIn={scaleBarIn} top={half + foot * 0.25} size={frame * 0.07} /> : null}
     </svg>

@@ -8,13 +8,17 @@ import { invalid } from '../errors.ts';
 import { enqueue } from '../jobs/queue.ts';
 import { linkTo } from '../parties.ts';
 import { Account } from '../models/account.ts';
+import { Listing } from '../models/listing.ts';
+import { Bid } from '../models/sawyer.ts';
 import { transition } from '../transition.ts';
 import type { Viewer } from '../viewer.ts';
-import { bidFigures, checkBiddable, currentCard, millOf, workOut } from '../bid-work.ts';
+import { bidFigures, checkBiddable, currentCard, foresee, millOf, workOut } from '../bid-work.ts';
 import { lockListingAndBid } from './lock-listing-and-bid.ts';
 
 /** Changes a live bid: worked out anew on the logs, with the sawyer's rate card as it is now. A bid to confirm is thereby confirmed. */
 export async function changeBid(by: Viewer, bidId: string, form: BidForm, at: Date): Promise<void> {
+  const seen = await Bid.findOne({ where: { id: bidId, sawyerId: by.id }, attributes: ['listingId'] });
+  const foreseen = await foresee(by.id, seen && (await Listing.findByPk(seen.listingId)), form.millId);
   await inTransaction(async () => {
     const { bid, listing } = await lockListingAndBid(bidId);
     authorize(by, 'bid', 'change', rolesOnBid(by, bid, listing), bid.status);
@@ -22,7 +26,7 @@ export async function changeBid(by: Viewer, bidId: string, form: BidForm, at: Da
     const card = await currentCard(by.id);
     if (card === null) throw invalid([{ path: '', message: 'Fill in your rate card before you bid.' }]);
     const mill = await millOf(by.id, form.millId);
-    const worked = await workOut(form, listing, mill, card, at);
+    const worked = await workOut(form, listing, mill, card, at, foreseen);
     await transition(bidStates, 'change', bid, by, at, {
       ...bidFigures(worked), listingRevision: listing.revision, millId: mill.id, mill, estimate: worked,
       overrideReason: form.ownBf === null ? null : form.ownReason, daysOffered: [...new Set(form.days)].sort(), message: form.message, updatedAt: at,

@@ -13,7 +13,7 @@ import { Bid } from '../models/sawyer.ts';
 import { holdActive } from '../standing.ts';
 import { record } from '../transition.ts';
 import type { Viewer } from '../viewer.ts';
-import { bidFigures, checkBiddable, currentCard, millOf, workOut } from '../bid-work.ts';
+import { bidFigures, checkBiddable, currentCard, foresee, millOf, workOut } from '../bid-work.ts';
 
 /**
  * Bids on an open listing: the estimate is worked out here, on the logs as they stand, and frozen with the mill and the rate card.
@@ -21,6 +21,7 @@ import { bidFigures, checkBiddable, currentCard, millOf, workOut } from '../bid-
  * @throws Refusal `conflict` when the listing has moved on or the sawyer has a live bid on it already.
  */
 export async function placeBid(by: Viewer, listingNumber: number, form: BidForm, at: Date): Promise<string> {
+  const foreseen = await foresee(by.id, await Listing.findOne({ where: { number: listingNumber } }), form.millId);
   try {
     return await inTransaction(async () => {
       const listing = await Listing.findOne({ where: { number: listingNumber }, lock: true });
@@ -32,7 +33,7 @@ export async function placeBid(by: Viewer, listingNumber: number, form: BidForm,
       const card = await currentCard(by.id);
       if (card === null) throw invalid([{ path: '', message: 'Fill in your rate card before you bid.' }]);
       const mill = await millOf(by.id, form.millId);
-      const worked = await workOut(form, listing, mill, card, at);
+      const worked = await workOut(form, listing, mill, card, at, foreseen);
       const bid = await Bid.create({
         ...bidFigures(worked), listingId: listing.id, listingRevision: listing.revision, sawyerId: by.id, millId: mill.id, mill, estimate: worked,
         overrideReason: form.ownBf === null ? null : form.ownReason, daysOffered: [...new Set(form.days)].sort(), message: form.message, createdAt: at, updatedAt: at,

@@ -7,7 +7,7 @@ import type { BidForm } from '~/schemas/bid-form.ts';
 import { rolesOnBid, rolesOnListing } from '../authorize.ts';
 import { abilities, may } from '~/domain/permissions.ts';
 import { speciesOf } from '~/domain/timber/species.ts';
-import { bidMill, estimateOn, type FrozenEstimate, listedLogs, milesTo, workOut } from '../bid-work.ts';
+import { bidMill, estimateOn, type FrozenEstimate, listedLogs, lumberOn, milesTo, workOut } from '../bid-work.ts';
 import { rows } from '../db.ts';
 import { env } from '../env.ts';
 import { forbidden, notFound, signedOut } from '../errors.ts';
@@ -72,7 +72,8 @@ async function revisedSince(bid: Bid, listing: Listing): Promise<Revised> {
     [listing.id, bid.listingRevision],
   );
   const { terms, options } = bid.estimate as FrozenEstimate;
-  return { changed: found.map(({ part }) => part), worked: await estimateOn(listing, bid.mill as BidMill, terms, options, null) };
+  const mill = bid.mill as BidMill;
+  return { changed: found.map(({ part }) => part), worked: await estimateOn(listing, mill, terms, options, null, await lumberOn(listing, mill)) };
 }
 
 export type BidPage = Awaited<ReturnType<typeof bidPage>>;
@@ -88,7 +89,7 @@ export interface BidPreview {
 export async function previewBid({ listing, setUp, feeBasisPoints }: BidPage, form: BidForm, at: Date): Promise<BidPreview | null> {
   const mill = setUp.mills.find(({ id }) => id === form.millId);
   if (!mill || !setUp.card) return null;
-  const worked = await workOut(form, listing, bidMill(mill), setUp.card, at);
+  const worked = await workOut(form, listing, bidMill(mill), setUp.card, at, await lumberOn(listing, bidMill(mill)));
   return { mill: bidMill(mill), worked, receives: receivesAtExpected(worked, feeBasisPoints) };
 }
 

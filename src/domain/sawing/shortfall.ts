@@ -1,0 +1,49 @@
+import { formatFeet, formatInches } from '../measure.ts';
+import { greedyLayers } from './greedy.ts';
+import type { CutListRequest, WantedPiece } from './cut-list.ts';
+import { stockOf } from './pieces.ts';
+
+/** Why a piece stays short, and what would mend it. */
+export interface Shortfall {
+  readonly id: string;
+  readonly short: number;
+  readonly mend: readonly string[];
+}
+
+const LARGEST_LOG_IN = 60;
+
+/** The smallest whole-inch log of a length, at the small end, that gives some pieces sawn through and through; null when none up to 60 in does. */
+export function leastLogFor(piece: Pick<WantedPiece, 'thicknessIn' | 'widthIn' | 'lengthFt'>, count: number, lengthFt: number, { mill, waneAllowanceIn = 0 }: Pick<CutListRequest, 'mill' | 'waneAllowanceIn'>): number | null {
+  const { thicknessIn, widthIn } = piece;
+  const gives = (smallEndIn: number): boolean => greedyLayers(stockOf({ smallEndIn, lengthFt }, mill, [{ thicknessIn, widthIn, lengthFt: piece.lengthFt, count }], waneAllowanceIn)).length >= count;
+  for (let inches = Math.max(4, Math.ceil(Math.min(thicknessIn, widthIn))); inches <= LARGEST_LOG_IN; inches++) if (gives(inches)) return inches;
+  return null;
+}
+
+/** For every piece that is short: the limits it meets, and the smallest change that would mend it. */
+export function shortfalls(request: CutListRequest, short: readonly { readonly id: string; readonly short: number }[]): Shortfall[] {
+  const { logs, mill, pieces } = request;
+  const longestFt = logs.reduce((most, log) => (mill.longestFt !== undefined && log.lengthFt > mill.longestFt ? most : Math.max(most, log.lengthFt)), 0);
+  return short.flatMap(({ id, short: missing }) => {
+    const piece = pieces.find((each) => each.id === id);
+    if (!piece || missing <= 0) return [];
+    const { lengthFt, widthIn, thicknessIn } = piece;
+    if (mill.longestFt !== undefined && lengthFt > mill.longestFt) return [{ id, short: missing, mend: [`A mill that takes logs of ${formatFeet(lengthFt)} or longer.`] }];
+    if (mill.widestBoardIn !== undefined && Math.max(widthIn, 0) > mill.widestBoardIn) return [{ id, short: missing, mend: [`A mill that cuts boards ${formatInches(widthIn)} wide, or two narrower boards joined.`] }];
+    const length = Math.max(lengthFt, 4);
+    const one = leastLogFor(piece, 1, length, request);
+    if (one === null) return [{ id, short: missing, mend: ['A smaller section: no log up to 60 in gives this one on this mill.'] }];
+    const all = leastLogFor(piece, missing, length, request);
+    const log = (inches: number): string => `at least ${formatInches(inches)} at the small end and ${formatFeet(length)} long`;
+    const fits = logs.some((each) => each.lengthFt >= lengthFt && each.smallEndIn >= one);
+    return [{
+      id,
+      short: missing,
+      mend: [
+        all !== null ? `One more log, ${log(all)}, gives ${missing === 1 ? 'the one' : `all ${missing}`} that ${missing === 1 ? 'is' : 'are'} missing.` : `More logs, each ${log(one)}.`,
+        ...(lengthFt > longestFt ? [`The longest log here is ${formatFeet(longestFt)}: pieces of that length or shorter fit.`] : []),
+        ...(!fits && lengthFt <= longestFt ? [`A smaller section: ${formatInches(thicknessIn)} × ${formatInches(widthIn)} needs a log of ${formatInches(one)}.`] : []),
+      ],
+    }];
+  });
+}

@@ -1,0 +1,41 @@
+import { cutSheet } from '~/domain/sawing/cut-sheet.ts';
+import type { LogRead } from '~/domain/listing/rows.ts';
+import type { Defect } from '~/domain/timber/defects.ts';
+import { speciesOf } from '~/domain/timber/species.ts';
+import { barkRatio } from '~/domain/timber/taper-and-bark.ts';
+import type { BidMill } from '~/domain/trade/bid-estimate.ts';
+import { abilities, rolesOnBooking } from '../authorize.ts';
+import { sawnPieces } from '~/domain/sawing/sawn-piece.ts';
+import { boardPlans } from '../board-plans.ts';
+import { notFound, signedOut } from '../errors.ts';
+import { Booking } from '../models/booking.ts';
+import { Listing, Log, Piece } from '../models/listing.ts';
+import { Bid } from '../models/sawyer.ts';
+import type { Viewer } from '../viewer.ts';
+
+/**
+ * The cut sheet of a booking, for its two sides and moderators: each log's plan on the mill that comes, as it is cut.
+ * @throws Refusal `notFound` for everybody else
+ */
+export async function cutSheetPage(viewer: Viewer | null, number: number) {
+  if (!viewer) throw signedOut();
+  const booking = Number.isSafeInteger(number) ? await Booking.findOne({ where: { number } }) : null;
+  if (!booking || !abilities('booking', rolesOnBooking(viewer, booking), booking.status).see) throw notFound('booking');
+  const listing = await Listing.findByPk(booking.listingId, { rejectOnEmpty: true });
+  const { mill } = (await Bid.findByPk(booking.bidId, { rejectOnEmpty: true })) as unknown as { mill: BidMill };
+  const rows = await Log.findAll({ where: { listingId: listing.id, removedAt: null }, order: ['position'] });
+  const logs = rows.map(({ id, position, species, smallEndIn, largeEndIn, lengthFt, heartDefectIn, defects, note }): LogRead & { position: number } => ({ id, position, species, smallEndIn, largeEndIn, lengthFt, heartDefectIn, defects: defects as Defect[], note }));
+  const pieces = sawnPieces((await Piece.findAll({ where: { listingId: listing.id }, order: ['position'] })).map(({ label, thicknessIn, widthIn, lengthFt, count, sizing, forDwelling }) => ({ label, thicknessIn, widthIn, lengthFt, count, sizing, forDwelling })));
+  const plan = await boardPlans(logs, pieces, mill);
+  return {
+    number, title: listing.title ?? '', mill, pieces, list: plan.list,
+    logs: logs.map((log, index) => {
+      const planned = plan.logs[index];
+      const shape = { smallEndIn: log.smallEndIn, lengthFt: log.lengthFt, ...(log.largeEndIn === null ? {} : { largeEndIn: log.largeEndIn }) };
+      const sheet = planned?.core ? cutSheet(shape, planned.core, planned.plan, barkRatio(speciesOf(log.species))) : null;
+      return { log, planned, sheet };
+    }),
+  };
+}
+
+export type CutSheetPage = Awaited<ReturnType<typeof cutSheetPage>>;
