@@ -46,6 +46,9 @@ export const paths = {
   searches: '/sawyer/searches',
   saveSearch: '/sawyer/searches/new',
   stopSearch: (token: string) => `/searches/stop/${token}`,
+  calendarOf: (month: string) => `/sawyer/calendar?month=${month}`,
+  importCalendar: '/sawyer/calendar/import',
+  calendarFeed: (secret: string) => `/calendar/${secret}.ics`,
 
   /** What is kept on the phone of the days to come; opens without signal. `#1042` opens that booking. */
   day: '/day',

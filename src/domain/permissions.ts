@@ -71,6 +71,7 @@ export const permissions = {
     keepMill: { who: ['anySawyer'] },
     keepRates: { who: ['anySawyer'] },
     keepSearches: { who: ['anySawyer'] },
+    keepCalendar: { who: ['anySawyer'] },
   }),
   account: rules<AccountState>()({
     suspend: { who: ['moderator'], states: ['active'] },

@@ -12,6 +12,13 @@ export const WEEKDAYS = ['Monday', 'Tuesday', 'Wednesday', 'Thursday', 'Friday',
 /** What stands on a sawyer's day, for those who want to book it. */
 export type DayState = 'open' | 'offered' | 'booked' | 'off';
 
+/** One of a sawyer's days. `away` marks a day off in the calendar: it cannot be booked at all, while another `off` day may be asked for. */
+export interface StandingDay {
+  readonly day: Day;
+  readonly state: DayState;
+  readonly away?: true;
+}
+
 /**
  * Checks the days that one side proposes for a booking: real, ahead, at most 60 days away, each once.
  * @param startTime `HH:MM` on the site's clock
@@ -42,15 +49,16 @@ export function dayStates(
   from: Day,
   count: number,
   sawyer: { readonly workingDays: readonly number[]; readonly notice: number; readonly booked: ReadonlySet<Day>; readonly off: ReadonlySet<Day>; readonly offered: ReadonlySet<Day> },
-): readonly { readonly day: Day; readonly state: DayState }[] {
+): readonly StandingDay[] {
   const start = Date.parse(`${from}T00:00:00Z`);
   return Array.from({ length: count }, (_, index) => {
     const date = new Date(start + index * 86_400_000);
     const day = date.toISOString().slice(0, 10);
     const weekday = date.getUTCDay() === 0 ? 7 : date.getUTCDay();
     if (sawyer.booked.has(day)) return { day, state: 'booked' as const };
+    if (sawyer.off.has(day)) return { day, state: 'off' as const, away: true as const };
     if (sawyer.offered.has(day)) return { day, state: 'offered' as const };
-    if (sawyer.off.has(day) || !sawyer.workingDays.includes(weekday) || index < sawyer.notice) return { day, state: 'off' as const };
+    if (!sawyer.workingDays.includes(weekday) || index < sawyer.notice) return { day, state: 'off' as const };
     return { day, state: 'open' as const };
   });
 }

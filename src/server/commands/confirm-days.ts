@@ -10,6 +10,7 @@ import { enqueue } from '../jobs/queue.ts';
 import { lockBooking } from '../locks.ts';
 import { Bid, BookedDay, Booking, DayProposal, HeldPayment } from '../models/index.ts';
 import { bookingLink, partiesOf } from '../parties.ts';
+import { sawyerDays } from '../queries/open-days.ts';
 import { record, transition } from '../transition.ts';
 import type { Viewer } from '../viewer.ts';
 
@@ -48,7 +49,7 @@ async function move(by: Viewer, booking: Booking, days: readonly Day[], startsAt
 /**
  * The other side confirms the open proposal: the days are booked and, the first time, the hold falls due.
  * The sawyer's calendar is locked first, so that of two landowners confirming one day at the same instant one wins and the other reads why.
- * @throws Refusal `conflict` when the proposal has been replaced or a day has been taken, `forbidden` for one's own proposal
+ * @throws Refusal `conflict` when the proposal has been replaced or a day has been taken or is now off, `forbidden` for one's own proposal
  */
 export async function confirmDays(by: Viewer, input: { readonly booking: number; readonly proposal: string }, at: Date): Promise<void> {
   try {
@@ -64,6 +65,9 @@ export async function confirmDays(by: Viewer, input: { readonly booking: number;
       const { days, problems } = checkProposedDays(proposal.days, startTime, booking.timeZone, at);
       const [first] = days;
       if (problems.length > 0 || !first) throw conflict(`Those days can no longer be booked. ${problems[0]?.message ?? ''}`.trim());
+
+      const away = (await sawyerDays(booking.sawyerId, booking.timeZone, at, [], booking.id)).find((one) => one.away && days.includes(one.day));
+      if (away) throw conflict(by.id === booking.sawyerId ? `You have ${away.day} off. Take it out of your days off first, or propose another day.` : `The sawyer now has ${away.day} off. Propose another day.`);
 
       const before = await bookedDaysOf(booking.id);
       await swapDays(booking, days);

@@ -22,7 +22,7 @@ export interface ProposedDays {
 
 /**
  * Either side proposes the milling days; an open proposal of either side is replaced. Nothing is booked until the other confirms.
- * @throws Refusal `invalid` for days that cannot be, `conflict` when the sawyer is booked on one of them
+ * @throws Refusal `invalid` for days that cannot be, `conflict` when the sawyer is booked on one of them or has it off
  */
 export async function proposeDays(by: Viewer, input: ProposedDays, at: Date): Promise<void> {
   await inTransaction(async () => {
@@ -31,9 +31,11 @@ export async function proposeDays(by: Viewer, input: ProposedDays, at: Date): Pr
     const { days, problems } = checkProposedDays(input.days, input.startTime, booking.timeZone, at);
     if (problems.length > 0) throw invalid(problems);
 
-    const taken = new Set((await sawyerDays(booking.sawyerId, booking.timeZone, at, [], booking.id)).filter(({ state }) => state === 'booked').map(({ day }) => day));
-    const clash = days.find((day) => taken.has(day));
+    const standing = await sawyerDays(booking.sawyerId, booking.timeZone, at, [], booking.id);
+    const clash = days.find((day) => standing.some((one) => one.day === day && one.state === 'booked'));
     if (clash) throw conflict(`The sawyer is booked on ${clash}. Choose another day.`);
+    const away = days.find((day) => standing.some((one) => one.day === day && one.away));
+    if (away) throw conflict(by.id === booking.sawyerId ? `You have ${away} off. Take it out of your days off first, or choose another day.` : `The sawyer has ${away} off. Choose another day.`);
 
     await DayProposal.update({ status: 'replaced', decidedAt: at }, { where: { bookingId: booking.id, status: 'open' } });
     await DayProposal.create({ bookingId: booking.id, proposedBy: by.id, days: [...days], startTime: input.startTime, note: input.note.trim().slice(0, 1000), createdAt: at });

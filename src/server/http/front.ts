@@ -6,6 +6,7 @@ import sirv from 'sirv';
 import type { Env } from '../env.ts';
 import { log } from '../log.ts';
 import { gate } from './gate.ts';
+import { loggedPath } from './logged-path.ts';
 
 /** Astro's handler in middleware mode. */
 export type Handler = (request: IncomingMessage, response: ServerResponse, next?: (error?: unknown) => void, locals?: object) => unknown;
@@ -80,7 +81,7 @@ export function createFront(handler: Handler, clientFolder: string, settings: En
     if (secure) request.headers['x-forwarded-proto'] = 'https';
     response.setHeader('x-request-id', id);
     response.once('finish', () => {
-      log().info({ requestId: id, method: request.method, path: request.url?.split('?', 1)[0], status: response.statusCode, ms: Math.round(performance.now() - started) }, 'request');
+      log().info({ requestId: id, method: request.method, path: loggedPath(request.url ?? ''), status: response.statusCode, ms: Math.round(performance.now() - started) }, 'request');
     });
 
     headers(request, response, () => {

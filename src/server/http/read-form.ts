@@ -31,3 +31,15 @@ export async function readForm<T>(request: Request, schema: z.ZodType<T>): Promi
   const read = schema.safeParse(typed);
   return read.success ? { ok: true, value: read.data, typed } : { ok: false, typed, problems: problemsOf(read.error) };
 }
+
+/**
+ * The text of a file posted by a form, read beside the form's other fields; null when none was chosen.
+ * @throws Refusal `invalid` when the body is not a form at all.
+ */
+export async function uploadedText(request: Request, name: string): Promise<string | null> {
+  const data = await request.clone().formData().catch(() => {
+    throw new Refusal('invalid', 'What was sent is not a form.');
+  });
+  const file = data.get(name);
+  return file instanceof File && file.size > 0 ? file.text() : null;
+}

@@ -25,7 +25,12 @@ export const SawyerProfile = table('sawyer_profile', {
 });
 export type SawyerProfile = Row<typeof SawyerProfile>;
 
-export const DayOff = table('day_off', { sawyerId: keyRef(), day: { options: { ...day().options, primaryKey: true } } as ReturnType<typeof day> });
+/** `imported`: taken over from a calendar the sawyer brought. */
+export type DayOffSource = 'own' | 'imported';
+export const DayOff = table('day_off', { sawyerId: keyRef(), day: { options: { ...day().options, primaryKey: true } } as ReturnType<typeof day>, source: filled(text<DayOffSource>()) });
+
+/** The private address of a sawyer's calendar: the secret's hash, and the secret sealed for its owner. */
+export const CalendarFeed = table('calendar_feed', { sawyerId: keyRef(), secretHash: text(), secretSealed: text(), madeAt: instant() });
 
 export type MillKind = 'band' | 'swing-blade' | 'chainsaw' | 'circular';
 
