@@ -13,6 +13,8 @@ export type Handler = (request: IncomingMessage, response: ServerResponse, next?
 
 /** The largest body read from anyone, in bytes. Photographs never pass here: they go straight to storage. */
 const largestBody = 1_000_000;
+/** A body over the cap is let run out before the refusal when it is no larger than this, in bytes. */
+const mostRunOut = 20_000_000;
 
 function turnAway(request: IncomingMessage, response: ServerResponse, status: number, detail: string): void {
   if (response.headersSent) return void response.destroy();
@@ -32,7 +34,10 @@ function capBody(request: IncomingMessage, response: ServerResponse): boolean {
   const said = request.headers['content-length'];
   if (said !== undefined && Number(said) > largestBody) {
     response.setHeader('connection', 'close');
-    turnAway(request, response, 413, 'That is larger than this server reads. Send it in parts.');
+    const refuse = (): void => turnAway(request, response, 413, 'That is larger than this server reads. Send it in parts.');
+    // A browser reads no answer before it has sent everything: what is not too much is let run out, unread.
+    if (Number(said) > mostRunOut) refuse();
+    else request.once('end', refuse).resume();
     return false;
   }
   if (said === undefined && request.headers['transfer-encoding'] !== undefined) {
