@@ -48,7 +48,20 @@ async function sendPictures(tree: Tree, at: Date): Promise<void> {
   }
 }
 
+// Two at a time, beside the telling: nothing else of the story waits for a picture.
+const lanes: Promise<void>[] = [Promise.resolve(), Promise.resolve()];
+let turn = 0;
+
 /** Pictures of the logs, on the evening of the day they were listed. */
 export function tellPhotos(timeline: Timeline): void {
-  for (const tree of trees) if (tree.pictures && tree.listed !== null) timeline.add(tree.listed, '18:55', (at) => sendPictures(tree, at));
+  for (const tree of trees) {
+    if (!tree.pictures || tree.listed === null) continue;
+    timeline.add(tree.listed, '18:55', async (at) => {
+      const lane = turn++ % lanes.length;
+      lanes[lane] = lanes[lane]?.then(() => sendPictures(tree, at)) ?? Promise.resolve();
+    });
+  }
 }
+
+/** Resolves when every picture that was begun is ready to be seen. */
+export const photosReady = async (): Promise<void> => void (await Promise.all(lanes));
