@@ -11,9 +11,12 @@ interface Size {
   readonly widthIn: number;
 }
 
+/** A log's scale by International ¼, net. */
+export const scaleOf = (log: Log): number => estimateLog(logInput({ ...log.get(), defects: log.defects as Defect[] })).netBoardFeet.internationalQuarter;
+
 /** Boards of one log: a wider and a narrower size of each thickness asked for, together about as much as its scale times `share`. */
 export function boardsOf(log: Log, thicknesses: readonly number[], share: number): TallyEntry[] {
-  const scale = estimateLog(logInput({ ...log.get(), defects: log.defects as Defect[] })).netBoardFeet.internationalQuarter;
+  const scale = scaleOf(log);
   const lengthFt = Math.floor(log.lengthFt);
   const sizes: readonly Size[] = thicknesses.flatMap((thicknessIn) => [0.72, 0.5].map((part) => ({ thicknessIn, widthIn: Math.max(4, Math.floor(log.smallEndIn * part)) })));
   return sizes.flatMap((size): TallyEntry[] => {

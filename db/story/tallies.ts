@@ -10,7 +10,8 @@ import { startSawing } from '../../src/server/commands/start-sawing.ts';
 import { Log } from '../../src/server/models/listing.ts';
 import { Mill } from '../../src/server/models/sawyer.ts';
 import { tallyPage } from '../../src/server/queries/tally-page.ts';
-import { boardFeetOf, boardsOf, slabsOf } from './boards.ts';
+import { bidOf } from './bids.ts';
+import { boardFeetOf, boardsOf, scaleOf, slabsOf } from './boards.ts';
 import { bookingOf } from './bookings.ts';
 import { ZONE, type Calendar } from './calendar.ts';
 import { listingOf } from './listings.ts';
@@ -26,7 +27,7 @@ interface Sawn {
   readonly on: number;
   /** Thicknesses sawn, inches. */
   readonly thicknesses: readonly number[];
-  /** Boards over the logs' scale by International ¼. */
+  /** What came off the saw over what the bid expected. */
   readonly share: number;
   readonly metal?: readonly ('re-sharpened' | 'destroyed')[];
   readonly slabs?: boolean;
@@ -71,7 +72,9 @@ async function saw(one: Sawn, calendar: Calendar, at: Date): Promise<void> {
   const logs = await logsOf(one.listing);
   const [butt, ...rest] = logs;
   const done = one.unfinished ? logs.slice(0, 1) : logs;
-  const boards = one.slabs && butt ? [slabsOf(butt, 3, 3), ...rest.flatMap((log) => boardsOf(log, [one.thicknesses[0] ?? 1], one.share))] : done.flatMap((log) => boardsOf(log, one.thicknesses, one.share));
+  const expected = (await bidOf(one.listing, one.sawyer)).expectedBfHundredths / 100;
+  const share = (one.share * expected) / logs.reduce((sum, log) => sum + scaleOf(log), 0);
+  const boards = one.slabs && butt ? [slabsOf(butt, 3, 3), ...rest.flatMap((log) => boardsOf(log, [one.thicknesses[0] ?? 1], share))] : done.flatMap((log) => boardsOf(log, one.thicknesses, share));
   const hits = (one.metal ?? []).map((outcome): TallyEntry => ({ kind: 'hit', id: randomUUID(), logId: logs[1]?.id ?? null, outcome, note: outcome === 'destroyed' ? 'Fence staple, grown over' : '' }));
   const { paceBfPerHour } = await Mill.findOne({ where: { sawyerId: by.id }, order: [['paceBfPerHour', 'DESC']], rejectOnEmpty: true });
   const hours = Math.max(0.75, Math.round((boardFeetOf(boards) / paceBfPerHour) * 4) / 4);
