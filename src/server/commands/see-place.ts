@@ -2,7 +2,7 @@ import { authorize, rolesOnListing } from '../authorize.ts';
 import { inTransaction } from '../db.ts';
 import { lockListing } from '../locks.ts';
 import { exactPlace, type ExactPlace } from '../queries/listing-page.ts';
-import { record } from '../transition.ts';
+import { notePlaceSeen } from '../place-views.ts';
 import type { Viewer } from '../viewer.ts';
 
 /** Shows a moderator the exact place of a listing, and writes down that it was seen. @throws Refusal `forbidden` for anybody else */
@@ -10,7 +10,7 @@ export async function seePlace(by: Viewer | null, number: number, at: Date): Pro
   return inTransaction(async () => {
     const listing = await lockListing(number);
     authorize(by, 'listing', 'seePlace', rolesOnListing(by, listing), listing.status);
-    if (by.id !== listing.ownerId) await record(by, 'seePlace', 'listing', listing.id, at);
+    await notePlaceSeen(by, listing, at);
     return exactPlace(listing);
   });
 }

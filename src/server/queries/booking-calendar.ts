@@ -3,15 +3,18 @@ import { notFound } from '../errors.ts';
 import { bookedDaysOf, invitationFor, startTimeOf } from '../invitations.ts';
 import { Booking, Listing } from '../models/index.ts';
 import { partiesOf } from '../parties.ts';
+import { notePlaceSeen } from '../place-views.ts';
 import type { Viewer } from '../viewer.ts';
 
 /** The iCalendar text of a booking's days. @throws Refusal `notFound` for others, or while no day is agreed */
-export async function bookingCalendar(viewer: Viewer, number: number): Promise<string> {
+export async function bookingCalendar(viewer: Viewer, number: number, at: Date): Promise<string> {
   const booking = Number.isSafeInteger(number) ? await Booking.findOne({ where: { number } }) : null;
-  if (!booking || !abilities('booking', rolesOnBooking(viewer, booking), booking.status).see) throw notFound('booking');
+  const can = booking && abilities('booking', rolesOnBooking(viewer, booking), booking.status);
+  if (!booking || !can?.see) throw notFound('booking');
   const days = await bookedDaysOf(booking.id);
   if (days.length === 0) throw notFound('calendar entry: no day is agreed yet');
   const listing = await Listing.findByPk(booking.listingId, { rejectOnEmpty: true });
+  if (can.seePlace && listing.place) await notePlaceSeen(viewer, listing, at, { booking: booking.number });
   const parties = await partiesOf(booking);
   return invitationFor(booking, listing, days, await startTimeOf(booking.id), [parties.landowner, parties.sawyer], 0, false).ics;
 }

@@ -9,7 +9,7 @@ import { notFound } from '../errors.ts';
 import { bookedDaysOf, startTimeOf } from '../invitations.ts';
 import { Booking, DayProposal, HeldPayment, Listing, NoShow, Review } from '../models/index.ts';
 import { otherParty, partiesOf } from '../parties.ts';
-import { record } from '../transition.ts';
+import { notePlaceSeen } from '../place-views.ts';
 import type { Viewer } from '../viewer.ts';
 import { sawyerDays } from './open-days.ts';
 
@@ -74,7 +74,7 @@ async function noShowOf(booking: Booking, side: BookingPage['side'], may: boolea
 }
 
 /**
- * All that a booking's page shows to this reader. Showing the exact place to a moderator is written to the audit log.
+ * All that a booking's page shows to this reader. Showing the exact place to anybody but its owner is written to the audit log.
  * @throws Refusal `notFound` for those who are neither side nor moderator
  */
 export async function bookingPage(viewer: Viewer, number: number, at: Date): Promise<BookingPage> {
@@ -90,7 +90,7 @@ export async function bookingPage(viewer: Viewer, number: number, at: Date): Pro
   const bid = await oneRow<{ holdCents: number; daysOffered: string[] }>('SELECT hold_cents AS "holdCents", days_offered::text[] AS "daysOffered" FROM bid WHERE id = $1', [booking.bidId]);
   const conversation = await oneRow<{ id: string }>('SELECT id FROM conversation WHERE listing_id = $1 AND sawyer_id = $2', [booking.listingId, booking.sawyerId]);
   const place = can.seePlace && listing.place ? { lat: listing.place.coordinates[1], lng: listing.place.coordinates[0] } : null;
-  if (place && side === 'moderator') await record(viewer, 'seePlace', 'listing', listing.id, at, { data: { booking: booking.number } });
+  if (place) await notePlaceSeen(viewer, listing, at, { booking: booking.number });
   return {
     number: booking.number,
     status: booking.status,

@@ -7,6 +7,7 @@ import { rolesOnBooking } from '../authorize.ts';
 import { bookedDaysOf } from '../invitations.ts';
 import { Booking, Listing } from '../models/index.ts';
 import { otherParty, partiesOf } from '../parties.ts';
+import { notePlaceSeen } from '../place-views.ts';
 import { tallyView } from '../tally-view.ts';
 import { tallyWork } from '../tally-work.ts';
 import type { Viewer } from '../viewer.ts';
@@ -15,11 +16,12 @@ import { exactPlace } from './listing-page.ts';
 /** A phone keeps at most this many bookings: the nearest days first. */
 const MOST = 20;
 
-async function dayBooking(viewer: Viewer, booking: Booking): Promise<DayBooking> {
+async function dayBooking(viewer: Viewer, booking: Booking, at: Date): Promise<DayBooking> {
   const can = abilities('booking', rolesOnBooking({ ...viewer, isModerator: false }, booking), booking.status);
   const listing = await Listing.findByPk(booking.listingId, { rejectOnEmpty: true });
   const other = otherParty(await partiesOf(booking), viewer.id);
   const exact = can.seePlace && listing.place ? exactPlace(listing) : null;
+  if (exact) await notePlaceSeen({ ...viewer, isModerator: false }, listing, at, { booking: booking.number });
   const { access, landing, waste } = listing;
   return {
     number: booking.number,
@@ -50,6 +52,6 @@ export async function dayPack(viewer: Viewer, at: Date): Promise<DayPack> {
   const asSawyer = await Booking.findAll({ where: { status: ['held', 'sawing', 'tallied', 'queried'], sawyerId: viewer.id } });
   const all = [...mine, ...asSawyer].sort((a, b) => (a.startsAt?.getTime() ?? 0) - (b.startsAt?.getTime() ?? 0)).slice(0, MOST);
   const bookings: DayBooking[] = [];
-  for (const booking of all) bookings.push(await dayBooking(viewer, booking));
+  for (const booking of all) bookings.push(await dayBooking(viewer, booking, at));
   return { account: { id: viewer.id, name: viewer.name }, at: at.toISOString(), bookings };
 }
