@@ -42,6 +42,7 @@ export const paths = {
   rates: '/sawyer/rates',
   profile: '/sawyer/profile',
   bids: '/sawyer/bids',
+  certificate: '/sawyer/certificate',
   calendar: '/sawyer/calendar',
   searches: '/sawyer/searches',
   saveSearch: '/sawyer/searches/new',
@@ -75,12 +76,15 @@ export const paths = {
 
   desk: '/desk',
   deskListings: '/desk/listings',
+  deskListing: (number: number) => `/desk/listings/${number}`,
   deskBookings: '/desk/bookings',
   deskBooking: (number: number) => `/desk/bookings/${number}`,
   deskAccounts: '/desk/accounts',
   deskAccount: (id: string) => `/desk/accounts/${id}`,
+  deskCertificate: (accountId: string) => `/desk/accounts/${accountId}/certificate`,
   deskMoney: '/desk/money',
   deskReports: '/desk/reports',
+  deskReport: (id: string) => `/desk/reports/${id}`,
   deskEvents: '/desk/events',
 
   photo: (id: string, rendition: string) => `/photos/${id}/${rendition}`,
