@@ -22,8 +22,8 @@ const gone = [
 
 /** Rows that others' records need: they stay, and say nothing about the person any more. $2 is the time. */
 const blanked = [
-  `UPDATE sawyer_profile SET business_name = '', about = '', zip = NULL, town = NULL, base = NULL, services = '{}', languages = '{}', certificate_key = NULL,
-     certificate_seen_at = NULL, certificate_expires_on = NULL, updated_at = $2 WHERE account_id = $1`,
+  `UPDATE sawyer_profile SET business_name = '', about = '', zip = NULL, town = NULL, base = NULL, services = '{}', languages = '{}', certificate_key = NULL, certificate_sent_at = NULL,
+     certificate_says_until = NULL, certificate_seen_at = NULL, certificate_expires_on = NULL, updated_at = $2 WHERE account_id = $1`,
   'UPDATE mill SET retired_at = coalesce(retired_at, $2) WHERE sawyer_id = $1',
   "UPDATE photo SET removed_at = coalesce(removed_at, $2), caption = '', file_name = '' WHERE owner_id = $1",
   // Logs and measures stay for the other side's records of the job; where it was becomes the coarse point.

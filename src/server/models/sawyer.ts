@@ -17,6 +17,9 @@ export const SawyerProfile = table('sawyer_profile', {
   workingDays: filled(wholes()),
   noticeDays: filled(whole()),
   certificateKey: nullable(text()),
+  /** Set while one waits for a moderator, with the last day that the sawyer read from it. */
+  certificateSentAt: nullable(instant()),
+  certificateSaysUntil: nullable(day()),
   certificateSeenAt: nullable(instant()),
   certificateExpiresOn: nullable(day()),
   payoutAccount: nullable(text()),

@@ -39,13 +39,17 @@ export interface UploadForm {
 /** How long an upload may take to begin, in seconds. */
 export const uploadFormSeconds = 3600;
 
-/** A form that lets a browser store one object under exactly this key, of this type and at most this size. Nothing is sent. */
-export async function uploadForm(key: string, type: string, mostBytes: number): Promise<UploadForm> {
+/**
+ * A form that lets a browser store one object under exactly this key, of this type and at most this size. Nothing is sent.
+ * @param thenTo where storage sends the browser afterwards, for a form without a script; without it storage answers 204
+ */
+export async function uploadForm(key: string, type: string, mostBytes: number, thenTo?: string): Promise<UploadForm> {
+  const after = thenTo === undefined ? { success_action_status: '204' } : { success_action_redirect: thenTo };
   return createPresignedPost(publicClient(), {
     Bucket: env().STORAGE_BUCKET,
     Key: key,
     Expires: uploadFormSeconds,
-    Fields: { 'Content-Type': type, success_action_status: '204' },
+    Fields: { 'Content-Type': type, ...after },
     Conditions: [['content-length-range', 1, mostBytes], ['eq', '$Content-Type', type]],
   });
 }
