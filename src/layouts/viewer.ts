@@ -6,4 +6,5 @@ export interface Viewer {
   readonly isSawyer: boolean;
   readonly isModerator: boolean;
   readonly unread: number;
+  readonly termsDue?: boolean;
 }

@@ -1,6 +1,7 @@
 import { createHash } from 'node:crypto';
 import { Lucia, TimeSpan, type Adapter, type Cookie, type DatabaseSession, type DatabaseUser } from 'lucia';
 import { Op } from 'sequelize';
+import { termsVersion } from '~/domain/terms.ts';
 import { now } from './clock.ts';
 import { oneRow } from './db.ts';
 import { env } from './env.ts';
@@ -121,6 +122,7 @@ export async function viewerOf(cookieValue: string | undefined): Promise<{ viewe
     active: account.status === 'active',
     sessionId: row.publicId,
     unread: row.unread,
+    termsDue: account.termsVersion !== null && account.termsVersion !== termsVersion,
   };
   return { viewer, renew: session.fresh ? lucia().createSessionCookie(session.id) : null };
 }

@@ -16,6 +16,8 @@ export interface Viewer {
   readonly sessionId: string;
   /** Unread messages. */
   readonly unread: number;
+  /** True when the terms have changed since this account accepted them. */
+  readonly termsDue?: boolean;
 }
 
 /** A deed done by the clock or by the payment provider's message rather than by a person. */
