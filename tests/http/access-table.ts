@@ -67,6 +67,9 @@ export const routes: Readonly<Record<string, Route>> = {
   'sawyer/profile.astro': { path: at('/sawyer/profile'), GET: SAWYERS, POST: SAWYERS_POST },
   'sawyer/certificate.astro': { path: at('/sawyer/certificate'), GET: SAWYERS, POST: SAWYERS_POST },
   'sawyer/bids.astro': { path: at('/sawyer/bids'), GET: SAWYERS, POST: SAWYERS_POST },
+  'sawyer/calendar/index.astro': { path: at('/sawyer/calendar'), GET: SAWYERS, POST: SAWYERS_POST },
+  'sawyer/calendar/import.astro': { path: at('/sawyer/calendar/import'), GET: SAWYERS, POST: SAWYERS_POST },
+  'calendar/[secret].ics.ts': { path: at('/calendar/nonsense.ics'), GET: NOBODY },
   'sawyer/searches/index.astro': { path: at('/sawyer/searches'), GET: SAWYERS, POST: SAWYERS_POST },
   'sawyer/searches/new.astro': { path: at('/sawyer/searches/new'), GET: SAWYERS, POST: SAWYERS_POST },
 
@@ -78,10 +81,16 @@ export const routes: Readonly<Record<string, Route>> = {
   'listings/[number]/bid/index.astro': { path: ({ open }) => `/listings/${open}/bid`, GET: 'in 403 403 200 200 403 403', POST: 'in 403 403 422 422 403 403' },
   'listings/[number]/bid/withdraw.astro': { path: ({ open }) => `/listings/${open}/bid/withdraw`, GET: 'in 403 403 409 200 403 403', POST: 'in 403 403 409 303 403 403' },
 
+  'listings/[number]/bids/index.astro': { path: ({ open }) => `/listings/${open}/bids`, GET: 'in 403 200 403 403 403 200' },
+  'listings/[number]/bids/[bid].astro': { path: ({ open, bid }) => `/listings/${open}/bids/${bid}`, GET: 'in 403 200 403 403 403 200', POST: 'in 403 422 403 403 403 422' },
+  'listings/[number]/boards.astro': { path: ({ open }) => `/listings/${open}/boards`, GET: ALL },
+
   // Bookings.
   'bookings/index.astro': { path: at('/bookings'), GET: SIGNED_IN },
   'bookings/[number]/index.astro': { path: ({ queried }) => `/bookings/${queried}`, GET: PARTIES, POST: 'in 403 422 403 422 403 403' },
   'bookings/[number]/agreement.astro': { path: ({ queried }) => `/bookings/${queried}/agreement`, GET: PARTIES },
+  'bookings/[number]/cut-sheet.astro': { path: ({ queried }) => `/bookings/${queried}/cut-sheet`, GET: PARTIES },
+  'bookings/[number]/no-show.astro': { path: ({ queried }) => `/bookings/${queried}/no-show`, GET: PARTIES, POST: 'in 404 422 404 422 404 422' },
   'bookings/[number]/invitation.ics.ts': { path: ({ queried }) => `/bookings/${queried}/invitation.ics`, GET: PARTIES },
   'bookings/[number]/pay.astro': { path: ({ agreed }) => `/bookings/${agreed}/pay`, GET: 'in 404 200 404 403 404 403', POST: 'in 404 303 404 403 404 403' },
   'bookings/[number]/paid.astro': { path: ({ agreed }) => `/bookings/${agreed}/paid`, GET: 'in 404 200 404 403 404 403' },

@@ -30,10 +30,12 @@ export interface StuckCall {
 export interface DeskHome {
   readonly reports: { readonly count: number; readonly oldest: Date | null };
   readonly queried: readonly WaitingBooking[];
+  /** No-shows that the other side contests. */
+  readonly noShows: readonly WaitingBooking[];
   readonly certificates: readonly WaitingCertificate[];
   readonly stuck: readonly StuckCall[];
   readonly ofSuspended: readonly WaitingBooking[];
-  readonly counts: { readonly queried: number; readonly certificates: number; readonly stuck: number; readonly ofSuspended: number };
+  readonly counts: { readonly queried: number; readonly noShows: number; readonly certificates: number; readonly stuck: number; readonly ofSuspended: number };
 }
 
 const most = 20;
@@ -50,6 +52,7 @@ export async function deskHome(viewer: Viewer | null): Promise<DeskHome> {
   openDesk(viewer);
   const reports = await oneRow<{ count: number; oldest: Date | null }>('SELECT count(*)::int AS count, min(created_at) AS oldest FROM report WHERE handled_at IS NULL');
   const queried = await rows<Counted<WaitingBooking>>(booking(`k.status = 'queried'`));
+  const noShows = await rows<Counted<WaitingBooking>>(booking(`EXISTS (SELECT 1 FROM no_show n WHERE n.booking_id = k.id AND n.status = 'contested')`));
   const ofSuspended = await rows<Counted<WaitingBooking>>(booking(`k.status NOT IN ('settled', 'lapsed', 'cancelled') AND (a.status = 'suspended' OR s.status = 'suspended')`));
   const certificates = await rows<Counted<WaitingCertificate>>(
     `SELECT p.account_id AS "accountId", a.name, p.certificate_sent_at AS "sentAt", p.certificate_says_until::text AS "saysUntil", count(*) OVER ()::int AS whole
@@ -60,7 +63,7 @@ export async function deskHome(viewer: Viewer | null): Promise<DeskHome> {
      FROM provider_call c LEFT JOIN booking k ON k.id = c.booking_id WHERE c.status = 'stuck' ORDER BY c.created_at LIMIT ${most}`,
   );
   return {
-    reports: reports ?? { count: 0, oldest: null }, queried, certificates, stuck, ofSuspended,
-    counts: { queried: whole(queried), certificates: whole(certificates), stuck: whole(stuck), ofSuspended: whole(ofSuspended) },
+    reports: reports ?? { count: 0, oldest: null }, queried, noShows, certificates, stuck, ofSuspended,
+    counts: { queried: whole(queried), noShows: whole(noShows), certificates: whole(certificates), stuck: whole(stuck), ofSuspended: whole(ofSuspended) },
   };
 }
