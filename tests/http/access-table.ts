@@ -81,8 +81,8 @@ export const routes: Readonly<Record<string, Route>> = {
   'listings/[number]/bid/index.astro': { path: ({ open }) => `/listings/${open}/bid`, GET: 'in 403 403 200 200 403 403', POST: 'in 403 403 422 422 403 403' },
   'listings/[number]/bid/withdraw.astro': { path: ({ open }) => `/listings/${open}/bid/withdraw`, GET: 'in 403 403 409 200 403 403', POST: 'in 403 403 409 303 403 403' },
 
-  'listings/[number]/bids/index.astro': { path: ({ open }) => `/listings/${open}/bids`, GET: 'in 403 200 403 403 403 200' },
-  'listings/[number]/bids/[bid].astro': { path: ({ open, bid }) => `/listings/${open}/bids/${bid}`, GET: 'in 403 200 403 403 403 200', POST: 'in 403 422 403 403 403 422' },
+  'listings/[number]/bids/index.astro': { path: ({ open }) => `/listings/${open}/bids`, GET: 'in 404 200 404 404 404 200' },
+  'listings/[number]/bids/[bid].astro': { path: ({ open, bid }) => `/listings/${open}/bids/${bid}`, GET: 'in 404 200 404 404 404 200', POST: 'in 404 422 404 404 404 422' },
   'listings/[number]/boards.astro': { path: ({ open }) => `/listings/${open}/boards`, GET: ALL },
 
   // Bookings.
