@@ -7,6 +7,7 @@ import { sizings } from '~/domain/listing/answers.ts';
 import { Button, Checkbox } from '../form/choices.tsx';
 import { Field, Select } from '../form/fields.tsx';
 import { Care, Part, useForm } from './parts.tsx';
+import { ProjectHelper } from './ProjectHelper.tsx';
 import type { Row, Rows } from './use-rows.ts';
 
 /** The cut list: what the landowner hopes to build. */
@@ -20,6 +21,7 @@ export function PiecesPart({ rows }: { readonly rows: Rows<PieceTyped> }): React
       {rows.list.length < MOST_PIECES && (
         <div><Button kind="outlined" type="submit" name="deed" value="add-piece" formNoValidate onClick={(event) => { event.preventDefault(); rows.add(); }}>{rows.list.length === 0 ? 'Add a size' : 'Add another size'}</Button></div>
       )}
+      <ProjectHelper room={MOST_PIECES - rows.list.length} onAdd={rows.addAll} />
       <Care danger={dwellingCautions(typed.pieces.some((piece) => piece.dwelling !== ''))} />
     </Part>
   );

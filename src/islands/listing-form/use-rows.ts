@@ -11,6 +11,8 @@ export interface Row<T> {
 export interface Rows<T> {
   readonly list: readonly Row<T>[];
   readonly add: () => void;
+  /** Adds rows that are filled already, after the last. */
+  readonly addAll: (filled: readonly T[]) => void;
   readonly remove: (index: number) => void;
 }
 
@@ -35,6 +37,15 @@ export function useRows<T>(name: string, opened: readonly T[], problems: readonl
       setList((rows) => [...rows, { key, opened: blank(current().at(-1)), problem: () => undefined }]);
       // The new row's first field, once it is there.
       requestAnimationFrame(() => document.querySelector<HTMLInputElement>(`[name="${name}.${list.length}.${name === 'logs' ? 'smallEnd' : 'label'}"]`)?.focus());
+    },
+    addAll(filled) {
+      const rows = filled.map((one) => {
+        counter.current += 1;
+        return { key: `${name}-${counter.current}`, opened: one, problem: () => undefined };
+      });
+      setList((before) => [...before, ...rows]);
+      // Nobody typed in them, yet they are to be kept like what is typed.
+      requestAnimationFrame(() => document.querySelector(`[name^="${name}.${list.length}."]`)?.dispatchEvent(new Event('input', { bubbles: true })));
     },
     remove(index) {
       setList((rows) => rows.filter((_, other) => other !== index));
