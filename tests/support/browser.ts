@@ -18,16 +18,16 @@ export const PASSWORD = 'sound white oak 1842';
 
 /**
  * The newest message to an address whose subject has these words; waits for the worker to send it.
- * @throws after ten seconds without one.
+ * @throws after thirty seconds without one.
  */
 export async function readMail(mailPage: string, to: string, subject = ''): Promise<ReadMail> {
-  const until = Date.now() + 10_000;
+  const until = Date.now() + 30_000;
   for (;;) {
     const answer = await fetch(`${mailPage}/messages?to=${encodeURIComponent(to)}`);
     const { messages } = (await answer.json()) as { messages: ReadMail[] };
     const found = messages.find((message) => message.subject.includes(subject));
     if (found) return (await (await fetch(`${mailPage}/messages/${found.id}`)).json()) as ReadMail;
-    if (Date.now() > until) throw new Error(`No message to ${to}${subject ? ` about "${subject}"` : ''} came within ten seconds.`);
+    if (Date.now() > until) throw new Error(`No message to ${to}${subject ? ` about "${subject}"` : ''} came within thirty seconds.`);
     await new Promise((resolve) => setTimeout(resolve, 100));
   }
 }
