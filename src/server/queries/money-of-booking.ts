@@ -68,7 +68,7 @@ async function settlementOf(booking: Booking, payment: HeldPayment | null, heldC
   const [sum] = await rows<{ cents: number }>('SELECT coalesce(sum(amount_cents), 0)::int AS cents FROM charge WHERE payment_id = $1 AND returned_because IS NULL', [payment?.id ?? null]);
   const against = ledger['landowner held'] === 0 ? (sum?.cents ?? 0) : heldCents;
   const lackingCents = payment?.status === 'held' && !payment.heldAcceptedAt && signed.signedBy !== 'deadline' ? Math.max(0, signed.settlement.costCents - heldCents) : 0;
-  const lost = await oneRow<{ cents: number }>(`SELECT coalesce(sum(amount_cents), 0)::int AS cents FROM card_dispute JOIN charge ON charge.id = charge_id WHERE booking_id = $1 AND status = 'lost' AND returned_because IS NULL`, [booking.id]);
+  const lost = await oneRow<{ cents: number }>(`SELECT coalesce(sum(dispute.amount_cents), 0)::int AS cents FROM card_dispute dispute JOIN charge ON charge.id = dispute.charge_id WHERE dispute.booking_id = $1 AND dispute.status = 'lost' AND charge.returned_because IS NULL`, [booking.id]);
   return { whole: signed.settlement, lostCents: lost?.cents ?? 0, parts: splitNow(signed.settlement, against, feeBasisPoints), lackingCents };
 }
 
