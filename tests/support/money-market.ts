@@ -25,8 +25,8 @@ export interface MoneyHouse {
   readonly close: () => Promise<void>;
 }
 
-/** Starts both. Call it once in a file, in `beforeAll`. */
-export async function openMoneyHouse(): Promise<MoneyHouse> {
+/** Opens the application's ear for the provider's messages in this process. */
+async function openEar(): Promise<{ readonly url: string; readonly close: () => Promise<void> }> {
   const ear: Server = createServer((request, response) => {
     const parts: Buffer[] = [];
     request.on('data', (part: Buffer) => parts.push(part));
@@ -39,9 +39,23 @@ export async function openMoneyHouse(): Promise<MoneyHouse> {
   });
   await new Promise<void>((done) => ear.listen(0, '127.0.0.1', done));
   const address = ear.address();
-  const earPort = typeof address === 'object' && address ? address.port : 0;
+  return {
+    url: `http://127.0.0.1:${typeof address === 'object' && address ? address.port : 0}/`,
+    close: async () => {
+      ear.closeAllConnections();
+      await new Promise((done) => ear.close(done));
+    },
+  };
+}
+
+/**
+ * Starts both. Call it once in a file, in `beforeAll`.
+ * @param webhookUrl where another process listens for the messages, if not this one
+ */
+export async function openMoneyHouse(webhookUrl?: string): Promise<MoneyHouse> {
+  const ear = webhookUrl === undefined ? await openEar() : null;
   const fake = await startFakeStripe({
-    port: Number(new URL(env().PAYMENTS_URL).port), key: env().PAYMENTS_SECRET_KEY, webhookUrl: `http://127.0.0.1:${earPort}/`, webhookSecret: env().PAYMENTS_WEBHOOK_SECRET, webhooks: { retryBaseMs: 20 },
+    port: Number(new URL(env().PAYMENTS_URL).port), key: env().PAYMENTS_SECRET_KEY, webhookUrl: webhookUrl ?? ear?.url ?? '', webhookSecret: env().PAYMENTS_WEBHOOK_SECRET, webhooks: { retryBaseMs: 20 },
   });
   const at = new URL(fake.url);
   const provider = new Stripe(env().PAYMENTS_SECRET_KEY, { host: at.hostname, port: at.port, protocol: 'http', maxNetworkRetries: 0, telemetry: false });
@@ -50,8 +64,7 @@ export async function openMoneyHouse(): Promise<MoneyHouse> {
     work: (tries) => workAll(fake, tries),
     close: async () => {
       await fake.close();
-      ear.closeAllConnections();
-      await new Promise((done) => ear.close(done));
+      await ear?.close();
     },
   };
 }
