@@ -64,6 +64,7 @@ export const paths = {
   signTally: (number: number) => `/bookings/${number}/sign`,
   decideTally: (number: number) => `/bookings/${number}/decide`,
   receipt: (number: number) => `/bookings/${number}/receipt`,
+  receiptPdf: (number: number) => `/bookings/${number}/receipt.pdf`,
   invitation: (number: number) => `/bookings/${number}/invitation.ics`,
   review: (number: number) => `/bookings/${number}/review`,
 
@@ -83,6 +84,7 @@ export const paths = {
   deskAccount: (id: string) => `/desk/accounts/${id}`,
   deskCertificate: (accountId: string) => `/desk/accounts/${accountId}/certificate`,
   deskMoney: '/desk/money',
+  deskAdjust: '/desk/money/adjust',
   deskReports: '/desk/reports',
   deskReport: (id: string) => `/desk/reports/${id}`,
   deskEvents: '/desk/events',

@@ -4,7 +4,7 @@ import { conflict, forbidden, unavailable } from '../errors.ts';
 import { enqueue } from '../jobs/queue.ts';
 import { SawyerProfile } from '../models/sawyer.ts';
 import { linkTo } from '../parties.ts';
-import { onboardingLink, openPayoutAccount, payoutDashboardLink, PaymentsProblem, readPayoutAccount, type PayoutAccount } from '../services/payments.ts';
+import { bankPayouts, onboardingLink, openPayoutAccount, payoutDashboardLink, PaymentsProblem, readPayoutAccount, type BankPayout, type PayoutAccount } from '../services/payments.ts';
 import { record } from '../transition.ts';
 import { system, type Viewer } from '../viewer.ts';
 
@@ -46,6 +46,17 @@ export async function openPayoutDashboard(by: Viewer): Promise<string> {
   const account = (await SawyerProfile.findByPk(by.id))?.payoutAccount;
   if (!account) throw conflict('Set up payouts first.');
   return payoutDashboardLink(account).catch(notNow);
+}
+
+/** What the provider pays out to the sawyer's bank, newest first; null when it does not answer. */
+export async function readBankPayouts(by: Viewer): Promise<BankPayout[] | null> {
+  asSawyer(by);
+  const account = (await SawyerProfile.findByPk(by.id))?.payoutAccount;
+  if (!account) return [];
+  return bankPayouts(account).catch((error: unknown) => {
+    if (error instanceof PaymentsProblem) return null;
+    throw error;
+  });
 }
 
 /** Reads the sawyer's account anew, for a sawyer who comes back from the provider before its message does. */

@@ -27,3 +27,15 @@ export const paymentsPage = (viewer: Viewer): Promise<PaymentLine[]> =>
      WHERE booking.landowner_id = $1 ORDER BY payment.created_at DESC LIMIT 100`,
     [viewer.id],
   );
+
+/** The months, newest first, in which something of a landowner's was paid or came back. */
+export async function paidMonths(viewer: Viewer): Promise<string[]> {
+  const found = await rows<{ month: string }>(
+    `SELECT DISTINCT to_char(moved.at AT TIME ZONE booking.time_zone, 'YYYY-MM') AS month
+     FROM booking JOIN held_payment payment ON payment.booking_id = booking.id
+       CROSS JOIN LATERAL (SELECT received_at AS at FROM charge WHERE payment_id = payment.id UNION ALL SELECT done_at FROM provider_call WHERE payment_id = payment.id AND kind = 'refund' AND status = 'done') moved
+     WHERE booking.landowner_id = $1 ORDER BY month DESC LIMIT 120`,
+    [viewer.id],
+  );
+  return found.map(({ month }) => month);
+}
