@@ -67,6 +67,7 @@ const deeds: Readonly<Record<string, string>> = {
   addToHold: 'Money was added to the hold',
   returnMoney: 'Money that was not due goes back',
   acceptHeld: 'The held amount was accepted as full pay',
+  settleAsHeld: 'A moderator settled it with what was held',
   reportNoShow: 'One side was reported not to have come',
   withdrawNoShow: 'The report was taken back',
   contestNoShow: 'The report was contested',

@@ -63,6 +63,7 @@ export const permissions = {
     queryTally: { who: ['landowner'], states: ['tallied'], whileSuspended: true },
     decideTally: { who: ['moderator'], states: ['queried'] },
     topUp: { who: ['landowner'], states: ['sawing', 'tallied', 'queried', 'signed'], whileSuspended: true },
+    settleAsHeld: { who: ['moderator'], states: ['signed'] },
     acceptHeld: { who: ['sawyer'], states: ['signed'], whileSuspended: true },
     review: { who: ['landowner', 'sawyer'], states: ['settled'] },
   }),
@@ -87,6 +88,10 @@ export const permissions = {
   }),
   desk: rules<never>()({
     open: { who: ['moderator'] },
+    seeMoney: { who: ['moderator'] },
+    retryCall: { who: ['moderator'] },
+    reconcile: { who: ['moderator'] },
+    adjustMoney: { who: ['moderator'] },
   }),
 } as const;
 

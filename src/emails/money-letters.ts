@@ -46,6 +46,14 @@ export const payoutReminder = (to: To, cents: Cents, jobs: number, link: string)
     { button: 'Set up payouts', href: link },
   ]);
 
+/** A moderator asks another to approve an adjustment. */
+export const adjustmentAsked = (to: To, byName: string, cents: Cents, reason: string, link: string): MailMessage =>
+  letter(to.email, `To approve: ${formatCents(cents)}`, to.name, [`${byName} asks a second moderator to approve an adjustment.`, { facts: [['Amount', formatCents(cents)], ['Reason', reason]] }, { button: 'See it on the desk', href: link }]);
+
+/** A moderator ended the waiting for a top-up. */
+export const settledAsHeld = (to: To, reason: string, cents: Cents, link: string): MailMessage =>
+  letter(to.email, 'Settled with what was held', to.name, [`A moderator settled the booking with the ${formatCents(cents)} that was held: ${reason}`, { button: 'See the receipt', href: link }]);
+
 /** Paid out: the receipt of each side. */
 export const paidOut = (to: To, figures: readonly (readonly [label: string, value: string])[], mine: 'landowner' | 'sawyer', link: string): MailMessage =>
   letter(to.email, mine === 'sawyer' ? 'Your pay is released' : 'Receipt: settled', to.name, [

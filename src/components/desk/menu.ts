@@ -8,5 +8,6 @@ export const deskMenu: readonly MenuItem[] = [
   { label: 'Listings', href: paths.deskListings },
   { label: 'Bookings', href: paths.deskBookings },
   { label: 'Accounts', href: paths.deskAccounts },
+  { label: 'Money', href: paths.deskMoney },
   { label: 'Audit log', href: paths.deskEvents },
 ];

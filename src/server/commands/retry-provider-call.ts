@@ -8,7 +8,7 @@ import { baseRoles, type Viewer } from '../viewer.ts';
 
 /** A moderator lets a call that was given up be tried again, under a new key. */
 export async function retryProviderCall(by: Viewer, callId: string, at: Date): Promise<void> {
-  authorize(by, 'desk', 'open', baseRoles(by));
+  authorize(by, 'desk', 'retryCall', baseRoles(by));
   await inTransaction(async () => {
     const call = await ProviderCall.findByPk(callId, { lock: true });
     if (!call) throw notFound('payment task');

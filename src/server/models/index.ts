@@ -1,4 +1,5 @@
 export * from './account.ts';
+export * from './adjustment.ts';
 export * from './booking.ts';
 export * from './event.ts';
 export * from './finding.ts';
