@@ -62,6 +62,7 @@ export const paths = {
   cutSheet: (number: number) => `/bookings/${number}/cut-sheet`,
   tally: (number: number) => `/bookings/${number}/tally`,
   signTally: (number: number) => `/bookings/${number}/sign`,
+  tallyPdf: (number: number) => `/bookings/${number}/tally.pdf`,
   decideTally: (number: number) => `/bookings/${number}/decide`,
   receipt: (number: number) => `/bookings/${number}/receipt`,
   receiptPdf: (number: number) => `/bookings/${number}/receipt.pdf`,

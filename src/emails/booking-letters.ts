@@ -58,3 +58,12 @@ export const messageWaiting = (to: To, from: To, about: string, body: string, li
 /** A review was written. */
 export const reviewWritten = (to: To, from: To, link: string): MailMessage =>
   letter(to.email, `${from.name} wrote a review`, to.name, [`${from.name} wrote a review of your job together.`, { button: 'Read it', href: link }]);
+
+/** The list of the evening before, for one side. `code` is the landowner's own, for signing on the sawyer's phone. */
+export const eveningBefore = (to: To, other: To, startsAt: Date, zone: string, ready: readonly string[], code: string | null, link: string): MailMessage =>
+  letter(to.email, `Tomorrow: ${formatInstant(startsAt, zone)}`, to.name, [
+    `${other.name} and you meet at the logs tomorrow. Have this ready tonight:`,
+    ...ready.map((line) => `• ${line}.`),
+    ...(code ? [`To sign the tally on ${other.name}’s phone you give this code, which only you have: ${code}. Keep it to yourself until you sign.`] : []),
+    { button: 'Keep the day on this phone', href: link },
+  ]);

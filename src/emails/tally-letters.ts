@@ -40,3 +40,23 @@ export const metalStops = (to: To, sawyer: string, hits: number, capLeft: number
     `At most ${formatCents(capLeft)} more can be charged for metal; that is the rest of the cap you agreed on.`,
     { button: 'Decide', href: link },
   ]);
+
+const nearWords = { 'at-80': '80 % of what is allowed', 'at-95': '95 % of what is allowed', stop: 'all that is allowed' } as const;
+
+/** The work nears, or has reached, what is held or allowed. */
+export const holdNears = (to: To, warning: keyof typeof nearWords, facts: readonly (readonly [string, string])[], link: string, isLandowner: boolean): MailMessage =>
+  letter(to.email, `The work has reached ${nearWords[warning]}`, to.name, [
+    { facts },
+    isLandowner
+      ? 'Before it goes over, allow a higher limit or let the sawing stop. What you allow is certain for the sawyer only once you have added it to the hold.'
+      : 'Before it goes over, the landowner allows a higher limit, or sawing stops. Only what is held is certain.',
+    { button: isLandowner ? 'Decide' : 'Open the tally', href: link },
+  ]);
+
+/** Something was allowed in the landowner's name on the sawyer's phone: the landowner hears of it at once. */
+export const allowedOnPhone = (to: To, sawyer: string, what: string, name: string, link: string): MailMessage =>
+  letter(to.email, `Allowed on ${sawyer}’s phone: ${what}`, to.name, [
+    `“${name}” signed on ${sawyer}’s phone: ${what}.`,
+    'If that was not you, write to the sawyer now, and query the tally when it comes.',
+    { button: 'See the tally', href: link },
+  ]);

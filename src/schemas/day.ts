@@ -21,6 +21,8 @@ export interface DayBooking {
   readonly access: readonly Said[];
   readonly landing: readonly Said[];
   readonly note: string;
+  /** The landowner's own: by it they sign on the sawyer's phone. Null for the sawyer. */
+  readonly signingCode: string | null;
   readonly tally: TallyView;
 }
 

@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { logLengthFt, smallEndIn, speciesCode, between } from './timber-fields.ts';
 
 const inches = (most: number) => z.number().positive('This must be more than zero.').max(most, `At most ${most} in.`);
 const logId = z.uuid().nullable();
@@ -30,10 +31,33 @@ const extras = z.strictObject({
   wasteDone: z.enum(['left', 'hauled', 'bundled']).optional(), quartersawnLogIds: logIds.optional(), draggedLogIds: logIds.optional(),
   rainReturns: z.number().int().min(0).max(10).optional(),
 });
+const measures = { smallEndIn, largeEndIn: between(4, 60, 'The large end, in inches,').nullable().default(null), lengthFt: logLengthFt };
+const largeEndHolds = (log: { readonly smallEndIn: number; readonly largeEndIn: number | null }): boolean => log.largeEndIn === null || log.largeEndIn >= log.smallEndIn;
+const largeEndProblem = { path: ['largeEndIn'], error: 'The large end is smaller than the small end. Swap them, or measure again.' };
+/** A log measured again on the day, inside bark. */
+const measure = z.strictObject({ kind: z.literal('measure'), id: z.uuid(), logId: z.uuid(), ...measures }).refine(largeEndHolds, largeEndProblem);
+/** A log that is not on the listing; `id` becomes the log's. It is sawn once the landowner has accepted it. */
+const addLog = z.strictObject({ kind: z.literal('addLog'), id: z.uuid(), label: z.string().trim().max(40).default(''), species: speciesCode, ...measures }).refine(largeEndHolds, largeEndProblem);
+
+/** A signature drawn with a finger: an SVG path of whole numbers, nothing else. */
+export const signaturePath = z.string().max(40_000).regex(/^(?:M\d{1,4} \d{1,4}(?:L\d{1,4} \d{1,4})*)+$/, 'This is not a drawn signature.');
+const signedBy = { name: z.string().trim().min(1, 'Write your name as your signature.').max(120), signature: signaturePath.nullable() };
+/** What the landowner allows, on their own phone or on the sawyer's. `limitCents` is the whole limit, not what is added. */
+const allow = z.strictObject({
+  kind: z.literal('allow'), id: z.uuid(), what: z.enum(['metal', 'increase', 'larger-log', 'added-log', 'set-up-again']),
+  logId: logId.default(null), limitCents: z.number().int().min(100).max(100_000_00).nullable().default(null), ...signedBy,
+});
+const sha256 = z.string().regex(/^[0-9a-f]{64}$/);
+/** The tally so far is signed, when rain stops the saw: its lines stand. */
+const part = z.strictObject({ kind: z.literal('part'), id: z.uuid(), sha256, ...signedBy });
+/** The sawyer offers the tally for signing. */
+const offer = z.strictObject({ kind: z.literal('offer'), id: z.uuid(), endedBySawyer: z.boolean(), note: z.string().trim().max(1000).default('') });
+/** The landowner signs the tally. `code` is theirs alone and asked for on the sawyer's phone. */
+const sign = z.strictObject({ kind: z.literal('sign'), id: z.uuid(), sha256, code: z.string().regex(/^\d{6}$/, 'The code has six figures.').nullable().default(null), ...signedBy });
 /** The check-list has been gone through: sawing begins. */
 const start = z.strictObject({ kind: z.literal('start'), id: z.uuid() });
 
-export const tallyEntry = z.discriminatedUnion('kind', [board, hit, cull, clock, remove, extras, start]);
+export const tallyEntry = z.discriminatedUnion('kind', [board, hit, cull, clock, remove, extras, start, measure, addLog, allow, part, offer, sign]);
 export type TallyEntry = z.infer<typeof tallyEntry>;
 
 /** What a phone or page sends: entries in the order they were made. `account` is who made them: nobody else's session may send them. */

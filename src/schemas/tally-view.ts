@@ -1,16 +1,10 @@
 import type { BookingState } from '~/domain/states/booking.ts';
 import type { ClockActivity } from '~/domain/trade/clock.ts';
-import type { LogToCharge } from '~/domain/trade/log-charge.ts';
+import type { Allowance } from '~/domain/trade/day-job.ts';
+import type { MillLimits } from '~/domain/trade/mill-fit.ts';
 import type { BidTerms } from '~/domain/trade/rate-card.ts';
 import type { TallyExtras } from '~/domain/trade/tally-count.ts';
-
-/** A log as the tally book lists it; the charge figures let the book count by itself, with or without signal. */
-export interface TallyLog extends LogToCharge {
-  readonly label: string;
-  readonly speciesName: string;
-  readonly size: string;
-  readonly wholeFt: number;
-}
+import type { TallyLog } from './tally-log.ts';
 
 export interface TallyBoardView {
   readonly id: string;
@@ -49,5 +43,10 @@ export interface TallyView {
   readonly clock: readonly { readonly id: string; readonly activity: ClockActivity; readonly startsAt: string; readonly endsAt: string }[];
   readonly extras: TallyExtras;
   readonly metalAllowed: number;
+  readonly allowances: readonly (Allowance & { readonly name: string })[];
+  /** What was signed for part of the work: these lines stand. */
+  readonly parts: readonly { readonly id: string; readonly name: string; readonly lineIds: readonly string[]; readonly costCents: number | null }[];
+  readonly mill: MillLimits | null;
+  readonly endedBySawyer: boolean;
   readonly queries: readonly TallyQueryView[];
 }

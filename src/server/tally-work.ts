@@ -1,16 +1,19 @@
 import { createHash } from 'node:crypto';
 import { Op } from 'sequelize';
-import { canonicalJson } from '~/domain/trade/agreement.ts';
 import { logToCharge } from '~/domain/trade/bid-estimate.ts';
 import type { ClockActivity } from '~/domain/trade/clock.ts';
+import { jobOf, limitOf } from '~/domain/trade/day-job.ts';
+import { asLogInput, chargedMeasures, type DayLog } from '~/domain/trade/day-logs.ts';
+import type { MillLimits } from '~/domain/trade/mill-fit.ts';
 import type { WorkQuantities } from '~/domain/trade/price.ts';
 import type { BidTerms } from '~/domain/trade/rate-card.ts';
 import { settle, type Settlement } from '~/domain/trade/settlement.ts';
+import { tallyContent } from '~/domain/trade/tally-content.ts';
 import { countTally, NO_EXTRAS, type JobTally, type TallyExtras } from '~/domain/trade/tally-count.ts';
-import type { Defect } from '~/domain/timber/defects.ts';
+import { dayLogs, frozenMill } from './day-logs.ts';
 import { oneRow } from './db.ts';
 import { env } from './env.ts';
-import { Bid, type Booking, CullLog, Log, MetalHit, Tally, TallyBoard } from './models/index.ts';
+import { Bid, type Booking, CullLog, DayAllowance, Log, MetalHit, Tally, TallyBoard, TallyPart } from './models/index.ts';
 import type { FrozenEstimate } from './bid-work.ts';
 
 /** A clock entry as it is kept. */
@@ -29,10 +32,16 @@ export interface TallyWork {
   readonly culls: readonly CullLog[];
   readonly clock: readonly KeptClock[];
   readonly logs: readonly Log[];
+  readonly onTheDay: readonly DayLog[];
+  readonly mill: MillLimits | null;
+  readonly allowances: readonly DayAllowance[];
+  readonly parts: readonly TallyPart[];
   readonly terms: BidTerms;
   readonly job: JobTally;
   readonly work: WorkQuantities;
   readonly heldCents: number;
+  /** What is held, or what the landowner has signed for on the day when that is more. */
+  readonly limitCents: number;
   readonly settlement: Settlement;
   /** Binds a signature to what was read: any later change gives another one. */
   readonly sha256: string;
@@ -54,9 +63,6 @@ export async function frozenTerms(booking: Booking): Promise<BidTerms> {
   return (bid.estimate as FrozenEstimate).terms;
 }
 
-const chargeable = (log: Log) =>
-  logToCharge({ id: log.id, species: log.species, smallEndIn: log.smallEndIn, lengthFt: log.lengthFt, ...(log.largeEndIn === null ? {} : { largeEndIn: log.largeEndIn }), defects: log.defects as Defect[] });
-
 /** The logs of the job: as listed, and those added on the day. */
 export const jobLogs = (booking: Booking): Promise<Log[]> =>
   Log.findAll({ where: { listingId: booking.listingId, [Op.or]: [{ removedAt: null }, { addedOnTheDay: true }] }, order: [['position', 'ASC']] });
@@ -72,27 +78,16 @@ export async function tallyWork(booking: Booking): Promise<TallyWork | null> {
   const logs = await jobLogs(booking);
   const clock = tally.clock as KeptClock[];
   const terms = await frozenTerms(booking);
-  const job: JobTally = {
-    boards,
-    clock: clock.map(({ activity, startsAt, endsAt }) => ({ activity, startsAt: new Date(startsAt), endsAt: new Date(endsAt) })),
-    blades: hits.map(({ outcome }) => ({ blade: outcome, cause: 'metal' as const })),
-    culls,
-    extras: { ...NO_EXTRAS, wasteDone: terms.waste, ...(tally.extras as Partial<TallyExtras>) },
-  };
-  const work = countTally(terms, job, logs.map(chargeable));
+  const mill = await frozenMill(booking);
+  const onTheDay = await dayLogs(booking, logs);
+  const allowances = await DayAllowance.findAll({ where: { bookingId: booking.id }, order: [['enteredAt', 'ASC'], ['id', 'ASC']] });
+  const parts = await TallyPart.findAll({ where: { tallyId: tally.id }, order: [['signedAt', 'ASC']] });
+  const job = jobOf({ boards, hits, culls, clock, logs: onTheDay, allowances, extras: { ...NO_EXTRAS, wasteDone: terms.waste, ...(tally.extras as Partial<TallyExtras>) } });
+  const charged = onTheDay.map((log) => ({ id: log.id, ...chargedMeasures(log, mill) }));
+  const work = countTally(terms, job, onTheDay.map((log) => logToCharge({ id: log.id, ...asLogInput(log, chargedMeasures(log, mill)) })));
   const heldCents = await heldCentsOf(booking.id);
   const settlement = settle(terms, work, { heldCents, feeBasisPoints: env().FEE_BASIS_POINTS }, { endedBySawyer: tally.endedBySawyer });
-  return { tally, boards, hits, culls, clock, logs, terms, job, work, heldCents, settlement, sha256: contentHash(booking, boards, hits, culls, clock, job.extras) };
-}
-
-function contentHash(booking: Booking, boards: readonly TallyBoard[], hits: readonly MetalHit[], culls: readonly CullLog[], clock: readonly KeptClock[], extras: TallyExtras): string {
-  const content = {
-    booking: booking.number,
-    boards: boards.map(({ id, kind, logId, thicknessIn, widthIn, secondWidthIn, lengthFt, count }) => ({ id, kind, logId, thicknessIn, widthIn, secondWidthIn, lengthFt, count })),
-    hits: hits.map(({ id, outcome, logId }) => ({ id, outcome, logId })),
-    culls: culls.map(({ id, logId, openingMinutes, passes }) => ({ id, logId, openingMinutes, passes })),
-    clock,
-    extras,
-  };
-  return createHash('sha256').update(canonicalJson(content)).digest('hex');
+  const content = tallyContent({ booking: booking.number, boards, hits, culls, clock, extras: job.extras, logs: charged, endedBySawyer: tally.endedBySawyer });
+  const sha256 = createHash('sha256').update(content).digest('hex');
+  return { tally, boards, hits, culls, clock, logs, onTheDay, mill, allowances, parts, terms, job, work, heldCents, limitCents: limitOf(heldCents, allowances), settlement, sha256 };
 }

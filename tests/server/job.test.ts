@@ -1,10 +1,10 @@
 import { randomUUID } from 'node:crypto';
 import { afterAll, beforeAll, beforeEach, describe, expect, it } from 'vitest';
 import { addDays, dayAt } from '~/domain/time.ts';
-import type { TallyEntry } from '~/schemas/tally-entries.ts';
 import { chooseBid } from '~/server/commands/choose-bid.ts';
 import { confirmDays } from '~/server/commands/confirm-days.ts';
-import { allowMetal, enterTally } from '~/server/commands/enter-tally.ts';
+import { allowOnTheDay } from '~/server/commands/allow-on-the-day.ts';
+import { enterTally } from '~/server/commands/enter-tally.ts';
 import { offerTally } from '~/server/commands/offer-tally.ts';
 import { placeBid } from '~/server/commands/place-bid.ts';
 import { proposeDays } from '~/server/commands/propose-days.ts';
@@ -12,6 +12,7 @@ import { answerQuery, decideTally, queryTally } from '~/server/commands/query-ta
 import { signTally } from '~/server/commands/sign-tally.ts';
 import { startCheckout } from '~/server/commands/start-checkout.ts';
 import { startSawing } from '~/server/commands/start-sawing.ts';
+import type { Line } from '~/server/commands/take-entries.ts';
 import { writeReview } from '~/server/commands/write-review.ts';
 import { oneRow, rows } from '~/server/db.ts';
 import { sweepTallies } from '~/server/jobs/handlers/sweep-tallies.ts';
@@ -65,7 +66,7 @@ const logsOf = async (number: number): Promise<Log[]> => {
   const booking = await Booking.findOne({ where: { number }, rejectOnEmpty: true });
   return Log.findAll({ where: { listingId: booking.listingId }, order: [['position', 'ASC']] });
 };
-const boards = (logId: string | null, thicknessIn: number, widthIn: number, lengthFt: number, count: number): TallyEntry => ({ kind: 'board', id: randomUUID(), logId, boardKind: 'board', thicknessIn, widthIn, secondWidthIn: null, lengthFt, count });
+const boards = (logId: string | null, thicknessIn: number, widthIn: number, lengthFt: number, count: number): Line => ({ kind: 'board', id: randomUUID(), logId, boardKind: 'board', thicknessIn, widthIn, secondWidthIn: null, lengthFt, count });
 const stateOf = async (number: number): Promise<string[]> => {
   const booking = await Booking.findOne({ where: { number }, rejectOnEmpty: true });
   const payment = await HeldPayment.findOne({ where: { bookingId: booking.id } });
@@ -74,11 +75,11 @@ const stateOf = async (number: number): Promise<string[]> => {
 };
 
 /** The tally of the worked oak job (shared worked example, computed): 378 bf by the hardwood rule. */
-async function oakTally(number: number): Promise<TallyEntry[]> {
+async function oakTally(number: number): Promise<Line[]> {
   const [one, two, three] = await logsOf(number);
   return [boards(one?.id ?? null, 1, 8, 12, 20), boards(two?.id ?? null, 1.25, 6.5, 12, 8), boards(three?.id ?? null, 2, 9, 12, 6), boards(three?.id ?? null, 0.75, 10, 11 + 8 / 12, 5)];
 }
-async function tallied(entries?: TallyEntry[]): Promise<number> {
+async function tallied(entries?: Line[]): Promise<number> {
   const number = await held();
   await startSawing(cast.bram, number, at);
   await enterTally(cast.bram, { booking: number, entries: entries ?? (await oakTally(number)) }, at);
@@ -191,11 +192,11 @@ describe('the tally', () => {
   it('stops at the second metal hit until the landowner allows more', async () => {
     const number = await held();
     await startSawing(cast.bram, number, at);
-    const hit = (): TallyEntry => ({ kind: 'hit', id: randomUUID(), logId: null, outcome: 'destroyed', note: '' });
+    const hit = (): Line => ({ kind: 'hit', id: randomUUID(), logId: null, outcome: 'destroyed', note: '' });
     await enterTally(cast.bram, { booking: number, entries: [hit(), hit()] }, at);
     const [mail] = await rows(`SELECT 1 FROM pgboss.job WHERE name = 'send-mail' AND data->>'subject' LIKE '2 metal hits%'`);
     expect(mail).toBeDefined();
-    await allowMetal(cast.ada, number, at);
+    await allowOnTheDay(cast.ada, { booking: number, allow: { kind: 'allow', id: randomUUID(), what: 'metal', logId: null, limitCents: null, name: 'Ada', signature: null } }, at);
     expect((await tallyPage(cast.ada, number)).view.metalAllowed).toBe(2);
   });
 
@@ -254,7 +255,7 @@ describe('the tally', () => {
   it('charges hours to the quarter, waiting with them, and no breakdown', async () => {
     const overlapping = await held();
     await startSawing(cast.bram, overlapping, at);
-    const clock = (from: string, to: string, activity: 'sawing' | 'waiting' = 'sawing'): TallyEntry => ({ kind: 'clock', id: randomUUID(), activity, startsAt: `2026-08-04T${from}:00-05:00`, endsAt: `2026-08-04T${to}:00-05:00` });
+    const clock = (from: string, to: string, activity: 'sawing' | 'waiting' = 'sawing'): Line => ({ kind: 'clock', id: randomUUID(), activity, startsAt: `2026-08-04T${from}:00-05:00`, endsAt: `2026-08-04T${to}:00-05:00` });
     await expect(enterTally(cast.bram, { booking: overlapping, entries: [clock('09:00', '11:00'), clock('10:30', '12:00')] }, at)).rejects.toMatchObject({ kind: 'invalid' });
     await enterTally(cast.bram, { booking: overlapping, entries: [clock('09:00', '09:50', 'waiting')] }, at);
     const page = await tallyPage(cast.bram, overlapping);

@@ -1,6 +1,7 @@
+import { Op } from 'sequelize';
 import { bookingStates } from '~/domain/states/booking.ts';
 import { checkProposedDays } from '~/domain/trade/milling-days.ts';
-import { dayStart, paymentDeadline, type Day } from '~/domain/time.ts';
+import { dayAt, dayStart, paymentDeadline, type Day } from '~/domain/time.ts';
 import { daysAgreed, daysMoved } from '~/emails/booking-letters.ts';
 import { authorize, rolesOnBooking } from '../authorize.ts';
 import { inTransaction, lockFor, refusedBy } from '../db.ts';
@@ -15,8 +16,10 @@ import { record, transition } from '../transition.ts';
 import type { Viewer } from '../viewer.ts';
 
 /** Gives the booking these days in one step; the old ones are freed in the same transaction. */
-async function swapDays(booking: Booking, days: readonly Day[]): Promise<void> {
-  await BookedDay.update({ active: false }, { where: { bookingId: booking.id, active: true } });
+async function swapDays(booking: Booking, days: readonly Day[], at: Date): Promise<void> {
+  // Days that were sawn stay: after rain only what lies ahead is changed.
+  const ahead = booking.status === 'sawing' ? { day: { [Op.gt]: dayAt(at, booking.timeZone) } } : {};
+  await BookedDay.update({ active: false }, { where: { bookingId: booking.id, active: true, ...ahead } });
   for (const day of days) await BookedDay.create({ sawyerId: booking.sawyerId, day, outingId: booking.outingId, bookingId: booking.id });
 }
 
@@ -38,7 +41,7 @@ async function agree(by: Viewer, booking: Booking, startsAt: Date, at: Date): Pr
 async function move(by: Viewer, booking: Booking, days: readonly Day[], startsAt: Date, at: Date): Promise<void> {
   if (booking.status === 'held') await transition(bookingStates, 'move', booking, by, at, { startsAt, updatedAt: at }, { data: { days } });
   else {
-    await booking.update({ startsAt, payBy: booking.payBy && booking.payBy > startsAt ? startsAt : booking.payBy, updatedAt: at });
+    if (booking.status !== 'sawing') await booking.update({ startsAt, payBy: booking.payBy && booking.payBy > startsAt ? startsAt : booking.payBy, updatedAt: at });
     await record(by, 'moveDays', 'booking', booking.id, at, { data: { days } });
   }
   const { landowner, sawyer } = await partiesOf(booking);
@@ -70,7 +73,7 @@ export async function confirmDays(by: Viewer, input: { readonly booking: number;
       if (away) throw conflict(by.id === booking.sawyerId ? `You have ${away.day} off. Take it out of your days off first, or propose another day.` : `The sawyer now has ${away.day} off. Propose another day.`);
 
       const before = await bookedDaysOf(booking.id);
-      await swapDays(booking, days);
+      await swapDays(booking, days, at);
       await DayProposal.update({ status: 'replaced' }, { where: { bookingId: booking.id, status: 'confirmed' } });
       await proposal.update({ status: 'confirmed', decidedAt: at });
       const startsAt = dayStart(first, booking.timeZone, startTime);

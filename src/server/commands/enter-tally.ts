@@ -1,22 +1,18 @@
 import { checkClock } from '~/domain/trade/clock.ts';
-import { mayGoOnAfterMetal } from '~/domain/trade/on-the-day.ts';
-import { metalStops } from '~/emails/tally-letters.ts';
-import { paths } from '~/domain/paths.ts';
-import type { TallyEntry } from '~/schemas/tally-entries.ts';
 import { authorize, rolesOnBooking } from '../authorize.ts';
 import { execute, inTransaction, oneRow } from '../db.ts';
 import { conflict, invalid } from '../errors.ts';
-import { enqueue } from '../jobs/queue.ts';
 import { lockBooking } from '../locks.ts';
-import { type Booking, Log, MetalHit, Tally } from '../models/index.ts';
-import { linkTo, partiesOf } from '../parties.ts';
-import { frozenTerms, type KeptClock } from '../tally-work.ts';
+import { type Booking, Log, MeasuredLog, MetalHit, Tally, TallyPart } from '../models/index.ts';
+import type { KeptClock } from '../tally-work.ts';
 import { record } from '../transition.ts';
 import type { Viewer } from '../viewer.ts';
 import { beginSawing } from './start-sawing.ts';
+import type { Line } from './take-entries.ts';
+import { watchHold, watchMetal } from './watch-day.ts';
 
 /** Writes one entry. Everything is keyed by the id it was made with, so a repeated send changes nothing. */
-async function enter(entry: TallyEntry, tally: Tally, sequence: number, at: Date): Promise<void> {
+async function enter(entry: Line, booking: Booking, tally: Tally, sequence: number, at: Date): Promise<void> {
   switch (entry.kind) {
     case 'board':
       await execute(
@@ -46,23 +42,38 @@ async function enter(entry: TallyEntry, tally: Tally, sequence: number, at: Date
       tally.extras = { ...tally.extras, ...changed };
       return;
     }
+    case 'measure': {
+      const { smallEndIn, largeEndIn, lengthFt } = entry;
+      // Measures anew take the landowner's word for the old ones away.
+      await MeasuredLog.upsert({ bookingId: booking.id, logId: entry.logId, smallEndIn, largeEndIn, lengthFt, measuredAt: at, agreedAt: null });
+      return;
+    }
+    case 'addLog': {
+      const { id, label, species, smallEndIn, largeEndIn, lengthFt } = entry;
+      const last = await oneRow<{ position: number }>('SELECT coalesce(max(position), 0)::int AS position FROM log WHERE listing_id = $1', [booking.listingId]);
+      const position = (last?.position ?? 0) + 1;
+      await Log.create({ id, listingId: booking.listingId, position, label: label || `Log ${position}, added`, species, smallEndIn, largeEndIn, lengthFt, addedOnTheDay: true });
+      return;
+    }
     case 'start':
       return;
   }
 }
 
 /** Entries without a row of their own, which are known again by this table. */
-const remembered: ReadonlySet<TallyEntry['kind']> = new Set(['extras', 'start']);
+const remembered: ReadonlySet<Line['kind']> = new Set(['extras', 'start', 'measure', 'addLog']);
 
 /** Whether an entry is new. A repeated one was done before and is left alone. */
-async function isNew(entry: TallyEntry, by: Viewer, booking: Booking, at: Date): Promise<boolean> {
+async function isNew(entry: Line, by: Viewer, booking: Booking, at: Date): Promise<boolean> {
   if (!remembered.has(entry.kind)) return true;
-  return (await execute('INSERT INTO tally_entry (id, booking_id, kind, entered_by, entered_at) VALUES ($1, $2, $3, $4, $5) ON CONFLICT (id) DO NOTHING', [entry.id, booking.id, entry.kind, by.id, at])) === 1;
+  const first = await oneRow('INSERT INTO tally_entry (id, booking_id, kind, entered_by, entered_at) VALUES ($1, $2, $3, $4, $5) ON CONFLICT (id) DO NOTHING RETURNING id', [entry.id, booking.id, entry.kind, by.id, at]);
+  return first !== undefined;
 }
 
 /** Entries may only name logs of this booking's listing. */
-async function refuseStrangeLogs(entries: readonly TallyEntry[], booking: Booking): Promise<void> {
+async function refuseStrangeLogs(entries: readonly Line[], booking: Booking): Promise<void> {
   const known = new Set((await Log.findAll({ where: { listingId: booking.listingId }, attributes: ['id'] })).map(({ id }) => id));
+  for (const entry of entries) if (entry.kind === 'addLog') known.add(entry.id);
   const problems = entries.flatMap((entry, index) => {
     const named = 'logId' in entry && entry.logId !== null ? [entry.logId] : entry.kind === 'extras' ? [...(entry.quartersawnLogIds ?? []), ...(entry.draggedLogIds ?? [])] : [];
     return named.some((id) => !known.has(id)) ? [{ path: `entries.${index}.logId`, message: 'This log is not one of the listing’s.' }] : [];
@@ -70,21 +81,19 @@ async function refuseStrangeLogs(entries: readonly TallyEntry[], booking: Bookin
   if (problems.length > 0) throw invalid(problems);
 }
 
-/** After two metal hits sawing stops until the landowner allows more. */
-async function watchMetal(by: Viewer, booking: Booking, tally: Tally, before: number): Promise<void> {
-  const hits = await MetalHit.findAll({ where: { tallyId: tally.id, removedAt: null } });
-  if (hits.length <= before || mayGoOnAfterMetal(hits.length, tally.metalAllowed)) return;
-  const terms = await frozenTerms(booking);
-  const spent = hits.reduce((sum, { outcome }) => sum + (outcome === 'destroyed' ? terms.card.metal.destroyedCents : terms.card.metal.resharpenedCents), 0);
-  const { landowner } = await partiesOf(booking);
-  await enqueue('send-mail', metalStops(landowner, by.name, hits.length, Math.max(0, terms.metalCapCents - spent), linkTo(paths.signTally(booking.number))));
+/** What was signed for part of the work stands: only a query changes it. */
+async function refuseSignedLines(entries: readonly Line[], tally: Tally): Promise<void> {
+  const signed = new Set((await TallyPart.findAll({ where: { tallyId: tally.id }, attributes: ['lineIds'] })).flatMap(({ lineIds }) => lineIds));
+  const problems = entries.flatMap((entry, index) => (entry.kind === 'remove' && signed.has(entry.id) ? [{ path: `entries.${index}.id`, message: 'This line was signed for part of the work and stands. The landowner can query it when the whole tally is offered.' }] : []));
+  if (problems.length > 0) throw invalid(problems);
 }
 
 /**
  * Takes entries into the tally, in the order given: while sawing, or to amend a queried tally.
- * @throws Refusal `invalid` for strange logs or clock entries that overlap; `conflict` for boards entered while metal has stopped the saw
+ * What was sawn is never turned away because the saw should have stood still: that is for the two of them to settle.
+ * @throws Refusal `invalid` for strange logs, lines signed for part of the work, or clock entries that overlap
  */
-export async function enterTally(by: Viewer, input: { readonly booking: number; readonly entries: readonly TallyEntry[] }, at: Date): Promise<{ readonly revision: number }> {
+export async function enterTally(by: Viewer, input: { readonly booking: number; readonly entries: readonly Line[] }, at: Date): Promise<{ readonly revision: number }> {
   return inTransaction(async () => {
     const booking = await lockBooking(input.booking);
     const roles = rolesOnBooking(by, booking);
@@ -93,10 +102,11 @@ export async function enterTally(by: Viewer, input: { readonly booking: number; 
     const tally = await Tally.findOne({ where: { bookingId: booking.id, part: 1 }, lock: true });
     if (!tally) throw conflict('Go through the check-list and start sawing first.');
     await refuseStrangeLogs(input.entries, booking);
+    if (booking.status === 'sawing') await refuseSignedLines(input.entries, tally);
 
     const hitsBefore = await MetalHit.count({ where: { tallyId: tally.id, removedAt: null } });
     const last = await oneRow<{ sequence: number }>('SELECT coalesce(max(sequence), 0)::int AS sequence FROM tally_board WHERE tally_id = $1', [tally.id]);
-    for (const [index, entry] of input.entries.entries()) if (await isNew(entry, by, booking, at)) await enter(entry, tally, (last?.sequence ?? 0) + index + 1, at);
+    for (const [index, entry] of input.entries.entries()) if (await isNew(entry, by, booking, at)) await enter(entry, booking, tally, (last?.sequence ?? 0) + index + 1, at);
 
     const checked = checkClock((tally.clock as KeptClock[]).map(({ activity, startsAt, endsAt }) => ({ activity, startsAt: new Date(startsAt), endsAt: new Date(endsAt) })));
     if (!checked.ok) throw invalid(checked.problems.map(({ path, message }) => ({ path: `clock.${path}`, message })));
@@ -105,18 +115,7 @@ export async function enterTally(by: Viewer, input: { readonly booking: number; 
     await booking.update({ updatedAt: at });
     if (booking.status === 'queried') await record(by, 'amendTally', 'booking', booking.id, at, { data: { entries: input.entries.length } });
     await watchMetal(by, booking, tally, hitsBefore);
+    await watchHold(by, booking, tally, at);
     return { revision: tally.revision };
-  });
-}
-
-/** The landowner lets the sawyer go on after metal: two hits more. */
-export async function allowMetal(by: Viewer, number: number, at: Date): Promise<void> {
-  await inTransaction(async () => {
-    const booking = await lockBooking(number);
-    authorize(by, 'booking', 'allowMetal', rolesOnBooking(by, booking), booking.status);
-    const tally = await Tally.findOne({ where: { bookingId: booking.id, part: 1 }, lock: true, rejectOnEmpty: true });
-    const hits = await MetalHit.count({ where: { tallyId: tally.id, removedAt: null } });
-    await tally.update({ metalAllowed: hits });
-    await record(by, 'allowMetal', 'booking', booking.id, at, { data: { hits } });
   });
 }

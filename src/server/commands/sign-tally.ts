@@ -11,6 +11,7 @@ import { enqueue } from '../jobs/queue.ts';
 import { lockBooking } from '../locks.ts';
 import { type Booking, Listing } from '../models/index.ts';
 import { linkTo, partiesOf } from '../parties.ts';
+import { withTallySheet } from '../tally-sheet.ts';
 import { type TallyWork, tallyWork } from '../tally-work.ts';
 import { transition } from '../transition.ts';
 import { system, type Actor, type Viewer } from '../viewer.ts';
@@ -35,8 +36,8 @@ export async function signWork(booking: Booking, work: TallyWork, by: Actor, sig
   const listing = await Listing.findByPk(booking.listingId, { lock: true, rejectOnEmpty: true });
   if (listing.status === 'matched') await transition(listingStates, 'finish', listing, by, at, { updatedAt: at });
   const { landowner, sawyer } = await partiesOf(booking);
-  await enqueue('send-mail', tallySigned(landowner, howWords[signedBy], moneyLines(work.settlement, 'landowner'), linkTo(paths.receipt(booking.number))));
-  await enqueue('send-mail', tallySigned(sawyer, howWords[signedBy], moneyLines(work.settlement, 'sawyer'), linkTo(paths.receipt(booking.number))));
+  await enqueue('send-mail', await withTallySheet(tallySigned(landowner, howWords[signedBy], moneyLines(work.settlement, 'landowner'), linkTo(paths.receipt(booking.number))), booking, work, 'landowner'));
+  await enqueue('send-mail', await withTallySheet(tallySigned(sawyer, howWords[signedBy], moneyLines(work.settlement, 'sawyer'), linkTo(paths.receipt(booking.number))), booking, work, 'sawyer'));
   await settleBooking(by, booking.id, at);
 }
 

@@ -43,7 +43,7 @@ export const DayProposal = table('day_proposal', {
 });
 export type DayProposal = Row<typeof DayProposal>;
 
-export const BookedDay = table('booked_day', { id: id(), sawyerId: ref(), day: day(), outingId: ref(), bookingId: ref(), active: filled(yes()) });
+export const BookedDay = table('booked_day', { id: id(), sawyerId: ref(), day: day(), outingId: ref(), bookingId: ref(), active: filled(yes()), eveningToldAt: nullable(instant()) });
 export type BookedDay = Row<typeof BookedDay>;
 
 export const WorkAgreement = table('work_agreement', {

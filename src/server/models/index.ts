@@ -1,6 +1,7 @@
 export * from './account.ts';
 export * from './adjustment.ts';
 export * from './booking.ts';
+export * from './day.ts';
 export * from './event.ts';
 export * from './finding.ts';
 export * from './listing.ts';

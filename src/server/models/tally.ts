@@ -1,4 +1,5 @@
-import { filled, givenId, id, instant, json, nullable, real, ref, table, text, whole, yes, type Row } from './table.ts';
+import type { HoldWarning } from '~/domain/trade/on-the-day.ts';
+import { filled, givenId, id, instant, json, nullable, real, ref, table, text, texts, whole, yes, type Row } from './table.ts';
 
 export const Tally = table('tally', {
   id: id(),
@@ -10,6 +11,7 @@ export const Tally = table('tally', {
   note: filled(text()),
   metalAllowed: filled(whole()),
   endedBySawyer: filled(yes()),
+  holdWarned: filled(text<HoldWarning>()),
   createdAt: instant(),
   offeredAt: nullable(instant()),
   contentSha256: nullable(text()),
@@ -17,6 +19,8 @@ export const Tally = table('tally', {
   signedBy: nullable(text<'landowner' | 'deadline' | 'moderator'>()),
   signedName: nullable(text()),
   signature: nullable(text()),
+  /** Whose phone it was signed on. */
+  signedOn: nullable(text<'landowner' | 'sawyer'>()),
   settlement: nullable(json<unknown>()),
 });
 export type Tally = Row<typeof Tally>;
@@ -77,3 +81,16 @@ export const TallyQuery = table('tally_query', {
   decidedAt: nullable(instant()),
 });
 export type TallyQuery = Row<typeof TallyQuery>;
+
+export const TallyPart = table('tally_part', {
+  id: givenId(),
+  tallyId: ref(),
+  lineIds: texts(),
+  contentSha256: text(),
+  costCents: whole(),
+  signedName: text(),
+  signature: nullable(text()),
+  onPhoneOf: text<'landowner' | 'sawyer'>(),
+  signedAt: instant(),
+});
+export type TallyPart = Row<typeof TallyPart>;

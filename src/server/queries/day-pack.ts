@@ -1,11 +1,12 @@
+import { Op } from 'sequelize';
 import { accessSaid, landingSaid, treeSaid } from '~/domain/listing/page-words.ts';
 import type { Access, Landing, Waste } from '~/domain/listing/answers.ts';
 import { abilities } from '~/domain/permissions.ts';
-import { formatDayWithYear } from '~/domain/time.ts';
+import { addHours, formatDayWithYear } from '~/domain/time.ts';
 import type { DayBooking, DayPack } from '~/schemas/day.ts';
 import { rolesOnBooking } from '../authorize.ts';
 import { bookedDaysOf } from '../invitations.ts';
-import { Booking, Listing } from '../models/index.ts';
+import { Booking, Listing, SigningCode } from '../models/index.ts';
 import { otherParty, partiesOf } from '../parties.ts';
 import { notePlaceSeen } from '../place-views.ts';
 import { tallyView } from '../tally-view.ts';
@@ -15,6 +16,8 @@ import { exactPlace } from './listing-page.ts';
 
 /** A phone keeps at most this many bookings: the nearest days first. */
 const MOST = 20;
+/** A settled booking stays on the phone this long, so that nobody wonders where it went. */
+const SETTLED_KEPT_HOURS = 48;
 
 async function dayBooking(viewer: Viewer, booking: Booking, at: Date): Promise<DayBooking> {
   const can = abilities('booking', rolesOnBooking({ ...viewer, isModerator: false }, booking), booking.status);
@@ -39,6 +42,7 @@ async function dayBooking(viewer: Viewer, booking: Booking, at: Date): Promise<D
     access: access ? accessSaid(access as unknown as Access) : [],
     landing: landing && waste ? landingSaid(landing as unknown as Landing, waste as unknown as Waste) : [],
     note: listing.note,
+    signingCode: viewer.id === booking.landownerId ? ((await SigningCode.findByPk(booking.id))?.code ?? null) : null,
     tally: await tallyView(booking, await tallyWork(booking)),
   };
 }
@@ -48,8 +52,9 @@ async function dayBooking(viewer: Viewer, booking: Booking, at: Date): Promise<D
  * Leans on the indexes of `booking` by landowner and by sawyer.
  */
 export async function dayPack(viewer: Viewer, at: Date): Promise<DayPack> {
-  const mine = await Booking.findAll({ where: { status: ['held', 'sawing', 'tallied', 'queried'], landownerId: viewer.id } });
-  const asSawyer = await Booking.findAll({ where: { status: ['held', 'sawing', 'tallied', 'queried'], sawyerId: viewer.id } });
+  const status = { [Op.or]: [{ status: ['held', 'sawing', 'tallied', 'queried', 'signed'] }, { status: 'settled', updatedAt: { [Op.gt]: addHours(at, -SETTLED_KEPT_HOURS) } }] };
+  const mine = await Booking.findAll({ where: { ...status, landownerId: viewer.id } });
+  const asSawyer = await Booking.findAll({ where: { ...status, sawyerId: viewer.id } });
   const all = [...mine, ...asSawyer].sort((a, b) => (a.startsAt?.getTime() ?? 0) - (b.startsAt?.getTime() ?? 0)).slice(0, MOST);
   const bookings: DayBooking[] = [];
   for (const booking of all) bookings.push(await dayBooking(viewer, booking, at));

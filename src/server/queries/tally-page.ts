@@ -21,6 +21,8 @@ export interface TallyPage {
   readonly signedAt: Date | null;
   readonly signedBy: string | null;
   readonly signedName: string | null;
+  /** The drawn signature, an SVG path on a field of 1000 × 400. */
+  readonly signature: string | null;
   readonly note: string;
   readonly sha256: string;
   /** As signed, or as it would come to now. */
@@ -54,6 +56,7 @@ export async function tallyPage(viewer: Viewer, number: number): Promise<TallyPa
     signedAt: work.tally.signedAt,
     signedBy: work.tally.signedBy,
     signedName: work.tally.signedName,
+    signature: work.tally.signature,
     note: work.tally.note,
     sha256: work.sha256,
     settlement: work.tally.settlement ? (work.tally.settlement as Settlement) : work.settlement,

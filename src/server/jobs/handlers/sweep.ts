@@ -2,6 +2,7 @@ import { now } from '../../clock.ts';
 import { closeToBids, lapseListings } from '../../commands/close-listings.ts';
 import { tellSearches } from '../../commands/tell-searches.ts';
 import { log } from '../../log.ts';
+import { tellEveningBefore } from './evening-before.ts';
 import { moneySweeps } from './money-sweeps.ts';
 import { photoSweeps } from './photo-sweeps.ts';
 import { sweepTallies } from './sweep-tallies.ts';
@@ -17,6 +18,7 @@ export const sweeps: Readonly<Record<string, Sweep>> = {
   ...photoSweeps,
   'tell of logs found': tellSearches,
   'sign or recall tallies': sweepTallies,
+  'tell of tomorrow': tellEveningBefore,
 };
 
 /** Runs every sweep for the given time. One that fails is logged and does not keep the others from running. */

@@ -1,5 +1,5 @@
 import { tallyEntriesBody } from '~/schemas/tally-entries.ts';
-import { enterTally } from '~/server/commands/enter-tally.ts';
+import { takeEntries } from '~/server/commands/take-entries.ts';
 import { Refusal } from '~/server/errors.ts';
 import { accountEndpoint } from '~/server/http/endpoint.ts';
 import { tallyPage } from '~/server/queries/tally-page.ts';
@@ -13,7 +13,7 @@ export const PUT = accountEndpoint({
   async run({ viewer, params, body, at }) {
     const booking = Number(params['number']);
     if (body.account !== undefined && body.account !== viewer.id) throw new Refusal('signedOut', 'These entries were made by another account. Sign in as the one that made them.');
-    await enterTally(viewer, { booking, entries: body.entries }, at);
+    await takeEntries(viewer, { booking, entries: body.entries }, at);
     return (await tallyPage(viewer, booking)).view;
   },
 });
