@@ -43,6 +43,8 @@ export function Day(): ReactElement {
   );
 }
 
+const stateWords: Readonly<Record<string, string>> = { sawing: 'Sawing', tallied: 'Tally offered', queried: 'Tally queried', signed: 'Signed', settled: 'Settled' };
+
 function Row({ booking }: { readonly booking: KeptBooking }): ReactElement {
   const today = booking.days.includes(dayAt(new Date(), booking.timeZone));
   return (
@@ -50,7 +52,7 @@ function Row({ booking }: { readonly booking: KeptBooking }): ReactElement {
       <a className="block min-h-glove py-3 text-ink no-underline hover:underline" href={`#${booking.number}`}>
         <span className="block font-bold">{booking.title}</span>
         <span className="block">{today ? 'Today' : booking.days.map(formatDay).join(', ')} · {booking.otherName} · {booking.town}</span>
-        {booking.status !== 'held' && <span className="block font-semibold text-moss">{booking.status === 'sawing' ? 'Sawing' : booking.status === 'tallied' ? 'Tally offered' : 'Tally queried'}</span>}
+        {booking.status !== 'held' && <span className="block font-semibold text-moss">{stateWords[booking.status] ?? booking.status}</span>}
       </a>
     </li>
   );

@@ -3,10 +3,13 @@ import { buttonKinds, gloveSize, join } from '~/components/classes.ts';
 import type { Said } from '~/domain/listing/page-words.ts';
 import { paths } from '~/domain/paths.ts';
 import { formatDay, formatInstant } from '~/domain/time.ts';
-import { TallyBook } from '~/islands/tally-book/TallyBook.tsx';
+import { TallyPad } from '~/islands/tally-book/TallyBook.tsx';
+import { useTallyQueue } from '~/islands/tally-book/use-tally-queue.ts';
 import type { TallyView } from '~/schemas/tally-view.ts';
 import { CheckList } from './CheckList.tsx';
+import { OfferAndSign } from './OfferAndSign.tsx';
 import { entriesOf, putEntries } from './queue.ts';
+import { savedWords, SendingTrouble } from './SavedLine.tsx';
 import { sendAll } from './send.ts';
 import { database, onChange, type KeptBooking } from './store.ts';
 
@@ -33,17 +36,32 @@ export function DayBooking({ booking }: { readonly booking: KeptBooking }): Reac
   return (
     <div data-ready={view ? 'true' : undefined}>
       <nav className="mx-auto max-w-[34rem] px-4" aria-label="Back"><a className="inline-flex min-h-glove items-center" href="#">All milling days</a></nav>
-      {view && mine && begun && view.status !== 'tallied' && <TallyBook view={view} accountId={booking.accountId} fresh={false} />}
+      {view && mine && begun && <DayTally view={view} booking={booking} />}
       <div className="mx-auto max-w-[34rem] px-4 pb-12">
-        {mine && begun && view?.status === 'sawing' && <p className="mt-8 border-t border-rule pt-4">All sawn? <a className={join(buttonKinds.primary, gloveSize, 'mt-2 w-full')} href={`${paths.tally(booking.number)}`}>Offer the tally for signing</a></p>}
         <h1 className={begun && mine ? 'mt-10 text-2xl' : 'mt-2'}>{booking.title}</h1>
         <p className="mt-1">{booking.startsAt ? `${booking.days.map(formatDay).join(', ')}. Starts ${formatInstant(new Date(booking.startsAt), booking.timeZone)}.` : 'No day yet.'}</p>
         {mine && view && !begun && <CheckList place={booking.place} onStart={start} />}
+        {!mine && booking.signingCode && <p className="mt-4">To sign on {booking.otherName}’s phone: <span className="figure text-2xl font-bold">{booking.signingCode}</span>. Keep it to yourself until you sign.</p>}
         {!mine && <p className="mt-4"><a className={join(buttonKinds.primary, gloveSize, 'w-full')} href={paths.signTally(booking.number)}>Read the tally</a></p>}
         <Facts booking={booking} />
         {view && <Logs view={view} />}
       </div>
     </div>
+  );
+}
+
+/** The sawyer's part of the day: the tally book while there is something to enter, then the offer and the signature. */
+function DayTally({ view, booking }: { readonly view: TallyView; readonly booking: KeptBooking }): ReactElement {
+  const queue = useTallyQueue(view, booking.accountId, false);
+  const enters = queue.view.status === 'sawing' || queue.view.status === 'queried';
+  return (
+    <>
+      {enters && <TallyPad queue={queue} />}
+      <div className="mx-auto max-w-[34rem] px-4">
+        {!enters && <><p className="mt-2 bg-ink px-3 py-2 font-semibold text-paper" role="status" data-testid="saved">{savedWords(queue)}</p><SendingTrouble queue={queue} /></>}
+        <OfferAndSign queue={queue} otherName={booking.otherName} />
+      </div>
+    </>
   );
 }
 

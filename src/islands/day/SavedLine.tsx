@@ -60,5 +60,11 @@ function describe(entry: TallyQueue['refused'][number]['entry']): string {
     case 'remove': return 'A line taken back';
     case 'extras': return 'Extras';
     case 'start': return 'The start of sawing';
+    case 'measure': return 'A log measured again';
+    case 'addLog': return 'A log added';
+    case 'allow': return `What ${entry.name} allowed`;
+    case 'part': return `${entry.name}’s signature for part of the work`;
+    case 'offer': return 'The tally offered for signing';
+    case 'sign': return `${entry.name}’s signature`;
   }
 }

@@ -58,7 +58,7 @@ async function sendRun(items: readonly Waiting[]): Promise<Sending> {
 }
 
 /** Deeds, which are sent by themselves: a refusal of one says nothing about the boards round it. */
-const alone: ReadonlySet<Waiting['entry']['kind']> = new Set(['start']);
+const alone: ReadonlySet<Waiting['entry']['kind']> = new Set(['start', 'allow', 'part', 'offer', 'sign']);
 
 /** The next entries that go together: of the account whose phone this is and of one booking, in order. */
 async function nextRun(accountId: string): Promise<readonly Waiting[]> {

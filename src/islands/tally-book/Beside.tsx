@@ -12,13 +12,14 @@ interface BesideProps {
 
 const newId = (): string => crypto.randomUUID();
 const time = (iso: string): string => new Date(iso).toLocaleTimeString('en-US', { hour: 'numeric', minute: '2-digit' });
-const summary = 'flex min-h-glove cursor-pointer items-center border-t border-rule text-lg font-bold text-crayon';
+/** The line that opens one of the book's further parts. */
+export const summaryClass = 'flex min-h-glove cursor-pointer items-center border-t border-rule text-lg font-bold text-crayon';
 
 /** Blades that metal has cost: each a tap, each taken back with another. */
 export function MetalHits({ view, logId, add }: BesideProps): ReactElement {
   return (
     <details>
-      <summary className={summary}>Metal hits · {view.hits.length}</summary>
+      <summary className={summaryClass}>Metal hits · {view.hits.length}</summary>
       <p className="max-w-prose text-ink-soft">Stop the blade and stand clear before you look. Follow the mill’s manual. After two hits sawing stops until the landowner allows more.</p>
       <div className="mt-2 flex flex-wrap gap-2">
         {(['re-sharpened', 'destroyed'] as const).map((outcome) => (
@@ -56,7 +57,7 @@ export function CullLogs({ view, logId, add }: BesideProps): ReactElement {
   };
   return (
     <details>
-      <summary className={summary}>Cull logs · {view.culls.length}</summary>
+      <summary className={summaryClass}>Cull logs · {view.culls.length}</summary>
       <div className="grid gap-3 pb-3">
         <Field name="cullReason" label={`Why ${label} is a cull log`} value={reason} error={problem} onChange={(event) => setReason(event.target.value)} />
         <Field name="cullMinutes" label="Opening time, minutes" inputMode="numeric" figure width="short" value={minutes} onChange={(event) => setMinutes(event.target.value)} />
@@ -95,7 +96,7 @@ export function Hours({ view, add }: BesideProps): ReactElement {
   };
   return (
     <details open={view.terms.card.basis.kind === 'hourly'}>
-      <summary className={summary}>Hours · {view.clock.length}</summary>
+      <summary className={summaryClass}>Hours · {view.clock.length}</summary>
       <div className="grid gap-3 pb-3 sm:grid-cols-2">
         <Select name="activity" label="What the time was" options={activities} value={activity} onChange={(event) => setActivity(event.target.value as typeof activity)} />
         <Field name="clockDay" label="Day" type="date" figure value={day} onChange={(event) => setDay(event.target.value)} />
@@ -119,7 +120,7 @@ export function Extras({ view, add }: BesideProps): ReactElement | null {
   ];
   return (
     <details>
-      <summary className={summary}>Extras</summary>
+      <summary className={summaryClass}>Extras</summary>
       <div className="grid gap-3 pb-3 sm:grid-cols-2">
         {asked.map(({ field, label }) => (
           <Field key={field} name={field} label={label} type="number" min={0} step={1} figure width="short" value={view.extras[field]} onChange={(event) => {

@@ -10,7 +10,11 @@ import { SavedBadge, SendingTrouble } from '~/islands/day/SavedLine.tsx';
 import { CullLogs, Extras, Hours, MetalHits } from './Beside.tsx';
 import { bySize, countView, oneBoard, stillWanted } from './count.ts';
 import { Pad, readInches } from './Pad.tsx';
-import { useTallyQueue } from './use-tally-queue.ts';
+import { RainStop } from './RainStop.tsx';
+import { sizeName } from './size-name.ts';
+import { Stops } from './Stops.tsx';
+import { AddLog, LevelThePith, MeasureAgain } from './ThisLog.tsx';
+import { useTallyQueue, type TallyQueue } from './use-tally-queue.ts';
 
 interface Props {
   readonly view: TallyView;
@@ -25,12 +29,13 @@ const readFeet = (text: string): number | null => {
   const feet = Number(text);
   return feet >= 1 && feet <= 40 ? feet : null;
 };
-const sizeName = (view: TallyView, row: { thicknessIn: number; widthIn: number; lengthFt: number }): string =>
-  `${thicknessName(row.thicknessIn, tallyRuleOf(view.terms) === 'hardwood' ? 'hardwood' : 'softwood').replace(' in', '')} × ${formatFraction(row.widthIn)} × ${formatFraction(row.lengthFt)}`;
+/** The tally book with a queue of its own. */
+export function TallyBook({ view, accountId, fresh }: Props): ReactElement {
+  return <TallyPad queue={useTallyQueue(view, accountId, fresh)} />;
+}
 
 /** The tally book: big keys for the next board, the sizes so far, and the money against the hold. Counts with or without signal. */
-export function TallyBook({ view: initial, accountId, fresh }: Props): ReactElement {
-  const queue = useTallyQueue(initial, accountId, fresh);
+export function TallyPad({ queue }: { readonly queue: TallyQueue }): ReactElement {
   const { view, add } = queue;
   const hardwood = tallyRuleOf(view.terms) === 'hardwood';
   const [logAt, setLogAt] = useState(0);
@@ -67,11 +72,10 @@ export function TallyBook({ view: initial, accountId, fresh }: Props): ReactElem
       <SendingTrouble queue={queue} />
 
       <div className="flex items-end justify-between gap-4 px-4 pt-4">
-        <div className="text-sm"><p>Sawn so far</p><p className="figure text-base">{formatCents(counted.job.costCents)} <span className="text-ink-soft">of {formatCents(view.heldCents)} held</span></p></div>
+        <div className="text-sm"><p>Sawn so far</p><p className="figure text-base">{formatCents(counted.job.costCents)} <span className="text-ink-soft">of {formatCents(counted.limitCents)} {counted.limitCents > view.heldCents ? 'allowed' : 'held'}</span></p></div>
         <p className="figure text-4xl font-bold" data-testid="sawn-so-far">{Number(counted.boardFeet.toFixed(2)).toLocaleString('en-US')} bf</p>
       </div>
-      {counted.warning !== 'none' && <p className="mx-4 mt-2 border-l-4 border-amber bg-sheet px-3 py-2 font-semibold" role="alert">{counted.warning === 'stop' ? 'The work has reached what is held. Stop and speak with the landowner: only what is held is certain.' : `The work is at ${counted.warning === 'at-95' ? '95' : '80'} % of what is held.`}</p>}
-      {counted.metalStops && <p className="mx-4 mt-2 border-l-4 border-heartwood bg-sheet px-3 py-2 font-semibold" role="alert">Two metal hits: stop until the landowner allows more. A message has gone to them.</p>}
+      <Stops {...{ view, counted, log, add }} />
 
       <div className="px-4">
         <fieldset className="mt-4">
@@ -118,10 +122,14 @@ export function TallyBook({ view: initial, accountId, fresh }: Props): ReactElem
         {logAt < view.logs.length - 1 && <button type="button" className={join(buttonKinds.outlined, gloveSize, 'mt-4 w-full')} onClick={() => goTo(logAt + 1)}>{log?.label} done · next log</button>}
 
         <div className="mt-6">
+          {log && <MeasureAgain key={`${log.id} ${log.size}`} {...{ log, add }} />}
+          <LevelThePith />
           <MetalHits {...{ view, add }} logId={log?.id ?? null} />
           <CullLogs {...{ view, add }} logId={log?.id ?? null} />
           <Hours {...{ view, add }} logId={null} />
           <Extras {...{ view, add }} logId={null} />
+          <AddLog species={view.logs[0]?.species ?? 'white-oak'} add={add} />
+          <RainStop {...{ view, add }} costCents={counted.job.costCents} />
         </div>
       </div>
     </div>

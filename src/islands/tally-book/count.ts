@@ -1,5 +1,6 @@
 import { priceWork, type PricedJob } from '~/domain/trade/price.ts';
 import { holdWarning, mayGoOnAfterMetal, type HoldWarning } from '~/domain/trade/on-the-day.ts';
+import { jobOf, limitOf } from '~/domain/trade/day-job.ts';
 import { countBoards, countTally, tallyRuleOf } from '~/domain/trade/tally-count.ts';
 import { tallyBoards } from '~/domain/timber/tally.ts';
 import type { TallyBoardView, TallyView } from '~/schemas/tally-view.ts';
@@ -8,27 +9,20 @@ import type { TallyBoardView, TallyView } from '~/schemas/tally-view.ts';
 export interface Counted {
   readonly boardFeet: number;
   readonly job: PricedJob;
+  /** What is held, or what the landowner has signed for when that is more. */
+  readonly limitCents: number;
   readonly warning: HoldWarning;
   readonly metalStops: boolean;
 }
 
 export function countView(view: TallyView): Counted {
-  const work = countTally(
-    view.terms,
-    {
-      boards: view.boards,
-      clock: view.clock.map((entry) => ({ activity: entry.activity, startsAt: new Date(entry.startsAt), endsAt: new Date(entry.endsAt) })),
-      blades: view.hits.map(({ outcome }) => ({ blade: outcome, cause: 'metal' })),
-      culls: view.culls,
-      extras: view.extras,
-    },
-    view.logs,
-  );
+  const work = countTally(view.terms, jobOf(view), view.logs);
   const job = priceWork(view.terms, work);
   return {
     boardFeet: countBoards(tallyRuleOf(view.terms), view.boards),
     job,
-    warning: holdWarning(job.costCents, view.heldCents),
+    limitCents: limitOf(view.heldCents, view.allowances),
+    warning: holdWarning(job.costCents, limitOf(view.heldCents, view.allowances)),
     metalStops: !mayGoOnAfterMetal(view.hits.length, view.metalAllowed),
   };
 }
