@@ -2,7 +2,7 @@ import { randomUUID } from 'node:crypto';
 import { addHours, dayStart } from '../../src/domain/time.ts';
 import { minutesOf } from '../../src/domain/trade/clock.ts';
 import type { TallyEntry } from '../../src/schemas/tally-entries.ts';
-import { enterTally } from '../../src/server/commands/enter-tally.ts';
+import { takeEntries } from '../../src/server/commands/take-entries.ts';
 import { offerTally } from '../../src/server/commands/offer-tally.ts';
 import { answerQuery, decideTally, queryTally } from '../../src/server/commands/query-tally.ts';
 import { signTally } from '../../src/server/commands/sign-tally.ts';
@@ -79,7 +79,7 @@ async function saw(one: Sawn, calendar: Calendar, at: Date): Promise<void> {
   const { paceBfPerHour } = await Mill.findOne({ where: { sawyerId: by.id }, order: [['paceBfPerHour', 'DESC']], rejectOnEmpty: true });
   const hours = Math.max(0.75, Math.round((boardFeetOf(boards) / paceBfPerHour) * 4) / 4);
   await startSawing(by, booking, at);
-  await enterTally(by, { booking, entries: [...clockOf(one, hours, calendar), ...boards, ...hits] }, at);
+  await takeEntries(by, { booking, entries: [...clockOf(one, hours, calendar), ...boards, ...hits] }, at);
 }
 
 async function sign(one: Sawn, at: Date): Promise<void> {
