@@ -40,7 +40,7 @@ async function signIn(page: Page, email: string, password: string): Promise<void
 async function prepare(phone: Phone, job: Job): Promise<void> {
   await phone.page.goto('/sign-in?next=/day');
   await signIn(phone.page, job.sawyer, job.password);
-  await expect(phone.page.getByTestId('kept')).toContainText('Saved on this phone');
+  await expect(phone.page.getByTestId('kept')).toContainText('Saved on this phone', { timeout: 30_000 });
   await phone.page.evaluate(async () => void (await navigator.serviceWorker.ready));
   await expect.poll(() => phone.page.evaluate(() => navigator.serviceWorker.controller !== null)).toBe(true);
 }
@@ -52,7 +52,7 @@ async function begin(page: Page, job: Job): Promise<void> {
   await expect(page.getByText('Go through every point')).toBeVisible();
   for (const point of await page.getByRole('checkbox').all()) await point.check();
   await page.getByRole('button', { name: 'Start sawing' }).click();
-  await expect(page.getByText('Sawn so far')).toBeVisible();
+  await expect(page.getByText('Sawn so far', { exact: true })).toBeVisible();
 }
 
 async function enterBoards(page: Page, width: string, count: number): Promise<void> {
@@ -66,7 +66,7 @@ const tallyOf = async (page: Page, job: Job): Promise<TallyView> => (await page.
 test.beforeAll(async () => void (web = await ownWeb()));
 test.afterAll(async () => {
   await web.stop();
-  for (const folder of folders) rmSync(folder, { recursive: true, force: true });
+  for (const folder of folders) rmSync(folder, { recursive: true, force: true, maxRetries: 5 });
 });
 
 test('200 boards entered without signal on two phones arrive once each', async () => {
@@ -242,6 +242,7 @@ test('is installable by the browser’s own criteria, and the estimator opens wi
 });
 
 test('the pad is for gloves and sun: big keys, strong contrast, 200 % text, landscape', async () => {
+  test.setTimeout(300_000);
   const job = makeJob();
   const phone = await newPhone();
   await prepare(phone, job);
