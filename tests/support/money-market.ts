@@ -101,7 +101,7 @@ export async function makeAgreedBooking(landowner: Viewer, sawyer: Viewer, optio
     [sawyer.id, at],
   );
   const bid = await Bid.create({
-    listingId: listing.id, listingRevision: 1, sawyerId: sawyer.id, millId: mill?.id ?? '', status: 'chosen', mill: {}, card: OAK_TERMS.card, estimate: {}, roadMiles: 31, expectedBfHundredths: 40_000, expectedBy: 'log-scale',
+    listingId: listing.id, listingRevision: 1, sawyerId: sawyer.id, millId: mill?.id ?? '', status: 'chosen', mill: {}, card: OAK_TERMS.card, estimate: { terms: OAK_TERMS }, roadMiles: 31, expectedBfHundredths: 40_000, expectedBy: 'log-scale',
     expectedCents: 40_000, lowCents: 35_000, highCents: holdCents, holdCents, offBearer: 'landowner-provides', createdAt: at, updatedAt: at,
   });
   const outing = await Outing.create({ sawyerId: sawyer.id, kind: 'booking', createdAt: at });
