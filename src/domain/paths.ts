@@ -48,6 +48,7 @@ export const paths = {
   saveSearch: '/sawyer/searches/new',
   stopSearch: (token: string) => `/searches/stop/${token}`,
   calendarOf: (month: string) => `/sawyer/calendar?month=${month}`,
+  readyMessages: '/sawyer/messages',
   importCalendar: '/sawyer/calendar/import',
   calendarFeed: (secret: string) => `/calendar/${secret}.ics`,
 

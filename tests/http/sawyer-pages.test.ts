@@ -5,7 +5,7 @@ import { OAK_CARD } from '../support/rate-cards.ts';
 
 const origin = inject('origin');
 const mailPage = inject('mailPage');
-const pages = ['/sawyer', '/sawyer/profile', '/sawyer/mill', '/sawyer/rates', '/sawyer/bids', '/sawyer/calendar', '/sawyer/calendar/import'];
+const pages = ['/sawyer', '/sawyer/profile', '/sawyer/mill', '/sawyer/rates', '/sawyer/bids', '/sawyer/messages', '/sawyer/calendar', '/sawyer/calendar/import'];
 const visitor = new Browser(origin);
 const landowner = new Browser(origin);
 const unconfirmed = new Browser(origin);
@@ -106,6 +106,21 @@ describe('the calendar', () => {
     expect(page).not.toContain('Private matter');
     for (const [text, which] of [[null, 'half'], ['hello', 'half'], [whole, 'some']] as const) expect((await send(text, which)).status).toBe(422);
     expect((await send('x'.repeat(1_100_000))).status).toBe(413);
+  });
+});
+
+describe('messages kept ready', () => {
+  test('are kept and deleted without a script', async () => {
+    const wrong = await sawyer.post('/sawyer/messages', { id: '', name: '', body: 'I bring the <loader>.' });
+    expect(wrong.status).toBe(422);
+    expect(await wrong.text()).toContain('I bring the &lt;loader&gt;.');
+    expect((await sawyer.post('/sawyer/messages', { id: '', name: 'Usual', body: 'I bring the loader.' })).status).toBe(303);
+    const page = await (await sawyer.get('/sawyer/messages')).text();
+    const id = /\?delete=([0-9a-f-]{36})/.exec(page)?.[1] ?? '';
+    expect((await landowner.post(`/sawyer/messages?delete=${id}`)).status).toBe(403);
+    expect((await sawyer.post('/sawyer/messages?delete=nonsense')).status).toBe(404);
+    expect((await sawyer.post(`/sawyer/messages?delete=${id}`)).status).toBe(303);
+    expect(await (await sawyer.get('/sawyer/messages')).text()).toContain('None yet');
   });
 });
 

@@ -1,12 +1,18 @@
 import { beforeAll, describe, expect, it } from 'vitest';
+import { dayAt } from '~/domain/time.ts';
 import { readBidsDesk } from '~/schemas/bids-desk.ts';
 import { chooseBid } from '~/server/commands/choose-bid.ts';
 import { placeBid } from '~/server/commands/place-bid.ts';
+import { deleteReadyMessage, saveReadyMessage } from '~/server/commands/ready-messages.ts';
 import { withdrawBids } from '~/server/commands/withdraw-bids.ts';
-import { Bid } from '~/server/models/sawyer.ts';
+import { withReadyMessage } from '~/server/http/bid-form.ts';
+import { Bid, SawyerProfile } from '~/server/models/sawyer.ts';
+import { bidStanding } from '~/server/queries/bid-standing.ts';
 import { bidsDesk } from '~/server/queries/bids-desk.ts';
+import { readyMessages } from '~/server/queries/ready-messages.ts';
 import { sawyerHome } from '~/server/queries/sawyer-home.ts';
-import { type Cast, makeCast } from '../support/cast.ts';
+import { type Cast, makeAccount, makeCast, viewerFor } from '../support/cast.ts';
+import { termsWith } from '../support/rate-cards.ts';
 import { bidOf, makeOpenListing, MARKET_AT, setUpSawyer } from '../support/sawing-market.ts';
 
 let cast: Cast;
@@ -65,5 +71,60 @@ describe('a sawyer’s home', () => {
     expect(home.bookings).toEqual([expect.objectContaining({ status: 'proposed', proposal: null, otherName: 'Ada', days: [] })]);
     expect(home.money).toEqual({ account: 'none', heldCents: 0, waitingCents: 0, owedBackCents: 0 });
     await expect(sawyerHome(cast.ada, MARKET_AT)).rejects.toMatchObject({ kind: 'forbidden' });
+  });
+});
+
+describe('messages kept ready', () => {
+  it('are kept, changed and deleted by their sawyer alone', async () => {
+    await saveReadyMessage(cast.bram, { id: '', name: 'Usual', body: 'I bring the loader.' }, MARKET_AT);
+    const [kept] = await readyMessages(cast.bram);
+    await saveReadyMessage(cast.bram, { id: kept?.id ?? '', name: 'Usual', body: 'I bring a loader.' }, MARKET_AT);
+    expect(await readyMessages(cast.bram)).toEqual([{ id: kept?.id, name: 'Usual', body: 'I bring a loader.' }]);
+    expect(await readyMessages(cast.cleo)).toEqual([]);
+    for (const id of [kept?.id ?? '', 'nonsense']) {
+      await expect(saveReadyMessage(cast.cleo, { id, name: 'Mine', body: 'Mine' }, MARKET_AT)).rejects.toMatchObject({ kind: 'notFound' });
+      await expect(deleteReadyMessage(cast.cleo, id)).rejects.toMatchObject({ kind: 'notFound' });
+    }
+    await expect(saveReadyMessage(cast.ada, { id: '', name: 'Mine', body: 'Mine' }, MARKET_AT)).rejects.toMatchObject({ kind: 'forbidden' });
+    await deleteReadyMessage(cast.bram, kept?.id ?? '');
+    expect(await readyMessages(cast.bram)).toEqual([]);
+  });
+
+  it('are added after what was typed, and never in its place', () => {
+    const ready = [{ id: 'a', name: 'Usual', body: 'I bring a loader.' }];
+    expect(withReadyMessage({ message: ' Good morning. ', readyMessage: 'a' }, ready)['message']).toBe('Good morning.\n\nI bring a loader.');
+    expect(withReadyMessage({ message: '', readyMessage: 'a' }, ready)['message']).toBe('I bring a loader.');
+    expect(withReadyMessage({ message: 'As typed', readyMessage: 'b' }, ready)['message']).toBe('As typed');
+  });
+});
+
+describe('a sawyer’s standing', () => {
+  // Long after the other checks, so that their bids are too old to count.
+  const later = new Date(MARKET_AT.getTime() + 500 * 86_400_000);
+  const own = (mill: string) => bidOf(mill, { ownBf: 400, ownReason: 'As scaled.', days: [dayAt(new Date(later.getTime() + 10 * 86_400_000), 'America/Chicago')] });
+  const openListing = () => makeOpenListing(cast.ada.id, { closesAt: new Date(later.getTime() + 20 * 86_400_000) });
+  const newSawyer = async (name: string, setUpPerLanding: number) => {
+    const { id } = await makeAccount({ name, sawyer: true });
+    return { viewer: await viewerFor(id), mill: await setUpSawyer(id, termsWith({ setUpPerLanding }).card) };
+  };
+
+  it('counts what was decided, and tells of others only when there are five', async () => {
+    const me = await newSawyer('Sue', 7_500);
+    const [won, lost] = [await openListing(), await openListing()];
+    const chosen = await placeBid(me.viewer, won.number, own(me.mill), later);
+    await placeBid(me.viewer, lost.number, own(me.mill), later);
+    expect(await bidStanding(me.viewer, later)).toEqual({ chosen: 0, decided: 0, ownPerBf: 75, miles: 50, others: null });
+    let last = '';
+    for (const [index, setUp] of [7_500, 17_500, 27_500, 37_500, 47_500].entries()) {
+      expect((await bidStanding(me.viewer, later)).others).toBeNull();
+      const other = await newSawyer(`Other ${index}`, setUp);
+      last = await placeBid(other.viewer, lost.number, own(other.mill), later);
+    }
+    await chooseBid(cast.ada, chosen, 1, later);
+    await chooseBid(cast.ada, last, 1, later);
+    // 224 of sawing and travel and set-up of 75, 175 … 475 on 400 bf: 74.75, 99.75, 124.75, 149.75 and 174.75 cents, to the nearest five.
+    expect(await bidStanding(me.viewer, later)).toEqual({ chosen: 1, decided: 2, ownPerBf: 75, miles: 50, others: { sawyers: 5, lower: 100, middle: 125, upper: 150 } });
+    await SawyerProfile.update({ base: { type: 'Point', coordinates: [-120, 45] } }, { where: { accountId: me.viewer.id } });
+    expect((await bidStanding(me.viewer, later)).others).toBeNull();
   });
 });

@@ -7,6 +7,7 @@ import { changeBid } from '../commands/change-bid.ts';
 import { placeBid } from '../commands/place-bid.ts';
 import { Refusal } from '../errors.ts';
 import { type BidPage, type BidPreview, previewBid } from '../queries/bid-page.ts';
+import type { ReadyMessageView } from '../queries/ready-messages.ts';
 import type { Viewer } from '../viewer.ts';
 import type { Typed } from './read-form.ts';
 import { type Taken, takeForm } from './take-form.ts';
@@ -53,6 +54,14 @@ export function bidTyped({ listing, setUp, mills, miles, bid }: BidPage): Typed 
     waste: setUp.card && wastesOffered(setUp.card).includes(asked) ? asked : 'left', roadMiles: count(miles ?? undefined), metalCap: setUp.card ? dollars(setUp.card.metal.capCents) : '',
     stickers: '', deliveryLoads: '', ownBf: '', ownReason: '', days: [], message: '',
   };
+}
+
+/** The form with the chosen ready message added to its message; unchanged when none was chosen. */
+export function withReadyMessage(typed: Typed, ready: readonly ReadyMessageView[]): Typed {
+  const chosen = ready.find(({ id }) => id === typed['readyMessage']);
+  if (!chosen) return typed;
+  const before = String(typed['message'] ?? '').trim();
+  return { ...typed, message: before === '' ? chosen.body : `${before}\n\n${chosen.body}` };
 }
 
 /** The figures of a form as it stands, or null while something in it cannot be read. */

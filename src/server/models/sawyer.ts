@@ -32,6 +32,10 @@ export type SawyerProfile = Row<typeof SawyerProfile>;
 export type DayOffSource = 'own' | 'imported';
 export const DayOff = table('day_off', { sawyerId: keyRef(), day: { options: { ...day().options, primaryKey: true } } as ReturnType<typeof day>, source: filled(text<DayOffSource>()) });
 
+/** Messages that a sawyer keeps ready for bids. */
+export const ReadyMessage = table('ready_message', { id: id(), sawyerId: ref(), name: text(), body: text(), createdAt: instant(), updatedAt: instant() });
+export type ReadyMessage = Row<typeof ReadyMessage>;
+
 /** The private address of a sawyer's calendar: the secret's hash, and the secret sealed for its owner. */
 export const CalendarFeed = table('calendar_feed', { sawyerId: keyRef(), secretHash: text(), secretSealed: text(), madeAt: instant() });
 

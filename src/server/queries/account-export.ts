@@ -16,6 +16,7 @@ const parts: Readonly<Record<string, string>> = {
   sawyerProfile: `SELECT business_name, about, zip, town, state, time_zone, ST_Y(base::geometry) AS base_lat, ST_X(base::geometry) AS base_lng, travel_miles, services, languages,
     working_days, notice_days, certificate_seen_at, certificate_expires_on, payout_account, payouts_ready FROM sawyer_profile WHERE account_id = $1`,
   daysOff: 'SELECT day, source FROM day_off WHERE sawyer_id = $1',
+  readyMessages: 'SELECT name, body, created_at, updated_at FROM ready_message WHERE sawyer_id = $1',
   calendarFeed: 'SELECT made_at FROM calendar_feed WHERE sawyer_id = $1',
   mills: 'SELECT * FROM mill WHERE sawyer_id = $1',
   rateCards: 'SELECT revision, card, created_at FROM rate_card WHERE sawyer_id = $1',
