@@ -23,4 +23,6 @@ if (!told && !inhabited) {
   console.log(`The demo story is told (${((Date.now() - now.getTime()) / 1000).toFixed(1)} s).`);
   await closeLimits();
   await sequelize.close();
+  // The planner's thread would keep the process.
+  process.exit(0);
 }
