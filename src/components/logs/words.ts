@@ -10,10 +10,10 @@ export const milesWords = (miles: number): string => (miles < 10 ? miles.toFixed
 export const roundTripWords = (roadMilesOneWay: number): string => `${roadMilesOneWay * 2} mi there and back`;
 
 /** A job in a row: the verdict, and what it brings or the first reason against it. `withMill` names the mill. */
-export function jobWords({ fit, mill, worth }: JobForMill, withMill: boolean): { readonly fits: boolean; readonly line: string; readonly first: string; readonly more: number } {
-  if (!fit.fits) return { fits: false, line: withMill ? `Does not fit ${mill.name}.` : 'Does not fit.', first: fit.reasons[0] ?? '', more: Math.max(0, fit.reasons.length - 1) };
-  const brings = worth && `estimate ${formatDollars(roundDollars(worth.estimateCents))}, ${hourWords(worth.workHours)} at work, ${roundTripWords(worth.roadMiles)}, ${formatDollars(roundDollars(worth.perHourCents))} an hour`;
-  return { fits: true, line: withMill ? `Fits ${mill.name}` : 'Fits your mill', first: brings ?? '', more: 0 };
+export function jobWords({ fit, mill, worth }: JobForMill, withMill: boolean): { readonly fits: boolean; readonly line: string; readonly first: string; readonly perHour: string; readonly more: number } {
+  if (!fit.fits) return { fits: false, line: withMill ? `Does not fit ${mill.name}.` : 'Does not fit.', first: fit.reasons[0] ?? '', perHour: '', more: Math.max(0, fit.reasons.length - 1) };
+  const brings = worth && `estimate ${formatDollars(roundDollars(worth.estimateCents))}, ${hourWords(worth.workHours)} at work, ${roundTripWords(worth.roadMiles)}`;
+  return { fits: true, line: withMill ? `Fits ${mill.name}` : 'Fits your mill', first: brings ?? '', perHour: worth ? `${formatDollars(roundDollars(worth.perHourCents))} an hour` : '', more: 0 };
 }
 
 /** Cents to the whole dollar, for figures that are estimates of estimates. */
