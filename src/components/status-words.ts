@@ -37,6 +37,11 @@ export const statusWords = {
     lapsed: say('Lapsed: not paid in time', 'over'),
     cancelled: say('Cancelled', 'over'),
   },
+  trip: {
+    offered: say('Being asked about', 'care'),
+    agreed: say('Agreed by all', 'good'),
+    ended: say('Ended', 'over'),
+  },
   payment: {
     due: say('Due', 'care'),
     held: say('Held until the tally is signed', 'good'),

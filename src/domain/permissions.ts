@@ -2,6 +2,7 @@ import type { AccountState } from './states/account.ts';
 import type { BidState } from './states/bid.ts';
 import type { BookingState } from './states/booking.ts';
 import type { ListingState } from './states/listing.ts';
+import type { TripState, TripStopState } from './states/trip.ts';
 
 /**
  * What an account is to a thing. `owner` made the listing, `bidder` made the bid, `landowner` and `sawyer` are the two sides of
@@ -77,6 +78,15 @@ export const permissions = {
     keepRates: { who: ['anySawyer'] },
     keepSearches: { who: ['anySawyer'] },
     keepCalendar: { who: ['anySawyer'] },
+    planTrips: { who: ['anySawyer'] },
+  }),
+  trip: rules<TripState>()({
+    see: { who: ['landowner', 'sawyer', 'moderator'] },
+    withdraw: { who: ['sawyer'], states: ['offered'] },
+  }),
+  tripStop: rules<TripStopState>()({
+    agree: { who: ['landowner'], states: ['asked'] },
+    leave: { who: ['landowner'], states: ['asked', 'agreed'] },
   }),
   account: rules<AccountState>()({
     suspend: { who: ['moderator'], states: ['active'] },

@@ -22,6 +22,7 @@ export function accountMenu(viewer: Viewer): readonly MenuItem[] {
           { label: 'Your sawing', href: paths.sawyerHome },
           { label: 'Your bids', href: paths.bids },
           { label: 'Saved searches', href: paths.searches },
+          { label: 'Shared trips', href: paths.trips },
           { label: 'Your calendar', href: paths.calendar },
           { label: 'Mill and rates', href: paths.mill },
         ]

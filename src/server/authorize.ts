@@ -41,6 +41,21 @@ export function rolesOnBooking(viewer: Viewer | null, booking: BookingLike): Set
   return roles;
 }
 
+/** What this viewer is to a shared trip. */
+export function rolesOnTrip(viewer: Viewer | null, trip: { readonly sawyerId: string; readonly landownerIds: readonly string[] }): Set<Role> {
+  const roles = baseRoles(viewer);
+  if (viewer && viewer.id === trip.sawyerId) roles.add('sawyer');
+  if (viewer && trip.landownerIds.includes(viewer.id)) roles.add('landowner');
+  return roles;
+}
+
+/** What this viewer is to a stop of a shared trip. */
+export function rolesOnTripStop(viewer: Viewer | null, stop: { readonly landownerId: string }): Set<Role> {
+  const roles = baseRoles(viewer);
+  if (viewer && viewer.id === stop.landownerId) roles.add('landowner');
+  return roles;
+}
+
 /**
  * Lets the deed pass or refuses it.
  * @throws Refusal `signedOut` when nobody is signed in, `forbidden` when the roles never allow it, `conflict` when they would

@@ -4,6 +4,7 @@ import { conflict, notFound } from './errors.ts';
 import { heldFor } from './ledger.ts';
 import { Booking, HeldPayment, Tally, WorkAgreement } from './models/index.ts';
 import type { BidTerms } from '~/domain/trade/rate-card.ts';
+import { withShare } from './trip-share.ts';
 
 /** A booking and its payment, both locked, the booking always first. */
 export interface BookingMoney {
@@ -21,7 +22,8 @@ export async function lockBookingMoney(bookingId: string): Promise<BookingMoney>
 /** The terms frozen with the booking that its money obeys. */
 export async function moneyTermsOf(bookingId: string): Promise<{ readonly terms: BidTerms; readonly feeBasisPoints: number }> {
   const agreement = await WorkAgreement.findByPk(bookingId, { rejectOnEmpty: true });
-  return agreement.terms as { terms: BidTerms; feeBasisPoints: number };
+  const { terms, feeBasisPoints } = agreement.terms as { terms: BidTerms; feeBasisPoints: number };
+  return { terms: await withShare(bookingId, terms), feeBasisPoints };
 }
 
 /** What the signed tally came to, by whom it was signed; null while nothing is signed. */

@@ -15,7 +15,7 @@ export interface Parties {
   readonly sawyer: Party;
 }
 
-const partyOf = async (id: string): Promise<Party> => {
+export const partyOf = async (id: string): Promise<Party> => {
   const account = await Account.findByPk(id, { attributes: ['id', 'name', 'email'], rejectOnEmpty: true });
   return { id: account.id, name: account.name, email: account.email };
 };

@@ -15,6 +15,7 @@ import { oneRow } from './db.ts';
 import { env } from './env.ts';
 import { Bid, type Booking, CullLog, DayAllowance, Log, MetalHit, Tally, TallyBoard, TallyPart } from './models/index.ts';
 import type { FrozenEstimate } from './bid-work.ts';
+import { withShare } from './trip-share.ts';
 
 /** A clock entry as it is kept. */
 export interface KeptClock {
@@ -60,7 +61,7 @@ export async function heldCentsOf(bookingId: string): Promise<number> {
 /** The terms that a booking froze when its bid was chosen. */
 export async function frozenTerms(booking: Booking): Promise<BidTerms> {
   const bid = await Bid.findByPk(booking.bidId, { rejectOnEmpty: true });
-  return (bid.estimate as FrozenEstimate).terms;
+  return withShare(booking.id, (bid.estimate as FrozenEstimate).terms);
 }
 
 /** The logs of the job: as listed, and those added on the day. */

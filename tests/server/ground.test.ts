@@ -6,6 +6,7 @@ import { bookingStates } from '~/domain/states/booking.ts';
 import { listingStates } from '~/domain/states/listing.ts';
 import { noShowStates } from '~/domain/states/no-show.ts';
 import { paymentStates } from '~/domain/states/payment.ts';
+import { tripStates, tripStopStates } from '~/domain/states/trip.ts';
 import { execute, inTransaction, oneRow, rows } from '~/server/db.ts';
 import { enqueue } from '~/server/jobs/queue.ts';
 import { Account, Event, LedgerEntry, LedgerGroup, Listing } from '~/server/models/index.ts';
@@ -21,7 +22,7 @@ beforeAll(async () => {
 });
 
 describe('the database has the last word', () => {
-  it.each([['account', accountStates], ['listing', listingStates], ['bid', bidStates], ['booking', bookingStates], ['held_payment', paymentStates], ['no_show', noShowStates]] as const)('%s: its CHECK lists the states of its table', async (name, table) => {
+  it.each([['account', accountStates], ['listing', listingStates], ['bid', bidStates], ['booking', bookingStates], ['held_payment', paymentStates], ['no_show', noShowStates], ['shared_trip', tripStates], ['trip_stop', tripStopStates]] as const)('%s: its CHECK lists the states of its table', async (name, table) => {
     const found = await oneRow<{ text: string }>(
       `SELECT pg_get_constraintdef(oid) AS text FROM pg_constraint WHERE conrelid = $1::regclass AND conname = $2`,
       [name, `${name}_status_check`],

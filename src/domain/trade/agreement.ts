@@ -72,6 +72,9 @@ export function agreementClauses({ terms, figures, feeBasisPoints }: AgreedTerms
       title: 'Damage and care',
       text: 'Each side answers for the damage it causes. The landowner says what lies under and over the landing (septic, wells, lines) and keeps people and animals clear; nobody under 18 helps at the mill. Follow local codes, the mill’s manual and a licensed or trained professional where the work needs one.',
     },
+    ...(terms.shared
+      ? [{ title: 'A shared trip', text: `This job is part of shared trip ${terms.shared.trip}: travel is ${formatCents(terms.shared.travelCents)} and set-up ${formatCents(terms.shared.setUpCents)}, in the place of the rate card’s. These amounts stand whatever the others on the trip do.` }]
+      : []),
     {
       title: 'Cancelling',
       text: 'Free for both until 48 hours before the first day starts. Later, the landowner owes set-up and travel; when the sawyer cancels, everything goes back.',

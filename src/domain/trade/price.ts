@@ -4,7 +4,7 @@ import { quarterHours } from './clock.ts';
 import { basisPrice, type BidTerms, offBearerCents, type RateCard } from './rate-card.ts';
 
 export type LineKind = 'sawing' | 'surcharge' | 'extra' | 'set-up' | 'travel' | 'minimum' | 'metal' | 'tax';
-export type LineUnit = 'bf' | 'hour' | 'sq ft' | 'log' | 'pass' | 'each' | 'landing' | 'mile' | 'load' | 'blade' | 'job' | '%';
+export type LineUnit = 'bf' | 'hour' | 'sq ft' | 'log' | 'pass' | 'each' | 'landing' | 'mile' | 'load' | 'blade' | 'job' | 'trip' | '%';
 
 /** One line of a bill. `amountCents` is rounded once, half up, from quantity × price; the lines of a job sum to its cost. */
 export interface Line {
@@ -70,7 +70,13 @@ export const chargedMiles = (card: RateCard, roadMiles: number): number => Math.
 
 /** Set-up and travel of one coming: what a late cancellation owes. */
 export function comingLines(terms: BidTerms, setUps: number, trips: number): readonly Line[] {
-  const { card } = terms;
+  const { card, shared } = terms;
+  if (shared) {
+    return [
+      line('set-up', shared.setUpCents === card.setUpPerLanding ? 'Set-up' : 'Set-up, your part', setUps, 'landing', shared.setUpCents),
+      line('travel', 'Travel, your part of a shared trip', trips, 'trip', shared.travelCents),
+    ].filter(isCharged);
+  }
   return [
     line('set-up', 'Set-up', setUps, 'landing', card.setUpPerLanding),
     line('travel', 'Travel beyond the free miles, both ways', chargedMiles(card, terms.roadMiles) * trips, 'mile', card.travel.perMileCents),

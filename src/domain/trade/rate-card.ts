@@ -68,6 +68,16 @@ export interface RateCard {
   readonly tax: { readonly pct: number; readonly label: string } | null;
 }
 
+/** What a shared trip fixes in the place of the card's own set-up and travel. */
+export interface SharedTerms {
+  /** The trip's public number. */
+  readonly trip: number;
+  /** This landowner's part of the whole trip's travel. */
+  readonly travelCents: Cents;
+  /** A whole set-up, or a part of one where logs are decked together. */
+  readonly setUpCents: Cents;
+}
+
 /** What a chosen bid fixes. The work agreement shows it and the settlement obeys it. */
 export interface BidTerms {
   readonly card: RateCard;
@@ -77,6 +87,7 @@ export interface BidTerms {
   readonly offBearer: OffBearer;
   readonly waste: Waste;
   readonly landings: number;
+  readonly shared?: SharedTerms;
 }
 
 export const TALLY_RULE_NAMES: Readonly<Record<TallyRule, string>> = {

@@ -5,6 +5,7 @@ import { listingStates } from '~/domain/states/listing.ts';
 import { AGREEMENT_VERSION, canonicalJson } from '~/domain/trade/agreement.ts';
 import { bidChosen, bidDeclined, choiceConfirmed } from '~/emails/bids.ts';
 import { agreedTerms } from '../agreed-terms.ts';
+import type { Reader } from '../bidders.ts';
 import { authorize, rolesOnBid, rolesOnListing } from '../authorize.ts';
 import { refuseBlocked } from '../blocks.ts';
 import { inTransaction, refusedBy } from '../db.ts';
@@ -39,23 +40,32 @@ export async function chooseBid(by: Viewer, bidId: string, listingRevision: numb
       authorize(by, 'bid', 'choose', rolesOnBid(by, bid, listing), bid.status);
       await refuseBlocked(by.id, bid.sawyerId);
       if (listing.hiddenAt !== null) throw conflict('A moderator has taken this listing off show, so no bid can be chosen now.');
-      const sawyer = await Account.findByPk(bid.sawyerId, { rejectOnEmpty: true });
-      if (!(await holdActive(by.id))) throw forbidden('This account is suspended.');
-      if (!(await holdActive(bid.sawyerId))) throw conflict('This sawyer’s account is not active at present. Choose another bid.');
-      const others = await Bid.findAll({ where: { listingId: listing.id, status: ['open', 'toConfirm'] }, order: [['id', 'ASC']], lock: true });
-      await transition(bidStates, 'choose', bid, by, at, { decidedAt: at, updatedAt: at });
-      for (const other of others.filter(({ id }) => id !== bid.id)) await decline(other, listing, by, at);
-      await transition(listingStates, 'match', listing, by, at, { updatedAt: at });
-      const booking = await openBooking(by, bid, listing, at);
-      await freezeTerms(booking, bid, listing, by.name, sawyer.name, at);
-      await enqueue('send-mail', bidChosen(sawyer, by.name, listing, linkTo(paths.booking(booking.number))));
-      await enqueue('send-mail', choiceConfirmed(by, sawyer.name, listing, linkTo(paths.booking(booking.number))));
-      return booking.number;
+      return (await settleChoice(by, by, bid, listing, at)).number;
     });
   } catch (error) {
     if (refusedBy(error, 'one_chosen_bid_per_listing') || refusedBy(error, 'one_live_booking_per_listing')) throw conflict(MOVED_ON);
     throw error;
   }
+}
+
+/**
+ * What choosing does, once it is known to be allowed: call it inside the transaction that holds the listing's and the bid's lock.
+ * @param owner of the listing, who may have agreed before and not be the one who acts now (the last answer to a shared trip)
+ * @param outingId the shared trip's outing; a lone booking gets one of its own
+ */
+export async function settleChoice(by: Viewer, owner: Reader & { readonly id: string }, bid: Bid, listing: Listing, at: Date, outingId?: string): Promise<Booking> {
+  const sawyer = await Account.findByPk(bid.sawyerId, { rejectOnEmpty: true });
+  if (!(await holdActive(owner.id))) throw forbidden('This account is suspended.');
+  if (!(await holdActive(bid.sawyerId))) throw conflict('This sawyer’s account is not active at present. Choose another bid.');
+  const others = await Bid.findAll({ where: { listingId: listing.id, status: ['open', 'toConfirm'] }, order: [['id', 'ASC']], lock: true });
+  await transition(bidStates, 'choose', bid, by, at, { decidedAt: at, updatedAt: at });
+  for (const other of others.filter(({ id }) => id !== bid.id)) await decline(other, listing, by, at);
+  await transition(listingStates, 'match', listing, by, at, { updatedAt: at });
+  const booking = await openBooking(by, bid, listing, at, outingId);
+  await freezeTerms(booking, bid, listing, owner.name, sawyer.name, at);
+  await enqueue('send-mail', bidChosen(sawyer, owner.name, listing, linkTo(paths.booking(booking.number))));
+  await enqueue('send-mail', choiceConfirmed(owner, sawyer.name, listing, linkTo(paths.booking(booking.number))));
+  return booking;
 }
 
 async function decline(bid: Bid, listing: Listing, by: Viewer, at: Date): Promise<void> {
@@ -64,10 +74,10 @@ async function decline(bid: Bid, listing: Listing, by: Viewer, at: Date): Promis
   await enqueue('send-mail', bidDeclined(sawyer, listing, linkTo(paths.bids)));
 }
 
-async function openBooking(by: Viewer, bid: Bid, listing: Listing, at: Date): Promise<Booking> {
-  const outing = await Outing.create({ sawyerId: bid.sawyerId, kind: 'booking', createdAt: at });
+async function openBooking(by: Viewer, bid: Bid, listing: Listing, at: Date, sharedOuting?: string): Promise<Booking> {
+  const outingId = sharedOuting ?? (await Outing.create({ sawyerId: bid.sawyerId, kind: 'booking', createdAt: at })).id;
   const booking = await Booking.create({
-    listingId: listing.id, bidId: bid.id, landownerId: listing.ownerId, sawyerId: bid.sawyerId, outingId: outing.id,
+    listingId: listing.id, bidId: bid.id, landownerId: listing.ownerId, sawyerId: bid.sawyerId, outingId,
     timeZone: listing.timeZone ?? 'UTC', createdAt: at, updatedAt: at,
   });
   const [conversation] = await Conversation.findOrCreate({

@@ -13,7 +13,7 @@ import { Bid, BookedDay, Booking, DayProposal, HeldPayment } from '../models/ind
 import { bookingLink, partiesOf } from '../parties.ts';
 import { sawyerDays } from '../queries/open-days.ts';
 import { record, transition } from '../transition.ts';
-import type { Viewer } from '../viewer.ts';
+import type { Actor, Viewer } from '../viewer.ts';
 
 /** Gives the booking these days in one step; the old ones are freed in the same transaction. */
 async function swapDays(booking: Booking, days: readonly Day[], at: Date): Promise<void> {
@@ -23,8 +23,8 @@ async function swapDays(booking: Booking, days: readonly Day[], at: Date): Promi
   for (const day of days) await BookedDay.create({ sawyerId: booking.sawyerId, day, outingId: booking.outingId, bookingId: booking.id });
 }
 
-/** A first agreement: the hold falls due. */
-async function agree(by: Viewer, booking: Booking, startsAt: Date, at: Date): Promise<void> {
+/** A first agreement on a day: the hold falls due and both are told. The days are booked by the caller, in the same transaction. */
+export async function agreeDays(by: Actor, booking: Booking, startsAt: Date, at: Date): Promise<void> {
   const bid = await Bid.findByPk(booking.bidId, { rejectOnEmpty: true });
   // Whoever agrees on tomorrow pays before tomorrow's start: the sawyer never sets out on a promise.
   const deadline = paymentDeadline(at, booking.timeZone);
@@ -77,7 +77,7 @@ export async function confirmDays(by: Viewer, input: { readonly booking: number;
       await DayProposal.update({ status: 'replaced' }, { where: { bookingId: booking.id, status: 'confirmed' } });
       await proposal.update({ status: 'confirmed', decidedAt: at });
       const startsAt = dayStart(first, booking.timeZone, startTime);
-      if (booking.status === 'proposed') await agree(by, booking, startsAt, at);
+      if (booking.status === 'proposed') await agreeDays(by, booking, startsAt, at);
       else await move(by, booking, days, startsAt, at);
       await sendInvitations(booking, before);
     });

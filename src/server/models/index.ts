@@ -9,3 +9,4 @@ export * from './money.ts';
 export * from './no-show.ts';
 export * from './sawyer.ts';
 export * from './tally.ts';
+export * from './trip.ts';

@@ -6,12 +6,13 @@ import { bookingStates } from '~/domain/states/booking.ts';
 import { listingStates } from '~/domain/states/listing.ts';
 import { allows } from '~/domain/states/machine.ts';
 import { paymentStates } from '~/domain/states/payment.ts';
+import { tripStates, tripStopStates } from '~/domain/states/trip.ts';
 
 const roles: readonly Role[] = ['owner', 'bidder', 'landowner', 'sawyer', 'anySawyer', 'member', 'moderator'];
 
 /** Every role × action × state that is allowed, as lines a reviewer can read. */
 function matrix(): string[] {
-  const states = { listing: listingStates.states, bid: bidStates.states, booking: bookingStates.states, sawyer: [], account: accountStates.states, message: [], report: [], desk: [] } as const;
+  const states = { listing: listingStates.states, bid: bidStates.states, booking: bookingStates.states, sawyer: [], trip: tripStates.states, tripStop: tripStopStates.states, account: accountStates.states, message: [], report: [], desk: [] } as const;
   const lines: string[] = [];
   for (const subject of Object.keys(permissions) as (keyof typeof permissions)[]) {
     for (const action of Object.keys(permissions[subject])) {
@@ -37,7 +38,7 @@ describe('permissions', () => {
 });
 
 describe('state tables', () => {
-  it.each([accountStates, listingStates, bidStates, bookingStates, paymentStates])('$thing: every state but the first is reached by a move', (table) => {
+  it.each([accountStates, listingStates, bidStates, bookingStates, paymentStates, tripStates, tripStopStates])('$thing: every state but the first is reached by a move', (table) => {
     const reached = new Set(Object.values(table.moves).map((move) => move.to as string));
     for (const state of table.states.slice(1)) expect(reached).toContain(state);
   });

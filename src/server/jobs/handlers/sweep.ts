@@ -1,5 +1,6 @@
 import { now } from '../../clock.ts';
 import { closeToBids, lapseListings } from '../../commands/close-listings.ts';
+import { reviewTrips } from '../../commands/review-trip.ts';
 import { tellSearches } from '../../commands/tell-searches.ts';
 import { log } from '../../log.ts';
 import { tellEveningBefore } from './evening-before.ts';
@@ -17,6 +18,7 @@ export const sweeps: Readonly<Record<string, Sweep>> = {
   ...moneySweeps,
   ...photoSweeps,
   'tell of logs found': tellSearches,
+  'look at offered trips': reviewTrips,
   'sign or recall tallies': sweepTallies,
   'tell of tomorrow': tellEveningBefore,
 };
