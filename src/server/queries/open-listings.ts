@@ -101,9 +101,16 @@ function conditions(sql: Sql, asked: ListingsAsked, at: Date, here: string | nul
   ];
 }
 
-/** The rows a list is drawn from: every listing, or the nearest few of those that meet the conditions. */
-const drawnFrom = (among: number | undefined, where: readonly string[], here: string | null): string =>
-  among === undefined || here === null ? 'listing' : `(SELECT l.* FROM listing l WHERE ${where.join(' AND ')} ORDER BY l.coarse <-> ${here} LIMIT ${among})`;
+/**
+ * The rows a list is drawn from: every listing, or the nearest few of those that meet the conditions. When few meet them at all they
+ * are gathered first (`OFFSET 0` keeps the planner from merging the two steps) and put in order after: walking an ordered index
+ * until enough are found would read every open listing.
+ */
+function drawnFrom(among: number | undefined, where: readonly string[], here: string | null, few: boolean): string {
+  const met = `SELECT l.* FROM listing l WHERE ${where.join(' AND ')}`;
+  if (among !== undefined && here !== null) return few ? `(SELECT l.* FROM (${met} OFFSET 0) l ORDER BY l.coarse <-> ${here} LIMIT ${among})` : `(${met} ORDER BY l.coarse <-> ${here} LIMIT ${among})`;
+  return few ? `(${met} OFFSET 0)` : 'listing';
+}
 
 /** The order of each sort, its key as exact text, and the condition for going on after a cursor. */
 function ordering(sql: Sql, asked: ListingsAsked, here: string | null): { key: string; order: string; after: string | null } {
@@ -129,10 +136,13 @@ function ordering(sql: Sql, asked: ListingsAsked, here: string | null): { key: s
 }
 
 /**
- * Open listings, a page at a time. Two queries: the page leans on the partial indexes `listing_open_*` (`listing_open_near` by
- * nearest neighbour when sorted by distance), the count stops at a thousand.
+ * Open listings, a page at a time. Two queries: the count, which stops at a thousand, and the page. Both lean on the partial indexes
+ * `listing_open_*`: with many matches the page walks the one of its order (`listing_open_near` by nearest neighbour), with few it
+ * sorts what the filters find, with none it is not asked for.
  */
 export async function openListings(asked: ListingsAsked, at: Date): Promise<FoundListings> {
+  const count = await countUpTo(COUNT_TO + 1, asked, at);
+  if (count === 0) return { items: [], nextCursor: null, total: 0, totalIsExact: true };
   const sql = sqlBuilder();
   const here = asked.from && pointSql(sql, asked.from);
   const where = conditions(sql, asked, at, here);
@@ -140,7 +150,7 @@ export async function openListings(asked: ListingsAsked, at: Date): Promise<Foun
   const found = await rows<Row>(
     `WITH page AS (
        SELECT l.*, ${key} AS sort_key, ${here ? `l.coarse <-> ${here}` : 'NULL::float8'} AS metres, row_number() OVER () AS place_in_page
-       FROM (SELECT * FROM ${drawnFrom(asked.among, where, here)} l WHERE ${[...where, ...(after ? [after] : [])].join(' AND ')} ORDER BY ${order} LIMIT ${asked.limit + 1}) l
+       FROM (SELECT * FROM ${drawnFrom(asked.among, where, here, count <= COUNT_TO)} l WHERE ${[...where, ...(after ? [after] : [])].join(' AND ')} ORDER BY ${order} LIMIT ${asked.limit + 1}) l
      )
      SELECT l.id, l.number, l.title, l.species, l.log_count AS "logCount", l.board_feet AS "boardFeet", l.largest_end_ob_in AS largest, l.metres,
        ST_Y(l.coarse::geometry) AS lat, ST_X(l.coarse::geometry) AS lng, coalesce(l.town, '') AS town, l.sort_key AS "sortKey",
@@ -156,7 +166,6 @@ export async function openListings(asked: ListingsAsked, at: Date): Promise<Foun
      ORDER BY l.place_in_page`,
     sql.values,
   );
-  const count = await countUpTo(COUNT_TO + 1, asked, at);
   const shown = found.slice(0, asked.limit);
   const last = shown.at(-1);
   return {
