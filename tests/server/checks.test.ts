@@ -13,7 +13,7 @@ beforeAll(async () => {
   await startStorage();
   await tellStory(new Date());
   checks = await allChecks();
-}, 240_000);
+}, 600_000);
 afterAll(() => house.close());
 
 const statesOf = async (table: string): Promise<string[]> => (await rows<{ status: string }>(`SELECT DISTINCT status FROM ${table} ORDER BY 1`)).map(({ status }) => status);
