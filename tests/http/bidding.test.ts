@@ -81,7 +81,7 @@ describe('a sawyer who has nothing set up yet', () => {
 describe('a bid', () => {
   it('is prefilled, and worked out before it is placed', async () => {
     const page = await words(bram.get(`/listings/${number}/bid`));
-    for (const said of ['Expected lumber tally', 'log scale, International ¼', 'Hold it leads to', 'You would receive', '5 % of the estimate without tax', 'The landowner says 2 grown people can help.']) expect(page).toContain(said);
+    for (const said of ['Expected lumber tally', 'Hold it leads to', 'You would receive', '5 % of the estimate without tax', 'The landowner says 2 grown people can help.']) expect(page).toContain(said);
     const looked = await bid(bram, number, { roadMiles: '125', 'days[]': [] }, '?do=look');
     expect(looked.status).toBe(200);
     // 100 miles beyond the free 25, both ways, at 2.00

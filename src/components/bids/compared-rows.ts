@@ -37,6 +37,8 @@ function marking(bids: readonly ComparedBid[], value: (bid: ComparedBid) => numb
   return (bid, cell) => (telling && bid.status === 'open' && value(bid) === least ? { ...cell, mark: word } : cell);
 }
 
+const best = ({ frozen }: ComparedBid): number | undefined => frozen.estimate.lumber.best?.expected;
+
 function setUpAndTravel(bid: ComparedBid): Cell {
   const { setUpCents, travelCents } = bid.frozen.estimate.quote.expected;
   const miles = chargedMiles(card(bid), bid.frozen.terms.roadMiles);
@@ -75,6 +77,7 @@ export function comparedRows(bids: readonly ComparedBid[]): readonly ComparedRow
     ...(bids.some((bid) => card(bid).tax !== null) ? [row('Tax', (bid) => (card(bid).tax === null ? words('none stated') : figure(formatCents(parts(bid).tax), `${card(bid).tax?.label ?? ''} ${card(bid).tax?.pct ?? 0} %, as the sawyer states it`)))] : []),
     row('Estimate', (bid) => lowest(bid, figure(formatCents(bid.expectedCents), `${formatCents(bid.lowCents)} – ${formatCents(bid.highCents)}`)), { strong: true, note: 'range from measuring error' }),
     row('Hold', (bid) => figure(formatCents(bid.holdCents)), { note: 'held until you sign the tally; what is not used goes back' }),
+    ...(bids.some((bid) => best(bid) !== undefined) ? [row('Best possible lumber', (bid) => (best(bid) === undefined ? words('no plan') : figure(`${bf(best(bid) ?? 0)} bf`)), { note: 'by the sawing plan of these logs on that mill' })] : []),
     row('Expected lumber tally', (bid) => figure(`${bf(bid.expectedBf)} bf`, [bid.expectedBy, bid.overrideReason === null ? '' : `“${bid.overrideReason}”`].filter(Boolean).join(': '))),
     row('Cost per bf sawn', (bid) => lowestPerBf(bid, figure(bid.frozen.estimate.quote.costPerBfCents === null ? '–' : formatCents(bid.frozen.estimate.quote.costPerBfCents))), { strong: true }),
     row('Mill', (bid) => words(bid.mill.name, millWords(bid.mill))),

@@ -64,14 +64,14 @@ export function withReadyMessage(typed: Typed, ready: readonly ReadyMessageView[
   return { ...typed, message: before === '' ? chosen.body : `${before}\n\n${chosen.body}` };
 }
 
-/** The figures of a form as it stands, or null while something in it cannot be read. */
-export async function previewTyped(seen: BidPage, typed: Typed, at: Date): Promise<BidPreview | null> {
+/** The figures of a form as it stands, or why there are none yet. */
+export async function previewTyped(seen: BidPage, typed: Typed, at: Date): Promise<BidPreview | { readonly not: string }> {
   const read = bidTermsForm.safeParse({ ...typed, days: [], listingRevision: String(seen.listing.revision) });
-  if (!read.success) return null;
+  if (!read.success) return { not: 'Shown once the fields can be read.' };
   try {
-    return await previewBid(seen, read.data, at);
+    return (await previewBid(seen, read.data, at)) ?? { not: 'Choose one of your mills.' };
   } catch (error) {
-    if (error instanceof Refusal) return null;
+    if (error instanceof Refusal) return { not: error.problems[0]?.message ?? error.message };
     throw error;
   }
 }
