@@ -66,7 +66,9 @@ async function sawyerBids(page: Page, email: string, number: number): Promise<vo
   await expectAccessible(page);
   await press(page, page.getByRole('alert').getByRole('link', { name: /at least one day/ }));
   await expect(page.getByRole('radio', { name: 'I bring one' })).toBeChecked();
-  const monday = page.getByRole('checkbox', { name: /^Mon .*, open$/ }).nth(1);
+  // By its value: once offered, a day is no longer called open.
+  const day = await page.getByRole('checkbox', { name: /^Mon .*, open$/ }).nth(1).inputValue();
+  const monday = page.locator(`input[name="days[]"][value="${day}"]`);
   await press(page, monday, ' ');
   await expect(monday).toBeChecked();
   await tabTo(page, page.getByLabel('Or type a day'));
