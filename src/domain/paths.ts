@@ -68,6 +68,7 @@ export const paths = {
   tally: (number: number) => `/bookings/${number}/tally`,
   signTally: (number: number) => `/bookings/${number}/sign`,
   tallyPdf: (number: number) => `/bookings/${number}/tally.pdf`,
+  afterJob: (number: number) => `/bookings/${number}/after`,
   decideTally: (number: number) => `/bookings/${number}/decide`,
   receipt: (number: number) => `/bookings/${number}/receipt`,
   receiptPdf: (number: number) => `/bookings/${number}/receipt.pdf`,

@@ -70,6 +70,7 @@ export const permissions = {
     topUp: { who: ['landowner'], states: ['sawing', 'tallied', 'queried', 'signed'], whileSuspended: true },
     settleAsHeld: { who: ['moderator'], states: ['signed'] },
     acceptHeld: { who: ['sawyer'], states: ['signed'], whileSuspended: true },
+    keepBoards: { who: ['landowner'], states: ['sawing', 'tallied', 'queried', 'signed', 'settled'] },
     review: { who: ['landowner', 'sawyer'], states: ['settled'] },
   }),
   sawyer: rules<never>()({

@@ -67,3 +67,11 @@ export const eveningBefore = (to: To, other: To, startsAt: Date, zone: string, r
     ...(code ? [`To sign the tally on ${other.name}’s phone you give this code, which only you have: ${code}. Keep it to yourself until you sign.`] : []),
     { button: 'Keep the day on this phone', href: link },
   ]);
+
+/** The day the landowner chose to look at their stack. */
+export const boardsReminder = (to: To, targetPct: number, link: string): MailMessage =>
+  letter(to.email, 'Your boards: look at the stack today', to.name, [
+    'You asked to be reminded today. Measure the moisture of the same boards as before, look for blue stain under the stickers, and restack or bring them in.',
+    `You wanted ${targetPct} %. Boards for indoors need 6 to 8 %, which no stack outdoors reaches.`,
+    { button: 'Open the readings', href: link },
+  ]);

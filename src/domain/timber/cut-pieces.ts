@@ -35,7 +35,7 @@ export interface CutPlan {
 }
 
 /** More steps than this are not searched: the best plan found so far is given and says so. */
-const MOST_STEPS = 400_000;
+const MOST_STEPS = 30_000;
 
 interface Search {
   readonly lengths: readonly number[];

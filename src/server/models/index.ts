@@ -1,5 +1,6 @@
 export * from './account.ts';
 export * from './adjustment.ts';
+export * from './after.ts';
 export * from './booking.ts';
 export * from './day.ts';
 export * from './event.ts';

@@ -6,6 +6,7 @@ import { log } from '../../log.ts';
 import { tellEveningBefore } from './evening-before.ts';
 import { moneySweeps } from './money-sweeps.ts';
 import { photoSweeps } from './photo-sweeps.ts';
+import { remindOfBoards } from './remind-boards.ts';
 import { sweepTallies } from './sweep-tallies.ts';
 
 /** A sweep moves every stored deadline that has passed; it takes the time, finds its own rows, and may run as often as one likes. */
@@ -21,6 +22,7 @@ export const sweeps: Readonly<Record<string, Sweep>> = {
   'look at offered trips': reviewTrips,
   'sign or recall tallies': sweepTallies,
   'tell of tomorrow': tellEveningBefore,
+  'remind of boards': remindOfBoards,
 };
 
 /** Runs every sweep for the given time. One that fails is logged and does not keep the others from running. */
