@@ -57,6 +57,8 @@ export const routes: Readonly<Record<string, Route>> = {
   'account/sessions.astro': { path: at('/account/sessions'), GET: SIGNED_IN, POST: SIGNED_IN_POST },
   'account/data/index.astro': { path: at('/account/data?do=close'), GET: SIGNED_IN, POST: SIGNED_IN_POST },
   'account/data/skidway.json.ts': { path: at('/account/data/skidway.json'), GET: '401 200 200 200 200 200 200' },
+  'account/payments/statement.[format].ts': { path: at('/account/payments/statement.csv?period=2026'), GET: '401 200 200 200 200 200 200' },
+  'account/payouts/statement.[format].ts': { path: at('/account/payouts/statement.csv?period=2026'), GET: '401 403 403 200 200 403 403' },
   'account/payments.astro': { path: at('/account/payments'), GET: SIGNED_IN },
   'account/payouts.astro': { path: at('/account/payouts'), GET: SAWYERS, POST: 'in 403 403 200 200 403 403' },
 
@@ -98,6 +100,7 @@ export const routes: Readonly<Record<string, Route>> = {
   'bookings/[number]/tally.astro': { path: ({ queried }) => `/bookings/${queried}/tally`, GET: 'in 404 303 404 200 404 403', POST: 'in 403 403 403 422 403 403' },
   'bookings/[number]/sign.astro': { path: ({ queried }) => `/bookings/${queried}/sign`, GET: PARTIES, POST: 'in 404 422 404 422 404 422' },
   'bookings/[number]/decide.astro': { path: ({ queried }) => `/bookings/${queried}/decide`, GET: DESK, POST: DESK_POST },
+  'bookings/[number]/receipt.pdf.ts': { path: ({ queried }) => `/bookings/${queried}/receipt.pdf`, GET: '401 404 404 404 404 404 404' },
   'bookings/[number]/receipt.astro': { path: ({ queried }) => `/bookings/${queried}/receipt`, GET: 'in 404 404 404 404 404 404', POST: 'in 403 403 403 409 403 403' },
   'bookings/[number]/review.astro': { path: ({ queried }) => `/bookings/${queried}/review`, GET: 'in 404 409 404 409 404 409', POST: 'in 404 409 404 409 404 409' },
 
@@ -117,6 +120,8 @@ export const routes: Readonly<Record<string, Route>> = {
   'desk/accounts/index.astro': { path: at('/desk/accounts'), GET: DESK },
   'desk/accounts/[id]/index.astro': { path: ({ owner }) => `/desk/accounts/${owner}`, GET: DESK, POST: DESK_POST },
   'desk/accounts/[id]/certificate.ts': { path: ({ sawyer }) => `/desk/accounts/${sawyer}/certificate`, GET: '401 403 403 403 403 403 404' },
+  'desk/money/index.astro': { path: at('/desk/money?do=retry'), GET: DESK, POST: 'in 403 403 403 403 403 404' },
+  'desk/money/adjust.astro': { path: at('/desk/money/adjust'), GET: DESK, POST: DESK_POST },
   'desk/reports/index.astro': { path: at('/desk/reports'), GET: DESK },
   'desk/reports/[id].astro': { path: ({ report }) => `/desk/reports/${report}`, GET: DESK, POST: DESK_POST },
 

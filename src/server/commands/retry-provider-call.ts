@@ -10,7 +10,7 @@ import { baseRoles, type Viewer } from '../viewer.ts';
 export async function retryProviderCall(by: Viewer, callId: string, at: Date): Promise<void> {
   authorize(by, 'desk', 'retryCall', baseRoles(by));
   await inTransaction(async () => {
-    const call = await ProviderCall.findByPk(callId, { lock: true });
+    const call = /^[0-9a-f-]{36}$/.test(callId) ? await ProviderCall.findByPk(callId, { lock: true }) : null;
     if (!call) throw notFound('payment task');
     if (call.status !== 'stuck' && call.status !== 'failed') throw conflict('This task is not stuck.');
     await call.update({ status: 'waiting', claimedUntil: null, idempotencyKey: `${call.kind}-${crypto.randomUUID()}` });
