@@ -1,19 +1,11 @@
-import { PASSWORD, readMail } from '../support/browser.ts';
-import { expect, expectAccessible, mailbox, test } from './support/check.ts';
 import type { Page } from '@playwright/test';
+import { expect, expectAccessible, test } from './support/check.ts';
+import { openAccount } from './support/people.ts';
 
-async function newSawyer(page: Page, name: string, email: string): Promise<void> {
-  await page.goto('/sign-up');
-  await page.getByLabel('Your name').fill(name);
-  await page.locator('[name=email]').fill(email);
-  await page.locator('[name=password]').fill(PASSWORD);
-  await page.locator('input[value=sawyer]').check();
-  await page.locator('[name=terms]').check();
-  await page.locator('main form').getByRole('button').last().click();
-  const link = (await readMail(mailbox(), email, 'Confirm')).links.find((one) => one.includes('/confirm-email/'));
-  await page.goto(new URL(link ?? '').pathname);
-  await page.locator('main form').getByRole('button').first().click();
-}
+// Three long forms, each looked at in both themes.
+test.setTimeout(240_000);
+
+const newSawyer = (page: Page, name: string, email: string): Promise<void> => openAccount(page, { name, email, as: 'sawyer' });
 
 /** No fault that axe finds, in both themes, and nothing wider than the screen. */
 async function expectSound(page: Page): Promise<void> {

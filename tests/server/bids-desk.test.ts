@@ -113,7 +113,7 @@ describe('a sawyer’s standing', () => {
     const [won, lost] = [await openListing(), await openListing()];
     const chosen = await placeBid(me.viewer, won.number, own(me.mill), later);
     await placeBid(me.viewer, lost.number, own(me.mill), later);
-    expect(await bidStanding(me.viewer, later)).toEqual({ chosen: 0, decided: 0, ownPerBf: 75, miles: 50, others: null });
+    expect(await bidStanding(me.viewer, later)).toEqual({ chosen: 0, decided: 0, ownPerBf: 75, miles: 50, leastOthers: 5, others: null });
     let last = '';
     for (const [index, setUp] of [7_500, 17_500, 27_500, 37_500, 47_500].entries()) {
       expect((await bidStanding(me.viewer, later)).others).toBeNull();
@@ -123,7 +123,7 @@ describe('a sawyer’s standing', () => {
     await chooseBid(cast.ada, chosen, 1, later);
     await chooseBid(cast.ada, last, 1, later);
     // 224 of sawing and travel and set-up of 75, 175 … 475 on 400 bf: 74.75, 99.75, 124.75, 149.75 and 174.75 cents, to the nearest five.
-    expect(await bidStanding(me.viewer, later)).toEqual({ chosen: 1, decided: 2, ownPerBf: 75, miles: 50, others: { sawyers: 5, lower: 100, middle: 125, upper: 150 } });
+    expect(await bidStanding(me.viewer, later)).toEqual({ chosen: 1, decided: 2, ownPerBf: 75, miles: 50, leastOthers: 5, others: { sawyers: 5, lower: 100, middle: 125, upper: 150 } });
     await SawyerProfile.update({ base: { type: 'Point', coordinates: [-120, 45] } }, { where: { accountId: me.viewer.id } });
     expect((await bidStanding(me.viewer, later)).others).toBeNull();
   });

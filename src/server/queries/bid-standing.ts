@@ -3,7 +3,7 @@ import { oneRow } from '../db.ts';
 import type { Viewer } from '../viewer.ts';
 
 /** Fewer others than this, and a figure about them would tell on one of them. */
-export const LEAST_OTHERS = 5;
+const LEAST_OTHERS = 5;
 /** Figures about others are rounded to this many cents, for the same reason. */
 const ROUNDED_CENTS = 5;
 const LOOK_BACK_DAYS = 365;
@@ -17,7 +17,9 @@ export interface BidStanding {
   readonly ownPerBf: Cents | null;
   /** The miles within which others are looked at. */
   readonly miles: number;
-  /** Cost per bf of other sawyers' estimates, each sawyer counted once; null with fewer than five of them. */
+  /** With fewer others than these nothing is told of them. */
+  readonly leastOthers: number;
+  /** Cost per bf of other sawyers' estimates, each sawyer counted once; null with too few of them. */
   readonly others: { readonly sawyers: number; readonly lower: Cents; readonly middle: Cents; readonly upper: Cents } | null;
 }
 
@@ -51,6 +53,7 @@ export async function bidStanding(viewer: Viewer, at: Date): Promise<BidStanding
     decided: own?.decided ?? 0,
     ownPerBf: own?.perBf === null || own?.perBf === undefined ? null : Math.round(own.perBf),
     miles: own?.miles ?? 50,
+    leastOthers: LEAST_OTHERS,
     others: others && others.sawyers >= LEAST_OTHERS ? { sawyers: others.sawyers, lower: rounded(others.lower), middle: rounded(others.middle), upper: rounded(others.upper) } : null,
   };
 }
