@@ -48,7 +48,7 @@ describe('the mill form', () => {
 });
 
 describe('the bid form', () => {
-  const typed = { millId: 'm', listingRevision: '1', offBearer: 'sawyer-brings', waste: 'left', roadMiles: '31', metalCap: '105', days: ['2026-12-10', ''], message: '' };
+  const typed = { millId: '0d2f6a7e-95b1-4c53-8f0e-6f1f1f6c9a01', listingRevision: '1', offBearer: 'sawyer-brings', waste: 'left', roadMiles: '31', metalCap: '105', days: ['2026-12-10', ''], message: '' };
   it('reads days, and one day alone', () => {
     expect(bidForm.parse(typed).days).toEqual(['2026-12-10']);
     expect(bidForm.parse({ ...typed, days: '2026-12-10' }).days).toEqual(['2026-12-10']);
