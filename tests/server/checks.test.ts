@@ -56,7 +56,7 @@ const breaches: Readonly<Record<string, readonly string[]>> = {
   'booked-days-agree-with-their-booking': [`UPDATE booked_day SET active = false WHERE id IN (SELECT id FROM booked_day WHERE active LIMIT 1)`],
   'booking-money-is-accounted-for': [`UPDATE provider_call SET request = jsonb_set(request, '{amountCents}', '1') WHERE id IN (SELECT id FROM provider_call WHERE kind = 'transfer' LIMIT 1)`],
   'bookings-agree-with-their-bid': [`UPDATE booking SET landowner_id = (SELECT id FROM account WHERE email = 'mo@skidway.example') WHERE number = 5001`],
-  'chosen-bids-have-a-live-booking': [`UPDATE bid SET status = 'chosen' WHERE id IN (SELECT id FROM bid WHERE status = 'released' LIMIT 1)`],
+  'chosen-bids-have-a-live-booking': [`DROP INDEX one_chosen_bid_per_listing`, `UPDATE bid SET status = 'chosen' WHERE id IN (SELECT id FROM bid WHERE status = 'released' LIMIT 1)`],
   'deadlines-are-set': [`UPDATE booking SET pay_by = NULL WHERE status = 'agreed'`],
   'ended-payments-owe-nothing': [`UPDATE held_payment SET status = 'refunded' WHERE status = 'held'`],
   'every-booking-has-its-agreement': [`DELETE FROM work_agreement WHERE booking_id = (SELECT id FROM booking WHERE number = 5002)`],
@@ -71,7 +71,7 @@ const breaches: Readonly<Record<string, readonly string[]>> = {
   'nobody-bids-on-their-own-listing': [`UPDATE listing SET owner_id = bid.sawyer_id FROM bid WHERE bid.listing_id = listing.id AND bid.status = 'open'`],
   'nobody-is-owed-by-less-than-nothing': [`UPDATE ledger_entry SET amount_cents = -amount_cents WHERE account = 'platform fee'`],
   'one-chosen-bid-per-listing': [`DROP INDEX one_chosen_bid_per_listing`, `UPDATE bid SET status = 'chosen' WHERE status = 'declined'`],
-  'one-outing-a-day': [`ALTER TABLE booked_day DROP CONSTRAINT one_outing_a_day`, `UPDATE booked_day SET day = '2030-01-02'`],
+  'one-outing-a-day': [`ALTER TABLE booked_day DROP CONSTRAINT one_outing_a_day`, `DROP INDEX booked_once`, `UPDATE booked_day SET day = '2030-01-02'`],
   'open-bids-are-on-the-listing-as-it-stands': [`UPDATE listing SET revision = revision + 1 WHERE status = 'open'`],
   'paid-checkouts-have-their-charge': [`UPDATE checkout SET status = 'expired' WHERE status = 'complete'`],
   'payments-agree-with-their-booking': [`UPDATE held_payment SET status = 'void' WHERE status = 'due'`],
@@ -88,7 +88,7 @@ async function foundAfter(check: Check, changes: readonly string[]): Promise<num
   await sequelize.transaction(async () => {
     // No triggers: neither the append-only ones nor foreign keys.
     await sequelize.query('SET LOCAL session_replication_role = replica');
-    for (const change of changes) await sequelize.query(change);
+    for (const change of changes) await sequelize.query(change).catch((error: unknown) => Promise.reject(new Error(`${check.name}: ${String(error)}`, { cause: error })));
     found = (await breachesOf(check)).length;
     throw undone;
   }).catch((error: unknown) => {
