@@ -57,8 +57,8 @@ export const routes: Readonly<Record<string, Route>> = {
   'account/sessions.astro': { path: at('/account/sessions'), GET: SIGNED_IN, POST: SIGNED_IN_POST },
   'account/data/index.astro': { path: at('/account/data?do=close'), GET: SIGNED_IN, POST: SIGNED_IN_POST },
   'account/data/skidway.json.ts': { path: at('/account/data/skidway.json'), GET: '401 200 200 200 200 200 200' },
-  'account/payments/statement.[format].ts': { path: at('/account/payments/statement.csv?period=2026'), GET: '401 200 200 200 200 200 200' },
-  'account/payouts/statement.[format].ts': { path: at('/account/payouts/statement.csv?period=2026'), GET: '401 403 403 200 200 403 403' },
+  'account/payments/statement.[format].ts': { path: at('/account/payments/statement.csv?period=2026'), GET: 'in 200 200 200 200 200 200' },
+  'account/payouts/statement.[format].ts': { path: at('/account/payouts/statement.csv?period=2026'), GET: 'in 403 403 200 200 403 403' },
   'account/payments.astro': { path: at('/account/payments'), GET: SIGNED_IN },
   'account/payouts.astro': { path: at('/account/payouts'), GET: SAWYERS, POST: 'in 403 403 200 200 403 403' },
 
@@ -72,6 +72,10 @@ export const routes: Readonly<Record<string, Route>> = {
   'sawyer/calendar/index.astro': { path: at('/sawyer/calendar'), GET: SAWYERS, POST: SAWYERS_POST },
   'sawyer/calendar/import.astro': { path: at('/sawyer/calendar/import'), GET: SAWYERS, POST: SAWYERS_POST },
   'calendar/[secret].ics.ts': { path: at('/calendar/nonsense.ics'), GET: NOBODY },
+  'sawyer/messages.astro': { path: at('/sawyer/messages'), GET: SAWYERS, POST: SAWYERS_POST },
+  'sawyer/trips/index.astro': { path: at('/sawyer/trips'), GET: SAWYERS },
+  'sawyer/trips/new.astro': { path: at('/sawyer/trips/new'), GET: SAWYERS, POST: SAWYERS_POST },
+  'sawyer/days/[date].astro': { path: at('/sawyer/days/2030-05-04'), GET: SAWYERS },
   'sawyer/searches/index.astro': { path: at('/sawyer/searches'), GET: SAWYERS, POST: SAWYERS_POST },
   'sawyer/searches/new.astro': { path: at('/sawyer/searches/new'), GET: SAWYERS, POST: SAWYERS_POST },
 
@@ -99,10 +103,14 @@ export const routes: Readonly<Record<string, Route>> = {
   'bookings/[number]/cancel.astro': { path: ({ agreed }) => `/bookings/${agreed}/cancel`, GET: 'in 404 200 404 200 404 404', POST: 'in 404 422 404 422 404 404' },
   'bookings/[number]/tally.astro': { path: ({ queried }) => `/bookings/${queried}/tally`, GET: 'in 404 303 404 200 404 403', POST: 'in 403 403 403 422 403 403' },
   'bookings/[number]/sign.astro': { path: ({ queried }) => `/bookings/${queried}/sign`, GET: PARTIES, POST: 'in 404 422 404 422 404 422' },
+  'bookings/[number]/tally.pdf.ts': { path: ({ queried }) => `/bookings/${queried}/tally.pdf`, GET: PARTIES },
+  'bookings/[number]/after.astro': { path: ({ queried }) => `/bookings/${queried}/after`, GET: PARTIES, POST: 'in 404 422 404 422 404 422' },
   'bookings/[number]/decide.astro': { path: ({ queried }) => `/bookings/${queried}/decide`, GET: DESK, POST: DESK_POST },
-  'bookings/[number]/receipt.pdf.ts': { path: ({ queried }) => `/bookings/${queried}/receipt.pdf`, GET: '401 404 404 404 404 404 404' },
+  'bookings/[number]/receipt.pdf.ts': { path: ({ queried }) => `/bookings/${queried}/receipt.pdf`, GET: 'in 404 404 404 404 404 404' },
   'bookings/[number]/receipt.astro': { path: ({ queried }) => `/bookings/${queried}/receipt`, GET: 'in 404 404 404 404 404 404', POST: 'in 403 403 403 409 403 403' },
   'bookings/[number]/review.astro': { path: ({ queried }) => `/bookings/${queried}/review`, GET: 'in 404 409 404 409 404 409', POST: 'in 404 409 404 409 404 409' },
+
+  'trips/[number].astro': { path: at('/trips/999999'), GET: 'in 404 404 404 404 404 404', POST: 'in 404 404 404 404 404 404' },
 
   // Messages and reports.
   'messages/index.astro': { path: at('/messages'), GET: SIGNED_IN },
