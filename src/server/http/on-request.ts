@@ -16,7 +16,8 @@ function settlePolicy(response: Response): Response {
     const settled = policy.replaceAll('https://payments.skidway.invalid', env().PAYMENTS_PAGE_ORIGIN).replaceAll('https://storage.skidway.invalid', env().STORAGE_PUBLIC_ENDPOINT);
     // Said here and not in the build: in the meta tag of a page made at build time it would be ignored with a complaint
     // (there our front's X-Frame-Options holds).
-    response.headers.set('content-security-policy', `${settled.replace(/;\s*$/, '')}; frame-ancestors 'none'`);
+    // A refusal's page comes through here twice: once by itself, once as the answer of the page that refused.
+    if (!settled.includes('frame-ancestors')) response.headers.set('content-security-policy', `${settled.replace(/;\s*$/, '')}; frame-ancestors 'none'`);
   }
   return response;
 }
