@@ -4,7 +4,7 @@ import { DEMO_PASSWORD, DEMO_SECOND_FACTOR } from '../../db/story/demo-accounts.
 import { another, expect, expectAccessible, origin, test } from './support/check.ts';
 import { openAccount } from './support/people.ts';
 
-test.describe.configure({ mode: 'serial' });
+test.describe.configure({ mode: 'serial', timeout: 240_000 });
 
 const mark = Date.now().toString(36);
 let session: Awaited<ReturnType<ReturnType<Page['context']>['storageState']>>;
@@ -21,7 +21,7 @@ const looksRight = async (page: Page): Promise<void> => {
 };
 
 test('a person reports a listing and blocks its owner, and takes the block back', async ({ page }) => {
-  await openAccount(page, { name: 'Rhea Report', email: `rhea-${mark}@desk.example`, as: 'landowner' });
+  await openAccount(page, { name: `Rhea Report ${mark}`, email: `rhea-${mark}@desk.example`, as: 'landowner' });
   await page.goto('/logs?zip=54665&radiusMi=40');
   await page.getByRole('region', { name: 'Listings' }).getByRole('listitem').first().getByRole('link').first().click();
   listing = new URL(page.url()).pathname;
@@ -54,7 +54,7 @@ test('a moderator signs in with a code, hides the reported listing and closes th
 
   await page.getByRole('link', { name: 'Read the reports' }).click();
   await looksRight(page);
-  await page.getByRole('row').filter({ hasText: 'Rhea Report' }).getByRole('link').first().click();
+  await page.getByRole('row').filter({ hasText: `Rhea Report ${mark}` }).getByRole('link').first().click();
   await expect(page.getByText(`These are my photographs. (${mark})`)).toBeVisible();
   await looksRight(page);
   const report = page.url();
@@ -76,7 +76,7 @@ test('a moderator signs in with a code, hides the reported listing and closes th
   await page.goto(report);
   await page.getByLabel('What came of it').fill('Hidden until the owner sent the first photographs.');
   await page.getByRole('button', { name: 'Close the report' }).click();
-  await expect(page.getByRole('row').filter({ hasText: 'Rhea Report' })).toHaveCount(0);
+  await expect(page.getByRole('row').filter({ hasText: `Rhea Report ${mark}` })).toHaveCount(0);
 });
 
 test('a moderator decides a queried tally line by line', async ({ browser }) => {
