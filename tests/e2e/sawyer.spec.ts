@@ -46,13 +46,13 @@ for (const { name, width, script } of [{ name: 'at a desk', width: 1280, script:
       await page.getByRole('button', { name: 'Save this mill' }).click();
 
       await expect(page.getByRole('heading', { level: 1, name: 'Your rates' })).toBeVisible();
-      await expect(page.getByLabel('Log rule')).toBeHidden();
+      await expect(page.getByRole('combobox', { name: 'Log rule' })).toBeHidden();
       await page.getByLabel('Board foot of log scale').check();
-      await page.getByLabel('Log rule').selectOption('doyle');
+      await page.getByRole('combobox', { name: 'Log rule' }).selectOption('doyle');
       await page.getByLabel('Rate, landowner provides the off-bearer').fill('0.48');
       await page.getByLabel('Rate, you bring the off-bearer').fill('0.60');
       await page.getByLabel('Set-up, per landing').fill('85');
-      await page.getByLabel('Free miles').fill('25');
+      await page.getByLabel('Free miles', { exact: true }).fill('25');
       await page.getByLabel('Travel, per mile beyond').fill('2');
       await page.getByLabel('Minimum', { exact: true }).fill('200');
       await page.getByLabel('Metal hit, blade re-sharpened').fill('10');
