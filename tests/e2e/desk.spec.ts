@@ -86,7 +86,7 @@ test('a moderator decides a queried tally line by line', async ({ browser }) => 
   await looksRight(page);
   await page.getByRole('button', { name: 'Decide and sign the tally' }).click();
   await expect(page.getByRole('alert')).toContainText('Decide this line.');
-  for (const group of await page.getByRole('group', { name: 'Decision' }).all()) await group.getByLabel('It stands').check();
+  for (const group of await page.getByRole('radiogroup', { name: 'Decision' }).all()) await group.getByLabel('It stands').check();
   for (const reason of await page.getByRole('textbox', { name: 'Reason' }).all()) await reason.fill('The count on the photographs agrees with the tally.');
   await page.getByRole('button', { name: 'Decide and sign the tally' }).click();
   await expect(page).toHaveURL(/\/bookings\/\d+\/sign$/);
