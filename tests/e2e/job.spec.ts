@@ -63,7 +63,7 @@ for (const phone of [false, true]) {
     await expectAccessible(owner);
     await owner.getByRole('link', { name: /^Choose this bid/ }).filter({ visible: true }).click();
     await expectAccessible(owner);
-    await owner.getByRole('button', { name: 'Choose this bid' }).click();
+    await owner.getByRole('button', { name: 'Choose this bid' }).first().click();
     await expect(owner).toHaveURL(/\/bookings\/\d+$/);
     const booking = new URL(owner.url()).pathname;
     await expectAccessible(owner);

@@ -1,4 +1,5 @@
 import { useCallback, useEffect, useRef, useState } from 'react';
+import { flushSync } from 'react-dom';
 import { isUntouched, type ListingTyped } from '~/domain/listing/draft.ts';
 import { paths } from '~/domain/paths.ts';
 import type { DraftAnswer, DraftRequest } from '~/schemas/listing-draft.ts';
@@ -70,8 +71,11 @@ export function useDraft(start: Start, read: () => ListingTyped): Draft {
         forgetLocal(number);
       }
       Object.assign(now.current, { number, typedVersion });
-      setAt({ number, typedVersion });
-      setKept({ kind: 'saved', at: new Date(savedAt) });
+      // Drawn before anything else happens: a form that is sent next must carry the new version, not the one before.
+      flushSync(() => {
+        setAt({ number, typedVersion });
+        setKept({ kind: 'saved', at: new Date(savedAt) });
+      });
       return;
     }
     now.current.dirty = true;
