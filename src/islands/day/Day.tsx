@@ -67,7 +67,7 @@ function KeptLine({ day, heard }: { readonly day: KeptDay; readonly heard: Sendi
   return (
     <div className="mt-1 text-ink-soft" role="status" data-testid="kept">
       <p>{holder.name}. Saved on this phone {clock(holder.heardAt)}{heard === 'no-signal' ? '; no signal now' : ''}.</p>
-      {Math.abs(holder.clockOffMs) > 5 * 60_000 && <p>This phone’s clock is {Math.round(Math.abs(holder.clockOffMs) / 60_000)} minutes {holder.clockOffMs > 0 ? 'slow' : 'fast'}. Hours entered here are put right.</p>}
+      {Math.abs(holder.clockOffMs) > 5 * 60_000 && <p>This phone’s clock is {Math.round(Math.abs(holder.clockOffMs) / 60_000)} minutes {holder.clockOffMs > 0 ? 'slow' : 'fast'}. Hours entered here follow it: check them before you offer the tally.</p>}
       {unsent > 0 && <p className="font-semibold text-ink">{unsent} {unsent === 1 ? 'entry is' : 'entries are'} saved here and not sent yet.</p>}
       {(holder.signedOut || heard === 'signed-out') && <p className="font-semibold text-ink">You are signed out. <a href={signInAgain}>Sign in again</a> to send and to see what is new.</p>}
     </div>
