@@ -85,7 +85,7 @@ for (const phone of [false, true]) {
     const hold = cents(await pay.textContent());
     await pay.click();
     await payByCard(owner, '4000 0000 0000 0002');
-    await expect(owner.getByText(/declined/i)).toBeVisible();
+    await expect(owner.getByRole('alert')).toContainText('declined');
     await payByCard(owner, '4242 4242 4242 4242');
     await expect(owner.getByRole('heading', { name: 'Your money is held' })).toBeVisible({ timeout: 30_000 });
     await expectAccessible(owner);
