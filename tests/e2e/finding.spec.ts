@@ -40,7 +40,7 @@ test.describe('without JavaScript', () => {
     await page.getByLabel('Species').selectOption('white-oak');
     await page.getByRole('button', { name: 'Show logs' }).click();
     await expect(page).toHaveURL(/zip=54665&radiusMi=40&species=white-oak/);
-    await expect(page.getByText(/within 40 miles · nearest/)).toBeVisible();
+    await expect(page.getByText(/within 40 miles · nearest first/)).toBeVisible();
   });
 
   test('the menu opens on a phone', async ({ page }) => {

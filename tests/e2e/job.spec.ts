@@ -191,6 +191,7 @@ test('a password is forgotten and set anew, and the sessions of an account can b
   await page.goto('/account');
   await page.getByText('Fern Fellside').first().click();
   await page.getByRole('button', { name: 'Sign out' }).filter({ visible: true }).click();
+  await expect(page.getByRole('link', { name: 'Sign in', exact: true })).toBeVisible();
   await signIn(page, `new-${email}`, 'another sound board 77');
   await elsewhere.context().close();
 });
