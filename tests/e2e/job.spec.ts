@@ -1,6 +1,6 @@
 import type { Page } from '@playwright/test';
 import { PASSWORD, readMail } from '../support/browser.ts';
-import { another, expect, expectAccessible, mailbox, test } from './support/check.ts';
+import { another, awake, expect, expectAccessible, mailbox, test } from './support/check.ts';
 import { dayFromNow, field, fillTheRest } from './support/listing-form.ts';
 import { openAccount, signIn } from './support/people.ts';
 import { setUpSawyer } from './support/sawyer-form.ts';
@@ -8,6 +8,7 @@ import { setUpSawyer } from './support/sawyer-form.ts';
 /** A listing of two oak logs that the page's owner publishes; answers its number. */
 async function publish(page: Page): Promise<number> {
   await page.goto('/listings/new');
+  await awake(page);
   for (const [index, smallEnd] of ['16', '14'].entries()) {
     if (index > 0) await page.getByRole('button', { name: 'Add another log' }).click();
     await field(page, `logs.${index}.species`).fill('White oak');

@@ -1,5 +1,5 @@
 import type { Page } from '@playwright/test';
-import { another, expect, expectAccessible, test } from './support/check.ts';
+import { another, awake, expect, expectAccessible, test } from './support/check.ts';
 import { field, fillTheRest } from './support/listing-form.ts';
 import { confirmAddress, fillSignUp, openAccount, signIn } from './support/people.ts';
 
@@ -11,6 +11,7 @@ test('a visitor begins, makes an account at publishing, and loses nothing', asyn
   let page = first;
   const email = 'lotte@e2e.example';
   await page.goto('/listings/new');
+  await awake(page);
   await field(page, 'logs.0.species').fill('White oak');
   await field(page, 'logs.0.smallEnd').fill('16 x 16');
   await field(page, 'logs.0.length').fill("12' 6\"");
@@ -57,6 +58,7 @@ test('a visitor begins, makes an account at publishing, and loses nothing', asyn
 
   // What this browser had kept is gone: the next listing begins empty.
   await page.goto('/listings/new');
+  await awake(page);
   await expect(field(page, 'logs.0.smallEnd')).toHaveValue('');
 });
 
@@ -64,6 +66,7 @@ test('two devices, a lost connection and a lost session never lose a word', asyn
   const email = 'lars@e2e.example';
   await openAccount(page, { ...lotte, email });
   await page.goto('/listings/new');
+  await awake(page);
   await field(page, 'logs.0.smallEnd').fill('15');
   await expect(page).toHaveURL(/\/listings\/\d+\/edit$/);
   const address = page.url();
@@ -71,6 +74,7 @@ test('two devices, a lost connection and a lost session never lose a word', asyn
   const { page: phone, faults } = await another(browser, { phone: true });
   await signIn(phone, email, undefined, new URL(address).pathname);
   await expect(field(phone, 'logs.0.smallEnd')).toHaveValue('15');
+  await awake(phone);
   await field(phone, 'note').fill('from the phone');
   await kept(phone, /^Saved/);
 
@@ -87,6 +91,7 @@ test('two devices, a lost connection and a lost session never lose a word', asyn
   await kept(phone, /You were signed out/);
   await phone.context().addCookies(cookies);
   await phone.goto(address);
+  await awake(phone);
   await expect(field(phone, 'note')).toHaveValue('typed after the session had ended');
   await kept(phone, /^Saved/);
 

@@ -46,3 +46,6 @@ export async function another(browser: Browser, options: { phone?: boolean } = {
   const page = await context.newPage();
   return { page, faults: watch(page) };
 }
+
+/** Waits until every island that is loaded at once answers to input. */
+export const awake = (page: Page): Promise<void> => expect(page.locator('astro-island[ssr][client="load"]')).toHaveCount(0);
