@@ -3,9 +3,9 @@ import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import AxeBuilder from '@axe-core/playwright';
 import { chromium, expect, test, type BrowserContext, type Page } from '@playwright/test';
-import type { TallyView } from '../../src/schemas/tally-view.ts';
-import { expectAccessible } from './support/check.ts';
-import { expireSessions, makeJob, ownWeb, type Job, type OwnWeb } from './support/job.ts';
+import type { TallyView } from '../../../src/schemas/tally-view.ts';
+import { expectAccessible } from '../support/check.ts';
+import { expireSessions, makeJob, ownWeb, type Job, type OwnWeb } from '../support/job.ts';
 
 /** A phone that can be switched off: its browser's files outlive the browser. */
 interface Phone {

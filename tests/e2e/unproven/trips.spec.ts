@@ -1,7 +1,7 @@
 import type { Page } from '@playwright/test';
-import { dayAhead, publishListing, setUpSawing } from '../support/bidding-forms.ts';
-import { Browser, PASSWORD, readMail } from '../support/browser.ts';
-import { another, expect, expectAccessible, mailbox, origin, test } from './support/check.ts';
+import { dayAhead, publishListing, setUpSawing } from '../../support/bidding-forms.ts';
+import { Browser, PASSWORD, readMail } from '../../support/browser.ts';
+import { another, expect, expectAccessible, mailbox, origin, test } from '../support/check.ts';
 
 /** A day that is not a Sunday, far enough ahead for everybody to answer. */
 const tripDay = [8, 9].map(dayAhead).find((day) => new Date(`${day}T12:00:00Z`).getUTCDay() !== 0) ?? dayAhead(8);
