@@ -130,8 +130,8 @@ for (const phone of [false, true]) {
     await sawyer.goto(`${booking}/receipt`);
     // The fee is 5 % of $200.00.
     await expect(sawyer.locator('main')).toContainText('$190.00');
-    expect((await readMail(mailbox(), bo.email, 'eceipt')).text).toContain('190.00');
-    expect((await readMail(mailbox(), ada.email, 'eceipt')).text).toContain('200.00');
+    expect((await readMail(mailbox(), bo.email, 'Your pay is released')).text).toContain('190.00');
+    expect((await readMail(mailbox(), ada.email, 'Receipt')).text).toContain('200.00');
 
     // Each reviews the other, and they write to each other.
     for (const page of [owner, sawyer]) {
