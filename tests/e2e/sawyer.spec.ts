@@ -76,8 +76,7 @@ for (const { name, width, script } of [{ name: 'at a desk', width: 1280, script:
   });
 }
 
-// Waits for a way past the limit of sign-ups from one address, which the journeys before it use up.
-test.fixme('a sawyer keeps a calendar', async ({ page, request }) => {
+test('a sawyer keeps a calendar', async ({ page, request }) => {
   await newSawyer(page, 'Cal Calendar', 'cal@skidway.example');
   await page.goto('/sawyer/calendar');
   await page.getByRole('link', { name: /^(January|February|March|April|May|June|July|August|September|October|November|December)$/ }).last().click();
@@ -106,8 +105,7 @@ test.fixme('a sawyer keeps a calendar', async ({ page, request }) => {
   await expect(page.getByRole('alert')).toContainText('This is not a calendar file.');
 });
 
-// Waits for the same.
-test.fixme('a sawyer’s desk and home are sound when there is nothing in them and when there is', async ({ page }) => {
+test('a sawyer’s desk and home are sound when there is nothing in them and when there is', async ({ page }) => {
   await newSawyer(page, 'Des Desk', 'des@skidway.example');
   for (const path of ['/sawyer', '/sawyer/bids', '/sawyer/bids?show=lost&words=oak', '/sawyer/profile', '/sawyer/mill']) {
     for (const width of [1280, 320]) {
