@@ -82,8 +82,22 @@ test('two devices, a lost connection and a lost session never lose a word', asyn
   await kept(page, /saved somewhere else/);
   await page.getByRole('button', { name: 'Keep what is here' }).click();
   await kept(page, /^Saved/);
-  await phone.reload();
+  // A slow connection: what is typed before the form's script has come is kept like anything else.
+  let arrive = (): void => {};
+  const arrived = new Promise<void>((resolve) => (arrive = resolve));
+  await phone.route(/ListingForm.*\.js/, async (route) => {
+    await arrived;
+    await route.continue();
+  });
+  await phone.reload({ waitUntil: 'commit' });
   await expect(field(phone, 'note')).toHaveValue('from the desk');
+  await field(phone, 'note').fill('typed before the form woke');
+  await field(phone, 'logs.0.length').fill('11');
+  arrive();
+  await kept(phone, /^Saved/);
+  await expect(field(phone, 'note')).toHaveValue('typed before the form woke');
+  await expect(field(phone, 'logs.0.length')).toBeFocused();
+  await phone.unroute(/ListingForm.*\.js/);
 
   const cookies = await phone.context().cookies();
   await phone.context().clearCookies();

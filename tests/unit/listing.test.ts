@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { dangersOf, woodCautions } from '~/domain/listing/cautions.ts';
+import { asListingTyped, typedOver } from '~/domain/listing/draft.ts';
 import { figuresOf, totalFigures } from '~/domain/listing/figures.ts';
 import { nextStep } from '~/domain/listing/next-step.ts';
 import { accessSaid, landingSaid } from '~/domain/listing/page-words.ts';
@@ -75,5 +76,20 @@ describe('the words of the page', () => {
     expect(access.find(({ label }) => label === 'Machine')?.note).toBe('A winch');
     const landing = landingSaid({ pad: true, offDirt: false, parallel: true, rolling: false, reDecks: 'sawyer', note: '' }, { slabs: 'hauled', sawdust: 'left' });
     expect(landing.map(({ value }) => value)).toEqual(['Yes', 'No', 'Yes', 'No', 'The sawyer moves the logs to the mill', 'Slabs hauled away', 'Sawdust stays']);
+  });
+});
+
+describe('what was typed into a form', () => {
+  const opened = asListingTyped({ note: 'as saved', zip: '54665', logs: [{ id: 'a', smallEnd: '15' }], pieces: [{ label: 'bench' }] });
+  const kept = asListingTyped({ note: 'kept by the browser', zip: '54601', logs: [{ id: 'a', smallEnd: '16' }], pieces: [] });
+  it('leaves the other text as it is when nothing was typed', () => {
+    expect(typedOver(opened, asListingTyped(opened), kept)).toBe(kept);
+  });
+  it('goes over the other text answer by answer, rows as a whole', () => {
+    const now = asListingTyped({ ...opened, note: 'typed', logs: [{ id: 'a', smallEnd: '15', length: '11' }] });
+    expect(typedOver(opened, now, kept)).toEqual({ ...kept, note: 'typed', logs: now.logs });
+  });
+  it('keeps an answer that was emptied', () => {
+    expect(typedOver(opened, asListingTyped({ ...opened, zip: '' }), kept)).toEqual({ ...kept, zip: '' });
   });
 });

@@ -97,3 +97,21 @@ export function isUntouched(typed: ListingTyped): boolean {
   const chosen: ReadonlySet<Answer> = new Set(['measured', 'closesOn']);
   return answers.every((name) => chosen.has(name) || typed[name].trim() === '') && typed.logs.every((log) => isBlankLog(log) && log.species.trim() === '') && typed.pieces.every(isBlankPiece);
 }
+
+const sameRow = (one: LogTyped | PieceTyped | undefined, other: LogTyped | PieceTyped | undefined): boolean => JSON.stringify(one) === JSON.stringify(other);
+const sameRows = (some: readonly (LogTyped | PieceTyped)[], others: readonly (LogTyped | PieceTyped)[]): boolean => some.length === others.length && some.every((one, index) => sameRow(one, others[index]));
+
+/**
+ * Lays what a person typed into a form, since it was opened, over another text of the same form.
+ * @param opened the form as it was drawn
+ * @param now the form as it stands
+ * @param base the text to lay it over, such as one that the browser had kept
+ * @returns `base` itself when nothing was typed; rows are taken whole, all logs or all pieces
+ */
+export function typedOver(opened: ListingTyped, now: ListingTyped, base: ListingTyped): ListingTyped {
+  const changed = answers.filter((name) => now[name] !== opened[name]);
+  const logs = !sameRows(opened.logs, now.logs);
+  const pieces = !sameRows(opened.pieces, now.pieces);
+  if (changed.length === 0 && !logs && !pieces) return base;
+  return { ...base, ...Object.fromEntries(changed.map((name) => [name, now[name]])), ...(logs ? { logs: now.logs } : {}), ...(pieces ? { pieces: now.pieces } : {}) };
+}

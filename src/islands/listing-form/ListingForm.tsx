@@ -1,5 +1,5 @@
-import { useCallback, useEffect, useRef, useState, type KeyboardEvent, type ReactElement, type SubmitEvent } from 'react';
-import { blankLog, blankPiece, listingFromFields, type Answer, type ListingTyped } from '~/domain/listing/draft.ts';
+import { useCallback, useEffect, useLayoutEffect, useRef, useState, type KeyboardEvent, type ReactElement, type SubmitEvent } from 'react';
+import { blankLog, blankPiece, listingFromFields, typedOver, type Answer, type ListingTyped } from '~/domain/listing/draft.ts';
 import { paths } from '~/domain/paths.ts';
 import type { Problem } from '~/domain/result.ts';
 import { Button } from '../form/choices.tsx';
@@ -34,21 +34,48 @@ const steps = [
   ['tree', 'The tree'], ['logs', 'The logs'], ['place', 'The place'], ['access', 'Getting there'], ['landing', 'The landing'], ['metal', 'Metal'], ['pieces', 'What to build'], ['dates', 'Dates'], ['photographs', 'Photographs'],
 ] as const;
 
+const fieldsOf = (form: HTMLFormElement): ListingTyped => listingFromFields([...new FormData(form)].flatMap(([name, value]) => (typeof value === 'string' ? [[name, value] as const] : [])));
+
+/**
+ * The form as it stands before this script has touched it: on a slow connection people type before it wakes, and waking would put
+ * back what a text area was opened with. Null where the browser may have filled fields by itself (going back).
+ */
+function typedBeforeWaking(): ListingTyped | null {
+  if (typeof document === 'undefined') return null;
+  const form = document.getElementById('listing-form');
+  const [navigation] = performance.getEntriesByType('navigation') as PerformanceNavigationTiming[];
+  return form instanceof HTMLFormElement && navigation?.type !== 'back_forward' ? fieldsOf(form) : null;
+}
+
+/** Where the cursor stands in the form, so that it can stand there again after the form is drawn anew. */
+interface Cursor {
+  readonly name: string;
+  readonly start: number | null;
+  readonly end: number | null;
+}
+
+function cursorNow(): Cursor | null {
+  const at = document.activeElement;
+  return (at instanceof HTMLInputElement && at.type === 'text') || at instanceof HTMLTextAreaElement ? { name: at.name, start: at.selectionStart, end: at.selectionEnd } : null;
+}
+
 /**
  * The form of a listing. The server draws it whole and it posts plainly without script; with script it works figures out while one
  * types, adds rows in place, and keeps everything: in this browser at once, in the account a moment later.
  */
 export default function ListingForm(props: ListingFormProps): ReactElement {
-  const [opened, setOpened] = useState({ typed: props.typed, restored: 0 });
+  const [before] = useState(typedBeforeWaking);
+  const [opened, setOpened] = useState<{ readonly typed: ListingTyped; readonly restored: number; readonly cursor: Cursor | null }>({ typed: props.typed, restored: 0, cursor: null });
   const [older, setOlder] = useState<LocalDraft | null>(null);
-  const restore = (typed: ListingTyped): void => setOpened(({ restored }) => ({ typed, restored: restored + 1 }));
+  const restore = (typed: ListingTyped): void => setOpened(({ restored }) => ({ typed, restored: restored + 1, cursor: cursorNow() }));
 
   useEffect(() => {
-    if (props.sent) return;
-    const local = readLocal(props.number);
-    if (!local) return;
-    if (local.typedVersion !== props.typedVersion) setOlder(local);
-    else restore(props.logsGiven ? { ...local.typed, logs: props.typed.logs } : local.typed);
+    const local = props.sent ? null : readLocal(props.number);
+    const newest = local?.typedVersion === props.typedVersion ? local : null;
+    if (local && !newest) setOlder(local);
+    const base = !newest ? props.typed : props.logsGiven ? { ...newest.typed, logs: props.typed.logs } : newest.typed;
+    const typed = before ? typedOver(props.typed, before, base) : base;
+    if (typed !== props.typed) restore(typed);
   }, []);
 
   return (
@@ -63,21 +90,26 @@ export default function ListingForm(props: ListingFormProps): ReactElement {
           </p>
         </div>
       )}
-      <FormBody key={opened.restored} {...props} typed={opened.typed} problems={opened.restored === 0 ? props.problems : []} restored={opened.restored > 0} />
+      <FormBody key={opened.restored} {...props} typed={opened.typed} problems={opened.restored === 0 ? props.problems : []} restored={opened.restored > 0} cursor={opened.cursor} />
     </>
   );
 }
 
-function FormBody(props: ListingFormProps & { readonly restored: boolean }): ReactElement {
+function FormBody(props: ListingFormProps & { readonly restored: boolean; readonly cursor: Cursor | null }): ReactElement {
   const form = useRef<HTMLFormElement>(null);
   const [typed, setTyped] = useState(props.typed);
-  const read = useCallback((): ListingTyped => {
-    if (!form.current) return props.typed;
-    return listingFromFields([...new FormData(form.current)].flatMap(([name, value]) => (typeof value === 'string' ? [[name, value] as const] : [])));
-  }, [props.typed]);
+  const read = useCallback((): ListingTyped => (form.current ? fieldsOf(form.current) : props.typed), [props.typed]);
   const draft = useDraft(props, read);
   const logs = useRows('logs', props.typed.logs, props.problems, (last) => blankLog(newId(), last?.species), () => read().logs);
   const pieces = useRows('pieces', props.typed.pieces, props.problems, blankPiece, () => read().pieces);
+
+  useLayoutEffect(() => {
+    if (!props.cursor) return;
+    const field = form.current?.elements.namedItem(props.cursor.name);
+    if (!(field instanceof HTMLInputElement || field instanceof HTMLTextAreaElement)) return;
+    field.focus({ preventScroll: true });
+    field.setSelectionRange(props.cursor.start, props.cursor.end);
+  }, []);
 
   // The browser may have filled fields by itself before this script ran: going back, a restored tab.
   useEffect(() => {
