@@ -46,6 +46,7 @@ export const paths = {
   calendar: '/sawyer/calendar',
   searches: '/sawyer/searches',
   trips: '/sawyer/trips',
+  newTrip: '/sawyer/trips/new',
   planTrip: (day: string) => `/sawyer/trips/new?day=${day}`,
   trip: (number: number) => `/trips/${number}`,
   sawyerDay: (day: string) => `/sawyer/days/${day}`,

@@ -109,6 +109,19 @@ describe('the calendar', () => {
   });
 });
 
+describe('a trip', () => {
+  test('is planned for a day: without one the page asks for it first, from wherever one comes', async () => {
+    const home = await (await sawyer.get('/sawyer')).text();
+    for (const path of ['/sawyer/trips', '/sawyer/searches']) expect(home).toContain(`href="${path}"`);
+    for (const query of ['', '?day=', '?day=2026-02-30', '?stop=1001']) {
+      const page = await (await sawyer.get(`/sawyer/trips/new${query}`)).text();
+      expect(page).toContain('Choose a day first');
+      expect(page).not.toContain('type="checkbox"');
+    }
+    expect(await (await sawyer.get(`/sawyer/trips/new?day=${day(9)}`)).text()).toContain('Choose the places');
+  });
+});
+
 describe('messages kept ready', () => {
   test('are kept and deleted without a script', async () => {
     const wrong = await sawyer.post('/sawyer/messages', { id: '', name: '', body: 'I bring the <loader>.' });

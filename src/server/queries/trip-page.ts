@@ -1,6 +1,7 @@
 import { may } from '~/domain/permissions.ts';
+import { dayAt, type Day } from '~/domain/time.ts';
 import { authorize, rolesOnTrip, rolesOnTripStop } from '../authorize.ts';
-import { rows } from '../db.ts';
+import { oneRow, rows } from '../db.ts';
 import { notFound } from '../errors.ts';
 import { Listing } from '../models/listing.ts';
 import { Booking } from '../models/booking.ts';
@@ -94,6 +95,12 @@ export async function tripPage(viewer: Viewer, number: number): Promise<TripPage
     sawyer: (await partyOf(trip.sawyerId)).name, places: staying.length, agreed: staying.filter((stop) => stop.status !== 'asked').length,
     can: { withdraw: may('trip', 'withdraw', roles, trip.status) },
   };
+}
+
+/** Today on the sawyer's own clock. */
+export async function dayOfSawyer(viewer: Viewer, at: Date): Promise<Day> {
+  const profile = await oneRow<{ zone: string }>('SELECT time_zone AS zone FROM sawyer_profile WHERE account_id = $1', [viewer.id]);
+  return dayAt(at, profile?.zone ?? 'UTC');
 }
 
 export interface TripRow {
