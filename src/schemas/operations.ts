@@ -7,6 +7,7 @@ import { listingsAnswer, listingsQuery } from './listings.ts';
 import { placeAnswer, placeQuery } from './place.ts';
 import { beginPhotoAnswerSchema, beginPhotoSchema, changePhotoSchema, listPhotosSchema, orderPhotosSchema, photosAnswerSchema, photoViewSchema } from './photo.ts';
 import { speciesAnswer } from './species.ts';
+import { quotingPracticeAnswer, quotingPracticeQuery } from './quoting-practice.ts';
 import { sawPlanAnswer, sawPlanRequest } from './saw-plan.ts';
 import { tallyAnswer, tallyRequest } from './tally.ts';
 import { tallyEntriesBody } from './tally-entries.ts';
@@ -51,5 +52,6 @@ export const operations: readonly Operation[] = [
   { method: 'get', path: '/api/bookings/{number}/tally', summary: 'The tally of a booking, for its two sides', signedIn: true },
   { method: 'put', path: '/api/bookings/{number}/tally', summary: 'Enter boards, hits, cull logs, hours; each once by its id', signedIn: true, body: tallyEntriesBody },
   { method: 'get', path: '/api/places', summary: 'What a ZIP code is called and where it lies', query: placeQuery, answer: placeAnswer },
+  { method: 'get', path: '/api/quoting-practice', summary: 'What the sawyers near a ZIP code charge by: counts, and none where they are few', query: quotingPracticeQuery, answer: quotingPracticeAnswer },
   { method: 'post', path: '/api/listings/draft', summary: 'Keep a draft of a listing as it was typed', signedIn: true, body: draftRequest, answer: draftAnswer },
 ];

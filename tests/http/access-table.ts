@@ -148,6 +148,7 @@ export const routes: Readonly<Record<string, Route>> = {
   'api/drying.ts': { path: at('/api/drying'), POST: '422 422 422 422 422 422 422' },
   'api/saw-plan.ts': { path: at('/api/saw-plan'), POST: '422 422 422 422 422 422 422' },
   'api/cut-list.ts': { path: at('/api/cut-list'), POST: '422 422 422 422 422 422 422' },
+  'api/quoting-practice.ts': { path: at('/api/quoting-practice?zip=54665'), GET: ALL },
   'api/places.ts': { path: at('/api/places?zip=54665'), GET: ALL },
   'api/listings/index.ts': { path: at('/api/listings?zip=54665&radiusMi=40'), GET: ALL },
   'api/listings/draft.ts': { path: at('/api/listings/draft'), POST: API_POST },

@@ -11,6 +11,7 @@ import { Loads } from './Loads.tsx';
 import { LogFigures } from './LogFigures.tsx';
 import { LogForm } from './LogForm.tsx';
 import { LogPicture } from './LogPicture.tsx';
+import { NearbyRules, useNearbyRules } from './NearbyRules.tsx';
 import { PasteTable } from './PasteTable.tsx';
 import { SettingFields } from './SettingFields.tsx';
 import { StandingTree } from './StandingTree.tsx';
@@ -27,6 +28,7 @@ export default function Estimator(): ReactElement {
   const [changing, setChanging] = useState<number | null>(null);
   const [removed, setRemoved] = useState<{ readonly log: LogGroup; readonly at: number } | null>(null);
   const [said, setSaid] = useState('');
+  const nearby = useNearbyRules();
   const { log } = readDraft(draft, units);
 
   const add = (more: readonly LogGroup[]): void => {
@@ -84,11 +86,12 @@ export default function Estimator(): ReactElement {
             {log ? (
               <div className="grid gap-6 md:grid-cols-[15rem_minmax(0,1fr)]">
                 <LogPicture log={log} settings={settings} units={units} onDrawRot={(widthIn, heightIn) => change({ draft: { ...draft, defects: [...draft.defects, { kind: 'interiorRot', values: { widthIn: sayInches(widthIn, units), heightIn: sayInches(heightIn, units), lengthFt: sayFeet(log.lengthFt, units) } }] } })} />
-                <LogFigures log={log} settings={settings} units={units} />
+                <LogFigures log={log} settings={settings} units={units} practice={nearby.practice} />
               </div>
             ) : (
               <p className="max-w-prose text-ink-soft">Choose a species and write the small end and the length: the log appears here, drawn to scale, with its board feet by three rules and its weight.</p>
             )}
+            <NearbyRules {...nearby} />
           </div>
         </section>
 

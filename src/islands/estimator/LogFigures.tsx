@@ -8,12 +8,16 @@ import { speciesOf } from '~/domain/timber/species.ts';
 import { largestEndOutsideBark, trimOf } from '~/domain/timber/taper-and-bark.ts';
 import { greenWeightRange, greenWeightWithBark } from '~/domain/timber/weight.ts';
 import { workingsOf, type Working } from '~/domain/timber/workings.ts';
+import type { QuotingPractice } from '~/schemas/quoting-practice.ts';
+import { RuleNote } from './NearbyRules.tsx';
 import { sayInches, sayWeight, twoDecimals, wholeNumber, type Units } from '~/islands/logs/words.ts';
 
 interface LogFiguresProps {
   readonly log: LogGroup;
   readonly settings: ScaleSettings;
   readonly units: Units;
+  /** What sawyers near the asker charge by, once asked. */
+  readonly practice: QuotingPractice | null;
 }
 
 const rules: readonly LogRule[] = ['internationalQuarter', 'scribnerDecimalC', 'doyle'];
@@ -41,7 +45,7 @@ export function Workings({ workings }: { readonly workings: readonly Working[] }
 }
 
 /** What is in one log: the three rules side by side with their range, weight, cubic content, and how each is worked out. */
-export function LogFigures({ log, settings, units }: LogFiguresProps): ReactElement {
+export function LogFigures({ log, settings, units, practice }: LogFiguresProps): ReactElement {
   const species = speciesOf(log.species);
   const estimate = estimateLog(log, settings);
   const { less, more } = measuringErrorIn.landowner;
@@ -57,7 +61,7 @@ export function LogFigures({ log, settings, units }: LogFiguresProps): ReactElem
         <tbody>
           {rules.map((rule) => (
             <tr key={rule}>
-              <th scope="row">{logRuleNames[rule]}</th>
+              <th scope="row">{logRuleNames[rule]}<RuleNote rule={rule} practice={practice} /></th>
               {hasDefects && <td className="num">{wholeNumber(estimate.boardFeet[rule])}</td>}
               <td className="num font-bold" data-testid={rule}>{wholeNumber(estimate.netBoardFeet[rule])}</td>
               <td className="num">{wholeNumber(low.netBoardFeet[rule])}–{wholeNumber(high.netBoardFeet[rule])}</td>
