@@ -11,6 +11,14 @@ export interface CautionText {
 }
 
 export const cautions = {
+  felling: {
+    title: 'Hire a professional to fell a tree.',
+    text: 'Hire a licensed or trained professional, above all for a tree that leans, is lodged, split or wind-thrown, or stands near a house or a line.',
+  },
+  height: {
+    title: 'A height is an estimate.',
+    text: 'Measured from the ground it is never exact. Ground that slopes, a tree that leans and a top that breaks off all carry further.',
+  },
   distance: {
     title: 'Two tree lengths from anyone felling.',
     text: 'Keep all other work at least two tree lengths away. Nobody walks up to a person felling, closer than two tree lengths, until that person says it is safe. No machine pulls logs inside that circle.',
@@ -36,6 +44,15 @@ export const cautions = {
     text: 'A tree lying on its roots can stand up again when it is cut; bent wood springs; a lodged tree falls without warning. Do not work under or beside one, do not climb it, and do not cut the tree that holds it. Mark it, keep everyone away, and call a licensed or trained tree professional.',
     lookUp: '29 CFR 1910.266(h)(1)',
   },
+  snapped: {
+    title: 'A snapped stem is loaded.',
+    text: 'It is bent and under strain, and may be split far below the break. Have it freed and cut to length by a trained professional.',
+  },
+  downedLine: {
+    title: 'A line is down.',
+    text: 'Stay away from the tree, the logs and anything that touches the line, and call the utility. Nobody works here until they say it is safe.',
+    lookUp: 'your utility',
+  },
   lines: {
     title: 'Treat every wire as live.',
     text: 'If a tree or log touches a wire, or a wire is down, stay well away and call the utility. Keep people, ladders, booms and raised loads at least 10 feet from lines up to 50 kV, and farther from higher ones. The mill is set up clear of overhead lines too.',
@@ -55,6 +72,14 @@ export const cautions = {
     title: 'Logs roll.',
     text: 'Never stand below a log or between a log and the mill. Chock every log on the pile. Loosen a pile from its end, top first. Green logs weigh more than they look: see the weight beside each log, bark included.',
   },
+  slope: {
+    title: 'Steep ground.',
+    text: 'Logs roll and slide. Chock each one, work from above or the side, and let nobody stand below. A mill and a trailer need level ground.',
+  },
+  frozen: {
+    title: 'Frozen logs.',
+    text: 'They saw slower and dull blades sooner; slippery bark rolls underfoot.',
+  },
   lifting: {
     title: 'Know the weight before lifting.',
     text: 'Ask a loader for its rating at the centre of the load, not at the pins, and leave a margin. Nobody stands under or within reach of a raised log. On a slope or soft ground, stop and think again.',
@@ -62,7 +87,7 @@ export const cautions = {
   },
   mill: {
     title: 'Stay behind the sawyer\'s line.',
-    text: 'Guards stay on, loose clothing and gloves stay away from moving parts, and only the sawyer runs the mill. Watch from where the sawyer tells you, out of line with the blade: a band can break. Nobody under 18 helps at the mill. Keep children and animals away.',
+    text: 'Guards stay on, loose clothing and gloves stay away from moving parts, and only the sawyer runs the mill. Watch from where the sawyer tells you, out of line with the blade: a band can break. Wear eye and ear protection. Nobody under 18 helps at the mill. Keep children and animals away.',
     lookUp: '29 CFR 1910.265, child labor rules, and the mill\'s manual',
   },
   metal: {
@@ -78,6 +103,11 @@ export const cautions = {
     text: 'Each outside log bears on at least two stakes and its ends reach at least 6 inches beyond them; shorter logs on top need at least two tie-downs. Check the weight against the trailer, the hitch, the tires and the brakes of the tow vehicle.',
     source: 'a published driver\'s-licence summary of 49 CFR 393.116',
     lookUp: '49 CFR 393.102 to 393.116 and your state\'s rules',
+  },
+  tieDowns: {
+    title: 'Tie-downs for half the weight.',
+    text: 'Together they must be rated for at least half the weight of the load. Stand clear of logs that can roll when they are loosened.',
+    lookUp: '49 CFR 393.106(d)',
   },
   licence: {
     title: 'Licence for a heavy combination.',
@@ -96,8 +126,8 @@ export const cautions = {
     source: 'texts of a state forestry division and USDA APHIS on firewood',
   },
   quarantine: {
-    title: 'Other quarantines.',
-    text: 'Spotted lanternfly, spongy moth, thousand cankers, oak wilt and others have their own areas and permits for logs and vehicles. Sawing on the site usually avoids the question.',
+    title: 'Quarantines on moving wood.',
+    text: 'Quarantines may forbid moving logs, bark and firewood: spotted lanternfly, spongy moth, thousand cankers, oak wilt and others have their own areas and permits. Ask your state’s agriculture department; sawing on the site usually avoids the question.',
     lookUp: 'your state\'s department of agriculture',
   },
   oakWilt: {
@@ -107,7 +137,7 @@ export const cautions = {
   },
   walnut: {
     title: 'Walnut and horses.',
-    text: 'Black walnut shavings or sawdust in a stall can founder a horse. Keep walnut waste out of bedding and away from paddocks.',
+    text: 'Black walnut shavings or sawdust in a stall can founder a horse, and so can stall boards of walnut. Keep walnut out of stables and paddocks.',
     lookUp: 'your veterinarian',
   },
   dwelling: {
@@ -123,3 +153,10 @@ export const cautions = {
 } as const satisfies Record<string, CautionText>;
 
 export type CautionName = keyof typeof cautions;
+
+/** The cautions of these names, in this order. */
+export const told = (...names: readonly CautionName[]): readonly CautionText[] => names.map((name) => cautions[name]);
+
+/** Where a caution comes from, in words. */
+export const cautionSource = ({ source, lookUp }: Pick<CautionText, 'source' | 'lookUp'>): string =>
+  `${source ? `Source: ${source}.` : 'Usual practice; check the rule that applies to you.'}${lookUp ? ` Where to look: ${lookUp}.` : ''}`;

@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest';
+import { cautionSource } from '~/domain/cautions.ts';
 import { dangersOf, woodCautions } from '~/domain/listing/cautions.ts';
 import { asListingTyped, typedOver } from '~/domain/listing/draft.ts';
 import { figuresOf, totalFigures } from '~/domain/listing/figures.ts';
@@ -42,13 +43,13 @@ describe('what is dangerous', () => {
     expect(dangersOf({ howDown: 'snapped', lines: 'down', slope: 'steep', metalRisk: 'fence-line', forDwelling: true }).map(({ title }) => title)).toEqual(['A line is down', 'A snapped tree', 'Steep ground', 'Metal in the wood', 'Lumber for a dwelling']);
     for (const { cautions } of dangersOf({ ...calm, howDown: 'uprooted', lines: 'unknown' })) {
       expect(cautions.length).toBeGreaterThan(0);
-      for (const caution of cautions) expect(caution.source).not.toBe('');
+      for (const caution of cautions) expect(cautionSource(caution)).toMatch(/\.$/);
     }
   });
   it('comes from the wood too: oak in spring, walnut shavings, quarantines', () => {
     const said = (species: string[], day: string): string => woodCautions(species, day)?.cautions.map(({ text }) => text).join(' ') ?? '';
-    expect(said(['white-oak'], '2026-05-01')).toContain('oak wilt');
-    expect(said(['white-oak'], '2026-11-01')).not.toContain('oak wilt');
+    expect(said(['white-oak'], '2026-05-01')).toContain('spread oak wilt');
+    expect(said(['white-oak'], '2026-11-01')).not.toContain('spread oak wilt');
     expect(said(['black-walnut'], '2026-11-01')).toContain('horses');
     expect(said(['white-oak', 'black-walnut'], '2026-11-01').match(/Quarantines/g)).toHaveLength(1);
     expect(woodCautions(['no-such-tree'], '2026-11-01')).toBeNull();

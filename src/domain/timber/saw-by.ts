@@ -1,4 +1,4 @@
-import { cautionsFor, type Caution } from './cautions.ts';
+import { told, type CautionText } from '../cautions.ts';
 import { speciesOf, type Species } from './species.ts';
 
 /** How fast logs of a species lose value on the landing. */
@@ -82,10 +82,14 @@ export function earliestSawBy(speciesCodesOfLogs: readonly string[], cameDownOn:
     .reduce<SawBy | undefined>((first, next) => (first === undefined || next.date < first.date ? next : first), undefined);
 }
 
-/** What the season asks of these logs: oak wilt from April to July, quarantines always, frozen logs from December to March. */
-export function seasonCautions(speciesCode: string, onDay: string): readonly Caution[] {
+/** What the season asks of these logs: oak wilt from April to July, quarantines always (ash has its own), frozen logs from December to March. */
+export function seasonCautions(speciesCode: string, onDay: string): readonly CautionText[] {
   const month = new Date(parseDay(onDay)).getUTCMonth();
-  const oak = /\boak$/.test(speciesOf(speciesCode).name);
-  const frozen: Caution = { text: 'Frozen logs saw slower and dull blades sooner; slippery bark rolls underfoot.', source };
-  return [...(oak && month >= 3 && month <= 6 ? cautionsFor('oakWilt') : []), ...(month <= 2 || month === 11 ? [frozen] : []), ...cautionsFor('moving')];
+  const { name } = speciesOf(speciesCode);
+  return [
+    ...(/\boak$/.test(name) && month >= 3 && month <= 6 ? told('oakWilt') : []),
+    ...(month <= 2 || month === 11 ? told('frozen') : []),
+    ...(/\bash$/.test(name) ? told('ash') : []),
+    ...told('quarantine'),
+  ];
 }

@@ -1,4 +1,4 @@
-import { cautionsFor, type Caution } from './cautions.ts';
+import { told, type CautionText } from '../cautions.ts';
 
 const radians = (degrees: number): number => (degrees * Math.PI) / 180;
 
@@ -20,11 +20,11 @@ export interface Reach {
   readonly reachFt: number;
   /** Everybody else stays at least this far away while a tree is felled, feet: two tree lengths. */
   readonly clearZoneFt: number;
-  readonly cautions: readonly Caution[];
+  readonly cautions: readonly CautionText[];
 }
 
 /** How far a tree reaches on the ground, and the zone to keep clear (29 CFR 1910.266: two tree lengths), with the cautions. */
-export const reachOf = (heightFt: number): Reach => ({ reachFt: heightFt * 1.1, clearZoneFt: heightFt * 2, cautions: cautionsFor('felling') });
+export const reachOf = (heightFt: number): Reach => ({ reachFt: heightFt * 1.1, clearZoneFt: heightFt * 2, cautions: told('felling', 'storm', 'distance', 'height') });
 
 /** Usable 16-ft logs below a height where the stem becomes too thin or too rough, in halves, down; a foot is left for the stump. */
 export const usableLogs16ft = (usableHeightFt: number): number => Math.max(0, Math.floor(((usableHeightFt - 1) / 16) * 2) / 2);

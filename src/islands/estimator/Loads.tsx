@@ -1,6 +1,6 @@
 import { useState, type ReactElement } from 'react';
+import { told } from '~/domain/cautions.ts';
 import { parseNumber } from '~/domain/measure.ts';
-import { cautionsFor } from '~/domain/timber/cautions.ts';
 import { eachLog, type LogGroup } from '~/domain/timber/logs-in-url.ts';
 import { speciesOf } from '~/domain/timber/species.ts';
 import { canLift, greenWeightWithBark, loadMargin, planTrips } from '~/domain/timber/weight.ts';
@@ -37,7 +37,7 @@ export function Loads({ logs, units }: { readonly logs: readonly LogGroup[]; rea
         <p className="mt-2" role="status">{liftable !== null && `It may lift ${wholeNumber(liftable)} of ${countOf(weights.length, 'log')}; the heaviest is ${sayWeight(heaviest, units)}.`}</p>
       </div>
       <p className="text-sm text-ink-soft sm:col-span-2">Only {Math.round(loadMargin * 100)} % of a rating is used (common practice, no source): green logs differ, and weights here include the bark.</p>
-      <div className="sm:col-span-2"><Cautions cautions={cautionsFor('loading')} /></div>
+      <div className="sm:col-span-2"><Cautions cautions={told('lifting', 'rolling', 'trailer', 'tieDowns')} /></div>
     </div>
   );
 }

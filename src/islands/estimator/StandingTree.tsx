@@ -1,9 +1,9 @@
 import { useState, type ReactElement } from 'react';
+import { told } from '~/domain/cautions.ts';
 import { parseLengthFt, parseLengthIn, parseNumber } from '~/domain/measure.ts';
 import { heightByAngleFt, heightByStickFt, reachOf, usableLogs16ft } from '~/domain/timber/standing-tree.ts';
 import { roundHalfUp } from '~/domain/timber/rounding.ts';
 import { treeVolume, type TreeVolumeRule } from '~/domain/timber/tree-volume.ts';
-import { cautionsFor } from '~/domain/timber/cautions.ts';
 import { Field } from '~/islands/form/fields.tsx';
 import { Radios } from '~/islands/form/choices.tsx';
 import { sayFeet, wholeNumber, type Units } from '~/islands/logs/words.ts';
@@ -101,7 +101,7 @@ export function StandingTree({ units }: { readonly units: Units }): ReactElement
             </>
           )}
         </dl>
-        <Cautions cautions={[...cautionsFor('felling', 'lines')]} />
+        <Cautions cautions={told('felling', 'storm', 'distance', 'height', 'lines')} />
       </div>
     </div>
   );

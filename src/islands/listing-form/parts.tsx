@@ -1,6 +1,7 @@
 import { createContext, useContext, type ReactElement, type ReactNode } from 'react';
 import { field } from '~/components/classes.ts';
 import { describedBy, errorId, fieldId, hintId } from '~/components/field-ids.ts';
+import { cautionSource } from '~/domain/cautions.ts';
 import type { Danger } from '~/domain/listing/cautions.ts';
 import type { Option } from '~/domain/listing/answers.ts';
 import type { Answer, ListingTyped } from '~/domain/listing/draft.ts';
@@ -93,7 +94,7 @@ export function Care({ danger }: { readonly danger: Danger | null }): ReactEleme
     <aside className="border-l-4 border-amber bg-sheet px-4 py-3" aria-label={`Take care: ${danger.title}`}>
       <p className="font-bold"><span className="text-amber">Take care.</span> {danger.title}</p>
       {danger.cautions.map((caution) => (
-        <p className="mt-1 max-w-prose" key={caution.text}>{caution.text} <span className="text-sm text-ink-soft">({caution.source})</span></p>
+        <p className="mt-1 max-w-prose" key={caution.title}>{caution.text} <span className="text-sm text-ink-soft">{cautionSource(caution)}</span></p>
       ))}
       <p className="mt-2 text-sm text-ink-soft">Follow local codes, the equipment’s manual and a licensed or trained professional.</p>
     </aside>

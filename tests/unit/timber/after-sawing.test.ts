@@ -87,9 +87,9 @@ describe('saw-by (common practice, no source)', () => {
 
   test('oak in May is warned about wilt, pine is not', () => {
     const texts = (code: string, day: string): string => seasonCautions(code, day).map(({ text }) => text).join(' ');
-    expect(texts('white-oak', '2026-05-10')).toContain('oak wilt');
-    expect(texts('red-pine', '2026-05-10')).not.toContain('oak wilt');
-    expect(texts('white-oak', '2026-01-10')).toContain('Frozen');
+    expect(texts('white-oak', '2026-05-10')).toContain('spread oak wilt');
+    expect(texts('red-pine', '2026-05-10')).not.toContain('spread oak wilt');
+    expect(texts('white-oak', '2026-01-10')).toContain('slippery bark');
   });
 });
 
