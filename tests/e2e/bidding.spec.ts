@@ -9,7 +9,8 @@ import { another, expect, expectAccessible, mailbox, origin, test } from './supp
 /** People and a listing of their own for each check, so that checks do not meet. */
 async function people(tag: string): Promise<{ owner: string; sawyer: string; number: number }> {
   const [owner, sawyer, rival] = [new Browser(origin()), new Browser(origin()), new Browser(origin())];
-  const address = (name: string): string => `${name}.${tag}@e2e.example`;
+  const mark = Date.now();
+  const address = (name: string): string => `${name}.${tag}.${mark}@e2e.example`;
   await owner.signUp({ name: 'Olga Owner', email: address('olga'), as: ['landowner'] }, mailbox());
   await sawyer.signUp({ name: 'Sven Sawyer', email: address('sven'), as: ['sawyer'] }, mailbox());
   await rival.signUp({ name: 'Rita Rival', email: address('rita'), as: ['sawyer'] }, mailbox());

@@ -2,6 +2,7 @@ import type { Page } from '@playwright/test';
 import { PASSWORD, readMail } from '../support/browser.ts';
 import { another, awake, expect, expectAccessible, mailbox, test } from './support/check.ts';
 import { dayFromNow, field, fillTheRest } from './support/listing-form.ts';
+import { payByCard } from './support/pay.ts';
 import { openAccount, signIn } from './support/people.ts';
 import { setUpSawyer } from './support/sawyer-form.ts';
 
@@ -20,13 +21,6 @@ async function publish(page: Page): Promise<number> {
   await page.getByRole('button', { name: 'Publish this listing' }).click();
   await expect(page.getByText('Your listing is on show')).toBeVisible();
   return Number(/\/listings\/(\d+)/.exec(page.url())?.[1]);
-}
-
-/** The stand-in's card page, filled in and sent. */
-async function payByCard(page: Page, cardNumber: string): Promise<void> {
-  await expect(page.getByText('Stand-in card page')).toBeVisible();
-  for (const [name, value] of Object.entries({ email: 'payer@e2e.example', cardNumber, cardExpiry: '12 / 34', cardCvc: '123', billingName: 'A Payer', billingPostalCode: '54665' })) await field(page, name).fill(value);
-  await page.getByRole('button', { name: /^Pay \$/ }).click();
 }
 
 /** Says what a page says of money, without its sign. */

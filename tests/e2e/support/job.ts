@@ -3,7 +3,7 @@ import { createServer } from 'node:net';
 import { join } from 'node:path';
 import { root } from '../../../src/launch/setup.mjs';
 
-/** A held booking with the people it belongs to, as `make-job.ts` makes it. */
+/** A booking with the people it belongs to, as `make-job.ts` makes it. */
 export interface Job {
   readonly number: number;
   readonly landowner: string;
@@ -20,8 +20,8 @@ function run(file: string, ...args: string[]): string {
   return stdout;
 }
 
-/** Makes a held booking beside the running product. */
-export const makeJob = (): Job => JSON.parse(run('tests/e2e/support/make-job.ts').trim().split('\n').at(-1) ?? '') as Job;
+/** Makes a booking beside the running product: held, or agreed with the hold still to be paid. */
+export const makeJob = (standing: 'held' | 'agreed' = 'held'): Job => JSON.parse(run('tests/e2e/support/make-job.ts', standing).trim().split('\n').at(-1) ?? '') as Job;
 
 /** Ends every session of an account, as if a month had passed. */
 export const expireSessions = (email: string): void => void run('tests/e2e/support/expire-sessions.ts', email);
@@ -62,4 +62,11 @@ export async function ownWeb(): Promise<OwnWeb> {
     });
   await start();
   return { origin, start, stop };
+}
+
+/** What the provider's stand-in charged for a booking, in cents, charge by charge. */
+export async function chargesOf(booking: number): Promise<number[]> {
+  const address = productEnvironment()['PAYMENTS_URL'] ?? '';
+  const { charge } = (await (await fetch(`${address}/_control/objects`)).json()) as { charge: { amount: number; paid: boolean; transfer_group: string | null }[] };
+  return charge.filter(({ paid, transfer_group }) => paid && transfer_group === `booking-${booking}`).map(({ amount }) => amount);
 }
