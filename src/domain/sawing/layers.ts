@@ -120,46 +120,40 @@ export function stackOf(stock: Stock, rule: RowRule, blocked: Units = blockedHal
   const tables = stock.groups.map((group) => layerTable(stock, group, rule));
   const best = new Float64Array(2 * reach + 2);
   const choice = new Int8Array(2 * reach + 2).fill(-1);
-  const passes = (bottom: Units, top: Units): boolean => blocked === 0 || bottom >= blocked || top <= -blocked;
-  const worthAt = ({ group, first, values }: LayerTable, at: Units): number => {
-    const t = group.thickness;
-    if (blocked > 0 && !(passes(at - kerf, at) && passes(at + t, at + t + kerf))) return 0;
-    return values[at >= first ? at - first : -at - t - first] ?? 0;
-  };
+  // The loop below runs for every unit of height: each thickness's figures stand in plain arrays.
+  const thickness = Int32Array.from(tables, ({ group }) => group.thickness);
+  const firsts = Int32Array.from(tables, ({ first }) => first);
+  const tablesOfValues = tables.map(({ values }) => values);
+  const isPassing = (at: Units, t: Units): boolean => (at - kerf >= blocked || at <= -blocked) && (at + t >= blocked || at + t + kerf <= -blocked);
   for (let at = reach; at >= -reach; at--) {
-    let most = best[at + reach + 1] as number;
-    for (let index = 0; index < tables.length; index++) {
-      const table = tables[index] as LayerTable;
-      const worth = worthAt(table, at);
+    const here = at + reach;
+    let most = best[here + 1] as number;
+    let chosen = -1;
+    for (let index = 0; index < tablesOfValues.length; index++) {
+      const values = tablesOfValues[index] as Float64Array;
+      const t = thickness[index] as number;
+      const first = firsts[index] as number;
+      const slot = at >= first ? at - first : -at - t - first;
+      if (slot >= values.length) continue;
+      const worth = values[slot] as number;
       if (worth <= 0) continue;
-      const next = at + table.group.thickness + kerf;
-      const sum = worth + (next > reach ? 0 : (best[next + reach] as number));
-      if (sum > most + 1e-9) {
+      const next = here + t + kerf;
+      const sum = next > 2 * reach ? worth : worth + (best[next] as number);
+      if (sum > most + 1e-9 && (blocked === 0 || isPassing(at, t))) {
         most = sum;
-        choice[at + reach] = index;
+        chosen = index;
       }
     }
-    best[at + reach] = most;
+    choice[here] = chosen;
+    best[here] = most;
   }
   const above = (from: Units): number => (from > reach ? 0 : (best[Math.max(0, Math.ceil(from) + reach)] as number));
-  const takeAt = (at: Units, target: number): LayerTable | undefined =>
-    tables.find((table) => {
-      const worth = worthAt(table, at);
-      return worth > 0 && worth + above(at + table.group.thickness + kerf) >= target - 1e-7;
-    });
   const layers = (from: Units): Layer[] => {
     const found: Layer[] = [];
-    let at = Math.max(-reach, Math.ceil(from));
-    let target = above(at);
-    while (at <= reach && target > 1e-7) {
-      const table = takeAt(at, target);
-      if (!table) {
-        at++;
-        continue;
-      }
-      found.push({ group: table.group, at });
-      at += table.group.thickness + kerf;
-      target = above(at);
+    for (let at = Math.max(-reach, Math.ceil(from)); at <= reach; ) {
+      const table = tables[choice[at + reach] as number];
+      if (table) found.push({ group: table.group, at });
+      at += table ? table.group.thickness + kerf : 1;
     }
     return found;
   };

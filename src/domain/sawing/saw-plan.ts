@@ -69,7 +69,7 @@ export class Planner {
 }
 
 const COUNT_ROUNDS = 14;
-/** Logs up to this diameter are searched at the full length; the search of a larger one grows with the square of it. */
+/** Logs up to this diameter are searched at the full length; each band of a larger one takes longer, and there are more of them. */
 const FULL_SEARCH_IN = 21;
 /** Work (see `workOf`) up to which the search is at its full length, and the most that is taken on. */
 const ORDINARY_WORK = 2000;
@@ -108,7 +108,7 @@ export function sawPlan(request: SawPlanRequest): SawPlan {
   const work = workOf(full);
   const fewer = withFewerLengths(pieces, log.lengthFt, work, MOST_WORK);
   const whole = fewer === pieces ? full : stockOf(log, mill, fewer, waneAllowanceIn);
-  const share = Math.max(0.05, Math.min(1, ORDINARY_WORK / workOf(whole), (FULL_SEARCH_IN / (2 * inches(whole.reach))) ** 3));
+  const share = Math.max(0.05, Math.min(1, ORDINARY_WORK / workOf(whole), (FULL_SEARCH_IN / (2 * inches(whole.reach))) ** 4));
   const planners = new Map<Stock, Planner>();
   const plannerOf = (stock: Stock): Planner => {
     const planner = planners.get(stock) ?? new Planner(stock, Math.ceil((stock === whole ? effort : Math.min(effort, QUICK)) * share));
