@@ -20,6 +20,16 @@ export const boardFeetShort = (demand: readonly Demand[], { short }: Choice): nu
 
 const volumeOf = (pool: Pool, { times }: Choice): number => times.reduce((sum, count, plan) => sum + count * (pool.shapes[pool.made[plan]?.shape ?? 0]?.cubicFeet ?? 0), 0);
 
+/** Never more plans of a shape than there are logs of it: what a solver stopped short of an answer may hold. */
+function withinLogs(pool: Pool, times: readonly number[]): number[] {
+  const free = pool.shapes.map(({ ids }) => ids.length);
+  return pool.made.map(({ shape }, plan) => {
+    const taken = Math.max(0, Math.min(times[plan] ?? 0, free[shape] ?? 0));
+    free[shape] = (free[shape] ?? 0) - taken;
+    return taken;
+  });
+}
+
 /** A choice by how often each plan is cut. */
 function choiceOf(pool: Pool, times: readonly number[]): Choice {
   const made = pool.demand.map((_, size) => times.reduce((sum, count, plan) => sum + count * (pool.made[plan]?.counts[size] ?? 0), 0));
@@ -28,7 +38,7 @@ function choiceOf(pool: Pool, times: readonly number[]): Choice {
 
 /** Starts from plans taken in fractions, rounded down, and adds log after log the plan that covers most of what is left; then leaves out logs that nothing needs. */
 function completed(pool: Pool, fractions: readonly number[]): Choice {
-  const times = pool.made.map((_, index) => Math.floor((fractions[index] ?? 0) + TINY));
+  const times = withinLogs(pool, fractions.map((part) => Math.floor(part + TINY)));
   const free = pool.shapes.map(({ ids }, shape) => ids.length - times.reduce((sum, count, plan) => (pool.made[plan]?.shape === shape ? sum + count : sum), 0));
   const { short } = choiceOf(pool, times);
   const left = [...short];
@@ -66,7 +76,7 @@ export function choose(pool: Pool, solve: Solver, seconds: number): Choice {
   let best = completed(pool, []);
   const offer = (solution: Solution | null): void => {
     if (!solution) return;
-    const found = [choiceOf(pool, solution.columns.slice(0, plans).map((value) => Math.floor(value + 0.01))), completed(pool, solution.columns)];
+    const found = [choiceOf(pool, withinLogs(pool, solution.columns.slice(0, plans).map((value) => Math.floor(value + 0.01)))), completed(pool, solution.columns)];
     for (const each of found) if (isBetter(pool, each, best)) best = each;
   };
   offer(solve(pool.model(false, boardFeetOf, (cubicFeet) => cubicFeet * VOLUME_WEIGHT), seconds));

@@ -41,7 +41,7 @@ export interface CutListAnswer {
   readonly covered: readonly Covered[];
   /** A plan for every log, in the order given; without boards where the log is not needed or gives nothing, with the reason. */
   readonly plans: readonly LogPlan[];
-  /** Board feet in the plans beyond what was asked for. */
+  /** Board feet in the plans beyond what was asked for. Plans hold asked-for boards only, so that more of a size than is wanted never stands in the place of other lumber: this is 0. */
   readonly surplusBoardFeet: number;
   readonly boardFeetShort: number;
   /** No plans of these patterns leave less board feet short. */

@@ -105,6 +105,16 @@ describe('a cut list over many logs', () => {
     expect(answer.covered[0]?.short).toBeGreaterThan(9_900);
   });
 
+  it('takes no more plans than there are logs, whatever a solver stopped short of an answer says', () => {
+    const hasty: Solver = (model) => ({ proven: false, cost: 0, columns: model.columns.map(() => 9), prices: model.rows.map(() => 0) });
+    const asked: CutListRequest = { logs: logs(9, 9), mill, pieces: [{ id: 'shelf', thicknessIn: 1, widthIn: 6, lengthFt: 8, count: 40 }] };
+    const answer = cutList(asked, hasty, planning(20));
+    const boards = answer.plans.reduce((sum, plan) => sum + plan.boards.length, 0);
+    expect(boards).toBeGreaterThan(0);
+    expect(answer.covered).toEqual([{ id: 'shelf', made: boards, short: 40 - boards }]);
+    expect(answer.surplusBoardFeet).toBe(0);
+  });
+
   it('keeps to the mill’s longest log', () => {
     const answer = cutList({ logs: logs(12), mill: { kerfIn: 0.125, longestFt: 6 }, pieces: [{ id: 'slat', thicknessIn: 1, widthIn: 4, lengthFt: 4, count: 1 }] }, solve, planning(5));
     expect(answer.plans[0]?.reason).toContain('6 ft');
