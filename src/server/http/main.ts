@@ -3,6 +3,7 @@ import { fileURLToPath, pathToFileURL } from 'node:url';
 import { env } from '../env.ts';
 import { log } from '../log.ts';
 import { createFront, type Handler } from './front.ts';
+import { warmUp } from './warm-up.ts';
 
 const dist = fileURLToPath(new URL('../../../dist', import.meta.url));
 const settings = env();
@@ -13,8 +14,10 @@ server.requestTimeout = 30_000;
 server.headersTimeout = 10_000;
 server.keepAliveTimeout = 5_000;
 server.listen(settings.PORT, settings.HOST, () => {
-  log().info({ port: settings.PORT }, 'web ready');
-  process.send?.('ready');
+  void warmUp(settings).then(() => {
+    log().info({ port: settings.PORT }, 'web ready');
+    process.send?.('ready');
+  });
 });
 
 let stopping = false;
