@@ -19,6 +19,16 @@ async function registerWorker(): Promise<void> {
     workbox.messageSkipWaiting();
   });
   await workbox.register();
+  await askToBeTakenIn();
+}
+
+/**
+ * A worker takes in the pages that are open at the moment it begins. A page that was on its way then is left without one for as long
+ * as it stays open, unless it asks.
+ */
+async function askToBeTakenIn(): Promise<void> {
+  const { active } = await navigator.serviceWorker.ready;
+  if (navigator.serviceWorker.controller === null) active?.postMessage({ type: 'CLAIM' });
 }
 
 /** Whether this page was made for somebody who is signed in. */

@@ -6,6 +6,7 @@ import { NavigationRoute, registerRoute } from 'workbox-routing';
 declare const self: {
   readonly __WB_MANIFEST: (string | PrecacheEntry)[];
   readonly location: Location;
+  readonly clients: { claim: () => Promise<void> };
   addEventListener: (type: 'message', listener: (event: MessageEvent<unknown>) => void) => void;
   skipWaiting: () => Promise<void>;
 };
@@ -19,7 +20,9 @@ precacheAndRoute(self.__WB_MANIFEST, { ignoreURLParametersMatching: [/.*/] });
 clientsClaim();
 
 self.addEventListener('message', ({ data }) => {
-  if (typeof data === 'object' && data !== null && 'type' in data && data.type === 'SKIP_WAITING') void self.skipWaiting();
+  if (typeof data !== 'object' || data === null || !('type' in data)) return;
+  if (data.type === 'SKIP_WAITING') void self.skipWaiting();
+  if (data.type === 'CLAIM') void self.clients.claim();
 });
 
 /** Where a page that cannot be had leads: a booking to what is kept of it, everything else to the day with a word about it. */
