@@ -27,7 +27,7 @@ export const buttonKinds = {
 export type ButtonKind = keyof typeof buttonKinds;
 
 /** The milling-day size: reached with a glove on. */
-export const gloveSize = 'min-h-glove px-6 text-lg';
+export const gloveSize = '!min-h-glove px-6 text-lg';
 
 /** Joins class names, leaving out what is absent. */
 export const join = (...names: readonly (string | false | null | undefined)[]): string => names.filter(Boolean).join(' ');

@@ -29,7 +29,7 @@ export function Day(): ReactElement {
   const booking = day.bookings.find(({ number }) => number === open);
   if (booking) return <DayBooking key={booking.number} booking={booking} />;
   return (
-    <div className="mx-auto max-w-[34rem] px-4 pb-12" data-ready="true">
+    <div className="mx-auto max-w-[34rem] px-4 pb-12" data-ready="true" data-outdoors>
       {wanted && heard !== 'sent' && <p className="mt-4 border-l-4 border-amber bg-sheet px-3 py-2" role="status">That page needs signal. This is what is kept on the phone.</p>}
       <h1 className="mt-6">Your milling days</h1>
       <KeptLine day={day} heard={heard} />
@@ -83,7 +83,7 @@ function Nobody({ heard }: { readonly heard: Sending | null }): ReactElement {
 
 function Words({ title, children }: { readonly title: string; readonly children: React.ReactNode }): ReactElement {
   return (
-    <div className="mx-auto max-w-[34rem] px-4 pb-12" data-ready="true">
+    <div className="mx-auto max-w-[34rem] px-4 pb-12" data-ready="true" data-outdoors>
       <h1 className="mt-6">{title}</h1>
       <p className="mt-3 text-lg">{children}</p>
     </div>

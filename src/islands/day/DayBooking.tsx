@@ -34,7 +34,7 @@ export function DayBooking({ booking }: { readonly booking: KeptBooking }): Reac
   const start = (): void => void putEntries(booking.accountId, booking.number, [{ kind: 'start', id: crypto.randomUUID() }]).then(sendAll);
   const mine = booking.side === 'sawyer';
   return (
-    <div data-ready={view ? 'true' : undefined}>
+    <div data-ready={view ? 'true' : undefined} data-outdoors>
       <nav className="mx-auto max-w-[34rem] px-4" aria-label="Back"><a className="inline-flex min-h-glove items-center" href="#">All milling days</a></nav>
       {view && mine && begun && <DayTally view={view} booking={booking} />}
       <div className="mx-auto max-w-[34rem] px-4 pb-12">

@@ -12,7 +12,7 @@ interface PadProps {
   readonly read?: (text: string) => number | null;
 }
 
-const key = 'min-h-glove min-w-[56px] flex-1 rounded border-2 border-ink px-2 font-mono text-xl font-bold';
+const key = 'min-h-glove min-w-[56px] rounded border-2 border-ink px-1 font-mono text-xl font-bold';
 
 /** One row of big keys: reached with a glove on, and a last key for any other value. */
 export function Pad({ label, values, chosen, name, onChoose, read }: PadProps): ReactElement {
@@ -30,7 +30,7 @@ export function Pad({ label, values, chosen, name, onChoose, read }: PadProps): 
   return (
     <fieldset className="mt-3">
       <legend className="text-sm">{label}</legend>
-      <div className="mt-1 flex flex-wrap gap-2">
+      <div className="mt-1 grid grid-cols-[repeat(auto-fill,minmax(60px,1fr))] gap-2">
         {shown.map((value) => (
           <button key={value} type="button" className={join(key, value === chosen ? 'bg-ink text-paper' : 'bg-sheet text-ink')} aria-pressed={value === chosen} onClick={() => onChoose(value)}>
             {name(value)}

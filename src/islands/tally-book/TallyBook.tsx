@@ -64,14 +64,14 @@ export function TallyPad({ queue }: { readonly queue: TallyQueue }): ReactElemen
   };
 
   return (
-    <div className="mx-auto max-w-[34rem]" data-pad>
-      <div className="sticky top-0 z-10 flex items-center justify-between gap-3 bg-ink px-4 py-3 text-paper">
+    <div className="mx-auto max-w-[34rem]" data-outdoors>
+      <div className="sticky top-0 z-10 flex flex-wrap items-center justify-between gap-x-3 gap-y-1 bg-ink px-4 py-3 text-paper">
         <p className="font-slab text-lg font-bold">Tally · {log?.label ?? 'log'} of {view.logs.length}</p>
         <SavedBadge queue={queue} />
       </div>
       <SendingTrouble queue={queue} />
 
-      <div className="flex items-end justify-between gap-4 px-4 pt-4">
+      <div className="flex flex-wrap items-end justify-between gap-x-4 px-4 pt-4">
         <div className="text-sm"><p>Sawn so far</p><p className="figure text-base">{formatCents(counted.job.costCents)} <span className="text-ink-soft">of {formatCents(counted.limitCents)} {counted.limitCents > view.heldCents ? 'allowed' : 'held'}</span></p></div>
         <p className="figure text-4xl font-bold" data-testid="sawn-so-far">{Number(counted.boardFeet.toFixed(2)).toLocaleString('en-US')} bf</p>
       </div>
@@ -98,7 +98,7 @@ export function TallyPad({ queue }: { readonly queue: TallyQueue }): ReactElemen
         )}
         <fieldset className="mt-3">
           <legend className="text-sm">What it is</legend>
-          <div className="mt-1 flex gap-2">
+          <div className="mt-1 flex flex-wrap gap-2">
             {([['board', 'Board'], ['slab', 'Slab'], ['out-of-size', 'Out of size']] as const).map(([value, name]) => (
               <button key={value} type="button" aria-pressed={kind === value} className={join('min-h-glove flex-1 rounded border-2 border-ink px-2 font-bold', kind === value ? 'bg-ink text-paper' : 'bg-sheet')} onClick={() => setKind(value)}>{name}</button>
             ))}
@@ -113,7 +113,7 @@ export function TallyPad({ queue }: { readonly queue: TallyQueue }): ReactElemen
           Add {count > 1 ? `${count} ` : ''}{kind === 'board' ? (count > 1 ? 'boards' : 'board') : kind === 'slab' ? 'slab' : 'out of size'}
           {kind === 'board' && <span className="figure"> · {next.surfaceMeasure !== null && `SM ${next.surfaceMeasure} · `}{Number(next.boardFeet.toFixed(2))} bf</span>}
         </button>
-        <div className="mt-1 flex items-center justify-between gap-4">
+        <div className="mt-2 flex flex-wrap items-center justify-between gap-x-4">
           <button type="button" className={join(buttonKinds.quiet, 'min-h-glove')} disabled={!lastBoard} onClick={() => lastBoard && add({ kind: 'remove', id: lastBoard.id })}>Undo last</button>
           <label className="flex items-center gap-2">How many<input className="min-h-glove w-20 border-2 border-ink bg-sheet px-2 font-mono text-xl" type="number" min={1} max={500} value={several} onChange={(event) => setSeveral(event.target.value)} /></label>
         </div>
@@ -149,11 +149,11 @@ function SizeTable({ view, add }: { readonly view: TallyView; readonly add: (...
       <thead><tr><th scope="col">Size</th><th scope="col" className="num">Boards</th><th scope="col" className="num">bf</th><th scope="col"><span className="sr-only">Correct</span></th></tr></thead>
       <tbody>
         {rows.map((row) => (
-          <tr key={row.key}>
+          <tr key={row.key} className="[&>*]:!align-middle">
             <th scope="row" className="figure font-normal">{sizeName(view, row)}{row.kind === 'board' ? '' : ` (${row.kind === 'slab' ? 'slab' : 'out of size'})`}</th>
             <td className="num">{row.count}</td>
             <td className="num">{row.kind === 'board' ? Number(row.boardFeet.toFixed(2)) : '·'}</td>
-            <td className="num"><button type="button" className="min-h-target px-2 font-semibold text-crayon underline" onClick={() => takeOne(row.key)}>Take back<span className="sr-only"> the last {sizeName(view, row)}</span></button></td>
+            <td className="text-right"><button type="button" className="px-2 font-semibold text-crayon underline" onClick={() => takeOne(row.key)}>Take back<span className="sr-only"> the last {sizeName(view, row)}</span></button></td>
           </tr>
         ))}
       </tbody>
