@@ -20,8 +20,15 @@ function run(file: string, ...args: string[]): string {
   return stdout;
 }
 
-/** Makes a booking beside the running product: held, or agreed with the hold still to be paid. */
-export const makeJob = (standing: 'held' | 'agreed' = 'held'): Job => JSON.parse(run('tests/e2e/support/make-job.ts', standing).trim().split('\n').at(-1) ?? '') as Job;
+/** Makes bookings beside the running product, each of two people of its own: held, or agreed with the hold still to be paid. */
+export const makeJobs = (count: number, standing: 'held' | 'agreed' = 'held'): Job[] => run('tests/e2e/support/make-job.ts', standing, String(count)).trim().split('\n').slice(-count).map((line) => JSON.parse(line) as Job);
+
+/** Makes one such booking. */
+export function makeJob(standing: 'held' | 'agreed' = 'held'): Job {
+  const [job] = makeJobs(1, standing);
+  if (!job) throw new Error('No booking was made.');
+  return job;
+}
 
 /** Ends every session of an account, as if a month had passed. */
 export const expireSessions = (email: string): void => void run('tests/e2e/support/expire-sessions.ts', email);
