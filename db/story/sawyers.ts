@@ -17,6 +17,7 @@ interface Sawyer {
   readonly zip: string;
   readonly travelMiles: number;
   readonly services: SawyerProfileForm['services'];
+  readonly lumberCredential?: string;
   readonly workingDays?: readonly number[];
   readonly noticeDays?: number;
   readonly mills: readonly MillForm[];
@@ -30,7 +31,7 @@ const mill = (name: string, changes: Partial<MillForm> = {}): MillForm => ({
 });
 
 const sawyers: readonly Sawyer[] = [
-  { key: 'bram', businessName: 'Kerfman Portable Sawing', zip: '54667', travelMiles: 60, services: ['edging', 'delivery', 'metal-detecting'], noticeDays: 2,
+  { key: 'bram', businessName: 'Kerfman Portable Sawing', zip: '54667', travelMiles: 60, services: ['edging', 'delivery', 'metal-detecting'], noticeDays: 2, lumberCredential: 'State native lumber certificate, framing of one’s own buildings',
     about: 'I bring a hydraulic band mill and run the detector over every log before it goes on the bed. I like yard trees; bring me the ugly ones. Stickers cut on site.',
     mills: [mill('Wide band', { paceBfPerHour: 250 }), mill('Little band', { largestLogIn: 22, widestCutIn: 20, widestBoardIn: 18, longestFt: 12, paceBfPerHour: 110, turnsLogsBy: 'hand' })] },
   { key: 'cleo', businessName: 'Bandwheel & Daughter', zip: '54639', travelMiles: 45, services: ['edging', 'resaw'], workingDays: [1, 2, 3, 4, 5],
@@ -43,7 +44,7 @@ const sawyers: readonly Sawyer[] = [
     about: 'Sawing on your landing, drying at mine: the kiln takes 1,500 bf at a time.', mills: [mill('North band', { largestLogIn: 36, widestCutIn: 32, widestBoardIn: 30, longestFt: 21, paceBfPerHour: 300 })] },
   { key: 'kit', businessName: 'Longbar Slabs', zip: '54623', travelMiles: 90, services: ['slab-flattening'],
     about: 'Wide slabs with a long bar. Slow, and worth it for a big crotch.', mills: [mill('Long bar', { kind: 'chainsaw', kerfIn: 3 / 8, largestLogIn: 58, widestCutIn: 54, widestBoardIn: 54, longestFt: 14, shortestFt: 2, paceBfPerHour: 60, turnsLogsBy: 'hand' })] },
-  { key: 'lark', businessName: 'Cantwell Lumber to Measure', zip: '53581', travelMiles: 55, services: ['edging', 'resaw', 'delivery'],
+  { key: 'lark', businessName: 'Cantwell Lumber to Measure', zip: '53581', travelMiles: 55, services: ['edging', 'resaw', 'delivery'], lumberCredential: 'A grader comes by the day for loads over 1,000 bf',
     about: 'Twenty years of barn timbers. I cut to a list and I stick to it.', mills: [mill('Timber band', { largestLogIn: 36, widestCutIn: 30, widestBoardIn: 28, longestFt: 26, paceBfPerHour: 260 })] },
   { key: 'moss', businessName: 'Hydraulin Sawing', zip: '54660', travelMiles: 75, services: ['edging', 'delivery', 'metal-detecting'],
     about: 'A big mill with a loader of its own, and a helper who comes along. For a landing with a day’s work or more.', mills: [mill('Big diesel', { kerfIn: 0.11, largestLogIn: 40, widestCutIn: 34, widestBoardIn: 30, longestFt: 24, paceBfPerHour: 450 })] },
@@ -60,7 +61,7 @@ const sawyers: readonly Sawyer[] = [
 async function setUp(sawyer: Sawyer, at: Date): Promise<void> {
   const by = await who(sawyer.key);
   const { businessName, about, zip, travelMiles, services } = sawyer;
-  await saveSawyerProfile(by, { businessName, about, zip, travelMiles, services, languages: ['English'], workingDays: [...(sawyer.workingDays ?? [1, 2, 3, 4, 5, 6])], noticeDays: sawyer.noticeDays ?? 3 }, at);
+  await saveSawyerProfile(by, { businessName, about, zip, travelMiles, services, languages: ['English'], lumberCredential: sawyer.lumberCredential ?? '', workingDays: [...(sawyer.workingDays ?? [1, 2, 3, 4, 5, 6])], noticeDays: sawyer.noticeDays ?? 3 }, at);
   for (const form of sawyer.mills) await saveMill(by, null, form, at);
   const card = rateCards[sawyer.key];
   if (card) await saveRateCard(by, card, at);

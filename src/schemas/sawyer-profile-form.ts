@@ -20,6 +20,7 @@ export const sawyerProfileForm = z.object({
   travelMiles: fieldOf(whole(1, 500, 'miles')),
   services: list.transform((typed) => SERVICES.map(({ code }) => code).filter((code) => typed.includes(code))),
   languages: fieldOf(text(200)).transform((typed) => typed.split(',').map((one) => one.trim()).filter((one) => one !== '')),
+  lumberCredential: fieldOf(text(160)),
   workingDays: weekdays,
   noticeDays: fieldOf(whole(0, 60, 'days')),
 });
@@ -34,6 +35,7 @@ interface Kept {
   readonly travelMiles: number;
   readonly services: readonly string[];
   readonly languages: readonly string[];
+  readonly lumberCredential: string;
   readonly workingDays: readonly number[];
   readonly noticeDays: number;
 }
@@ -46,6 +48,7 @@ export const sawyerProfileTyped = (kept: Kept | null): Record<string, string | r
   travelMiles: String(kept?.travelMiles ?? 50),
   services: kept?.services ?? [],
   languages: kept?.languages.join(', ') ?? '',
+  lumberCredential: kept?.lumberCredential ?? '',
   workingDays: (kept?.workingDays ?? [1, 2, 3, 4, 5, 6]).map(String),
   noticeDays: String(kept?.noticeDays ?? 2),
 });

@@ -119,10 +119,10 @@ describe('a bid on a revised listing', () => {
 describe('a sawyer’s set-up', () => {
   const mill = { name: 'Swing', kind: 'swing-blade', kerfIn: 0.19, largestLogIn: 60, widestCutIn: 20, widestBoardIn: 16, longestFt: 20, shortestFt: 3, paceBfPerHour: 150, turnsLogsBy: 'hand' } as const;
   it('keeps a base on the coarse grid only', async () => {
-    await saveSawyerProfile(cast.cleo, { businessName: 'Cleo saws', about: '', zip: '54665', travelMiles: 60, services: ['edging'], languages: ['English'], workingDays: [1, 2, 3], noticeDays: 2 }, MARKET_AT);
+    await saveSawyerProfile(cast.cleo, { businessName: 'Cleo saws', about: '', zip: '54665', travelMiles: 60, services: ['edging'], languages: ['English'], lumberCredential: '', workingDays: [1, 2, 3], noticeDays: 2 }, MARKET_AT);
     const profile = await SawyerProfile.findByPk(cast.cleo.id, { rejectOnEmpty: true });
     expect(profile).toMatchObject({ state: 'WI', timeZone: 'America/Chicago', workingDays: [1, 2, 3] });
-    await expect(saveSawyerProfile(cast.cleo, { businessName: 'Cleo saws', about: '', zip: '00000', travelMiles: 60, services: [], languages: [], workingDays: [1], noticeDays: 2 }, MARKET_AT)).rejects.toMatchObject({ kind: 'invalid', problems: [{ path: 'zip' }] });
+    await expect(saveSawyerProfile(cast.cleo, { businessName: 'Cleo saws', about: '', zip: '00000', travelMiles: 60, services: [], languages: [], lumberCredential: '', workingDays: [1], noticeDays: 2 }, MARKET_AT)).rejects.toMatchObject({ kind: 'invalid', problems: [{ path: 'zip' }] });
   });
   it('adds, changes and retires mills, but never the last nor another’s', async () => {
     const first = await saveMill(cast.cleo, null, mill, MARKET_AT);

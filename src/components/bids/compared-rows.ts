@@ -4,6 +4,7 @@ import { costParts } from '~/domain/trade/comparison.ts';
 import type { Line } from '~/domain/trade/price.ts';
 import { chargedMiles } from '~/domain/trade/price.ts';
 import { describeBasis, describeMinimum, describeRate } from '~/domain/trade/rate-card.ts';
+import { coverWords } from '~/domain/trade/list-cover.ts';
 import type { ComparedBid } from '~/server/queries/compare-bids.ts';
 import { lineWords, millWords } from './words.ts';
 
@@ -59,8 +60,20 @@ function fit({ frozen: { estimate } }: ComparedBid): Cell {
   return estimate.fit.fits ? words('all of them', estimate.fit.notes.join(' ')) : words('not all', [...estimate.fit.reasons, ...estimate.fit.notes].join(' '));
 }
 
+function cutList({ cover, status }: ComparedBid): Cell {
+  if (!cover) return words(status === 'toConfirm' ? 'not yet' : 'being worked out', status === 'toConfirm' ? 'once the sawyer has confirmed' : 'look again in a minute');
+  const { made, text, note } = coverWords(cover);
+  return { ...(made ? words(text, note) : figure(text, note)), ...(made ? { mark: 'whole list' } : {}) };
+}
+
+/** What a comparison's listing asks for beside its logs. */
+export interface Wants {
+  readonly list: boolean;
+  readonly dwelling: boolean;
+}
+
 /** Every row of the comparison, a cell for each bid in the order given. Rows that would be empty for all are left out. */
-export function comparedRows(bids: readonly ComparedBid[]): readonly ComparedRow[] {
+export function comparedRows(bids: readonly ComparedBid[], wants: Wants): readonly ComparedRow[] {
   const row = (label: string, cell: (bid: ComparedBid) => Cell, more: Omit<ComparedRow, 'label' | 'cells'> = {}): ComparedRow => ({ label, ...more, cells: bids.map(cell) });
   const lowest = marking(bids, ({ expectedCents }) => expectedCents, 'lowest');
   const lowestPerBf = marking(bids, ({ frozen }) => frozen.estimate.quote.costPerBfCents, 'lowest');
@@ -80,6 +93,8 @@ export function comparedRows(bids: readonly ComparedBid[]): readonly ComparedRow
     ...(bids.some((bid) => best(bid) !== undefined) ? [row('Best possible lumber', (bid) => (best(bid) === undefined ? words('no plan') : figure(`${bf(best(bid) ?? 0)} bf`)), { note: 'by the sawing plan of these logs on that mill' })] : []),
     row('Expected lumber tally', (bid) => figure(`${bf(bid.expectedBf)} bf`, [bid.expectedBy, bid.overrideReason === null ? '' : `“${bid.overrideReason}”`].filter(Boolean).join(': '))),
     row('Cost per bf sawn', (bid) => lowestPerBf(bid, figure(bid.frozen.estimate.quote.costPerBfCents === null ? '–' : formatCents(bid.frozen.estimate.quote.costPerBfCents))), { strong: true }),
+    ...(wants.list ? [row('Your cut list', cutList, { note: 'as planned on that mill' })] : []),
+    ...(wants.dwelling ? [row('Lumber for a dwelling', ({ lumberCredential }) => (lumberCredential === '' ? words('none stated') : words(lumberCredential, 'as the sawyer states it')), { note: 'local code asks for a grade or certification' })] : []),
     row('Mill', (bid) => words(bid.mill.name, millWords(bid.mill))),
     row('Logs that fit it', fit),
     row('Slabs and sawdust', (bid) => words({ left: 'stay at the landing', hauled: 'hauled away', bundled: 'bundled and left' }[bid.frozen.terms.waste])),

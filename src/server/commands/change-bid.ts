@@ -31,6 +31,7 @@ export async function changeBid(by: Viewer, bidId: string, form: BidForm, at: Da
       ...bidFigures(worked), listingRevision: listing.revision, millId: mill.id, mill, estimate: worked,
       overrideReason: form.ownBf === null ? null : form.ownReason, daysOffered: [...new Set(form.days)].sort(), message: form.message, updatedAt: at,
     });
+    await enqueue('plan-bid-list', { bidId: bid.id });
     const owner = await Account.findByPk(listing.ownerId, { rejectOnEmpty: true });
     await enqueue('send-mail', bidChanged(owner, by.name, listing, bid, linkTo(paths.listingBids(listing.number))));
   });

@@ -39,6 +39,7 @@ export async function placeBid(by: Viewer, listingNumber: number, form: BidForm,
         overrideReason: form.ownBf === null ? null : form.ownReason, daysOffered: [...new Set(form.days)].sort(), message: form.message, createdAt: at, updatedAt: at,
       });
       await record(by, 'placeBid', 'bid', bid.id, at, { data: { listing: listing.number, revision: listing.revision } });
+      await enqueue('plan-bid-list', { bidId: bid.id });
       const owner = await Account.findByPk(listing.ownerId, { rejectOnEmpty: true });
       await enqueue('send-mail', bidReceived(owner, by.name, listing, bid, linkTo(paths.listingBids(listing.number))));
       return bid.id;

@@ -6,6 +6,8 @@ export interface Jobs {
   'process-photo': { photoId: string };
   /** A listing has come on show or changed: who asked to be told of such? */
   'match-searches': { listingId: string };
+  /** A bid is new or worked out anew: what does its mill make of the cut list? */
+  'plan-bid-list': { bidId: string };
   'make-provider-call': { callId: string };
   'handle-provider-event': { eventId: string };
   'wind-up-account': { accountId: string };
@@ -16,6 +18,7 @@ export interface Jobs {
 export const queues: Readonly<Record<keyof Jobs, { retryLimit: number; retryDelay: number; retryBackoff: boolean }>> = {
   'send-mail': { retryLimit: 8, retryDelay: 5, retryBackoff: true },
   'match-searches': { retryLimit: 8, retryDelay: 5, retryBackoff: true },
+  'plan-bid-list': { retryLimit: 3, retryDelay: 10, retryBackoff: true },
   'process-photo': { retryLimit: 3, retryDelay: 5, retryBackoff: true },
   'make-provider-call': { retryLimit: 10, retryDelay: 2, retryBackoff: true },
   'handle-provider-event': { retryLimit: 10, retryDelay: 1, retryBackoff: true },

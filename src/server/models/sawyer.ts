@@ -1,4 +1,5 @@
 import type { BidState } from '~/domain/states/bid.ts';
+import type { ListCover } from '~/domain/trade/list-cover.ts';
 import { day, days, filled, id, instant, json, keyRef, keyWhole, nullable, point, real, ref, table, text, texts, whole, wholes, yes, type Row } from './table.ts';
 
 /** `base` is snapped to the coarse grid before it is stored. */
@@ -14,6 +15,7 @@ export const SawyerProfile = table('sawyer_profile', {
   travelMiles: filled(whole()),
   services: filled(texts()),
   languages: filled(texts()),
+  lumberCredential: filled(text()),
   workingDays: filled(wholes()),
   noticeDays: filled(whole()),
   certificateKey: nullable(text()),
@@ -76,6 +78,8 @@ export const Bid = table('bid', {
   mill: json<unknown>(),
   card: json<unknown>(),
   estimate: json<unknown>(),
+  /** What the mill makes of the cut list: null until the job has planned it. */
+  cutList: nullable(json<ListCover>()),
   roadMiles: real(),
   expectedBfHundredths: whole(),
   expectedBy: text(),

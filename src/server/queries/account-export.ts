@@ -14,7 +14,7 @@ const parts: Readonly<Record<string, string>> = {
   cutList: 'SELECT listing.number AS listing, piece.position, label, thickness_in, width_in, length_ft, count, sizing, for_dwelling FROM piece JOIN listing ON listing.id = listing_id WHERE owner_id = $1',
   photographs: 'SELECT photo.id, listing.number AS listing, caption, file_name, photo.status, width, height, photo.created_at, removed_at FROM photo JOIN listing ON listing.id = listing_id WHERE photo.owner_id = $1',
   sawyerProfile: `SELECT business_name, about, zip, town, state, time_zone, ST_Y(base::geometry) AS base_lat, ST_X(base::geometry) AS base_lng, travel_miles, services, languages,
-    working_days, notice_days, certificate_seen_at, certificate_expires_on, payout_account, payouts_ready FROM sawyer_profile WHERE account_id = $1`,
+    lumber_credential, working_days, notice_days, certificate_seen_at, certificate_expires_on, payout_account, payouts_ready FROM sawyer_profile WHERE account_id = $1`,
   daysOff: 'SELECT day, source FROM day_off WHERE sawyer_id = $1',
   readyMessages: 'SELECT name, body, created_at, updated_at FROM ready_message WHERE sawyer_id = $1',
   calendarFeed: 'SELECT made_at FROM calendar_feed WHERE sawyer_id = $1',

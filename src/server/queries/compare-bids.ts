@@ -1,6 +1,7 @@
 import type { Cents } from '~/domain/money.ts';
 import { abilities } from '~/domain/permissions.ts';
 import type { BidState } from '~/domain/states/bid.ts';
+import type { ListCover } from '~/domain/trade/list-cover.ts';
 import { formatDayWithYear, type Day } from '~/domain/time.ts';
 import type { BidSort } from '~/domain/trade/comparison.ts';
 import type { BidMill } from '~/domain/trade/bid-estimate.ts';
@@ -8,6 +9,7 @@ import { authorize, rolesOnListing } from '../authorize.ts';
 import type { FrozenEstimate } from '../bid-work.ts';
 import { rows } from '../db.ts';
 import { notFound, signedOut } from '../errors.ts';
+import { listedPieces } from '../listed-pieces.ts';
 import { Booking } from '../models/booking.ts';
 import { Listing } from '../models/listing.ts';
 import type { Viewer } from '../viewer.ts';
@@ -24,8 +26,12 @@ export interface ComparedBid {
   readonly stars: number | null;
   /** `certificate seen, expires on …`; null when none was seen or it has expired. */
   readonly certificate: string | null;
+  /** The grade or certification for lumber of a dwelling that the sawyer states; empty for none. */
+  readonly lumberCredential: string;
   readonly roadMiles: number;
   readonly mill: BidMill;
+  /** What this mill makes of the cut list as it stands now; null while that is worked out. */
+  readonly cover: ListCover | null;
   readonly frozen: FrozenEstimate;
   readonly expectedCents: Cents;
   readonly lowCents: Cents;
@@ -50,6 +56,10 @@ interface Row {
   readonly certificate_expires_on: string | null;
   readonly road_miles: number;
   readonly mill: BidMill;
+  readonly mill_id: string;
+  readonly listing_revision: number;
+  readonly cut_list: ListCover | null;
+  readonly lumber_credential: string | null;
   readonly estimate: FrozenEstimate;
   readonly expected_cents: number;
   readonly low_cents: number;
@@ -64,7 +74,7 @@ interface Row {
 
 // Leans on bid_of_listing, booking_of_sawyer and review_of_subject; a listing has tens of bids at most.
 const SQL = `
-  SELECT b.id, b.status, b.sawyer_id, coalesce(nullif(p.business_name, ''), a.name) AS sawyer, b.road_miles, b.mill, b.estimate,
+  SELECT b.id, b.status, b.sawyer_id, coalesce(nullif(p.business_name, ''), a.name) AS sawyer, b.road_miles, b.mill, b.mill_id, b.listing_revision, b.cut_list, p.lumber_credential, b.estimate,
     b.expected_cents, b.low_cents, b.high_cents, b.hold_cents, b.expected_bf_hundredths, b.expected_by, b.override_reason,
     b.days_offered::text[] AS days_offered, b.message,
     (SELECT count(*)::int FROM booking k WHERE k.sawyer_id = b.sawyer_id AND k.status = 'settled') AS settled_jobs,
@@ -92,7 +102,8 @@ export async function compareBids(viewer: Viewer | null, listingNumber: number, 
     bids.push(toBid(row, earliestOpenDay(days)));
   }
   const booking = await Booking.findOne({ where: { listingId: listing.id }, order: [['createdAt', 'DESC']] });
-  return { listing, bids: bids.sort((a, b) => Number(a.status === 'toConfirm') - Number(b.status === 'toConfirm') || order[sort](a, b)), booking: listing.status === 'matched' || listing.status === 'done' ? booking : null, can: abilities('listing', roles, listing.status) };
+  const pieces = await listedPieces(listing.id);
+  return { listing, wants: { list: pieces.length > 0, dwelling: pieces.some(({ forDwelling }) => forDwelling) }, bids: bids.sort((a, b) => Number(a.status === 'toConfirm') - Number(b.status === 'toConfirm') || order[sort](a, b)), booking: listing.status === 'matched' || listing.status === 'done' ? booking : null, can: abilities('listing', roles, listing.status) };
 }
 
 const perBf = (bid: ComparedBid): number => bid.frozen.estimate.quote.costPerBfCents ?? Number.POSITIVE_INFINITY;
@@ -106,7 +117,8 @@ const order: Readonly<Record<BidSort, (a: ComparedBid, b: ComparedBid) => number
 const toBid = (row: Row, earliest: Day | null): ComparedBid => ({
   id: row.id, status: row.status, sawyerId: row.sawyer_id, sawyer: row.sawyer, settledJobs: row.settled_jobs, reviews: row.reviews, stars: row.stars,
   certificate: row.certificate_expires_on === null ? null : `certificate seen, expires ${formatDayWithYear(row.certificate_expires_on)}`,
-  roadMiles: row.road_miles, mill: row.mill, frozen: row.estimate, expectedCents: row.expected_cents, lowCents: row.low_cents, highCents: row.high_cents,
+  roadMiles: row.road_miles, mill: row.mill, lumberCredential: row.lumber_credential ?? '',
+  cover: row.cut_list?.revision === row.listing_revision && row.cut_list.millId === row.mill_id ? row.cut_list : null, frozen: row.estimate, expectedCents: row.expected_cents, lowCents: row.low_cents, highCents: row.high_cents,
   holdCents: row.hold_cents, expectedBf: row.expected_bf_hundredths / 100, expectedBy: row.expected_by, overrideReason: row.override_reason,
   earliestOpenDay: earliest, daysOffered: row.days_offered, message: row.message,
 });

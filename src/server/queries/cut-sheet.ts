@@ -1,6 +1,4 @@
 import { cutSheet } from '~/domain/sawing/cut-sheet.ts';
-import type { LogRead } from '~/domain/listing/rows.ts';
-import type { Defect } from '~/domain/timber/defects.ts';
 import { speciesOf } from '~/domain/timber/species.ts';
 import { barkRatio } from '~/domain/timber/taper-and-bark.ts';
 import type { BidMill } from '~/domain/trade/bid-estimate.ts';
@@ -8,8 +6,9 @@ import { abilities, rolesOnBooking } from '../authorize.ts';
 import { sawnPieces } from '~/domain/sawing/sawn-piece.ts';
 import { boardPlans } from '../board-plans.ts';
 import { notFound, signedOut } from '../errors.ts';
+import { listedPieces, listedShapes } from '../listed-pieces.ts';
 import { Booking } from '../models/booking.ts';
-import { Listing, Log, Piece } from '../models/listing.ts';
+import { Listing } from '../models/listing.ts';
 import { Bid } from '../models/sawyer.ts';
 import type { Viewer } from '../viewer.ts';
 
@@ -23,9 +22,8 @@ export async function cutSheetPage(viewer: Viewer | null, number: number) {
   if (!booking || !abilities('booking', rolesOnBooking(viewer, booking), booking.status).see) throw notFound('booking');
   const listing = await Listing.findByPk(booking.listingId, { rejectOnEmpty: true });
   const { mill } = (await Bid.findByPk(booking.bidId, { rejectOnEmpty: true })) as unknown as { mill: BidMill };
-  const rows = await Log.findAll({ where: { listingId: listing.id, removedAt: null }, order: ['position'] });
-  const logs = rows.map(({ id, position, species, smallEndIn, largeEndIn, lengthFt, heartDefectIn, defects, note }): LogRead & { position: number } => ({ id, position, species, smallEndIn, largeEndIn, lengthFt, heartDefectIn, defects: defects as Defect[], note }));
-  const pieces = sawnPieces((await Piece.findAll({ where: { listingId: listing.id }, order: ['position'] })).map(({ label, thicknessIn, widthIn, lengthFt, count, sizing, forDwelling }) => ({ label, thicknessIn, widthIn, lengthFt, count, sizing, forDwelling })));
+  const logs = await listedShapes(listing.id);
+  const pieces = sawnPieces(await listedPieces(listing.id));
   const plan = await boardPlans(logs, pieces, mill);
   return {
     number, title: listing.title ?? '', mill, pieces, list: plan.list,
