@@ -6,6 +6,7 @@ export const paths = {
   privacy: '/privacy',
   terms: '/terms',
   estimator: '/estimator',
+  stem: '/estimator/stem',
 
   logs: '/logs',
   sawyers: '/sawyers',

@@ -3,7 +3,7 @@ import { paths } from '~/domain/paths.ts';
 import { now } from '~/server/clock.ts';
 import { publicThings } from '~/server/queries/sitemap.ts';
 
-const fixed = [paths.home, paths.howItWorks, paths.logs, paths.sawyers, paths.estimator, paths.safety, paths.privacy, paths.terms];
+const fixed = [paths.home, paths.howItWorks, paths.logs, paths.sawyers, paths.estimator, paths.stem, paths.safety, paths.privacy, paths.terms];
 
 /** The sitemap: the fixed public pages, open listings and public sawyers. */
 export const GET: APIRoute = async ({ locals }) => {

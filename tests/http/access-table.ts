@@ -32,6 +32,7 @@ export const routes: Readonly<Record<string, Route>> = {
   'logs.astro': { path: at('/logs?zip=54665'), GET: ALL },
   'day.astro': { path: at('/day'), GET: ALL },
   'estimator/index.astro': { path: at('/estimator'), GET: ALL },
+  'estimator/stem.astro': { path: at('/estimator/stem'), GET: ALL },
   'estimator/logs.pdf.ts': { path: at('/estimator/logs.pdf'), POST: '422 422 422 422 422 422 422' },
   'sawyers/index.astro': { path: at('/sawyers?zip=54665'), GET: ALL },
   'sawyers/[id].astro': { path: ({ sawyer }) => `/sawyers/${sawyer}`, GET: ALL },

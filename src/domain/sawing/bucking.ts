@@ -21,6 +21,7 @@ export interface BuckedLog {
   readonly fromButtFt: number;
   /** Without trim. */
   readonly lengthFt: number;
+  /** Where the saw goes, trim and all. */
   readonly smallEndIn: number;
   readonly largeEndIn: number;
   readonly value: number;
@@ -59,7 +60,7 @@ export function buck(stem: Stem, { lengthsFt, trimIn, longestFt = Infinity, shor
   const at = Array.from({ length: end + 1 }, (_, step) => Math.floor(diameterAt(stem, step / STEPS_PER_FT) * 8 + 1e-9) / 8);
   const leaveOut = (stem.leaveOut ?? []).map(({ fromFt, toFt }) => [fromFt * STEPS_PER_FT, toFt * STEPS_PER_FT] as const);
   const trim = Math.ceil(trimIn);
-  const lengths = [...new Set(lengthsFt)].filter((feet) => feet > 0 && feet + trimIn / 12 <= longestFt + 1e-9);
+  const lengths = [...new Set(lengthsFt)].filter((feet) => feet > 0 && feet + trimIn / 12 <= longestFt + 1e-9).sort((a, b) => a - b);
   const known = new Map<string, number>();
   const worthOf = (log: LogShape): number => {
     const key = `${log.smallEndIn} ${log.largeEndIn ?? ''} ${log.lengthFt}`;
@@ -76,11 +77,12 @@ export function buck(stem: Stem, { lengthsFt, trimIn, longestFt = Infinity, shor
       const nominal = Math.round(feet * STEPS_PER_FT);
       const top = step + nominal + trim;
       if (top > end || leaveOut.some(([from, to]) => from < top - 1e-9 && to > step + 1e-9)) continue;
-      const smallEndIn = Math.min(at[step + nominal] as number, at[step] as number);
+      const smallEndIn = Math.min(at[top] as number, at[step] as number);
       if (smallEndIn < shortestEndIn) continue;
       const log = { smallEndIn, largeEndIn: at[step] as number, lengthFt: feet };
       const own = worthOf(log);
-      if (own + (best[top] as number) > value + 1e-9) {
+      // Of two ways that are worth the same, the one that begins nearer the butt and has the longer log.
+      if (own > 0 && own + (best[top] as number) > value - 1e-9) {
         value = own + (best[top] as number);
         taken[step] = { ...log, fromButtFt: step / STEPS_PER_FT, value: own };
       }

@@ -14,7 +14,7 @@ function exhaustive(stem: Stem, lengthsFt: readonly number[], trimIn: number, st
     const top = step + feet * 12 + trimIn;
     if (top > end || (stem.leaveOut ?? []).some(({ fromFt, toFt }) => fromFt * 12 < top && toFt * 12 > step)) continue;
     const eighth = (at: number): number => Math.floor(diameterAt(stem, at / 12) * 8 + 1e-9) / 8;
-    best = Math.max(best, cubic({ smallEndIn: eighth(step + feet * 12), lengthFt: feet }) + exhaustive(stem, lengthsFt, trimIn, top, end));
+    best = Math.max(best, cubic({ smallEndIn: eighth(top), lengthFt: feet }) + exhaustive(stem, lengthsFt, trimIn, top, end));
   }
   return best;
 }

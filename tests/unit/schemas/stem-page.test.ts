@@ -1,0 +1,72 @@
+import fc from 'fast-check';
+import { describe, expect, it } from 'vitest';
+import { logsOfStem, planStem } from '~/domain/sawing/stem-plan.ts';
+import { estimateLog } from '~/domain/timber/estimate.ts';
+import { readLogs, writeLogs } from '~/domain/timber/logs-in-url.ts';
+import { readStemPage } from '~/schemas/stem-page.ts';
+
+const stem = { species: 'white-oak', bark: 'inside', at0: '0', across0: '24', at1: '40', across1: '12', trim: '5', smallest: '8', by: 'internationalQuarter' };
+const page = (fields: Record<string, string>, lengths: readonly string[] = ['8', '12', '16']) => readStemPage(new URLSearchParams([...Object.entries(fields), ...lengths.map((feet): [string, string] => ['lengths', feet])]));
+const paths = (fields: Record<string, string>, lengths?: readonly string[]) => page({ ...stem, ...fields }, lengths).problems.map(({ path }) => path);
+
+describe('the address of the stem page', () => {
+  it('has neither plan nor problem before anything is asked', () => {
+    const blank = readStemPage(new URLSearchParams());
+    expect(blank).toMatchObject({ asked: null, problems: [], lengths: ['8', '10', '12', '16'] });
+    expect([blank.said('trim'), blank.said('at0')]).toEqual(['5', '0']);
+  });
+
+  it('is read with fractions, feet and inches, metres, and the bark taken off', () => {
+    const { asked } = page({ ...stem, bark: 'over', across0: '24 1/2', at1: "40' 6\"", across1: '30 cm', longest: '5 m' });
+    expect(asked?.stem.measures[1]?.fromButtFt).toBeCloseTo(40.5, 9);
+    expect(asked?.stem.measures[0]?.diameterIn).toBeCloseTo(24.5 / Math.sqrt(1.16), 9);
+    expect(asked?.rules.longestFt).toBeCloseTo(5 / 0.3048, 9);
+  });
+
+  it.each<[path: string, fields: Record<string, string>, lengths?: readonly string[]]>([
+    ['species', { species: 'oak' }],
+    ['across1', { across1: '' }],
+    ['across1', { across1: 'wide' }],
+    ['across1', { across1: '30' }],
+    ['at2', { at2: '', across2: '10' }],
+    ['at1', { at1: '0' }],
+    ['at1', { at1: '400' }],
+    ['to0', { from0: '9', to0: '8' }],
+    ['to0', { from0: '9' }],
+    ['lengths', {}, []],
+    ['lengths', {}, ['7']],
+    ['trim', { trim: '-1' }],
+    ['smallest', { smallest: '0' }],
+    ['longest', { longest: 'long' }],
+    ['by', { by: 'sawmill' }],
+  ])('names %s when it cannot be used: %j', (path, fields, lengths) => {
+    expect(paths(fields, lengths)).toContain(path);
+  });
+
+  it('is read or refused whatever stands in it', () => {
+    fc.assert(fc.property(fc.dictionary(fc.constantFrom('species', 'at0', 'across0', 'at1', 'across1', 'from0', 'to0', 'trim', 'smallest', 'longest', 'by'), fc.string()), (fields) => {
+      const read = page({ ...stem, ...fields });
+      expect(read.asked === null).toBe(read.problems.length > 0);
+    }));
+  });
+});
+
+describe('a planned stem', () => {
+  const { asked } = page(stem);
+  if (!asked) throw new Error('the stem of the check cannot be read');
+  const { best, oneLength } = planStem(asked.stem, asked.rules, asked.rule);
+
+  it('is worth what its logs scale by themselves, and no less than any single length', () => {
+    const logs = logsOfStem(best, 'white-oak', asked.rules.trimIn);
+    expect(logs.length).toBeGreaterThan(1);
+    expect(logs.reduce((sum, log) => sum + estimateLog(log).boardFeet.internationalQuarter, 0)).toBe(best.value);
+    expect(best.value).toBeGreaterThanOrEqual(oneLength?.value ?? Infinity);
+    expect(best.logs[0]?.fromButtFt).toBe(0);
+  });
+
+  it('goes to the estimator and a listing by the address', () => {
+    const logs = logsOfStem(best, 'white-oak', asked.rules.trimIn);
+    const read = readLogs(writeLogs(logs));
+    expect(read.ok && read.value.map(({ lengthFt }) => Math.floor(lengthFt))).toEqual(best.logs.map(({ lengthFt }) => lengthFt));
+  });
+});
