@@ -1,6 +1,6 @@
 // Fills a separate database with synthetic open listings, to measure lists and maps at scale:
 //   node --import tsx db/seed-listings.ts postgres://…/skidway_bench 1000000
-// The database is made and migrated when it is not there; what it holds of listings is replaced. Places are spread round forty
+// The database is dropped when it is there, made and migrated. Places are spread round forty
 // invented centres of the lower 48 states; nothing in it is a real place, person or tree.
 import pg from 'pg';
 import { ensureDatabase, migrate } from './migrate.ts';
@@ -26,18 +26,22 @@ const coarse = (lat: string, lng: string): string => {
 };
 
 const started = Date.now();
+const server = new pg.Client({ connectionString: databaseUrl.replace(/\/[^/]*$/, '/postgres') });
+await server.connect();
+// The whole database rather than its listings: money and events that hang on them refuse to be emptied.
+await server.query(`DROP DATABASE IF EXISTS ${server.escapeIdentifier(name)} WITH (FORCE)`);
+await server.end();
 await ensureDatabase(databaseUrl);
 await migrate(databaseUrl);
 const client = new pg.Client({ connectionString: databaseUrl });
 await client.connect();
-await client.query('TRUNCATE listing CASCADE');
 await client.query(`INSERT INTO account (email, password_hash, name, is_landowner, created_at) VALUES ('seed@skidway.example', 'nobody signs in', 'Seed', true, now()) ON CONFLICT DO NOTHING`);
 await client.query(
   `WITH centre AS (SELECT n, 31 + 15 * random() AS lat, -120 + 45 * random() AS lng FROM generate_series(0, 39) n),
    spot AS MATERIALIZED (
-     SELECT n, centre.lat + 2.2 * (random() + random() - 1) AS lat, centre.lng + 2.8 * (random() + random() - 1) AS lng, 100 + (2900 * random() ^ 2)::int AS bf, 10 + 26 * random() AS butt,
+     SELECT each AS n, centre.lat + 2.2 * (random() + random() - 1) AS lat, centre.lng + 2.8 * (random() + random() - 1) AS lng, 100 + (2900 * random() ^ 2)::int AS bf, 10 + 26 * random() AS butt,
        6 + (12 * random())::int AS longest, (ARRAY['white-oak', 'northern-red-oak', 'sugar-maple', 'black-cherry', 'white-ash', 'eastern-white-pine', 'red-pine'])[1 + floor(7 * random())] AS common
-     FROM generate_series(1, $1::int) n JOIN centre ON centre.n = n % 40)
+     FROM generate_series(1, $1::int) each JOIN centre ON centre.n = each % 40)
    INSERT INTO listing (owner_id, status, revision, title, tree_owner, tree_owner_confirmed_at, how_down, came_down_on, ends_sealed, zip, town, state, time_zone, place, coarse, access, metal_risk, closes_at,
      saw_by, species, log_count, board_feet, largest_end_ob_in, shortest_log_ft, longest_log_ft, created_at, updated_at, published_at)
    SELECT (SELECT id FROM account WHERE email = 'seed@skidway.example'), 'open', 1, 'Synthetic logs ' || n, 'mine', now(), 'uprooted', current_date - 10, false, '00000', 'Nowhere', 'XX', 'America/Chicago',

@@ -9,6 +9,7 @@ export const paths = {
   stem: '/estimator/stem',
 
   logs: '/logs',
+  tiles: '/api/tiles',
   sawyers: '/sawyers',
   sawyer: (accountId: string) => `/sawyers/${accountId}`,
 

@@ -6,6 +6,7 @@ import { draftAnswer, draftRequest } from './listing-draft.ts';
 import { listingsAnswer, listingsQuery } from './listings.ts';
 import { placeAnswer, placeQuery } from './place.ts';
 import { beginPhotoAnswerSchema, beginPhotoSchema, changePhotoSchema, listPhotosSchema, orderPhotosSchema, photosAnswerSchema, photoViewSchema } from './photo.ts';
+import { tileQuery } from './tiles.ts';
 import { speciesAnswer } from './species.ts';
 import { quotingPracticeAnswer, quotingPracticeQuery } from './quoting-practice.ts';
 import { sawPlanAnswer, sawPlanRequest } from './saw-plan.ts';
@@ -41,6 +42,7 @@ export const operations: readonly Operation[] = [
   { method: 'post', path: '/api/saw-plan', summary: 'The best boards of a log on a mill, with an upper bound that no plan of the pattern passes (for a cant: wherever its faces lie), and the order of cuts', body: sawPlanRequest, answer: sawPlanAnswer },
   { method: 'post', path: '/api/cut-list', summary: 'A plan for each log that together cover a cut list: least board feet short first, then least log volume used, with a bound for every plan of the patterns', body: cutListRequest, answer: cutListAnswer },
   { method: 'get', path: '/api/listings', summary: 'Open listings by distance, a page at a time', query: listingsQuery, answer: listingsAnswer },
+  { method: 'get', path: '/api/tiles/{z}/{x}/{y}', summary: 'Open listings as a vector tile (layer `logs`): points of the coarse grid, gathered at low zooms, with how many listings each stands for', query: tileQuery },
   { method: 'get', path: '/api/photos', summary: "A listing's photographs for its owner, unfinished and refused ones included", signedIn: true, query: listPhotosSchema, answer: photosAnswerSchema },
   { method: 'post', path: '/api/photos', summary: 'Begin an upload: a photograph and the form to send its file with', signedIn: true, body: beginPhotoSchema, answer: beginPhotoAnswerSchema },
   { method: 'put', path: '/api/photos/order', summary: "Put a listing's photographs in order", signedIn: true, body: orderPhotosSchema, answer: photosAnswerSchema },

@@ -151,6 +151,7 @@ export const routes: Readonly<Record<string, Route>> = {
   'api/cut-list.ts': { path: at('/api/cut-list'), POST: '422 422 422 422 422 422 422' },
   'api/quoting-practice.ts': { path: at('/api/quoting-practice?zip=54665'), GET: ALL },
   'api/places.ts': { path: at('/api/places?zip=54665'), GET: ALL },
+  'api/tiles/[z]/[x]/[y].ts': { path: at('/api/tiles/7/31/46?species=white-oak'), GET: ALL },
   'api/listings/index.ts': { path: at('/api/listings?zip=54665&radiusMi=40'), GET: ALL },
   'api/listings/draft.ts': { path: at('/api/listings/draft'), POST: API_POST },
   'api/bookings/[number]/tally.ts': { path: ({ queried }) => `/api/bookings/${queried}/tally`, GET: '401 404 200 404 200 404 200', PUT: API_POST },

@@ -2,6 +2,8 @@ import fc from 'fast-check';
 import { beforeAll, describe, expect, it } from 'vitest';
 import { coarsePoint, greatCircleMiles, type Point } from '~/domain/geo.ts';
 import { openListings } from '~/server/queries/open-listings.ts';
+import { DEEPEST_TILE, mapPlace, type Tile } from '~/domain/finding/tiles.ts';
+import { logsTile } from '~/server/queries/logs-tile.ts';
 import { listingPage } from '~/server/queries/listing-page.ts';
 import { publicThings } from '~/server/queries/sitemap.ts';
 import { Listing } from '~/server/models/listing.ts';
@@ -43,6 +45,21 @@ async function whatIsLearnt(): Promise<readonly (number | null)[]> {
   return learnt;
 }
 
+/** The tile over a place at each zoom, and its neighbours. */
+const tilesOver = (place: Point): readonly Tile[] =>
+  Array.from({ length: DEEPEST_TILE + 1 }, (_, z) => z).flatMap((z) => {
+    const { x, y } = mapPlace(place);
+    const [column, row] = [Math.floor(x / 2 ** (26 - z)), Math.floor(y / 2 ** (26 - z))];
+    return [-1, 0, 1].flatMap((east) => [-1, 0, 1].map((south) => ({ z, x: column + east, y: row + south }))).filter((tile) => Math.min(tile.x, tile.y) >= 0 && Math.max(tile.x, tile.y) < 2 ** z);
+  });
+
+/** Every tile that could show the place, as bytes. */
+async function whatTilesShow(): Promise<readonly string[]> {
+  const shown: string[] = [];
+  for (const tile of tilesOver(exact)) shown.push((await logsTile(tile, {}, LISTED_AT)).toString('hex'));
+  return shown;
+}
+
 beforeAll(async () => {
   cast = await makeCast();
   listing = await openListing(cast.ada, { lat: String(exact.lat), lng: String(exact.lng) });
@@ -69,6 +86,15 @@ describe('an attacker with a thousand searches from chosen origins', () => {
     },
     240_000,
   );
+
+  it('sees the same map tiles to the last byte, at every zoom, wherever in its cell the place lies', async () => {
+    const shown = await whatTilesShow();
+    expect(shown.filter((tile) => tile !== '').length).toBeGreaterThanOrEqual(DEEPEST_TILE + 1);
+    for (const other of sameCell) {
+      await listing.update({ place: { type: 'Point', coordinates: [other.lng, other.lat] } });
+      expect(await whatTilesShow()).toEqual(shown);
+    }
+  });
 
   it('reads nothing of it in the listing’s page, the site map or an answer’s source', async () => {
     await listing.update({ place: { type: 'Point', coordinates: [exact.lng, exact.lat] } });

@@ -1,3 +1,6 @@
+/** What closes to bids within so many hours is closing soon. */
+export const CLOSING_HOURS = 7 * 24;
+
 /** How open listings may be ordered. */
 export const listingSorts = ['distance', 'closing', 'sawBy', 'newest'] as const;
 export type ListingSort = (typeof listingSorts)[number];

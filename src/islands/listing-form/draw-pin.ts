@@ -51,7 +51,7 @@ export async function drawPin(frame: HTMLElement, { at, towns }: { readonly at: 
   const shapes = await loadCounties();
   setWorkerUrl(workerUrl);
   let here: Point = { lat: at.lat, lng: at.lng };
-  const style = () => mapStyle({ ...shapes, towns: named(towns), rings: rings(here), ringNames: ringName(here) });
+  const style = () => mapStyle({ ...shapes, towns: named(towns), rings: rings(here), ringNames: ringName(here), tiles: null });
   const map = new Map({ container: frame, style: style(), center: [here.lng, here.lat], zoom: 11.5, maxZoom: 15, minZoom: 5, dragRotate: false, pitchWithRotate: false, touchPitch: false, scrollZoom: false, attributionControl: false });
   map.touchZoomRotate.disableRotation();
   map.addControl(new NavigationControl({ showCompass: false }), 'top-right');

@@ -1,4 +1,5 @@
 import { useEffect, useRef, useState, type ReactElement } from 'react';
+import { aroundHere } from './around-here.ts';
 import type { MapHandle, MapPlace, MapTown } from './types.ts';
 
 interface Props {
@@ -9,12 +10,14 @@ interface Props {
   readonly towns: readonly MapTown[];
   /** This page's address without a place, to which a point of the map is added. */
   readonly here: string;
+  /** The tiles' filters as a query; null when only the list's own rows can be shown. */
+  readonly tiles: string | null;
 }
 
 const rowOf = (number: number): HTMLElement | null => document.querySelector(`[data-listing="${number}"]`);
 
-/** The listings of this page on a map, in step with the list beside it. The list has everything; the map is the extra. */
-export default function LogsMap({ from, radiusMi, places, towns, here }: Props): ReactElement {
+/** The open listings on a map, those of this page in step with the list beside it. The list has everything; the map is the extra. */
+export default function LogsMap({ from, radiusMi, places, towns, here, tiles }: Props): ReactElement {
   const frame = useRef<HTMLDivElement>(null);
   const [state, setState] = useState<'loading' | 'shown' | 'failed'>('loading');
   const [middle, setMiddle] = useState<{ lat: number; lng: number } | null>(null);
@@ -45,7 +48,7 @@ export default function LogsMap({ from, radiusMi, places, towns, here }: Props):
       try {
         const { drawMap } = await import('./draw-map.ts');
         if (gone || !frame.current) return;
-        handle = await drawMap(frame.current, { from, radiusMi, places, towns }, { onLight: light, onChoose: choose, onMiddle: setMiddle });
+        handle = await drawMap(frame.current, { from, radiusMi, places, towns, tiles, here }, { onLight: light, onChoose: choose, onMiddle: setMiddle });
         if (gone) handle.remove();
         else setState('shown');
       } catch (error) {
@@ -61,9 +64,9 @@ export default function LogsMap({ from, radiusMi, places, towns, here }: Props):
       document.removeEventListener('focusin', fromList);
       handle?.remove();
     };
-  }, [attempt, from, radiusMi, places, towns]);
+  }, [attempt, from, radiusMi, places, towns, tiles, here]);
 
-  const there = middle && `${here}${here.includes('?') ? '&' : '?'}lat=${middle.lat.toFixed(3)}&lng=${middle.lng.toFixed(3)}`;
+  const there = middle && aroundHere(here, middle);
   return (
     <div className="relative h-[26rem] w-full border-y border-rule bg-sapwood/30 lg:h-full lg:border-y-0 lg:border-l">
       <div className="logs-map h-full w-full" ref={frame} />

@@ -2,6 +2,7 @@ import { Map, NavigationControl, setWorkerUrl } from 'maplibre-gl';
 import workerUrl from 'maplibre-gl/dist/maplibre-gl-worker.mjs?url';
 import 'maplibre-gl/dist/maplibre-gl.css';
 import type { FeatureCollection } from 'geojson';
+import { paths } from '~/domain/paths.ts';
 import { loadCounties } from './counties.ts';
 import { addHere, addMarks } from './marks.ts';
 import { bounds, named, ringLabels, ringLines } from './shapes.ts';
@@ -15,7 +16,8 @@ const nothing: FeatureCollection = { type: 'FeatureCollection', features: [] };
  * on the screen.
  * @throws when the shapes cannot be fetched or the device has no WebGL.
  */
-export async function drawMap(frame: HTMLElement, { from, radiusMi, places, towns }: MapContent, events: MapEvents): Promise<MapHandle> {
+export async function drawMap(frame: HTMLElement, content: MapContent, events: MapEvents): Promise<MapHandle> {
+  const { from, radiusMi, places, towns, tiles } = content;
   const shapes = await loadCounties();
   setWorkerUrl(workerUrl);
   const style = () =>
@@ -24,6 +26,7 @@ export async function drawMap(frame: HTMLElement, { from, radiusMi, places, town
       towns: named(towns),
       rings: from && radiusMi ? ringLines(from, radiusMi) : nothing,
       ringNames: from && radiusMi ? ringLabels(from, radiusMi) : nothing,
+      tiles: tiles === null ? null : `${location.origin}${paths.tiles}/{z}/{x}/{y}${tiles}`,
     });
   const map = new Map({
     container: frame,
@@ -43,7 +46,7 @@ export async function drawMap(frame: HTMLElement, { from, radiusMi, places, town
   map.getCanvas().setAttribute('aria-label', 'Map of the listings; the arrow keys move it, plus and minus zoom');
   map.addControl(new NavigationControl({ showCompass: false }), 'top-right');
   if (from) addHere(map, from);
-  const light = addMarks(map, places, events);
+  const light = addMarks(map, content, events);
   map.on('moveend', (event) => {
     // Only a move that a person made has a browser event behind it.
     if (event.originalEvent) events.onMiddle(map.getCenter());

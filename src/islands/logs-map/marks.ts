@@ -1,91 +1,106 @@
 import { Marker, type Map } from 'maplibre-gl';
-import type { MapEvents, MapPlace } from './types.ts';
+import { greatCircleMiles, type Point } from '~/domain/geo.ts';
+import { aroundHere } from './around-here.ts';
+import { marksOfRows, marksOfTiles } from './gather.ts';
+import { markElement, markWords, type MapMark } from './mark.ts';
+import type { MapContent, MapEvents } from './types.ts';
 
-const svgNamespace = 'http://www.w3.org/2000/svg';
+/** How much closer a mark of several listings is shown when it is chosen, in zooms. */
+const CLOSER = 2;
 
-function circle(radius: number, look: string): SVGCircleElement {
-  const element = document.createElementNS(svgNamespace, 'circle');
-  element.setAttribute('r', String(radius));
-  element.setAttribute('class', look);
-  return element;
+interface Placed {
+  readonly mark: MapMark;
+  readonly element: HTMLElement;
+  readonly marker: Marker;
 }
 
-/** A small log end whose size follows the largest log. */
-function logEnd(largestIn: number): SVGSVGElement {
-  const size = Math.round(Math.min(42, Math.max(24, 14 + largestIn * 0.8)));
-  const svg = document.createElementNS(svgNamespace, 'svg');
-  svg.setAttribute('viewBox', '-12 -12 24 24');
-  svg.setAttribute('width', String(size));
-  svg.setAttribute('height', String(size));
-  svg.setAttribute('aria-hidden', 'true');
-  svg.append(circle(11, 'log-bark'), circle(9.2, 'log-sapwood'), circle(5, 'log-ring'), circle(1.5, 'log-pith'));
-  return svg;
-}
+/**
+ * Puts marks on the map and keeps them as it moves: of the tiles when there are some, otherwise of the list's rows. Choosing a mark goes
+ * through its rows of the list one after another; one without rows is shown closer, or leads to its listing.
+ * @returns lights the mark that holds a listing of the list, and no other
+ */
+export function addMarks(map: Map, content: MapContent, events: MapEvents): (number: number | null) => void {
+  const { places, tiles, from, here } = content;
+  let placed: readonly Placed[] = [];
+  let lit: number | null = null;
+  /** Where the keyboard was when its mark went: the mark nearest to it takes over. */
+  let wasAt: Point | null = null;
 
-const words = ({ title, distanceMi }: MapPlace): string => (distanceMi === null ? title : `${title}, ${distanceMi.toFixed(1)} miles away`);
-
-/** Listings that share a grid cell share a mark; choosing it goes through them one after another. */
-export function addMarks(map: Map, places: readonly MapPlace[], events: MapEvents): (number: number | null) => void {
-  const groups = new globalThis.Map<string, MapPlace[]>();
-  for (const place of places) {
-    const key = `${place.lat},${place.lng}`;
-    groups.set(key, [...(groups.get(key) ?? []), place]);
-  }
-  const buttons = new globalThis.Map<number, HTMLButtonElement>();
-  const inOrder: HTMLButtonElement[] = [];
-  for (const group of groups.values()) {
-    const [first] = group;
-    if (!first) continue;
-    const button = document.createElement('button');
-    button.type = 'button';
-    button.className = 'map-log';
-    button.append(logEnd(Math.max(...group.map((place) => place.largestIn))));
-    if (group.length > 1) {
-      const count = document.createElement('span');
-      count.className = 'map-log-count';
-      count.textContent = String(group.length);
-      button.append(count);
-    }
-    let turn = -1;
-    const next = (): MapPlace => group[(turn + group.length) % group.length] ?? first;
-    button.addEventListener('mouseenter', () => events.onLight(first.number));
-    button.addEventListener('focus', () => events.onLight(first.number));
-    button.addEventListener('click', (event) => {
-      event.stopPropagation();
-      turn += 1;
-      events.onChoose(next().number);
-    });
-    const marker = new Marker({ element: button }).setLngLat([first.lng, first.lat]).addTo(map);
-    // The library names every mark "Map marker"; ours says which logs it is.
-    marker.getElement().setAttribute('aria-label', group.map(words).join('; '));
-    for (const place of group) buttons.set(place.number, button);
-    inOrder.push(button);
-  }
-  roam(inOrder);
-  return (number) => {
-    for (const button of new Set(buttons.values())) button.toggleAttribute('data-lit', number !== null && buttons.get(number) === button);
+  const showLit = (): void => {
+    for (const { mark, element } of placed) element.toggleAttribute('data-lit', lit !== null && mark.rows.some(({ number }) => number === lit));
   };
-}
-
-/** One stop of the tab key for all marks; the arrow keys go from one to the next in the list's order. */
-function roam(marks: readonly HTMLButtonElement[]): void {
-  marks.forEach((mark, index) => {
-    mark.tabIndex = index === 0 ? 0 : -1;
-    mark.addEventListener('focus', () => {
-      for (const other of marks) other.tabIndex = other === mark ? 0 : -1;
+  const place = (mark: MapMark): Placed => {
+    const deepest = map.getZoom() >= map.getMaxZoom() - 0.01;
+    const element = markElement(mark, mark.rows.length === 0 && deepest ? aroundHere(here, mark.at, 1) : null);
+    const marker = new Marker({ element }).setLngLat([mark.at.lng, mark.at.lat]).addTo(map);
+    // The library names every mark "Map marker"; ours says which logs it is.
+    element.setAttribute('aria-label', markWords(mark, from));
+    element.title = markWords(mark, from);
+    const [first] = mark.rows;
+    let turn = -1;
+    for (const name of ['mouseenter', 'focus']) element.addEventListener(name, () => events.onLight(first?.number ?? null));
+    element.addEventListener('click', (event) => {
+      event.stopPropagation();
+      if (element instanceof HTMLAnchorElement) return;
+      if (first) {
+        turn = (turn + 1) % mark.rows.length;
+        events.onChoose((mark.rows[turn] ?? first).number);
+        return;
+      }
+      // A click of the keyboard has no place of its own.
+      if (event.detail === 0) wasAt = mark.at;
+      map.easeTo({ center: [mark.at.lng, mark.at.lat], zoom: Math.min(map.getMaxZoom(), map.getZoom() + CLOSER) });
     });
-    mark.addEventListener('keydown', (event) => {
+    element.addEventListener('focus', () => {
+      for (const other of placed) other.element.tabIndex = other.element === element ? 0 : -1;
+    });
+    element.addEventListener('keydown', (event) => {
       const step = { ArrowRight: 1, ArrowDown: 1, ArrowLeft: -1, ArrowUp: -1 }[event.key];
       if (step === undefined) return;
       event.preventDefault();
       event.stopPropagation();
-      marks[(index + step + marks.length) % marks.length]?.focus();
+      const index = placed.findIndex((one) => one.element === element);
+      placed[(index + step + placed.length) % placed.length]?.element.focus();
     });
-  });
+    return { mark, element, marker };
+  };
+
+  const show = (marks: readonly MapMark[]): void => {
+    const before = new globalThis.Map(placed.map((one) => [sameMark(one.mark, map), one]));
+    const next = marks.map((mark) => before.get(sameMark(mark, map)) ?? place(mark));
+    const staying = new Set(next);
+    for (const one of placed) {
+      if (staying.has(one)) continue;
+      if (one.element === document.activeElement) wasAt = one.mark.at;
+      one.marker.remove();
+    }
+    placed = next;
+    // One stop of the tab key for all marks; the arrow keys go from one to the next.
+    const stop = placed.find(({ element }) => element.tabIndex === 0 && element === document.activeElement) ?? placed[0];
+    for (const one of placed) one.element.tabIndex = one === stop ? 0 : -1;
+    showLit();
+    const around = wasAt;
+    if (around && placed.length > 0) {
+      wasAt = null;
+      placed.reduce((best, one) => (greatCircleMiles(one.mark.at, around) < greatCircleMiles(best.mark.at, around) ? one : best)).element.focus();
+    }
+  };
+
+  if (tiles === null) show(marksOfRows(places));
+  else map.on('idle', () => show(marksOfTiles(map, places)));
+  return (number) => {
+    lit = number;
+    showLit();
+  };
 }
 
+/** Whether two marks may share an element: the same cell with the same content, seen from as close. */
+const sameMark = ({ key, listings, rows, only }: MapMark, map: Map): string => `${key} ${listings} ${rows.length} ${only?.number ?? ''} ${map.getZoom() >= map.getMaxZoom() - 0.01}`;
+
+const svgNamespace = 'http://www.w3.org/2000/svg';
+
 /** Where distances are measured from: a triangle, as on a paper map. */
-export function addHere(map: Map, from: { readonly lat: number; readonly lng: number }): void {
+export function addHere(map: Map, from: Point): void {
   const svg = document.createElementNS(svgNamespace, 'svg');
   svg.setAttribute('viewBox', '0 0 18 16');
   svg.setAttribute('width', '18');

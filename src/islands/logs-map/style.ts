@@ -1,5 +1,6 @@
 import type { ExpressionSpecification, StyleSpecification, SymbolLayerSpecification } from 'maplibre-gl';
 import type { FeatureCollection } from 'geojson';
+import { DEEPEST_TILE } from '~/domain/finding/tiles.ts';
 
 /** The theme's colours as the browser has them now, light or dark. */
 export function themeColour(name: string, alpha = 1): string {
@@ -15,7 +16,12 @@ export interface Base {
   readonly towns: FeatureCollection;
   readonly rings: FeatureCollection;
   readonly ringNames: FeatureCollection;
+  /** The address of the tiles of listings; null for none. */
+  readonly tiles: string | null;
 }
+
+/** The tiles' source. */
+export const TILES = 'logs';
 
 const name: ExpressionSpecification = ['get', 'name'];
 
@@ -34,6 +40,7 @@ export function mapStyle(base: Base): StyleSpecification {
       towns: source(base.towns),
       rings: source(base.rings),
       ringNames: source(base.ringNames),
+      ...(base.tiles === null ? {} : { [TILES]: { type: 'vector', tiles: [base.tiles], minzoom: 0, maxzoom: DEEPEST_TILE } as const }),
     },
     layers: [
       { id: 'ground', type: 'background', paint: { 'background-color': themeColour('paper') } },
@@ -44,6 +51,8 @@ export function mapStyle(base: Base): StyleSpecification {
       label('county-names', 'countyNames', 13, themeColour('ink-soft'), { 'text-letter-spacing': 0.06, 'text-padding': 12 }, 7),
       label('town-names', 'towns', 11, themeColour('ink-soft'), { 'symbol-sort-key': ['get', 'rank'], 'text-padding': 6 }, 6),
       label('ring-names', 'ringNames', 12, themeColour('crayon'), { 'text-allow-overlap': true }),
+      // Draws nothing: marks are buttons above the map. A source without a layer would not be loaded.
+      ...(base.tiles === null ? [] : [{ id: 'logs', type: 'circle', source: TILES, 'source-layer': 'logs', paint: { 'circle-radius': 0, 'circle-opacity': 0 } } as const]),
     ],
   };
 }

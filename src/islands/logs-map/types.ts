@@ -1,4 +1,4 @@
-/** A listing on the map: its coarse point and what its mark says. */
+/** A listing of the list beside the map: its coarse point and what its mark says. */
 export interface MapPlace {
   readonly number: number;
   readonly title: string;
@@ -20,6 +20,10 @@ export interface MapContent {
   readonly radiusMi: number | null;
   readonly places: readonly MapPlace[];
   readonly towns: readonly MapTown[];
+  /** The filters of the tiles, as a query; null when tiles cannot be filtered as the list is, and only its rows are shown. */
+  readonly tiles: string | null;
+  /** This page's address without a place, to which a point of the map is added. */
+  readonly here: string;
 }
 
 export interface MapEvents {

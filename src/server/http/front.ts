@@ -11,6 +11,9 @@ import { loggedPath } from './logged-path.ts';
 /** Astro's handler in middleware mode. */
 export type Handler = (request: IncomingMessage, response: ServerResponse, next?: (error?: unknown) => void, locals?: object) => unknown;
 
+/** Map tiles, as `http/tile-response.ts` sends them. */
+const TILE_TYPE = 'application/vnd.mapbox-vector-tile';
+
 /** The largest body read from anyone, in bytes. Photographs never pass here: they go straight to storage. */
 const largestBody = 1_000_000;
 /** A body over the cap is let run out before the refusal when it is no larger than this, in bytes. */
@@ -66,7 +69,8 @@ export function createFront(handler: Handler, clientFolder: string, settings: En
     xFrameOptions: { action: 'deny' },
     crossOriginEmbedderPolicy: false,
   });
-  const squeeze = compression({ threshold: 1024 });
+  // The type of map tiles is not on the library's list of what is worth compressing.
+  const squeeze = compression({ threshold: 1024, filter: (request, response) => response.getHeader('content-type') === TILE_TYPE || compression.filter(request, response) });
   const files = sirv(clientFolder, {
     etag: true,
     setHeaders: (response, path) => {

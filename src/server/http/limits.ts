@@ -13,6 +13,8 @@ const limits = {
   'confirmation mail': { points: 6, duration: 3600 },
   upload: { points: 200, duration: 3600 },
   message: { points: 60, duration: 3600 },
+  // A map asks for about twenty tiles each time it is moved; those that are kept do not count.
+  'map tiles': { points: 1500, duration: 300 },
   report: { points: 20, duration: 3600 },
 } as const;
 

@@ -6,8 +6,8 @@ import { log } from '../log.ts';
 import { sessionCookieName, viewerOf } from '../sessions.ts';
 import { statusOf } from './problem.ts';
 
-/** The public calculators take no notice of cookies, so they also need no session look-up. */
-const cookieless = /^\/api\/(species|estimate|tally|tree-volume|drying|saw-plan|cut-list|health|openapi\.json|webhooks)\b/;
+/** The public calculators and the map tiles take no notice of cookies, so they also need no session look-up. */
+const cookieless = /^\/api\/(species|estimate|tally|tree-volume|drying|saw-plan|cut-list|tiles|health|openapi\.json|webhooks)\b/;
 
 /** Puts the real origins where the build left stand-ins for them. */
 function settlePolicy(response: Response): Response {

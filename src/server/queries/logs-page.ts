@@ -1,16 +1,15 @@
-import type { LogsPageSort } from '~/domain/finding/sorts.ts';
+import { CLOSING_HOURS, type LogsPageSort } from '~/domain/finding/sorts.ts';
 import type { Point } from '~/domain/geo.ts';
 import type { Problem } from '~/domain/result.ts';
 import { addHours } from '~/domain/time.ts';
-import { usualRadiusMi, type LogsAsked, type LogsPage } from '~/schemas/logs-page.ts';
+import { logsAddress, usualRadiusMi, type LogsAsked, type LogsPage } from '~/schemas/logs-page.ts';
+import { takenWholeText } from '~/schemas/tiles.ts';
 import { oneRow } from '../db.ts';
 import { pointOfZip, townsNear, type Town } from '../services/places.ts';
 import type { Viewer } from '../viewer.ts';
 import { viewerAtWork, type SawyerAtWork } from './jobs-for-sawyer.ts';
 import { logsByWorth, weigh, type WeighedListings } from './logs-by-worth.ts';
 import { openListings } from './open-listings.ts';
-
-const WEEK_HOURS = 7 * 24;
 
 export interface LogsView {
   readonly found: WeighedListings;
@@ -24,6 +23,16 @@ export interface LogsView {
   readonly towns: readonly Town[];
   /** Whether listings can be put in order by money an hour: the sawyer has a mill, rates and a base. */
   readonly weighs: boolean;
+  /** The same filters for the map's tiles, as a query; null for the least money an hour, which is worked out for the nearest alone. */
+  readonly tiles: string | null;
+}
+
+/** What the tiles of the map are asked for so that they hold what the list does, at any distance. */
+function tilesOf(asked: LogsAsked, sawyer: SawyerAtWork | null, weighs: boolean): string | null {
+  if (weighs && asked.minPerHour !== undefined) return null;
+  const { species, minBoardFeet, maxLargestEndIn, closing } = asked;
+  const fits = asked.fits && sawyer ? takenWholeText(sawyer.mills.map(({ largestLogIn, longestFt, shortestFt }) => ({ largestLogIn, longestFt, shortestFt }))) : '';
+  return logsAddress('', {}, { species: species ?? '', minBoardFeet: String(minBoardFeet ?? ''), maxLargestEndIn: String(maxLargestEndIn ?? ''), closing: closing ?? '', fits });
 }
 
 /** A sawyer's own ZIP, so that the list begins at home. */
@@ -47,7 +56,7 @@ async function listed(asked: LogsAsked, sort: LogsPageSort, from: Point | null, 
     species: asked.species,
     minBoardFeet: asked.minBoardFeet,
     maxLargestEndIn: asked.maxLargestEndIn,
-    closesBefore: asked.closing ? addHours(at, WEEK_HOURS) : undefined,
+    closesBefore: asked.closing ? addHours(at, CLOSING_HOURS) : undefined,
     fitsMillsOf: asked.fits && sawyer ? sawyer.id : undefined,
     cursor: asked.cursor,
   };
@@ -68,5 +77,5 @@ export async function logsPageView({ asked, problems }: LogsPage, viewer: Viewer
   const sort = sortOf(asked, from, weighs);
   const radiusMi = from ? (asked.radiusMi ?? usualRadiusMi) : null;
   const found = await listed(asked, sort, from, radiusMi, sawyer, weighs, at);
-  return { found, from, zip, radiusMi, sort, weighs, problems: [...problems, ...unknownZip], towns: from && radiusMi ? townsNear(from, Math.min(radiusMi * 2, 300), 40) : [] };
+  return { found, from, zip, radiusMi, sort, weighs, tiles: tilesOf(asked, sawyer, weighs), problems: [...problems, ...unknownZip], towns: from && radiusMi ? townsNear(from, Math.min(radiusMi * 2, 300), 40) : [] };
 }

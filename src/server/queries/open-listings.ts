@@ -3,6 +3,7 @@ import type { ListingSort } from '~/domain/finding/sorts.ts';
 import type { Point } from '~/domain/geo.ts';
 import { photoAlt, pictureView } from '~/domain/photo.ts';
 import type { ListingItem } from '~/schemas/listings.ts';
+import type { TakenWhole } from '~/schemas/tiles.ts';
 import { rows } from '../db.ts';
 import { sqlBuilder } from './sql-builder.ts';
 
@@ -22,6 +23,8 @@ export interface ListingsAsked {
   readonly closesBefore?: Date | undefined;
   /** Only what some mill of this sawyer takes whole. */
   readonly fitsMillsOf?: string | undefined;
+  /** Only what some mill of these takes whole. */
+  readonly fits?: readonly TakenWhole[] | undefined;
   readonly sort: ListingSort;
   /** Only among so many nearest to `from`: bounds the work of what cannot be asked of an index. */
   readonly among?: number | undefined;
@@ -81,9 +84,12 @@ type Sql = ReturnType<typeof sqlBuilder>;
 
 const pointSql = (sql: Sql, { lat, lng }: Point): string => `ST_SetSRID(ST_MakePoint(${sql.value(lng)}::float8, ${sql.value(lat)}::float8), 4326)::geography`;
 
-/** What makes a listing part of the list, as SQL. Distances are to the coarse point; the exact place is never read here. */
-function conditions(sql: Sql, asked: ListingsAsked, at: Date, here: string | null): string[] {
-  const { radiusMi, species, minBoardFeet, maxLargestEndIn, closesBefore, fitsMillsOf } = asked;
+/** Which listings, without how they are listed. */
+export type ListingsWanted = Omit<ListingsAsked, 'from' | 'sort' | 'among' | 'cursor' | 'limit'>;
+
+/** What makes a listing `l` part of the list, as SQL. Distances are to the coarse point; the exact place is never read here. */
+export function conditions(sql: Sql, asked: ListingsWanted, at: Date, here: string | null): string[] {
+  const { radiusMi, species, minBoardFeet, maxLargestEndIn, closesBefore, fitsMillsOf, fits } = asked;
   return [
     `l.status = 'open' AND l.hidden_at IS NULL`,
     `l.closes_at > ${sql.value(at)}`,
@@ -96,6 +102,13 @@ function conditions(sql: Sql, asked: ListingsAsked, at: Date, here: string | nul
       ? [
           `EXISTS (SELECT 1 FROM mill m WHERE m.sawyer_id = ${sql.value(fitsMillsOf)} AND m.retired_at IS NULL AND l.largest_end_ob_in <= m.largest_log_in + 0.005
             AND l.longest_log_ft <= m.longest_ft AND l.shortest_log_ft >= m.shortest_ft)`,
+        ]
+      : []),
+    ...(fits !== undefined
+      ? [
+          `(${fits
+            .map(({ largestLogIn, longestFt, shortestFt }) => `(l.largest_end_ob_in <= ${sql.value(largestLogIn)}::float8 + 0.005 AND l.longest_log_ft <= ${sql.value(longestFt)}::float8 AND l.shortest_log_ft >= ${sql.value(shortestFt)}::float8)`)
+            .join(' OR ')})`,
         ]
       : []),
   ];
