@@ -24,6 +24,12 @@ ALTER TABLE listing
   ADD COLUMN map_y integer GENERATED ALWAYS AS (map_row(ST_Y(coarse::geometry))) STORED,
   ADD COLUMN map_cell bigint GENERATED ALWAYS AS ((spread_bits(map_row(ST_Y(coarse::geometry))) << 1) | spread_bits(map_column(ST_X(coarse::geometry)))) STORED;
 
--- With everything that a tile filters by and shows, so that a tile is made from the index alone.
+-- The coarse point as a vector of length one from the middle of the earth: how far two lie apart is three products.
+ALTER TABLE listing
+  ADD COLUMN unit_x double precision GENERATED ALWAYS AS (cos(radians(ST_Y(coarse::geometry))) * cos(radians(ST_X(coarse::geometry)))) STORED,
+  ADD COLUMN unit_y double precision GENERATED ALWAYS AS (cos(radians(ST_Y(coarse::geometry))) * sin(radians(ST_X(coarse::geometry)))) STORED,
+  ADD COLUMN unit_z double precision GENERATED ALWAYS AS (sin(radians(ST_Y(coarse::geometry)))) STORED;
+
+-- With everything that a tile filters by and shows, so that a tile is made from the index alone; and all that near-by listings are counted and put in order by.
 CREATE INDEX listing_open_map ON listing (map_cell)
-  INCLUDE (map_x, map_y, number, board_feet, largest_end_ob_in, shortest_log_ft, longest_log_ft, closes_at, species) WHERE status = 'open' AND hidden_at IS NULL;
+  INCLUDE (map_x, map_y, number, board_feet, largest_end_ob_in, shortest_log_ft, longest_log_ft, closes_at, species, unit_x, unit_y, unit_z, id, saw_by, published_at) WHERE status = 'open' AND hidden_at IS NULL;

@@ -12,7 +12,7 @@ export const DEEPEST_TILE = 12;
 /** Positions inside a tile run from 0 to this, as is usual for vector tiles. */
 export const TILE_EXTENT = 4096;
 /** Places are kept to 1 part in 2^26 of the world's width: under a metre. */
-const FINEST = 26;
+export const FINEST = 26;
 /** Cells this fine hold one point of the coarse grid each. */
 const GRID_LEVEL = 17;
 /** From this zoom on each point of the coarse grid has its own mark. */
@@ -38,7 +38,8 @@ export function cellOf(point: Point, level: number): number {
   return interleaved(Math.floor(x / 2 ** (FINEST - level)), Math.floor(y / 2 ** (FINEST - level)));
 }
 
-function interleaved(x: number, y: number): number {
+/** The cell in a column and row, the bits of both interleaved. */
+export function interleaved(x: number, y: number): number {
   let cell = 0;
   for (let bit = 0; 2 ** bit <= Math.max(x, y); bit += 1) cell += 4 ** bit * ((Math.floor(x / 2 ** bit) % 2) + 2 * (Math.floor(y / 2 ** bit) % 2));
   return cell;

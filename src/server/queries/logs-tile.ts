@@ -14,7 +14,7 @@ export const LOGS_LAYER = 'logs';
 export async function logsTile(tile: Tile, wanted: ListingsWanted, at: Date): Promise<Buffer> {
   const sql = sqlBuilder();
   const { first, end } = cellsOf(tile);
-  const where = [...conditions(sql, wanted, at, null), `l.map_cell >= ${sql.value(first)}::bigint AND l.map_cell < ${sql.value(end)}::bigint`];
+  const where = [...conditions(sql, wanted, at), `l.map_cell >= ${sql.value(first)}::bigint AND l.map_cell < ${sql.value(end)}::bigint`];
   const units = sql.value(unitsPerStep(tile.z));
   const [made] = await rows<{ tile: Buffer }>(
     `WITH mark AS (

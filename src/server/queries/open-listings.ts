@@ -1,5 +1,6 @@
 import { readCursor, writeCursor } from '~/domain/finding/cursor.ts';
 import type { ListingSort } from '~/domain/finding/sorts.ts';
+import { cellsNear, leastProduct, unitVector, type CellRange } from '~/domain/finding/nearby.ts';
 import type { Point } from '~/domain/geo.ts';
 import { photoAlt, pictureView } from '~/domain/photo.ts';
 import type { ListingItem } from '~/schemas/listings.ts';
@@ -9,6 +10,10 @@ import { sqlBuilder } from './sql-builder.ts';
 
 /** Where counting stops: beyond it a number is no help to a reader and costs time. */
 const COUNT_TO = 1000;
+/** So many matches within a distance are gathered and put in order; of more, an index in that order meets enough soon. */
+const GATHER_TO = 5000;
+/** Up to this distance what lies within it is few enough to be counted one by one, mi. */
+const NEAR_MI = 100;
 const METRES_PER_MILE = 1609.344;
 
 export interface ListingsAsked {
@@ -84,16 +89,51 @@ type Sql = ReturnType<typeof sqlBuilder>;
 
 const pointSql = (sql: Sql, { lat, lng }: Point): string => `ST_SetSRID(ST_MakePoint(${sql.value(lng)}::float8, ${sql.value(lat)}::float8), 4326)::geography`;
 
+/** Whether what lies within the distance is looked up stretch by stretch. */
+const near = ({ from, radiusMi }: ListingsWanted): boolean => from != null && radiusMi !== undefined && radiusMi <= NEAR_MI;
+
+/**
+ * What meets the conditions near by, with what it may be put in order by: read in each stretch of the map from the index alone.
+ * Farther off the planner knows better whether a filter finds fewer.
+ */
+function inEachStretch(sql: Sql, asked: ListingsWanted, at: Date, most: number): string {
+  const values = stretches(asked).map(({ first, end }) => `(${sql.value(first)}::bigint, ${sql.value(end)}::bigint)`);
+  return `(VALUES ${values.join(', ')}) stretch (first, last)
+    CROSS JOIN LATERAL (SELECT l.id, l.closes_at, l.saw_by, l.published_at FROM listing l WHERE l.map_cell >= stretch.first AND l.map_cell < stretch.last AND ${conditions(sql, asked, at).join(' AND ')} LIMIT ${most}) l`;
+}
+
+/**
+ * The rows of what lies near by: only those wanted are read from the table.
+ * @param which an order with a limit, where the index has what it needs
+ */
+const metNearBy = (met: string, which: string): string => `SELECT l.* FROM (SELECT l.id FROM ${met} ${which}) wanted JOIN listing l ON l.id = wanted.id OFFSET 0`;
+
+/** As many as are counted: one more than a reader is told of, or than is gathered. */
+const counted = (asked: ListingsAsked): number => (asked.sort !== 'distance' && near(asked) ? GATHER_TO : COUNT_TO) + 1;
+
 /** Which listings, without how they are listed. */
-export type ListingsWanted = Omit<ListingsAsked, 'from' | 'sort' | 'among' | 'cursor' | 'limit'>;
+export type ListingsWanted = Omit<ListingsAsked, 'from' | 'sort' | 'among' | 'cursor' | 'limit'> & { readonly from?: Point | null };
+
+/** Within so many miles, by the arc between two vectors of length one: three products, where the geography's own function costs a hundred times as much. */
+function within(sql: Sql, from: Point, radiusMi: number): string {
+  const [x, y, z] = unitVector(from).map((part) => `${sql.value(part)}::float8`);
+  return `l.unit_x * ${x} + l.unit_y * ${y} + l.unit_z * ${z} >= ${sql.value(leastProduct(radiusMi))}::float8`;
+}
+
+/** The stretches of the map that hold what lies within the distance; none when no distance is asked. */
+const stretches = ({ from, radiusMi }: ListingsWanted): readonly CellRange[] => (from && radiusMi !== undefined ? cellsNear(from, radiusMi) : []);
+
+/** In one of these stretches: what the planner can count beforehand, and find by `listing_open_map`. */
+const inStretches = (sql: Sql, ranges: readonly CellRange[]): string[] =>
+  ranges.length === 0 ? [] : [`(${ranges.map(({ first, end }) => `(l.map_cell >= ${sql.value(first)}::bigint AND l.map_cell < ${sql.value(end)}::bigint)`).join(' OR ')})`];
 
 /** What makes a listing `l` part of the list, as SQL. Distances are to the coarse point; the exact place is never read here. */
-export function conditions(sql: Sql, asked: ListingsWanted, at: Date, here: string | null): string[] {
-  const { radiusMi, species, minBoardFeet, maxLargestEndIn, closesBefore, fitsMillsOf, fits } = asked;
+export function conditions(sql: Sql, asked: ListingsWanted, at: Date): string[] {
+  const { from, radiusMi, species, minBoardFeet, maxLargestEndIn, closesBefore, fitsMillsOf, fits } = asked;
   return [
     `l.status = 'open' AND l.hidden_at IS NULL`,
     `l.closes_at > ${sql.value(at)}`,
-    ...(here && radiusMi !== undefined ? [`ST_DWithin(l.coarse, ${here}, ${sql.value(radiusMi * METRES_PER_MILE)}::float8, false)`] : []),
+    ...(from && radiusMi !== undefined ? [within(sql, from, radiusMi)] : []),
     ...(species !== undefined ? [`l.species @> ARRAY[${sql.value(species)}::text]`] : []),
     ...(minBoardFeet !== undefined ? [`l.board_feet >= ${sql.value(minBoardFeet)}::float8`] : []),
     ...(maxLargestEndIn !== undefined ? [`l.largest_end_ob_in <= ${sql.value(maxLargestEndIn)}::float8 + 0.005`] : []),
@@ -115,25 +155,27 @@ export function conditions(sql: Sql, asked: ListingsWanted, at: Date, here: stri
 }
 
 /**
- * The rows a list is drawn from: every listing, or the nearest few of those that meet the conditions. When few meet them at all they
- * are gathered first (`OFFSET 0` keeps the planner from merging the two steps) and put in order after: walking an ordered index
- * until enough are found would read every open listing.
+ * The rows a list is drawn from: all that meet the conditions, or the nearest few of them. When few meet them at all they are gathered
+ * first (`OFFSET 0` keeps the planner from merging the two steps) and put in order after: walking an ordered index until enough are
+ * found would read every open listing.
+ * @param met the rows that meet the conditions, as a SELECT
  */
-function drawnFrom(among: number | undefined, where: readonly string[], here: string | null, few: boolean): string {
-  const met = `SELECT l.* FROM listing l WHERE ${where.join(' AND ')}`;
-  if (among !== undefined && here !== null) return few ? `(SELECT l.* FROM (${met} OFFSET 0) l ORDER BY l.coarse <-> ${here} LIMIT ${among})` : `(${met} ORDER BY l.coarse <-> ${here} LIMIT ${among})`;
-  return few ? `(${met} OFFSET 0)` : 'listing';
+function drawnFrom(among: number | undefined, met: string, here: string | null): string {
+  return among !== undefined && here !== null ? `(SELECT l.* FROM (${met}) l ORDER BY l.coarse <-> ${here} LIMIT ${among})` : `(${met})`;
 }
 
-/** The order of each sort, its key as exact text, and the condition for going on after a cursor. */
-function ordering(sql: Sql, asked: ListingsAsked, here: string | null): { key: string; order: string; after: string | null } {
+/**
+ * The order of each sort, its key as exact text, and the condition for going on after a cursor. By distance the nearest are taken
+ * `first`, with all that are as near as the last: the index walks by distance alone, not by distance and id.
+ */
+function ordering(sql: Sql, asked: ListingsAsked, here: string | null): { key: string; first?: string; order: string; after: string | null } {
   const cursor = asked.cursor === undefined ? null : readCursor(asked.cursor, asked.sort);
   const past = (column: string, sign: '<' | '>', type: string): string | null =>
     cursor && `(${column} ${sign} ${sql.value(cursor.key)}::${type} OR (${column} = ${sql.value(cursor.key)}::${type} AND l.id > ${sql.value(cursor.id)}::uuid))`;
   switch (asked.sort) {
     case 'distance': {
       const away = `(l.coarse <-> ${here ?? 'l.coarse'})`;
-      return { key: `${away}::text`, order: `${away}, l.id`, after: past(away, '>', 'float8') };
+      return { key: `${away}::text`, first: away, order: `${away}, l.id`, after: past(away, '>', 'float8') };
     }
     case 'closing':
       return { key: `(l.closes_at AT TIME ZONE 'UTC')::text || '+00'`, order: 'l.closes_at, l.id', after: past('l.closes_at', '>', 'timestamptz') };
@@ -154,16 +196,22 @@ function ordering(sql: Sql, asked: ListingsAsked, here: string | null): { key: s
  * sorts what the filters find, with none it is not asked for.
  */
 export async function openListings(asked: ListingsAsked, at: Date): Promise<FoundListings> {
-  const count = await countUpTo(COUNT_TO + 1, asked, at);
+  const count = await countUpTo(counted(asked), asked, at);
   if (count === 0) return { items: [], nextCursor: null, total: 0, totalIsExact: true };
   const sql = sqlBuilder();
   const here = asked.from && pointSql(sql, asked.from);
-  const where = conditions(sql, asked, at, here);
-  const { key, order, after } = ordering(sql, asked, here);
+  const nearestFirst = asked.sort === 'distance' || asked.among !== undefined;
+  const few = count <= (nearestFirst ? COUNT_TO : GATHER_TO) && count < counted(asked);
+  const { key, first, order, after } = ordering(sql, asked, here);
+  const met =
+    few && near(asked)
+      ? metNearBy(inEachStretch(sql, asked, at, GATHER_TO), nearestFirst ? '' : `${after ? `WHERE ${after} ` : ''}ORDER BY ${order} LIMIT ${asked.limit + 1}`)
+      : `SELECT l.* FROM listing l WHERE ${[...conditions(sql, asked, at), ...(nearestFirst && !few ? [] : inStretches(sql, stretches(asked)))].join(' AND ')}${few ? ' OFFSET 0' : ''}`;
   const found = await rows<Row>(
     `WITH page AS (
-       SELECT l.*, ${key} AS sort_key, ${here ? `l.coarse <-> ${here}` : 'NULL::float8'} AS metres, row_number() OVER () AS place_in_page
-       FROM (SELECT * FROM ${drawnFrom(asked.among, where, here, count <= COUNT_TO)} l WHERE ${[...where, ...(after ? [after] : [])].join(' AND ')} ORDER BY ${order} LIMIT ${asked.limit + 1}) l
+       SELECT l.*, ${key} AS sort_key, ${here ? `l.coarse <-> ${here}` : 'NULL::float8'} AS metres, row_number() OVER (ORDER BY ${order}) AS place_in_page
+       FROM (SELECT l.* FROM ${drawnFrom(asked.among, met, here)} l${after ? ` WHERE ${after}` : ''} ORDER BY ${first ?? order} ${first ? `FETCH FIRST ${asked.limit + 1} ROWS WITH TIES` : `LIMIT ${asked.limit + 1}`}) l
+       ORDER BY ${order} LIMIT ${asked.limit + 1}
      )
      SELECT l.id, l.number, l.title, l.species, l.log_count AS "logCount", l.board_feet AS "boardFeet", l.largest_end_ob_in AS largest, l.metres,
        ST_Y(l.coarse::geometry) AS lat, ST_X(l.coarse::geometry) AS lng, coalesce(l.town, '') AS town, l.sort_key AS "sortKey",
@@ -191,10 +239,9 @@ export async function openListings(asked: ListingsAsked, at: Date): Promise<Foun
 
 async function countUpTo(most: number, asked: ListingsAsked, at: Date): Promise<number> {
   const sql = sqlBuilder();
-  const here = asked.from && asked.radiusMi !== undefined ? pointSql(sql, asked.from) : null;
-  const where = conditions(sql, asked, at, here).join(' AND ');
-  const [counted] = await rows<{ count: number }>(`SELECT count(*)::int AS count FROM (SELECT 1 FROM listing l WHERE ${where} LIMIT ${most}) few`, sql.values);
-  return counted?.count ?? 0;
+  const matches = near(asked) ? inEachStretch(sql, asked, at, most) : `listing l WHERE ${[...conditions(sql, asked, at), ...inStretches(sql, stretches(asked))].join(' AND ')}`;
+  const [found] = await rows<{ count: number }>(`SELECT count(*)::int AS count FROM (SELECT 1 FROM ${matches} LIMIT ${most}) few`, sql.values);
+  return found?.count ?? 0;
 }
 
 const cursorAfter = (row: Row, sort: ListingSort): string => writeCursor(sort, { key: row.sortKey, id: row.id });
