@@ -40,13 +40,16 @@ function logEnd(largestIn: number): SVGSVGElement {
 const shortCount = (count: number): string => (count < 1000 ? String(count) : `${Math.floor(count / 100) / 10}k`.replace('.0k', 'k'));
 const rowWords = ({ title, distanceMi }: MapPlace): string => (distanceMi === null ? title : `${title}, ${distanceMi.toFixed(1)} miles away`);
 
+/** A mark names so many of its rows and counts the rest. */
+const MOST_NAMED = 3;
+
 /** What a mark says to somebody who does not see it. */
 export function markWords({ at, listings, rows, only }: MapMark, from: Point | null): string {
-  const others = listings - rows.length;
   const away = from ? `, about ${Math.round(greatCircleMiles(from, at))} miles away` : '';
   if (only) return `${only.title}${away}; not on this page of the list`;
   if (rows.length === 0) return `${listings.toLocaleString('en-US')} listings${away}; shows them closer`;
-  return [...rows.map(rowWords), ...(others > 0 ? [`${others.toLocaleString('en-US')} more here`] : [])].join('; ');
+  const more = listings - Math.min(rows.length, MOST_NAMED);
+  return [...rows.slice(0, MOST_NAMED).map(rowWords), ...(more > 0 ? [`${more.toLocaleString('en-US')} more here`] : [])].join('; ');
 }
 
 /**
