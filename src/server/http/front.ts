@@ -7,6 +7,7 @@ import type { Env } from '../env.ts';
 import { log } from '../log.ts';
 import { gate } from './gate.ts';
 import { loggedPath } from './logged-path.ts';
+import { serveShells } from './shells.ts';
 
 /** Astro's handler in middleware mode. */
 export type Handler = (request: IncomingMessage, response: ServerResponse, next?: (error?: unknown) => void, locals?: object) => unknown;
@@ -78,6 +79,8 @@ export function createFront(handler: Handler, clientFolder: string, settings: En
     },
   });
 
+  const shells = serveShells(clientFolder, settings);
+
   return createServer((request, response) => {
     const started = performance.now();
     const id = randomUUID();
@@ -102,7 +105,9 @@ export function createFront(handler: Handler, clientFolder: string, settings: En
         // Without a third argument Astro draws its own 404 page; a program asking under /api gets problem details.
         const missing = (): void => turnAway(request, response, 404, 'There is no such address.');
         const astro = (): void => void (request.url?.startsWith('/api/') ? handler(request, response, missing) : handler(request, response));
-        if (request.method === 'GET' || request.method === 'HEAD') files(request, response, astro);
+        const reads = request.method === 'GET' || request.method === 'HEAD';
+        if (reads && shells(request, response)) return;
+        if (reads) files(request, response, astro);
         else astro();
       });
     });

@@ -5,6 +5,7 @@ import { Refusal } from '../errors.ts';
 import { log } from '../log.ts';
 import { sessionCookieName, viewerOf } from '../sessions.ts';
 import { statusOf } from './problem.ts';
+import { settledPolicy } from './shells.ts';
 
 /** The public calculators and the map tiles take no notice of cookies, so they also need no session look-up. */
 const cookieless = /^\/api\/(species|estimate|tally|tree-volume|drying|saw-plan|cut-list|tiles|health|openapi\.json|webhooks)\b/;
@@ -13,7 +14,7 @@ const cookieless = /^\/api\/(species|estimate|tally|tree-volume|drying|saw-plan|
 function settlePolicy(response: Response): Response {
   const policy = response.headers.get('content-security-policy');
   if (policy) {
-    const settled = policy.replaceAll('https://payments.skidway.invalid', env().PAYMENTS_PAGE_ORIGIN).replaceAll('https://storage.skidway.invalid', env().STORAGE_PUBLIC_ENDPOINT);
+    const settled = settledPolicy(policy, env());
     // Said here and not in the build: in the meta tag of a page made at build time it would be ignored with a complaint
     // (there our front's X-Frame-Options holds).
     // A refusal's page comes through here twice: once by itself, once as the answer of the page that refused.
