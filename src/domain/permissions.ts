@@ -58,6 +58,7 @@ export const permissions = {
     startSawing: { who: ['sawyer'], states: ['held'] },
     enterTally: { who: ['sawyer'], states: ['held', 'sawing'], whileSuspended: ['sawing'] },
     allowOnTheDay: { who: ['landowner', 'sawyer'], states: ['sawing'], whileSuspended: true },
+    addDayPhoto: { who: ['landowner', 'sawyer'], states: ['sawing', 'tallied', 'queried', 'signed', 'settled'], whileSuspended: true },
     seeSigningCode: { who: ['landowner'], states: ['held', 'sawing', 'tallied'], whileSuspended: true },
     signPart: { who: ['landowner', 'sawyer'], states: ['sawing'], whileSuspended: true },
     signOnTheSpot: { who: ['landowner', 'sawyer'], states: ['tallied'], whileSuspended: true },

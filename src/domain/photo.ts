@@ -6,6 +6,8 @@ export const largestPhotoBytes = 25 * 1024 * 1024;
 export const mostPhotoPixels = 60_000_000;
 /** Photographs of one listing. */
 export const mostPhotos = 40;
+/** Photographs of one milling day. */
+export const mostDayPhotos = 60;
 export const longestCaption = 200;
 
 /** The picture types taken in, each with the endings that name it. */

@@ -46,6 +46,8 @@ export interface TallyView {
   readonly allowances: readonly (Allowance & { readonly name: string })[];
   /** What was signed for part of the work: these lines stand. */
   readonly parts: readonly { readonly id: string; readonly name: string; readonly lineIds: readonly string[]; readonly costCents: number | null }[];
+  /** Photographs of the day that have arrived. */
+  readonly photos: readonly { readonly id: string; readonly shows: 'metal' | 'boards'; readonly hitId: string | null }[];
   readonly mill: MillLimits | null;
   readonly endedBySawyer: boolean;
   readonly queries: readonly TallyQueryView[];

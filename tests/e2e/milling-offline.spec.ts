@@ -4,12 +4,14 @@ import { join } from 'node:path';
 import AxeBuilder from '@axe-core/playwright';
 import { chromium, expect, test, type BrowserContext, type Page } from '@playwright/test';
 import type { TallyView } from '../../src/schemas/tally-view.ts';
-import { expectAccessible } from './support/check.ts';
+import { plainJpeg } from '../support/sample-pictures.ts';
+import { expectAccessible, origin } from './support/check.ts';
 import { expireSessions, makeJobs, ownWeb, type Job, type OwnWeb } from './support/job.ts';
 
 /** A phone that can be switched off: its browser's files outlive the browser. */
 interface Phone {
   readonly folder: string;
+  readonly origin: string;
   context: BrowserContext;
   page: Page;
 }
@@ -18,17 +20,17 @@ let web: OwnWeb;
 let jobs: Job[] = [];
 const folders: string[] = [];
 
-async function switchOn(folder: string, offline: boolean): Promise<Phone> {
+async function switchOn(folder: string, offline: boolean, at = web.origin): Promise<Phone> {
   const { launchOptions } = test.info().project.use;
-  const context = await chromium.launchPersistentContext(folder, { ...launchOptions, baseURL: web.origin, locale: 'en-US', timezoneId: 'America/Chicago', viewport: { width: 390, height: 844 }, hasTouch: true, isMobile: true });
+  const context = await chromium.launchPersistentContext(folder, { ...launchOptions, baseURL: at, locale: 'en-US', timezoneId: 'America/Chicago', viewport: { width: 390, height: 844 }, hasTouch: true, isMobile: true });
   await context.setOffline(offline);
-  return { folder, context, page: context.pages()[0] ?? (await context.newPage()) };
+  return { folder, origin: at, context, page: context.pages()[0] ?? (await context.newPage()) };
 }
 
-async function newPhone(): Promise<Phone> {
+async function newPhone(at = web.origin): Promise<Phone> {
   const folder = mkdtempSync(join(tmpdir(), 'skidway-phone-'));
   folders.push(folder);
-  return switchOn(folder, false);
+  return switchOn(folder, false, at);
 }
 
 async function signIn(page: Page, email: string, password: string): Promise<void> {
@@ -171,9 +173,10 @@ async function drawSignature(page: Page): Promise<void> {
 
 test('the landowner signs on the sawyer’s phone without signal, and it settles when signal returns', async ({ browser }) => {
   const job = takeJob();
-  const phone = await newPhone();
+  // The product's own address: storage takes photographs from pages of that one alone.
+  const phone = await newPhone(origin());
   await prepare(phone, job);
-  const ada = await (await browser.newContext({ baseURL: web.origin })).newPage();
+  const ada = await (await browser.newContext({ baseURL: origin() })).newPage();
   await ada.goto(`/sign-in?next=/bookings/${job.number}`);
   await signIn(ada, job.landowner, job.password);
   const code = /\b\d{6}\b/.exec(await ada.getByText('give this code').innerText())?.[0] ?? '';
@@ -181,9 +184,16 @@ test('the landowner signs on the sawyer’s phone without signal, and it settles
   await phone.context.setOffline(true);
   await begin(phone.page, job);
   await enterBoards(phone.page, '8', 20);
+  // A nail, and the boards: both photographs are kept on the phone.
+  await phone.page.getByText(/^Metal hits/).click();
+  await phone.page.getByRole('button', { name: 'Blade re-sharpened' }).click();
+  await phone.page.getByLabel('Photograph the metal').setInputFiles({ name: 'nail.jpg', mimeType: 'image/jpeg', buffer: await plainJpeg(900, 600) });
+  await expect(phone.page.getByText('Blade re-sharpened, 1 photographed', { exact: true })).toBeVisible();
+  await phone.page.getByLabel('Photograph the boards').setInputFiles({ name: 'boards.jpg', mimeType: 'image/jpeg', buffer: await plainJpeg(600, 900) });
+  await expect(phone.page.getByText('Boards: saved here', { exact: true })).toBeVisible();
   await phone.page.getByRole('button', { name: 'Offer the tally to Ada' }).click();
-  // 160 bf × $0.50 = $80.00, set-up $75, travel $24.
-  await expect(phone.page.getByRole('row', { name: /The work comes to/ })).toContainText('$179.00');
+  // 160 bf × $0.50 = $80.00, set-up $75, travel $24, one blade re-sharpened $10.
+  await expect(phone.page.getByRole('row', { name: /The work comes to/ })).toContainText('$189.00');
   await phone.page.getByRole('button', { name: 'Sign the tally' }).click();
   await expect(phone.page.getByText('Write your name.')).toBeVisible();
   await phone.page.getByLabel('Landowner’s name').fill('Ada Example');
@@ -200,6 +210,7 @@ test('the landowner signs on the sawyer’s phone without signal, and it settles
   await expect.poll(async () => (await ada.goto(`/bookings/${job.number}/sign`), ada.getByText('Signed by Ada Example').count()), { timeout: 30_000 }).toBeGreaterThan(0);
   const sheet = await ada.request.get(`/bookings/${job.number}/tally.pdf`);
   expect([sheet.status(), sheet.headers()['content-type']]).toEqual([200, 'application/pdf']);
+  await expect.poll(async () => (await ada.goto(`/bookings/${job.number}`), ada.getByRole('img', { name: /^(Boards|Metal hit, blade re-sharpened)/ }).count()), { timeout: 30_000 }).toBe(2);
   await phone.context.close();
 });
 
@@ -245,7 +256,7 @@ test('the pad is for gloves and sun, and signing out asks about entries that wer
   await phone.context.setOffline(true);
   await begin(phone.page, job);
   await enterBoards(phone.page, '8', 3);
-  const small = await phone.page.locator('[data-outdoors] :is(button, input:not([type=checkbox]), label:has([type=checkbox]), select, summary)').evaluateAll((all) => all.map((one) => ({ name: one.textContent?.trim().slice(0, 30), box: one.getBoundingClientRect() })).filter(({ box }) => box.height > 0 && (box.height < 56 || box.width < 56)).map(({ name, box }) => `${name}: ${box.width} × ${box.height}`));
+  const small = await phone.page.locator('[data-outdoors] :is(button, input:not([type=checkbox], [type=file]), label:has([type=checkbox], [type=file]), select, summary)').evaluateAll((all) => all.map((one) => ({ name: one.textContent?.trim().slice(0, 30), box: one.getBoundingClientRect() })).filter(({ box }) => box.height > 0 && (box.height < 56 || box.width < 56)).map(({ name, box }) => `${name}: ${box.width} × ${box.height}`));
   expect(small).toEqual([]);
   await expectAccessible(phone.page);
   const contrast = new AxeBuilder({ page: phone.page }).include('[data-outdoors]').withRules(['color-contrast-enhanced']);

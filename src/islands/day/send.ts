@@ -2,6 +2,7 @@ import { paths } from '~/domain/paths.ts';
 import type { DayPack } from '~/schemas/day.ts';
 import type { TallyView } from '~/schemas/tally-view.ts';
 import { database, holderOf, keepPack, keepTally, markSignedOut, tellChange, type Waiting } from './store.ts';
+import { sendPictures } from './pictures.ts';
 import { setAside, takeOff } from './queue.ts';
 
 /** How sending ended: everything sent, nobody signed in, no way through just now. */
@@ -84,8 +85,9 @@ async function sendWaiting(): Promise<Sending> {
 
 /** Sends everything that waits. Two pages of one phone never send at the same time. */
 export async function sendAll(): Promise<Sending> {
-  if (!('locks' in navigator)) return sendWaiting();
-  return navigator.locks.request('skidway-send', sendWaiting);
+  const sending = 'locks' in navigator ? await navigator.locks.request('skidway-send', sendWaiting) : await sendWaiting();
+  if (sending === 'sent') sendPictures().catch(() => undefined);
+  return sending;
 }
 
 /** Asks for the days to come and keeps them. */

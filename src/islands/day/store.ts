@@ -1,5 +1,6 @@
 import { openDB, type DBSchema, type IDBPDatabase } from 'idb';
 import type { DayBooking, DayPack } from '~/schemas/day.ts';
+import type { ShownOnTheDay } from '~/schemas/day-photo.ts';
 import type { TallyEntry } from '~/schemas/tally-entries.ts';
 import type { TallyView } from '~/schemas/tally-view.ts';
 
@@ -14,6 +15,21 @@ export interface Waiting {
 /** An entry that the server would not take, with its reason. It is kept until somebody decides what becomes of it. */
 export interface Refused extends Waiting {
   readonly because: string;
+}
+
+/** A photograph of the day that the server does not have. Its bytes are kept plain: not every browser keeps a file's own object whole. */
+export interface Picture {
+  readonly id: string;
+  readonly accountId: string;
+  readonly booking: number;
+  readonly shows: ShownOnTheDay;
+  readonly hitId: string | null;
+  readonly fileName: string;
+  readonly type: string;
+  readonly bytes: ArrayBuffer;
+  readonly takenAt: string;
+  /** Why the server would not take it; null while it may be sent. */
+  readonly because: string | null;
 }
 
 /** Whose phone this is, as last known, and when the server was last heard. `clockOffMs`: the server's clock less the phone's. */
@@ -33,6 +49,7 @@ interface Schema extends DBSchema {
   tally: { key: Key; value: TallyView & { readonly accountId: string } };
   waiting: { key: number; value: Waiting; indexes: { ofBooking: Key } };
   refused: { key: number; value: Refused; indexes: { ofBooking: Key } };
+  pictures: { key: string; value: Picture; indexes: { ofBooking: Key } };
   sent: { key: Key; value: { readonly accountId: string; readonly booking: number; readonly at: string } };
   holder: { key: string; value: Holder };
 }
@@ -43,8 +60,10 @@ let opened: Promise<IDBPDatabase<Schema>> | undefined;
 
 /** The phone's own database. */
 export const database = (): Promise<IDBPDatabase<Schema>> =>
-  (opened ??= openDB<Schema>('skidway', 1, {
-    upgrade(db) {
+  (opened ??= openDB<Schema>('skidway', 2, {
+    upgrade(db, before) {
+      if (before < 2) db.createObjectStore('pictures', { keyPath: 'id' }).createIndex('ofBooking', ['accountId', 'booking']);
+      if (before >= 1) return;
       db.createObjectStore('kept', { keyPath: ['accountId', 'number'] });
       db.createObjectStore('tally', { keyPath: ['accountId', 'booking'] });
       for (const name of ['waiting', 'refused'] as const) db.createObjectStore(name, { keyPath: 'seq', autoIncrement: name === 'waiting' }).createIndex('ofBooking', ['accountId', 'booking']);
@@ -84,11 +103,12 @@ export const holderOf = async (): Promise<Holder | undefined> => (await database
 export async function keepPack(pack: DayPack): Promise<void> {
   const db = await database();
   const { id: accountId, name } = pack.account;
-  const work = db.transaction(['kept', 'tally', 'holder', 'waiting', 'refused'], 'readwrite', { durability: 'strict' });
+  const work = db.transaction(['kept', 'tally', 'holder', 'waiting', 'refused', 'pictures'], 'readwrite', { durability: 'strict' });
   const told = new Set(pack.bookings.map(({ number }) => number));
   for (const old of await work.objectStore('kept').getAll()) {
     const key: Key = [old.accountId, old.number];
-    const unsent = (await work.objectStore('waiting').index('ofBooking').count(key)) + (await work.objectStore('refused').index('ofBooking').count(key));
+    let unsent = 0;
+    for (const store of ['waiting', 'refused', 'pictures'] as const) unsent += await work.objectStore(store).index('ofBooking').count(key);
     // Another account's days leave with it; its unsent entries stay until it signs in again.
     if (unsent === 0 && (old.accountId !== accountId || !told.has(old.number))) {
       await work.objectStore('kept').delete(key);
@@ -119,10 +139,10 @@ export async function markSignedOut(signedOut: boolean): Promise<void> {
   tellChange();
 }
 
-/** How many entries of an account, or of anybody, the server does not have. */
+/** How many entries and photographs of an account, or of anybody, the server does not have. */
 export async function unsentCount(accountId?: string): Promise<number> {
   const db = await database();
-  const all = [...(await db.getAll('waiting')), ...(await db.getAll('refused'))];
+  const all = [...(await db.getAll('waiting')), ...(await db.getAll('refused')), ...(await db.getAll('pictures'))];
   return all.filter((one) => accountId === undefined || one.accountId === accountId).length;
 }
 

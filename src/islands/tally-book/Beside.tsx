@@ -3,6 +3,7 @@ import { buttonKinds, gloveSize, join } from '~/components/classes.ts';
 import { Field, Select } from '~/islands/form/fields.tsx';
 import type { TallyEntry } from '~/schemas/tally-entries.ts';
 import type { TallyView } from '~/schemas/tally-view.ts';
+import { TakeOne, type Photographs } from './Photographs.tsx';
 
 interface BesideProps {
   readonly view: TallyView;
@@ -15,8 +16,9 @@ const time = (iso: string): string => new Date(iso).toLocaleTimeString('en-US', 
 /** The line that opens one of the book's further parts. */
 export const summaryClass = 'flex min-h-glove cursor-pointer items-center border-t border-rule text-lg font-bold text-crayon';
 
-/** Blades that metal has cost: each a tap, each taken back with another. */
-export function MetalHits({ view, logId, add }: BesideProps): ReactElement {
+/** Blades that metal has cost: each a tap, each taken back with another, each with a photograph of what was hit. */
+export function MetalHits({ view, logId, add, photographs }: BesideProps & { readonly photographs: Photographs }): ReactElement {
+  const picturesOf = (hitId: string): number => new Set([...view.photos, ...photographs.here].filter((photo) => photo.hitId === hitId).map(({ id }) => id)).size;
   return (
     <details>
       <summary className={summaryClass}>Metal hits · {view.hits.length}</summary>
@@ -26,17 +28,24 @@ export function MetalHits({ view, logId, add }: BesideProps): ReactElement {
           <button key={outcome} type="button" className={join(buttonKinds.outlined, gloveSize)} onClick={() => add({ kind: 'hit', id: newId(), logId, outcome, note: '' })}>Blade {outcome}</button>
         ))}
       </div>
-      <ul>{view.hits.map((hit) => <Taken key={hit.id} text={`Blade ${hit.outcome}`} onUndo={() => add({ kind: 'remove', id: hit.id })} />)}</ul>
+      <ul className="mt-2">
+        {view.hits.map((hit) => (
+          <li key={hit.id} className="border-b border-rule pb-2">
+            <Taken text={`Blade ${hit.outcome}${picturesOf(hit.id) > 0 ? `, ${picturesOf(hit.id)} photographed` : ''}`} onUndo={() => add({ kind: 'remove', id: hit.id })} />
+            <TakeOne label="Photograph the metal" onTake={(file) => photographs.take('metal', hit.id, file)} />
+          </li>
+        ))}
+      </ul>
     </details>
   );
 }
 
 function Taken({ text, onUndo }: { readonly text: string; readonly onUndo: () => void }): ReactElement {
   return (
-    <li className="flex items-center justify-between gap-3 border-b border-rule">
+    <div className="flex items-center justify-between gap-3">
       <span>{text}</span>
       <button type="button" className={buttonKinds.quiet} onClick={onUndo}>Take back<span className="sr-only">: {text}</span></button>
-    </li>
+    </div>
   );
 }
 
@@ -63,7 +72,7 @@ export function CullLogs({ view, logId, add }: BesideProps): ReactElement {
         <Field name="cullMinutes" label="Opening time, minutes" inputMode="numeric" figure width="short" value={minutes} onChange={(event) => setMinutes(event.target.value)} />
         <p><button type="button" className={join(buttonKinds.outlined, gloveSize)} onClick={take}>Record the cull log</button></p>
       </div>
-      <ul>{view.culls.map((cull) => <Taken key={cull.id} text={`${view.logs.find(({ id }) => id === cull.logId)?.label ?? 'A log'}: ${cull.reason}${cull.openingMinutes ? `, ${cull.openingMinutes} min` : ''}`} onUndo={() => add({ kind: 'remove', id: cull.id })} />)}</ul>
+      <ul>{view.culls.map((cull) => <li key={cull.id} className="border-b border-rule"><Taken text={`${view.logs.find(({ id }) => id === cull.logId)?.label ?? 'A log'}: ${cull.reason}${cull.openingMinutes ? `, ${cull.openingMinutes} min` : ''}`} onUndo={() => add({ kind: 'remove', id: cull.id })} /></li>)}</ul>
     </details>
   );
 }
@@ -104,7 +113,7 @@ export function Hours({ view, add }: BesideProps): ReactElement {
         <Field name="clockTo" label="To" type="time" figure value={to} onChange={(event) => setTo(event.target.value)} />
         <p><button type="button" className={join(buttonKinds.outlined, gloveSize)} onClick={take}>Add the time</button></p>
       </div>
-      <ul>{view.clock.map((entry) => <Taken key={entry.id} text={`${activities.find(({ value }) => value === entry.activity)?.label ?? entry.activity}, ${time(entry.startsAt)} to ${time(entry.endsAt)}`} onUndo={() => add({ kind: 'remove', id: entry.id })} />)}</ul>
+      <ul>{view.clock.map((entry) => <li key={entry.id} className="border-b border-rule"><Taken text={`${activities.find(({ value }) => value === entry.activity)?.label ?? entry.activity}, ${time(entry.startsAt)} to ${time(entry.endsAt)}`} onUndo={() => add({ kind: 'remove', id: entry.id })} /></li>)}</ul>
     </details>
   );
 }

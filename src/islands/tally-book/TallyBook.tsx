@@ -10,6 +10,7 @@ import { SavedBadge, SendingTrouble } from '~/islands/day/SavedLine.tsx';
 import { CullLogs, Extras, Hours, MetalHits } from './Beside.tsx';
 import { bySize, countView, oneBoard, stillWanted } from './count.ts';
 import { Pad, readInches } from './Pad.tsx';
+import { BoardPhotographs, usePhotographs } from './Photographs.tsx';
 import { RainStop } from './RainStop.tsx';
 import { sizeName } from './size-name.ts';
 import { Stops } from './Stops.tsx';
@@ -37,6 +38,7 @@ export function TallyBook({ view, accountId, fresh }: Props): ReactElement {
 /** The tally book: big keys for the next board, the sizes so far, and the money against the hold. Counts with or without signal. */
 export function TallyPad({ queue }: { readonly queue: TallyQueue }): ReactElement {
   const { view, add } = queue;
+  const photographs = usePhotographs(queue.accountId, view.booking);
   const hardwood = tallyRuleOf(view.terms) === 'hardwood';
   const [logAt, setLogAt] = useState(0);
   const log = view.logs[logAt] ?? view.logs[0];
@@ -124,7 +126,8 @@ export function TallyPad({ queue }: { readonly queue: TallyQueue }): ReactElemen
         <div className="mt-6">
           {log && <MeasureAgain key={`${log.id} ${log.size}`} {...{ log, add }} />}
           <LevelThePith />
-          <MetalHits {...{ view, add }} logId={log?.id ?? null} />
+          <MetalHits {...{ view, add, photographs }} logId={log?.id ?? null} />
+          <BoardPhotographs {...{ view, photographs }} />
           <CullLogs {...{ view, add }} logId={log?.id ?? null} />
           <Hours {...{ view, add }} logId={null} />
           <Extras {...{ view, add }} logId={null} />

@@ -1,5 +1,6 @@
 import { useCallback, useEffect, useMemo, useState } from 'react';
 import { dropRefused, entriesOf, putEntries, tryRefusedAgain } from '~/islands/day/queue.ts';
+import { picturesOf } from '~/islands/day/pictures.ts';
 import { sendAll, type Sending } from '~/islands/day/send.ts';
 import { database, keepTally, onChange, type Refused } from '~/islands/day/store.ts';
 import type { TallyEntry } from '~/schemas/tally-entries.ts';
@@ -7,9 +8,10 @@ import type { TallyView } from '~/schemas/tally-view.ts';
 import { withEntries } from './with-entries.ts';
 
 export interface TallyQueue {
+  readonly accountId: string;
   /** The tally with everything entered on this phone, sent or not. */
   readonly view: TallyView;
-  /** How many entries are kept here that the server does not have yet. */
+  /** How many entries and photographs are kept here that the server does not have yet. */
   readonly waiting: number;
   readonly refused: readonly Refused[];
   /** When something was last sent from this phone, as an instant. */
@@ -45,6 +47,7 @@ export function useTallyQueue(initial: TallyView, accountId: string, fresh: bool
   const { booking } = initial;
   const [server, setServer] = useState(initial);
   const [kept, setKept] = useState<Awaited<ReturnType<typeof entriesOf>>>({ waiting: [], refused: [], sentAt: null });
+  const [pictures, setPictures] = useState(0);
   const [sending, setSending] = useState<Sending>('sent');
   const [trouble, setTrouble] = useState<string | null>(null);
 
@@ -54,6 +57,7 @@ export function useTallyQueue(initial: TallyView, accountId: string, fresh: bool
     const tally = await (await database()).get('tally', [accountId, booking]);
     if (tally) setServer(tally);
     setKept(entries);
+    setPictures((await picturesOf(accountId, booking)).filter(({ because }) => because === null).length);
   }, [accountId, booking]);
 
   const send = useCallback(async () => setSending(await sendAll()), []);
@@ -96,8 +100,8 @@ export function useTallyQueue(initial: TallyView, accountId: string, fresh: bool
   );
   const view = useMemo(() => withEntries(server, kept.waiting.map(({ entry }) => entry)), [server, kept]);
   return {
-    view, sending, trouble, add,
-    waiting: kept.waiting.length,
+    accountId, view, sending, trouble, add,
+    waiting: kept.waiting.length + pictures,
     refused: kept.refused,
     sentAt: kept.sentAt,
     tryAgain: () => void tryRefusedAgain(kept.refused).then(send),

@@ -34,7 +34,7 @@ export async function beginPhotoUpload(by: Viewer, input: BeginPhoto, at: Date):
   const photo = await inTransaction(async () => {
     await lockForPhotos(by, input.listingId);
     await checkLog(input.listingId, input.logId);
-    const there = await Photo.findAll({ where: { listingId: input.listingId, removedAt: null }, attributes: ['position', 'status'] });
+    const there = await Photo.findAll({ where: { listingId: input.listingId, bookingId: null, removedAt: null }, attributes: ['position', 'status'] });
     if (there.filter(({ status }) => status !== 'refused').length >= mostPhotos) throw conflict(`A listing has at most ${mostPhotos} photographs. Remove one first.`);
     const id = randomUUID();
     return Photo.create({

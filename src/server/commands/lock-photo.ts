@@ -1,6 +1,6 @@
-import { authorize, rolesOnListing } from '../authorize.ts';
+import { authorize, rolesOnBooking, rolesOnListing } from '../authorize.ts';
 import { notFound } from '../errors.ts';
-import { Listing, Photo } from '../models/index.ts';
+import { Booking, Listing, Photo } from '../models/index.ts';
 import type { Viewer } from '../viewer.ts';
 
 /**
@@ -15,11 +15,19 @@ export async function lockForPhotos(by: Viewer, listingId: string): Promise<List
   return listing;
 }
 
-/** Reads and locks a photograph, its listing first, so that two deeds on one listing wait for each other in one order. */
+/** Locks the booking of a photograph of the milling day: whoever took it may change it. */
+async function lockForDayPhoto(by: Viewer, bookingId: string, ownerId: string): Promise<void> {
+  const booking = await Booking.findByPk(bookingId, { lock: true, rejectOnEmpty: true });
+  if (ownerId !== by.id) throw notFound('photograph');
+  authorize(by, 'booking', 'addDayPhoto', rolesOnBooking(by, booking), booking.status);
+}
+
+/** Reads and locks a photograph, its listing or booking first, so that two deeds on one listing wait for each other in one order. */
 export async function lockPhoto(by: Viewer, photoId: string): Promise<Photo> {
-  const found = await Photo.findByPk(photoId, { attributes: ['listingId'] });
+  const found = await Photo.findByPk(photoId, { attributes: ['listingId', 'bookingId', 'ownerId'] });
   if (!found) throw notFound('photograph');
-  await lockForPhotos(by, found.listingId);
+  if (found.bookingId) await lockForDayPhoto(by, found.bookingId, found.ownerId);
+  else await lockForPhotos(by, found.listingId);
   const photo = await Photo.findByPk(photoId, { lock: true, rejectOnEmpty: true });
   if (photo.removedAt) throw notFound('photograph');
   return photo;

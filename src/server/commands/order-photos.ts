@@ -13,7 +13,7 @@ import { lockForPhotos } from './lock-photo.ts';
 export async function orderPhotos(by: Viewer, input: OrderPhotos): Promise<PhotoView[]> {
   await inTransaction(async () => {
     await lockForPhotos(by, input.listingId);
-    const there = await Photo.findAll({ where: { listingId: input.listingId, removedAt: null }, order: [['position', 'ASC'], ['createdAt', 'ASC'], ['id', 'ASC']] });
+    const there = await Photo.findAll({ where: { listingId: input.listingId, bookingId: null, removedAt: null }, order: [['position', 'ASC'], ['createdAt', 'ASC'], ['id', 'ASC']] });
     const wanted = [...new Set(input.ids)];
     const named = wanted.flatMap((id) => there.find((photo) => photo.id === id) ?? []);
     const inOrder = [...named, ...there.filter((photo) => !wanted.includes(photo.id))];

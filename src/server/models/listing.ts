@@ -87,6 +87,10 @@ export const Photo = table('photo', {
   listingId: ref(),
   ownerId: ref(),
   logId: nullable(ref()),
+  /** Set on a photograph of the milling day, which is the booking's and not the listing's. */
+  bookingId: nullable(ref()),
+  shows: nullable(text<'metal' | 'boards'>()),
+  hitId: nullable(ref()),
   position: whole(),
   caption: filled(text()),
   fileName: filled(text()),

@@ -4,6 +4,7 @@ import type { PaymentState } from '~/domain/states/payment.ts';
 import { cancelCutOff, type Day } from '~/domain/time.ts';
 import type { dayStates } from '~/domain/trade/milling-days.ts';
 import { rolesOnBooking } from '../authorize.ts';
+import { dayPhotos, type DayPhoto } from '../day-photos.ts';
 import { oneRow, rows } from '../db.ts';
 import { notFound } from '../errors.ts';
 import { bookedDaysOf, startTimeOf } from '../invitations.ts';
@@ -44,6 +45,8 @@ export interface BookingPage {
   readonly place: { readonly lat: number; readonly lng: number } | null;
   readonly conversationId: string | null;
   readonly reviews: readonly { readonly byName: string; readonly mine: boolean; readonly stars: number; readonly body: string }[];
+  /** Photographs of the milling day, for the two sides and moderators. */
+  readonly photos: readonly DayPhoto[];
   readonly history: readonly Happened[];
   readonly cancelReason: string | null;
   /** From the day's start on: whether somebody is said not to have come, and whether this reader may say so. */
@@ -113,6 +116,7 @@ export async function bookingPage(viewer: Viewer, number: number, at: Date): Pro
     place,
     conversationId: conversation?.id ?? null,
     reviews: await reviewsOf(booking.id, viewer.id),
+    photos: await dayPhotos(booking.id),
     history: await historyOf(booking.id),
     cancelReason: booking.cancelReason,
     noShow: await noShowOf(booking, side, can.reportNoShow, at),

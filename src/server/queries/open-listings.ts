@@ -222,7 +222,7 @@ export async function openListings(asked: ListingsAsked, at: Date): Promise<Foun
        p.id AS "photoId", p.width AS "photoWidth", p.height AS "photoHeight", p.blur AS "photoBlur", p.caption AS "photoCaption"
      FROM page l
      LEFT JOIN LATERAL (
-       SELECT id, width, height, blur, caption FROM photo WHERE listing_id = l.id AND removed_at IS NULL AND status = 'ready' ORDER BY position, id LIMIT 1
+       SELECT id, width, height, blur, caption FROM photo WHERE listing_id = l.id AND booking_id IS NULL AND removed_at IS NULL AND status = 'ready' ORDER BY position, id LIMIT 1
      ) p ON true
      ORDER BY l.place_in_page`,
     sql.values,

@@ -44,7 +44,7 @@ const view = (row: PhotoRow): PhotoView => ({
 export async function allPhotos(listingId: string): Promise<PhotoView[]> {
   const found = await rows<PhotoRow>(
     `SELECT ${columns} FROM photo LEFT JOIN log ON log.id = photo.log_id
-     WHERE photo.listing_id = $1 AND photo.removed_at IS NULL ORDER BY photo.position, photo.created_at, photo.id`,
+     WHERE photo.listing_id = $1 AND photo.booking_id IS NULL AND photo.removed_at IS NULL ORDER BY photo.position, photo.created_at, photo.id`,
     [listingId],
   );
   return found.map(view);
@@ -77,7 +77,7 @@ export async function firstPictures(listingIds: readonly string[]): Promise<Map<
   const found = await rows<PhotoRow & { listingId: string }>(
     `SELECT DISTINCT ON (photo.listing_id) photo.listing_id AS "listingId", ${columns}
      FROM photo LEFT JOIN log ON log.id = photo.log_id
-     WHERE photo.listing_id = ANY($1::uuid[]) AND photo.removed_at IS NULL AND photo.status = 'ready'
+     WHERE photo.listing_id = ANY($1::uuid[]) AND photo.booking_id IS NULL AND photo.removed_at IS NULL AND photo.status = 'ready'
      ORDER BY photo.listing_id, photo.position, photo.created_at, photo.id`,
     [listingIds],
   );
@@ -116,17 +116,22 @@ export async function photoEditor(viewer: Viewer | null, number: number): Promis
 /**
  * Whether the viewer may see a photograph's renditions now, and whether everyone may keep them: then any cache may, for a while.
  * They are seen by whoever may read the listing's page: everyone once it is published and while it is not hidden, its owner
- * always, moderators except for drafts.
+ * always, moderators except for drafts. A photograph of the milling day is for the two sides of its booking and moderators.
  * @throws Refusal `notFound`, the same for what does not exist and what is not theirs to see.
  */
 export async function photoAudience(viewer: Viewer | null, photoId: string): Promise<'everyone' | 'viewer'> {
-  const found = await oneRow<{ ownerId: string; status: ListingState; isHidden: boolean }>(
-    `SELECT listing.owner_id AS "ownerId", listing.status, listing.hidden_at IS NOT NULL AS "isHidden"
-     FROM photo JOIN listing ON listing.id = photo.listing_id
+  const found = await oneRow<{ ownerId: string; status: ListingState; isHidden: boolean; sides: string[] | null }>(
+    `SELECT listing.owner_id AS "ownerId", listing.status, listing.hidden_at IS NOT NULL AS "isHidden",
+       CASE WHEN booking.id IS NOT NULL THEN ARRAY[booking.landowner_id, booking.sawyer_id]::text[] END AS sides
+     FROM photo JOIN listing ON listing.id = photo.listing_id LEFT JOIN booking ON booking.id = photo.booking_id
      WHERE photo.id = $1 AND photo.status = 'ready' AND photo.removed_at IS NULL`,
     [photoId],
   );
   if (!found) throw notFound('photograph');
+  if (found.sides !== null) {
+    if (viewer && (found.sides.includes(viewer.id) || (viewer.active && viewer.isModerator))) return 'viewer';
+    throw notFound('photograph');
+  }
   const isShown = found.status !== 'draft' && !found.isHidden;
   if (isShown) return found.status === 'open' ? 'everyone' : 'viewer';
   if (viewer?.active && (viewer.id === found.ownerId || (viewer.isModerator && found.status !== 'draft'))) return 'viewer';

@@ -1,0 +1,47 @@
+import { largestPhotoBytes, mostDayPhotos, photoProblem, photoType, type PhotoView } from '~/domain/photo.ts';
+import { originalKey } from '~/domain/photo-keys.ts';
+import type { BeginDayPhoto } from '~/schemas/day-photo.ts';
+import { authorize, rolesOnBooking } from '../authorize.ts';
+import { inTransaction } from '../db.ts';
+import { conflict, invalid, notFound } from '../errors.ts';
+import { countTry } from '../http/limits.ts';
+import { lockBooking } from '../locks.ts';
+import { type Booking, MetalHit, Photo, Tally } from '../models/index.ts';
+import { onePhoto } from '../queries/photos.ts';
+import { uploadForm, type UploadForm } from '../services/storage.ts';
+import type { Viewer } from '../viewer.ts';
+
+/** The hit of this booking that a photograph names; null when it was taken back or never sent. */
+async function hitOf(booking: Booking, hitId: string | null): Promise<string | null> {
+  if (hitId === null) return null;
+  const tally = await Tally.findOne({ where: { bookingId: booking.id, part: 1 }, attributes: ['id'] });
+  const hit = tally && (await MetalHit.findOne({ where: { id: hitId, tallyId: tally.id }, attributes: ['id'] }));
+  return hit?.id ?? null;
+}
+
+/**
+ * Begins the upload of a photograph of the milling day, under the id that the phone made for it. Begun again before its file has arrived
+ * it gets a new form; afterwards there is nothing left to send.
+ * @throws Refusal `forbidden` for others than the two sides, `conflict` when the booking has as many as it may have
+ */
+export async function beginDayPhoto(by: Viewer, number: number, input: BeginDayPhoto, at: Date): Promise<{ readonly photo: PhotoView; readonly upload: UploadForm | null }> {
+  const problem = photoProblem(input.fileName, input.type, input.bytes);
+  const type = photoType(input.fileName, input.type);
+  if (problem !== null || type === null) throw invalid([{ path: 'file', message: problem ?? 'This is not a picture.' }], problem ?? undefined);
+  await countTry('upload', by.id);
+  const photo = await inTransaction(async () => {
+    const booking = await lockBooking(number);
+    authorize(by, 'booking', 'addDayPhoto', rolesOnBooking(by, booking), booking.status);
+    const before = await Photo.findByPk(input.id);
+    if (before) {
+      if (before.bookingId !== booking.id || before.ownerId !== by.id || before.removedAt) throw notFound('photograph');
+      return before;
+    }
+    if ((await Photo.count({ where: { bookingId: booking.id, removedAt: null } })) >= mostDayPhotos) throw conflict(`A job has at most ${mostDayPhotos} photographs. Take one out first.`);
+    return Photo.create({
+      id: input.id, listingId: booking.listingId, bookingId: booking.id, shows: input.shows, hitId: input.shows === 'metal' ? await hitOf(booking, input.hitId) : null,
+      ownerId: by.id, position: 0, fileName: input.fileName, originalKey: originalKey(booking.listingId, input.id), status: 'awaiting', createdAt: at,
+    });
+  });
+  return { photo: await onePhoto(photo.id), upload: photo.status === 'awaiting' ? await uploadForm(photo.originalKey, type, largestPhotoBytes) : null };
+}
