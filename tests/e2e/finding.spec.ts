@@ -1,19 +1,5 @@
 import { expect, expectAccessible, test } from './support/check.ts';
 
-const publicPages = ['/', '/logs?zip=54665&radiusMi=40', '/sawyers?zip=54665', '/how-it-works', '/safety', '/privacy', '/terms', '/no/such/page'];
-
-for (const path of publicPages) {
-  test(`${path} has no fault that axe finds and fits 320 px`, async ({ page }) => {
-    await page.setViewportSize({ width: 320, height: 720 });
-    for (const colorScheme of ['light', 'dark'] as const) {
-      await page.emulateMedia({ colorScheme });
-      await page.goto(path);
-      await expectAccessible(page);
-    }
-    expect(await page.evaluate(() => document.documentElement.scrollWidth - window.innerWidth)).toBeLessThanOrEqual(0);
-  });
-}
-
 test('a log is scaled as one types', async ({ page }) => {
   await page.goto('/');
   await expect(page.getByRole('button', { name: 'Work it out' })).toBeHidden();

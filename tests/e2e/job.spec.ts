@@ -165,6 +165,7 @@ test('a password is forgotten and set anew, and the sessions of an account can b
   await elsewhere.getByRole('button', { name: 'Send the link' }).click();
   const letter = await readMail(mailbox(), email, 'assword');
   await elsewhere.goto(letter.links.find((one) => one.includes('/reset-password/')) ?? '');
+  await expectAccessible(elsewhere);
   await elsewhere.getByLabel('New password').fill('another sound board 77');
   await elsewhere.getByRole('button', { name: 'Change the password' }).click();
   await page.goto('/account');
@@ -182,6 +183,7 @@ test('a password is forgotten and set anew, and the sessions of an account can b
   await page.getByRole('button', { name: 'Send the link' }).click();
   const change = await readMail(mailbox(), `new-${email}`);
   await page.goto(change.links.find((one) => one.includes('/confirm-email/')) ?? '');
+  await expectAccessible(page);
   await page.getByRole('button', { name: 'Confirm this address' }).click();
   await page.goto('/account');
   await page.getByText('Fern Fellside').first().click();
