@@ -1,4 +1,4 @@
-import { expect, expectAccessible, test } from './support/check.ts';
+import { expect, test } from './support/check.ts';
 
 test('a log is scaled as one types', async ({ page }) => {
   await page.goto('/');
@@ -9,28 +9,6 @@ test('a log is scaled as one types', async ({ page }) => {
   await expect(page.getByText('147 bf')).toBeVisible();
   await page.getByRole('textbox', { name: 'Small end' }).fill('90');
   await expect(page.getByText('The small end is between 4 and 60 in.')).toBeVisible();
-});
-
-test('the map is in step with the list, by mouse and by keyboard', async ({ page }) => {
-  const tiles: number[] = [];
-  page.on('response', (answer) => void (answer.url().includes('/api/tiles/') && tiles.push(answer.status())));
-  await page.goto('/logs?zip=54665&radiusMi=40');
-  const row = page.locator('[data-listing]').first();
-  const mark = page.getByRole('button', { name: /^Black walnut, 4 logs, 0\.3 miles away/ });
-  await expect(mark).toBeVisible();
-  await expect(mark).not.toHaveAttribute('data-lit');
-  await row.hover();
-  await expect(mark).toHaveAttribute('data-lit');
-  await mark.focus();
-  await page.keyboard.press('ArrowRight');
-  await expect(mark).not.toBeFocused();
-  await expect(mark).not.toHaveAttribute('data-lit');
-  await page.keyboard.press('ArrowLeft');
-  await expect(row).toHaveAttribute('data-lit');
-  await page.keyboard.press('Enter');
-  await expect(row.getByRole('link').first()).toBeFocused();
-  await expectAccessible(page);
-  expect([...new Set(tiles)]).toEqual([200]);
 });
 
 test.describe('without JavaScript', () => {

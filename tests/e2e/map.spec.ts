@@ -1,4 +1,4 @@
-import { expect, test } from './support/check.ts';
+import { expect, expectAccessible, test } from './support/check.ts';
 import { field } from './support/listing-form.ts';
 
 test('the pin is moved on the map, by pointer and by keys', async ({ page }) => {
@@ -17,4 +17,26 @@ test('the pin is moved on the map, by pointer and by keys', async ({ page }) => 
   if (!box) throw new Error('no map');
   await page.mouse.click(box.x + box.width * 0.25, box.y + box.height * 0.75);
   await expect.poll(async () => Number(await field(page, 'lat').inputValue())).toBeLessThan(before);
+});
+
+test('the map is in step with the list, by mouse and by keyboard', async ({ page }) => {
+  const tiles: number[] = [];
+  page.on('response', (answer) => void (answer.url().includes('/api/tiles/') && tiles.push(answer.status())));
+  await page.goto('/logs?zip=54665&radiusMi=40');
+  const row = page.locator('[data-listing]').first();
+  const mark = page.getByRole('button', { name: /^Black walnut, 4 logs, 0\.3 miles away/ });
+  await expect(mark).toBeVisible();
+  await expect(mark).not.toHaveAttribute('data-lit');
+  await row.hover();
+  await expect(mark).toHaveAttribute('data-lit');
+  await mark.focus();
+  await page.keyboard.press('ArrowRight');
+  await expect(mark).not.toBeFocused();
+  await expect(mark).not.toHaveAttribute('data-lit');
+  await page.keyboard.press('ArrowLeft');
+  await expect(row).toHaveAttribute('data-lit');
+  await page.keyboard.press('Enter');
+  await expect(row.getByRole('link').first()).toBeFocused();
+  await expectAccessible(page);
+  expect([...new Set(tiles)]).toEqual([200]);
 });
