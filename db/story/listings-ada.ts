@@ -12,7 +12,7 @@ export const adasTrees: readonly Tree[] = [
     note: 'Two white oaks from the edge of the hayfield, skidded to the lane and up on poles. A table first, then flooring with what is left.' },
   { key: 'ada-walnut', owner: 'ada', zip: '54665', away: [0.6, 0.4], where: 'yard', listed: -12, closes: 9, pictures: 4,
     logs: logs('Black walnut', '22 25 9', '19.5 21 8.5', '16 18 8.5', '13.5 - 8.5 a crotch at the top end'),
-    pieces: [piece('Slabs for a counter', '3 10/4 20 8'), piece('Drawer fronts', '12 4/4 7 8'), piece('Stair treads', '6 5/4 11 4', 'full-sawn', 'on')],
+    pieces: [piece('Slabs for a counter', '3 10/4 18 8', 'full-sawn', '', 'slab'), piece('Drawer fronts', '12 4/4 7 8'), piece('Stair treads', '6 5/4 11 4', 'full-sawn', 'on')],
     note: 'The walnut that stood over the house. Uprooted whole; the stump is off. I would like slabs from the butt log and boards from the rest.',
     answers: { metalNote: 'There was a clothes line on it for forty years. I pulled two hooks and cannot promise there is no third.' } },
   { key: 'ada-pine', owner: 'ada', zip: '54665', away: [0.7, 0.7], where: 'field', listed: -22, closes: -12, pictures: 2,

@@ -1,3 +1,4 @@
+import type { PieceKind } from '../../src/domain/sawing/piece-kind.ts';
 import { randomUUID } from 'node:crypto';
 import { asListingTyped, type ListingTyped, type LogTyped, type PieceTyped } from '../../src/domain/listing/draft.ts';
 import type { Calendar } from './calendar.ts';
@@ -32,9 +33,9 @@ export const logs = (species: string, ...measures: readonly string[]): readonly 
   });
 
 /** A line of a cut list: `count × thickness × width × length`, as people write it. */
-export const piece = (label: string, size: string, sizing: 'full-sawn' | 'store-size' = 'full-sawn', dwelling = ''): PieceTyped => {
+export const piece = (label: string, size: string, sizing: 'full-sawn' | 'store-size' = 'full-sawn', dwelling = '', kind: PieceKind = 'board'): PieceTyped => {
   const [count = '', thickness = '', width = '', length = ''] = size.split(' ');
-  return { label, count, thickness, width, length, sizing, dwelling };
+  return { label, count, thickness, width, length, sizing, kind, dwelling };
 };
 
 const easy = { truck: 'to-the-logs', slope: 'level', lines: 'none', machine: 'tractor', machineNote: '', helpers: '2', water: 'yes', pad: 'on', offDirt: 'on', parallel: 'on', rolling: 'on', reDecks: 'owner', slabs: 'left', sawdust: 'left' } as const;

@@ -25,7 +25,7 @@ export const listingTyped: z.ZodType<ListingTyped> = row(
   'water', 'helpers', 'pad', 'offDirt', 'parallel', 'rolling', 'reDecks', 'landingNote', 'slabs', 'sawdust', 'metal', 'metalNote', 'note', 'closesOn',
 ).extend({
   logs: z.array(row('id', 'species', 'smallEnd', 'largeEnd', 'length', 'heart', 'defects', 'note')).max(MOST_LOGS, { error: `At most ${MOST_LOGS} logs in one listing.` }).default([]),
-  pieces: z.array(row('label', 'thickness', 'width', 'length', 'count', 'sizing', 'dwelling')).max(MOST_PIECES, { error: `At most ${MOST_PIECES} sizes in one cut list.` }).default([]),
+  pieces: z.array(row('label', 'thickness', 'width', 'length', 'count', 'sizing', 'kind', 'dwelling')).max(MOST_PIECES, { error: `At most ${MOST_PIECES} sizes in one cut list.` }).default([]),
 });
 
 /** A listing as it was understood. */

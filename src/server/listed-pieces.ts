@@ -11,5 +11,5 @@ export async function listedShapes(listingId: string): Promise<(LogRead & { read
 /** The cut list of a listing, in its order. */
 export async function listedPieces(listingId: string): Promise<PieceRead[]> {
   const rows = await Piece.findAll({ where: { listingId }, order: ['position'] });
-  return rows.map(({ label, thicknessIn, widthIn, lengthFt, count, sizing, forDwelling }) => ({ label, thicknessIn, widthIn, lengthFt, count, sizing, forDwelling }));
+  return rows.map(({ label, thicknessIn, widthIn, lengthFt, count, sizing, forDwelling, kind }) => ({ label, thicknessIn, widthIn, lengthFt, count, sizing, forDwelling, kind }));
 }

@@ -74,7 +74,7 @@ describe('a listing held against the sawyer’s mill', () => {
   it('on its own page has every reason, the pieces too wide, and what is missing', async () => {
     const tooLong = await Listing.findOne({ where: { title: 'too long' }, rejectOnEmpty: true });
     const page = await listingPage(cast.bram, tooLong.number);
-    const said = await jobOnListing(cast.bram, { ...page, pieces: [{ label: 'Slab', thicknessIn: 2, widthIn: 28, lengthFt: 8, count: 1, sizing: 'full-sawn', forDwelling: false }] });
+    const said = await jobOnListing(cast.bram, { ...page, pieces: [{ label: 'Slab', thicknessIn: 2, widthIn: 28, lengthFt: 8, count: 1, sizing: 'full-sawn', forDwelling: false, kind: 'slab' }] });
     expect(said).toMatchObject({ missing: null, pieces: ['Slab: 28 in wide is over the widest board, 24 in.'] });
     expect(await jobOnListing(cast.cleo, page)).toBeNull();
     expect(await jobOnListing(null, page)).toBeNull();

@@ -5,7 +5,7 @@ import { asListingTyped, type ListingTyped, type LogTyped, type PieceTyped } fro
 export const typedLog = (changes: Partial<LogTyped> = {}): LogTyped => ({ id: randomUUID(), species: 'White oak', smallEnd: '18', largeEnd: '20 1/2', length: "12' 6\"", heart: '', defects: '', note: '', ...changes });
 
 /** A row of the cut list as typed. */
-export const typedPiece = (changes: Partial<PieceTyped> = {}): PieceTyped => ({ label: 'Table top', thickness: '8/4', width: '8', length: '8', count: '6', sizing: 'full-sawn', dwelling: '', ...changes });
+export const typedPiece = (changes: Partial<PieceTyped> = {}): PieceTyped => ({ label: 'Table top', thickness: '8/4', width: '8', length: '8', count: '6', sizing: 'full-sawn', kind: 'board', dwelling: '', ...changes });
 
 /** A whole form as a landowner near ZIP 54665 types it: three oak logs, an easy landing, a yard tree. */
 export const typedListing = (changes: Partial<ListingTyped> = {}): ListingTyped => ({

@@ -87,6 +87,13 @@ export const sizings = options(
   { value: 'store-size', label: 'Store size', said: 'store size', hint: 'The size it is called in a store: a 2 × 4 is 1 1/2 × 3 1/2 in once planed.' },
 );
 
+export const pieceKinds = options(
+  { value: 'board', label: 'Board', said: 'board' },
+  { value: 'boxed-heart', label: 'Timber, heart boxed', said: 'timber, heart boxed', hint: 'The heart of the tree runs in the middle of it.' },
+  { value: 'free-of-heart', label: 'Timber, FOHC', said: 'timber, free of heart centre', hint: 'Cut clear of the heart, so that it checks less.' },
+  { value: 'slab', label: 'Live-edge slab', said: 'live-edge slab', hint: 'Both edges left on; the width is the least of its narrower face.' },
+);
+
 export const barkChoices = options(
   { value: 'inside', label: 'Wood only, inside the bark', said: 'inside bark' },
   { value: 'over', label: 'Over the bark', said: 'over bark, the bark taken off by species', hint: 'We take off what is usual for the tree.' },

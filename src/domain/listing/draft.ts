@@ -22,6 +22,8 @@ export interface PieceTyped {
   readonly length: string;
   readonly count: string;
   readonly sizing: string;
+  /** A board, a timber round the heart or clear of it, or a slab; empty is a board. */
+  readonly kind: string;
   /** `on` or nothing. */
   readonly dwelling: string;
 }
@@ -41,7 +43,7 @@ export type ListingTyped = { readonly [A in Answer]: string } & { readonly logs:
 /** The names of the single answers, in the form's order. */
 export const answerNames: readonly Answer[] = answers;
 export const logFields = ['id', 'species', 'smallEnd', 'largeEnd', 'length', 'heart', 'defects', 'note'] as const;
-export const pieceFields = ['label', 'thickness', 'width', 'length', 'count', 'sizing', 'dwelling'] as const;
+export const pieceFields = ['label', 'thickness', 'width', 'length', 'count', 'sizing', 'kind', 'dwelling'] as const;
 
 export const MOST_LOGS = 200;
 export const MOST_PIECES = 50;

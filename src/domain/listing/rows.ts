@@ -1,3 +1,4 @@
+import { PIECE_KINDS, type PieceKind } from '../sawing/piece-kind.ts';
 import { formatFraction, formatInches, parseLengthFt, parseLengthIn, parseNumber } from '../measure.ts';
 import { good, refused, type Problem, type Result } from '../result.ts';
 import type { Defect } from '../timber/defects.ts';
@@ -26,6 +27,7 @@ export interface PieceRead {
   readonly count: number;
   readonly sizing: 'full-sawn' | 'store-size';
   readonly forDwelling: boolean;
+  readonly kind: PieceKind;
 }
 
 export type Measured = 'inside' | 'over';
@@ -142,5 +144,5 @@ export function readPieceRow(typed: PieceTyped): Result<PieceRead> {
   const sizing = typed.sizing === 'store-size' ? 'store-size' : 'full-sawn';
   if (typed.label.length > 120) reading.say('label', 'Keep this to 120 characters.');
   if (thicknessIn === null || widthIn === null || lengthFt === null || count === null || reading.problems.length > 0) return { ok: false, problems: reading.problems };
-  return good({ label: typed.label.trim(), thicknessIn, widthIn, lengthFt, count, sizing, forDwelling: typed.dwelling !== '' });
+  return good({ label: typed.label.trim(), thicknessIn, widthIn, lengthFt, count, sizing, forDwelling: typed.dwelling !== '', kind: PIECE_KINDS.find((kind) => kind === typed.kind) ?? 'board' });
 }

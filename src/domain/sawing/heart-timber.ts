@@ -14,6 +14,8 @@ export interface Timber {
   readonly widthIn: number;
   readonly lengthFt: number;
   readonly value?: number | undefined;
+  /** At most so many, for timbers free of heart centre; no limit when left out. */
+  readonly count?: number | undefined;
 }
 
 export interface TimberRequest {
@@ -60,8 +62,8 @@ export function boxedHeart({ log, mill, timber, pieces, waneAllowanceIn = 0 }: T
 export const FOHC_CLEAR_IN = 1;
 
 /** Timbers and boards free of heart centre: nothing lies within `clearIn` of the pith. */
-export const freeOfHeart = ({ log, mill, timber, pieces, waneAllowanceIn }: TimberRequest, clearIn = FOHC_CLEAR_IN): SawPlan =>
-  sawPlan({ log: { ...log, heartDefectIn: Math.max(log.heartDefectIn ?? 0, 2 * clearIn) }, mill, pattern: 'cant', pieces: [timber, ...pieces], waneAllowanceIn });
+export const freeOfHeart = ({ log, mill, timber, pieces, waneAllowanceIn }: TimberRequest, clearIn = FOHC_CLEAR_IN, effort?: number): SawPlan =>
+  sawPlan({ log: { ...log, heartDefectIn: Math.max(log.heartDefectIn ?? 0, 2 * clearIn) }, mill, pattern: 'cant', pieces: [timber, ...pieces], waneAllowanceIn, effort });
 
 /** The largest square timber, in whole inches, that boxes the heart of a log of full length. */
 export function largestBoxedHeartIn(log: LogShape): number {

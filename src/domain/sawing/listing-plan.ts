@@ -1,3 +1,4 @@
+import { formatFeet, formatInches } from '../measure.ts';
 import { type Board, totalBoardFeet } from './board.ts';
 import { cutList, type CutListAnswer, type CutListRequest, type Patience, type WantedPiece } from './cut-list.ts';
 import { cutsOf } from './cuts.ts';
@@ -6,15 +7,18 @@ import { GREEN_FOUR_QUARTER_IN } from './expected.ts';
 import { type FlawedLog, soundCore } from './sound-core.ts';
 import { type LogShape } from './log-shape.ts';
 import type { Mill, Piece } from './pieces.ts';
-import { sawPlan, type SawPlan } from './saw-plan.ts';
+import { type Pattern, sawPlan, type SawPlan } from './saw-plan.ts';
 import { type Shortfall, shortfalls } from './shortfall.ts';
+import { dedicate, type KindPiece, leastLogOf } from './special-pieces.ts';
 import type { Solver } from './solver.ts';
 
 export interface ListingPlanRequest {
   readonly logs: readonly (FlawedLog & { readonly id: string })[];
   readonly mill: Mill;
   /** Green sizes. */
-  readonly pieces: readonly WantedPiece[];
+  readonly pieces: readonly KindPiece[];
+  /** How boards are sawn; `best` when left out. Timbers and slabs have their own ways. */
+  readonly pattern?: Pattern | 'best' | undefined;
 }
 
 /** What one log of a listing gives. */
@@ -63,8 +67,8 @@ function jacketPiece(logFt: number): Piece {
   return { thicknessIn: GREEN_FOUR_QUARTER_IN, value: 1 / GREEN_FOUR_QUARTER_IN, lengthsFt };
 }
 
-/** Jacket boards only, the log sawn through and through. */
-const jacket = (core: LogShape, mill: Mill): SawPlan => sawPlan({ log: core, mill, pattern: 'live', pieces: [jacketPiece(core.lengthFt)], effort: JACKET_EFFORT });
+/** Jacket boards only, sawn through and through unless another pattern is asked for. */
+const jacket = (core: LogShape, mill: Mill, pattern: Pattern): SawPlan => sawPlan({ log: core, mill, pattern, pieces: [jacketPiece(core.lengthFt)], effort: JACKET_EFFORT });
 
 /** A plan of the cut list with jacket boards from the wood that the list leaves; their piece is the one after the list's. */
 function withJackets(core: LogShape, mill: Mill, plan: SawPlan, pieces: readonly WantedPiece[]): SawPlan {
@@ -76,28 +80,64 @@ function withJackets(core: LogShape, mill: Mill, plan: SawPlan, pieces: readonly
   return { ...plan, pattern: boards.some((board) => board.turned) ? 'cant' : 'live', boards, boardFeet: totalBoardFeet(boards), value: plan.value + totalBoardFeet(more) * (piece.value ?? 1), cuts: cutsOf(core, mill.kerfIn, boards, false) };
 }
 
-/** The boards of a whole listing on one mill: the cut list first, 4/4 jacket boards from the logs it does not need. */
-export function listingPlan({ logs, mill, pieces }: ListingPlanRequest, solve: Solver, patience: Patience): ListingPlan {
+/** What is covered of the whole list: timbers and slabs from their own logs, boards from the rest. Bounds are for the boards alone, so with other kinds nothing is proven. */
+function together(pieces: readonly KindPiece[], madeOfKinds: readonly number[], boards: CutListAnswer | null): Omit<CutListAnswer, 'plans'> {
+  const known = new Map(boards?.covered.map((each) => [each.id, each]));
+  const covered = pieces.map((piece, index) => known.get(piece.id) ?? { id: piece.id, made: madeOfKinds[index] ?? 0, short: piece.count - (madeOfKinds[index] ?? 0) });
+  const boardFeetShort = covered.reduce((sum, { short }, index) => sum + short * feetOf(pieces[index]), 0);
+  const kinds = pieces.some(isSpecial);
+  const bound = kinds ? 0 : (boards?.boundBoardFeetShort ?? 0);
+  return { covered, surplusBoardFeet: boards?.surplusBoardFeet ?? 0, boardFeetShort, boundBoardFeetShort: bound, gapBoardFeet: Math.max(0, boardFeetShort - bound), provenBest: !kinds && (boards?.provenBest ?? false) };
+}
+
+const isSpecial = ({ kind }: KindPiece): boolean => kind !== undefined && kind !== 'board';
+const feetOf = (piece: KindPiece | undefined): number => (piece ? (piece.thicknessIn * piece.widthIn * piece.lengthFt) / 12 : 0);
+
+/** What would mend a timber or slab that is short. */
+function mendOfKind(piece: KindPiece, short: number, mill: Mill): Shortfall {
+  const least = leastLogOf(piece, mill);
+  const mend = least === null ? 'A smaller section: no log up to 60 in gives this one on this mill.' : `${short === 1 ? 'One more log' : 'More logs, each'} at least ${formatInches(least)} at the small end and ${formatFeet(Math.max(4, piece.lengthFt))} long.`;
+  return { id: piece.id, short, mend: [mend] };
+}
+
+/**
+ * The boards of a whole listing on one mill: timbers and slabs first, each from logs of its own, then the boards of the cut list, then
+ * 4/4 jacket boards from what is left.
+ */
+export function listingPlan({ logs, mill, pieces, pattern = 'best' }: ListingPlanRequest, solve: Solver, patience: Patience): ListingPlan {
   const cores = logs.map((log) => ({ id: log.id, core: soundCore(log) }));
-  const sound = cores.flatMap(({ id, core }) => (core ? [{ id, ...core }] : []));
-  const request: CutListRequest = { logs: sound, mill, pieces };
-  const answer = pieces.length > 0 && sound.length > 0 ? cutList(request, solve, patience) : null;
+  const whole = cores.flatMap(({ id, core }) => (core ? [{ id, core }] : []));
+  const special = dedicate(whole, mill, pieces);
+  const dedicated = new Map(special.taken.map(({ id, plan }) => [id, plan]));
+  const sound = whole.flatMap(({ id, core }) => (dedicated.has(id) ? [] : [{ id, ...core }]));
+  const boards = pieces.filter((piece) => !isSpecial(piece));
+  const request: CutListRequest = { logs: sound, mill, pieces: boards, pattern };
+  const answer = boards.length > 0 && sound.length > 0 ? cutList(request, solve, patience) : null;
+  // The plans of the boards name their pieces among the boards alone.
+  const places = pieces.flatMap((piece, index) => (isSpecial(piece) ? [] : [index]));
   const jackets = new Map<string, SawPlan>();
   const planned = cores.map(({ id, core }): PlannedLog => {
     if (!core) return { id, core, plan: none('The sweep or the rot leaves no sound wood to plan in.'), use: 'none' };
+    const given = dedicated.get(id);
+    if (given) return { id, core, plan: withJackets(core, mill, given, pieces), use: 'cut-list' };
     const wanted = answer?.plans.find(({ logId }) => logId === id);
-    if (wanted && wanted.boards.length > 0) return { id, core, plan: withJackets(core, mill, wanted, pieces), use: 'cut-list' };
+    if (wanted && wanted.boards.length > 0) return { id, core, plan: withJackets(core, mill, { ...wanted, boards: wanted.boards.map((board) => ({ ...board, piece: places[board.piece] ?? 0 })) }, pieces), use: 'cut-list' };
     const key = JSON.stringify(core);
-    const plan = jackets.get(key) ?? jacket(core, mill);
+    const plan = jackets.get(key) ?? jacket(core, mill, pattern === 'best' ? 'live' : pattern);
     jackets.set(key, plan);
     return { id, core, plan, use: plan.boards.length > 0 ? 'jacket' : 'none' };
   });
+  const list = pieces.length === 0 || whole.length === 0 ? null : together(pieces, special.made, answer);
   const short = answer?.covered.filter((each) => each.short > 0) ?? [];
   const thin = answer && short.length > 0 && mill.kerfIn > THIN_KERF_IN + 0.02 ? cutList({ ...request, mill: { ...mill, kerfIn: THIN_KERF_IN } }, solve, patience) : null;
+  const mendable = pieces.flatMap((piece, index) => {
+    const missing = piece.count - (special.made[index] ?? 0);
+    return isSpecial(piece) && missing > 0 ? [mendOfKind(piece, missing, mill)] : [];
+  });
   return {
     logs: planned,
-    list: answer,
-    shortfalls: shortfalls(request, short),
+    list,
+    shortfalls: [...mendable, ...shortfalls(request, short)],
     thinner: answer && thin && thin.boardFeetShort < answer.boardFeetShort - 1e-6 ? { kerfIn: THIN_KERF_IN, boardFeetShort: thin.boardFeetShort } : null,
   };
 }

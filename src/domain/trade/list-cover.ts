@@ -1,5 +1,6 @@
 import { pieceSize } from '../listing/piece-words.ts';
 import type { PieceRead } from '../listing/rows.ts';
+import { pieceKindWords } from '../sawing/piece-kind.ts';
 import type { CutListAnswer } from '../sawing/cut-list.ts';
 
 /** What one mill makes of a listing's cut list, as a bid keeps it. */
@@ -26,7 +27,7 @@ export function listCover(list: Omit<CutListAnswer, 'plans'>, pieces: readonly (
   const short = new Map(list.covered.map((each) => [each.id, each.short]));
   return {
     ...planned,
-    pieces: pieces.map((piece) => ({ label: piece.label, size: pieceSize(piece), count: piece.count, short: short.get(piece.id) ?? piece.count })),
+    pieces: pieces.map((piece) => ({ label: piece.label, size: [pieceSize(piece), pieceKindWords[piece.kind]].filter(Boolean).join(', '), count: piece.count, short: short.get(piece.id) ?? piece.count })),
     boardFeetShort: list.boardFeetShort,
     provenBest: list.provenBest,
   };

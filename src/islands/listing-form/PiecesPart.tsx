@@ -3,7 +3,7 @@ import { MOST_PIECES, isBlankPiece, type PieceTyped } from '~/domain/listing/dra
 import { dwellingCautions } from '~/domain/listing/cautions.ts';
 import { pieceSaid } from '~/domain/listing/piece-words.ts';
 import { readPieceRow } from '~/domain/listing/rows.ts';
-import { sizings } from '~/domain/listing/answers.ts';
+import { pieceKinds, sizings } from '~/domain/listing/answers.ts';
 import { Button, Checkbox } from '../form/choices.tsx';
 import { Field, Select } from '../form/fields.tsx';
 import { Care, Part, useForm } from './parts.tsx';
@@ -35,13 +35,14 @@ function PieceRow({ row, index, typed, onRemove }: { readonly row: Row<PieceType
   return (
     <fieldset className="min-w-0 border-b border-rule pb-4 pt-4">
       <legend className="sr-only">Size {index + 1}</legend>
-      <div className="grid grid-cols-2 items-start gap-3 sm:grid-cols-[1.8fr_1fr_1fr_1fr_0.8fr_1.2fr]">
+      <div className="grid grid-cols-2 items-start gap-3 sm:grid-cols-[1.6fr_1fr_1fr_1fr_0.8fr_1.2fr_1.4fr]">
         <div className="col-span-2 sm:col-span-1"><Field name={name('label')} label="For" defaultValue={opened.label} autoComplete="off" placeholder="Table top" error={problem('label')} /></div>
         <Field name={name('thickness')} label="Thickness" defaultValue={opened.thickness} figure autoComplete="off" placeholder="8/4" error={problem('thickness')} />
         <Field name={name('width')} label="Width" defaultValue={opened.width} figure autoComplete="off" placeholder="6 in" error={problem('width')} />
         <Field name={name('length')} label="Length" defaultValue={opened.length} figure autoComplete="off" placeholder="8 ft" error={problem('length')} />
         <Field name={name('count')} label="How many" defaultValue={opened.count} figure inputMode="numeric" autoComplete="off" placeholder="6" error={problem('count')} />
         <Select name={name('sizing')} label="Sizing" defaultValue={opened.sizing || 'full-sawn'} options={sizings} error={problem('sizing')} />
+        <Select name={name('kind')} label="Kind" defaultValue={opened.kind || 'board'} options={pieceKinds} error={problem('kind')} />
       </div>
       <div className="mt-1 flex flex-wrap items-center justify-between gap-x-6">
         <Checkbox name={name('dwelling')} label="For a house somebody lives in" defaultChecked={opened.dwelling !== ''} />

@@ -16,6 +16,7 @@ const typedPiece = (piece: ProjectPiece): PieceTyped => ({
   length: formatFeet(piece.lengthFt),
   count: String(piece.count),
   sizing: piece.sizing,
+  kind: 'board',
   dwelling: '',
 });
 

@@ -23,7 +23,7 @@ async function partsOf(listing: Listing): Promise<ListingParts> {
   const pieces = await Piece.findAll({ where: { listingId: listing.id }, order: ['position'] });
   return {
     logs: logs.map(({ id, species, smallEndIn, largeEndIn, lengthFt, heartDefectIn, defects, note }) => ({ id, species, smallEndIn, largeEndIn, lengthFt, heartDefectIn, defects, note })),
-    'cut list': pieces.map(({ label, thicknessIn, widthIn, lengthFt, count, sizing, forDwelling }) => ({ label, thicknessIn, widthIn, lengthFt, count, sizing, forDwelling })),
+    'cut list': pieces.map(({ label, thicknessIn, widthIn, lengthFt, count, sizing, forDwelling, kind }) => ({ label, thicknessIn, widthIn, lengthFt, count, sizing, forDwelling, kind })),
     access: listing.access,
     'metal risk': [listing.metalRisk, listing.metalNote],
     place: [listing.town, listing.state, listing.coarse?.coordinates],

@@ -1,3 +1,4 @@
+import type { PieceKind } from '~/domain/sawing/piece-kind.ts';
 import type { PhotoStatus } from '~/domain/photo.ts';
 import type { ListingState } from '~/domain/states/listing.ts';
 import { day, filled, id, identity, instant, json, nullable, point, real, ref, table, text, texts, whole, yes, type Row } from './table.ts';
@@ -78,6 +79,7 @@ export const Piece = table('piece', {
   lengthFt: real(),
   count: whole(),
   sizing: text<Sizing>(),
+  kind: filled(text<PieceKind>()),
   forDwelling: filled(yes()),
 });
 export type Piece = Row<typeof Piece>;

@@ -11,7 +11,7 @@ const parts: Readonly<Record<string, string>> = {
   listings: `SELECT number, status, revision, typed, title, tree_owner, how_down, came_down_on, ends_sealed, zip, town, state, time_zone,
     ST_Y(place::geometry) AS lat, ST_X(place::geometry) AS lng, access, landing, waste, metal_risk, metal_note, note, closes_at, saw_by, created_at, published_at FROM listing WHERE owner_id = $1`,
   logs: 'SELECT listing.number AS listing, log.position, log.label, log.species, small_end_in, large_end_in, length_ft, heart_defect_in, defects, log.note FROM log JOIN listing ON listing.id = listing_id WHERE owner_id = $1',
-  cutList: 'SELECT listing.number AS listing, piece.position, label, thickness_in, width_in, length_ft, count, sizing, for_dwelling FROM piece JOIN listing ON listing.id = listing_id WHERE owner_id = $1',
+  cutList: 'SELECT listing.number AS listing, piece.position, label, thickness_in, width_in, length_ft, count, sizing, kind, for_dwelling FROM piece JOIN listing ON listing.id = listing_id WHERE owner_id = $1',
   photographs: 'SELECT photo.id, listing.number AS listing, caption, file_name, photo.status, width, height, photo.created_at, removed_at FROM photo JOIN listing ON listing.id = listing_id WHERE photo.owner_id = $1',
   sawyerProfile: `SELECT business_name, about, zip, town, state, time_zone, ST_Y(base::geometry) AS base_lat, ST_X(base::geometry) AS base_lng, travel_miles, services, languages,
     lumber_credential, working_days, notice_days, certificate_seen_at, certificate_expires_on, payout_account, payouts_ready FROM sawyer_profile WHERE account_id = $1`,

@@ -3,6 +3,7 @@ import type { MillAtWork } from '~/domain/sawing/expected.ts';
 import { TYPICAL_BAND_MILL } from '~/domain/sawing/typical-mill.ts';
 import type { BidMill } from '~/domain/trade/bid-estimate.ts';
 import { bidMill } from '../bid-work.ts';
+import { patternOf } from '~/domain/sawing/pattern-words.ts';
 import { sawnPieces } from '~/domain/sawing/sawn-piece.ts';
 import { boardPlans } from '../board-plans.ts';
 import { rows } from '../db.ts';
@@ -41,14 +42,16 @@ async function millsFor(viewer: Viewer | null, listing: { readonly id: string; r
 /**
  * The boards that a listing's logs give on a mill, for whoever may read the listing.
  * @param key which of the mills; anything else shows the first that may be chosen
+ * @param asked how boards are sawn; anything unknown leaves it to the planner
  * @throws Refusal `notFound` as the listing's page does
  */
-export async function boardsPage(viewer: Viewer | null, number: number, key: string | null) {
+export async function boardsPage(viewer: Viewer | null, number: number, key: string | null, asked: string | null) {
   const listing = await listingPage(viewer, number);
   const mills = await millsFor(viewer, listing);
   const chosen = mills.find((mill) => mill.key === key) ?? mills[0] ?? typical;
   const pieces = sawnPieces(listing.pieces);
-  return { listing, mills, chosen, pieces, plan: await boardPlans(listing.logs, pieces, chosen.mill) };
+  const pattern = patternOf(asked);
+  return { listing, mills, chosen, pieces, pattern, plan: await boardPlans(listing.logs, pieces, chosen.mill, pattern) };
 }
 
 export type BoardsPage = Awaited<ReturnType<typeof boardsPage>>;

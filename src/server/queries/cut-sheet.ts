@@ -1,3 +1,4 @@
+import { patternOf } from '~/domain/sawing/pattern-words.ts';
 import { cutSheet } from '~/domain/sawing/cut-sheet.ts';
 import { speciesOf } from '~/domain/timber/species.ts';
 import { barkRatio } from '~/domain/timber/taper-and-bark.ts';
@@ -14,9 +15,10 @@ import type { Viewer } from '../viewer.ts';
 
 /**
  * The cut sheet of a booking, for its two sides and moderators: each log's plan on the mill that comes, as it is cut.
+ * @param asked how boards are sawn; anything unknown leaves it to the planner
  * @throws Refusal `notFound` for everybody else
  */
-export async function cutSheetPage(viewer: Viewer | null, number: number) {
+export async function cutSheetPage(viewer: Viewer | null, number: number, asked: string | null) {
   if (!viewer) throw signedOut();
   const booking = Number.isSafeInteger(number) ? await Booking.findOne({ where: { number } }) : null;
   if (!booking || !abilities('booking', rolesOnBooking(viewer, booking), booking.status).see) throw notFound('booking');
@@ -24,9 +26,10 @@ export async function cutSheetPage(viewer: Viewer | null, number: number) {
   const { mill } = (await Bid.findByPk(booking.bidId, { rejectOnEmpty: true })) as unknown as { mill: BidMill };
   const logs = await listedShapes(listing.id);
   const pieces = sawnPieces(await listedPieces(listing.id));
-  const plan = await boardPlans(logs, pieces, mill);
+  const pattern = patternOf(asked);
+  const plan = await boardPlans(logs, pieces, mill, pattern);
   return {
-    number, title: listing.title ?? '', mill, pieces, list: plan.list,
+    number, title: listing.title ?? '', mill, pieces, pattern, list: plan.list,
     logs: logs.map((log, index) => {
       const planned = plan.logs[index];
       const shape = { smallEndIn: log.smallEndIn, lengthFt: log.lengthFt, ...(log.largeEndIn === null ? {} : { largeEndIn: log.largeEndIn }) };

@@ -56,7 +56,7 @@ async function bookingsOn(sawyerId: string, day: Day): Promise<readonly { bookin
 }
 
 const piecesOf = async (listingId: string): Promise<readonly PieceRead[]> =>
-  (await Piece.findAll({ where: { listingId }, order: ['position'] })).map(({ label, thicknessIn, widthIn, lengthFt, count, sizing, forDwelling }) => ({ label, thicknessIn, widthIn, lengthFt, count, sizing, forDwelling }));
+  (await Piece.findAll({ where: { listingId }, order: ['position'] })).map(({ label, thicknessIn, widthIn, lengthFt, count, sizing, forDwelling, kind }) => ({ label, thicknessIn, widthIn, lengthFt, count, sizing, forDwelling, kind }));
 
 /** The sawyer's day: stops in order with times and miles, and what to pack. @throws Refusal when the viewer does not saw */
 export async function daySheet(viewer: Viewer | null, day: Day): Promise<DaySheet> {

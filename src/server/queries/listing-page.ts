@@ -83,7 +83,7 @@ async function rowsOf(listing: Listing): Promise<Pick<ListingPage, 'logs' | 'pie
   const pieces = await Piece.findAll({ where: { listingId: listing.id }, order: ['position'] });
   return {
     logs: logs.map(({ id, position, species, smallEndIn, largeEndIn, lengthFt, heartDefectIn, defects, note }) => ({ id, position, species, smallEndIn, largeEndIn, lengthFt, heartDefectIn, defects: defects as Defect[], note })),
-    pieces: pieces.map(({ label, thicknessIn, widthIn, lengthFt, count, sizing, forDwelling }) => ({ label, thicknessIn, widthIn, lengthFt, count, sizing, forDwelling })),
+    pieces: pieces.map(({ label, thicknessIn, widthIn, lengthFt, count, sizing, forDwelling, kind }) => ({ label, thicknessIn, widthIn, lengthFt, count, sizing, forDwelling, kind })),
   };
 }
 

@@ -60,7 +60,7 @@ describe('a log', () => {
 
 describe('a piece', () => {
   it('reads quarters as inches and counts one when no count is given', () => {
-    expect(value(readPieceRow(typedPiece({ thickness: '5/4', count: '', dwelling: 'on', sizing: 'store-size' })))).toEqual({ label: 'Table top', thicknessIn: 1.25, widthIn: 8, lengthFt: 8, count: 1, sizing: 'store-size', forDwelling: true });
+    expect(value(readPieceRow(typedPiece({ thickness: '5/4', count: '', dwelling: 'on', sizing: 'store-size' })))).toEqual({ label: 'Table top', thicknessIn: 1.25, widthIn: 8, lengthFt: 8, count: 1, sizing: 'store-size', forDwelling: true, kind: 'board' });
   });
   it('explains what is missing or odd', () => {
     expect(Object.keys(said(readPieceRow(typedPiece({ thickness: '', width: '6 ft 1', length: '41', count: '1.5' })))).sort()).toEqual(['count', 'length', 'thickness', 'width']);

@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import { coverWords, listCover, listInWords, type ListCover } from '~/domain/trade/list-cover.ts';
 
-const piece = (id: string, label: string, count: number) => ({ id, label, thicknessIn: 2, widthIn: 6, lengthFt: 8, count, sizing: 'full-sawn' as const, forDwelling: false });
+const piece = (id: string, label: string, count: number) => ({ id, label, thicknessIn: 2, widthIn: 6, lengthFt: 8, count, sizing: 'full-sawn' as const, forDwelling: false, kind: 'board' as const });
 const list = (...short: readonly [string, number, number][]) => ({
   covered: short.map(([id, made, missing]) => ({ id, made, short: missing })), surplusBoardFeet: 0, boardFeetShort: short.reduce((sum, [, , missing]) => sum + missing * 8, 0), boundBoardFeetShort: 0, gapBoardFeet: 0, provenBest: true,
 });
