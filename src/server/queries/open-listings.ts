@@ -10,7 +10,7 @@ import { sqlBuilder } from './sql-builder.ts';
 
 /** Where counting stops: beyond it a number is no help to a reader and costs time. */
 const COUNT_TO = 1000;
-/** So many matches within a distance are gathered and put in order; of more, an index in that order meets enough soon. */
+/** So many matches are gathered and put in order; of more, an index in that order meets enough soon. */
 const GATHER_TO = 5000;
 /** Up to this distance what lies within it is few enough to be counted one by one, mi. */
 const NEAR_MI = 100;
@@ -108,7 +108,7 @@ function inEachStretch(sql: Sql, asked: ListingsWanted, at: Date, most: number):
  */
 const metNearBy = (met: string, which: string): string => `SELECT l.* FROM (SELECT l.id FROM ${met} ${which}) wanted JOIN listing l ON l.id = wanted.id OFFSET 0`;
 
-/** As many as are counted: one more than a reader is told of, or than is gathered. */
+/** As many as are counted: one more than a reader is told of, or than is gathered. Fewer are few. */
 const counted = (asked: ListingsAsked): number => (asked.sort !== 'distance' && near(asked) ? GATHER_TO : COUNT_TO) + 1;
 
 /** Which listings, without how they are listed. */
@@ -135,7 +135,7 @@ export function conditions(sql: Sql, asked: ListingsWanted, at: Date): string[] 
     `l.closes_at > ${sql.value(at)}`,
     ...(from && radiusMi !== undefined ? [within(sql, from, radiusMi)] : []),
     ...(species !== undefined ? [`l.species @> ARRAY[${sql.value(species)}::text]`] : []),
-    ...(minBoardFeet !== undefined ? [`l.board_feet >= ${sql.value(minBoardFeet)}::float8`] : []),
+    ...(minBoardFeet !== undefined ? [`l.board_feet >= ${sql.value(Math.ceil(minBoardFeet))}::integer`] : []),
     ...(maxLargestEndIn !== undefined ? [`l.largest_end_ob_in <= ${sql.value(maxLargestEndIn)}::float8 + 0.005`] : []),
     ...(closesBefore !== undefined ? [`l.closes_at <= ${sql.value(closesBefore)}`] : []),
     ...(fitsMillsOf !== undefined
@@ -201,7 +201,7 @@ export async function openListings(asked: ListingsAsked, at: Date): Promise<Foun
   const sql = sqlBuilder();
   const here = asked.from && pointSql(sql, asked.from);
   const nearestFirst = asked.sort === 'distance' || asked.among !== undefined;
-  const few = count <= (nearestFirst ? COUNT_TO : GATHER_TO) && count < counted(asked);
+  const few = count < counted(asked);
   const { key, first, order, after } = ordering(sql, asked, here);
   const met =
     few && near(asked)
