@@ -38,7 +38,7 @@ export const statusWords = {
     cancelled: say('Cancelled', 'over'),
   },
   trip: {
-    offered: say('Being asked about', 'care'),
+    offered: say('Waiting for answers', 'care'),
     agreed: say('Agreed by all', 'good'),
     ended: say('Ended', 'over'),
   },

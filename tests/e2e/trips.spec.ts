@@ -1,23 +1,18 @@
 import type { Page } from '@playwright/test';
-import { dayAhead, publishListing, setUpSawing } from '../../support/bidding-forms.ts';
-import { Browser, PASSWORD, readMail } from '../../support/browser.ts';
-import { another, expect, expectAccessible, mailbox, origin, test } from '../support/check.ts';
+import { dayAhead, publishListing, setUpSawing } from '../support/bidding-forms.ts';
+import { Browser, PASSWORD, readMail } from '../support/browser.ts';
+import { another, expect, expectAccessible, mailbox, origin, test } from './support/check.ts';
+import { signIn } from './support/people.ts';
+import { forgetSignUps } from './support/sign-up-limit.ts';
 
 /** A day that is not a Sunday, far enough ahead for everybody to answer. */
 const tripDay = [8, 9].map(dayAhead).find((day) => new Date(`${day}T12:00:00Z`).getUTCDay() !== 0) ?? dayAhead(8);
-
-async function signIn(page: Page, email: string, next: string): Promise<void> {
-  await page.goto(`/sign-in?next=${encodeURIComponent(next)}`);
-  await page.getByLabel('E-mail address').fill(email);
-  await page.getByLabel('Password').fill(PASSWORD);
-  await page.getByRole('button', { name: 'Sign in' }).click();
-  await page.waitForURL((url) => !url.pathname.startsWith('/sign-in'));
-}
 
 const narrow = async (page: Page): Promise<void> => expect(await page.evaluate(() => document.documentElement.scrollWidth - window.innerWidth)).toBeLessThanOrEqual(0);
 
 test('from a saved search to a trip that two landowners share', async ({ page, browser }) => {
   test.setTimeout(240_000);
+  await forgetSignUps();
   const mark = Date.now().toString(36);
   const email = (name: string): string => `${name}.${mark}@trips.example`;
   const [sawyer, pia, quin] = [new Browser(origin()), new Browser(origin()), new Browser(origin())];
@@ -27,7 +22,7 @@ test('from a saved search to a trip that two landowners share', async ({ page, b
   await quin.signUp({ name: 'Quin Quarter', email: email('quin'), as: ['landowner'] }, mailbox());
 
   // The sawyer saves a search from the list of logs.
-  await signIn(page, email('tove'), '/logs?zip=54665&radiusMi=40&fits=1&minPerHour=10');
+  await signIn(page, email('tove'), PASSWORD, '/logs?zip=54665&radiusMi=40&fits=1&minPerHour=10');
   await expect(page.locator('[data-fit="yes"]').first()).toContainText('an hour');
   await page.getByRole('link', { name: 'Tell me about new logs like these' }).click();
   await expect(page.getByText('within 40 miles of ZIP 54665, $10 an hour or more, fits your mill')).toBeVisible();
@@ -49,7 +44,7 @@ test('from a saved search to a trip that two landowners share', async ({ page, b
   await page.getByRole('link', { name: 'Bid on these logs' }).click();
   await page.getByLabel('Or type a day').fill(tripDay);
   await page.getByRole('button', { name: 'Place this bid' }).click();
-  await expect(page.getByRole('status')).toContainText('Your bid is placed.');
+  await expect(page.getByText('Your bid is placed.')).toBeVisible();
 
   // The two are joined into one outing; the second gets its bid with the offer.
   await page.goto(`/sawyer/trips/new?day=${tripDay}`);
@@ -67,7 +62,9 @@ test('from a saved search to a trip that two landowners share', async ({ page, b
   for (const [name, own, other, said] of [['pia', first, second, 'You have agreed.'], ['quin', second, first, 'All have agreed']] as const) {
     const { page: theirs, faults } = await another(browser, { phone: true });
     expect((await readMail(mailbox(), email(name), 'A shared trip')).text).toContain('Your part of the travel');
-    await signIn(theirs, email(name), trip);
+    await signIn(theirs, email(name), PASSWORD, '/listings');
+    await theirs.getByText('A sawyer asks you to join a shared trip').locator('xpath=../..').getByRole('link').first().click();
+    await theirs.waitForURL(new RegExp(`${trip}$`));
     await expect(theirs.locator(`[data-stop="${own}"]`)).toContainText('Your part of the travel');
     await expect(theirs.locator(`[data-stop="${other}"]`)).toHaveCount(0);
     expect(await theirs.content()).not.toContain(`/listings/${other}`);
