@@ -1,6 +1,7 @@
 import { Op } from 'sequelize';
 import { roadMiles } from '~/domain/trade/road-miles.ts';
 import { type BidEstimate, type BidMill, estimateBid, type ExpectedLumber, type ListedLog, lumberByPlan, withOwnFigure } from '~/domain/trade/bid-estimate.ts';
+import { FIRST_YIELD } from '~/domain/sawing/expected.ts';
 import { greenSize } from '~/domain/sawing/green-size.ts';
 import type { BidTerms, RateCard as Card } from '~/domain/trade/rate-card.ts';
 import type { QuoteOptions } from '~/domain/trade/quote.ts';
@@ -30,10 +31,11 @@ export async function listedLogs(listingId: string): Promise<readonly ListedLog[
   }));
 }
 
-/** A mill's row as a bid freezes it. */
+/** A mill's row as a bid freezes it: at the pace and yield that its own jobs have shown, unless the sawyer has switched that off. */
 export const bidMill = (mill: Mill): BidMill => ({
   id: mill.id, name: mill.name, kind: mill.kind, kerfIn: mill.kerfIn, largestLogIn: mill.largestLogIn, widestCutIn: mill.widestCutIn,
-  widestBoardIn: mill.widestBoardIn, longestFt: mill.longestFt, shortestFt: mill.shortestFt, paceBfPerHour: mill.paceBfPerHour, realisedYield: mill.realisedYield,
+  widestBoardIn: mill.widestBoardIn, longestFt: mill.longestFt, shortestFt: mill.shortestFt,
+  paceBfPerHour: mill.learns ? (mill.learnedPace ?? mill.paceBfPerHour) : mill.paceBfPerHour, realisedYield: mill.learns ? mill.realisedYield : FIRST_YIELD,
 });
 
 /** The sawyer's current rate card, or null when none was ever kept. */

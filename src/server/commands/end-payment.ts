@@ -28,6 +28,7 @@ export async function endWhenPaid(by: Actor, booking: Booking, payment: HeldPaym
   else return;
   if (booking.status !== 'signed') return;
   await transition(bookingStates, 'settle', booking, by, at, { updatedAt: at });
+  await enqueue('learn-from-job', { bookingId: booking.id });
   const listing = await Listing.findByPk(booking.listingId, { lock: true, rejectOnEmpty: true });
   if (listing.status === 'matched') await transition(listingStates, 'finish', listing, by, at, { updatedAt: at });
   await sendReceipts(booking, payment);

@@ -3,6 +3,7 @@ import type { MillForm } from '~/schemas/mill-form.ts';
 import { authorize } from '../authorize.ts';
 import { inTransaction } from '../db.ts';
 import { conflict, notFound } from '../errors.ts';
+import { learnOfMill } from '../mill-notes.ts';
 import { record } from '../transition.ts';
 import { baseRoles, type Viewer } from '../viewer.ts';
 
@@ -16,8 +17,20 @@ export async function saveMill(by: Viewer, millId: string | null, form: MillForm
   return inTransaction(async () => {
     const mill = millId === null ? await Mill.create({ ...form, sawyerId: by.id, createdAt: at }) : await ownMill(by, millId);
     if (millId !== null) await mill.update(form);
+    await learnOfMill(mill);
     await record(by, millId === null ? 'addMill' : 'changeMill', 'mill', mill.id, at);
     return mill.id;
+  });
+}
+
+/** Whether a mill's estimates go by what its own jobs have shown. Bids already made keep the copy they were made with. */
+export async function letMillLearn(by: Viewer, millId: string, learns: boolean, at: Date): Promise<void> {
+  authorize(by, 'sawyer', 'keepMill', baseRoles(by));
+  await inTransaction(async () => {
+    const mill = await ownMill(by, millId);
+    await mill.update({ learns });
+    await learnOfMill(mill);
+    await record(by, 'changeMill', 'mill', mill.id, at, { data: { learns } });
   });
 }
 

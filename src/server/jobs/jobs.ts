@@ -11,6 +11,8 @@ export interface Jobs {
   'make-provider-call': { callId: string };
   'handle-provider-event': { eventId: string };
   'wind-up-account': { accountId: string };
+  /** A booking is settled: what does it say of its mill? */
+  'learn-from-job': { bookingId: string };
   sweep: { which?: string };
 }
 
@@ -23,5 +25,6 @@ export const queues: Readonly<Record<keyof Jobs, { retryLimit: number; retryDela
   'make-provider-call': { retryLimit: 10, retryDelay: 2, retryBackoff: true },
   'handle-provider-event': { retryLimit: 10, retryDelay: 1, retryBackoff: true },
   'wind-up-account': { retryLimit: 8, retryDelay: 5, retryBackoff: true },
+  'learn-from-job': { retryLimit: 5, retryDelay: 10, retryBackoff: true },
   sweep: { retryLimit: 0, retryDelay: 1, retryBackoff: false },
 };

@@ -58,6 +58,10 @@ export const Mill = table('mill', {
   turnsLogsBy: text<'machine' | 'hand'>(),
   realisedYield: filled(real()),
   yieldJobs: filled(whole()),
+  /** Whether estimates go by what the mill's own jobs have shown. */
+  learns: filled(yes()),
+  learnedPace: nullable(whole()),
+  paceJobs: filled(whole()),
   createdAt: instant(),
   retiredAt: nullable(instant()),
 });

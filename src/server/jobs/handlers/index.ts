@@ -1,5 +1,6 @@
 import { now } from '../../clock.ts';
 import { handleProviderEvent } from '../../commands/handle-provider-event.ts';
+import { learnFromJob } from '../../commands/learn-from-job.ts';
 import { makeProviderCall } from '../../commands/make-provider-call.ts';
 import { matchSearches } from '../../commands/match-searches.ts';
 import { planBidList } from '../../commands/plan-bid-list.ts';
@@ -18,5 +19,6 @@ export const handlers: { readonly [Name in keyof Jobs]?: (payload: Jobs[Name]) =
   'make-provider-call': async ({ callId }) => makeProviderCall(callId, now()),
   'handle-provider-event': async ({ eventId }) => handleProviderEvent(eventId, now()),
   'wind-up-account': async ({ accountId }) => void (await windUpAccount(accountId, now())),
+  'learn-from-job': async ({ bookingId }) => learnFromJob(bookingId),
   sweep: async () => sweep(),
 };
