@@ -2,7 +2,7 @@ import { lockBookingMoney } from '../booking-money.ts';
 import { inTransaction } from '../db.ts';
 import { post, type Side } from '../ledger.ts';
 import { disputeOf, dropCall, oweBack } from '../lost-charges.ts';
-import { LedgerGroup, ProviderCall, type Booking, type HeldPayment } from '../models/index.ts';
+import { ProviderCall, type Booking, type HeldPayment } from '../models/index.ts';
 import type { Moved } from '../services/card-payments.ts';
 import { system } from '../viewer.ts';
 import { endWhenPaid } from './end-payment.ts';
@@ -32,12 +32,13 @@ async function withCall<T>(callId: string, work: (call: ProviderCall, booking: B
 
 /**
  * Enters what the provider did for one of our calls: the ledger group, and the end of the payment when it was the last one.
- * May be told again and again; the ledger is written once. A refund that waits at the provider for money is only noted.
+ * May be told again and again; the ledger is written once. A refund that waits at the provider for money is only noted. What is told
+ * was read before the lock was had, so it may be old: a refund that came back since stays so.
  */
 export async function finishProviderCall(callId: string, moved: Moved, at: Date): Promise<void> {
   await withCall(callId, async (call, booking, payment) => {
     if (moved.status === 'came back') return comeBack(booking, call, moved.providerId, at);
-    if (call.status === 'done' || call.status === 'dropped') return;
+    if (call.status === 'done' || call.status === 'dropped' || call.cameBackId === moved.providerId) return;
     if (moved.status === 'waiting') return void (await call.update({ providerId: moved.providerId, claimedUntil: null }));
     await call.update({ status: 'done', providerId: moved.providerId, doneAt: at, claimedUntil: null, error: null });
     await post({ at, cause: call.kind, causeId: moved.providerId, bookingId: booking.id, sides: sidesOf(call) });
@@ -57,14 +58,12 @@ export async function dropProviderCall(callId: string, at: Date): Promise<void> 
 
 /** A refund came back from the bank: it is owed again, and a moderator is needed. Told of an older refund of the call, nothing changes. */
 async function comeBack(booking: Booking, call: ProviderCall, refundId: string, at: Date): Promise<void> {
-  if (call.status === 'stuck' || call.status === 'dropped' || (call.providerId !== null && call.providerId !== refundId)) return;
-  const cause = 'refund came back';
-  if (call.status === 'done') {
-    const news = await post({
-      at, cause, causeId: refundId, bookingId: booking.id,
+  if (call.cameBackId === refundId || (call.providerId !== null && call.providerId !== refundId)) return;
+  if (call.status === 'done')
+    await post({
+      at, cause: 'refund came back', causeId: refundId, bookingId: booking.id,
       sides: [{ account: 'provider balance', amountCents: centsOf(call) }, { account: 'refund payable', amountCents: -centsOf(call) }],
     });
-    if (!news) return;
-  } else if (await LedgerGroup.findOne({ where: { cause, causeId: refundId } })) return;
-  await call.update({ status: 'stuck', providerId: refundId, error: 'The bank sent the refund back.', doneAt: null, claimedUntil: null });
+  const status = call.status === 'dropped' ? 'dropped' : 'stuck';
+  await call.update({ status, providerId: refundId, cameBackId: refundId, error: 'The bank sent the refund back.', doneAt: null, claimedUntil: null });
 }

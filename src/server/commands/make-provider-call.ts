@@ -104,7 +104,7 @@ async function noteFailure(call: ProviderCall, problem: PaymentsProblem, at: Dat
   const stuck = !curable || call.attempts >= MOST_ATTEMPTS;
   const waitS = Math.min(2 ** call.attempts, 6 * 3600);
   await execute(
-    `UPDATE provider_call SET status = $2, error = $3, claimed_until = $4, idempotency_key = $5 WHERE id = $1 AND status <> 'done'`,
+    `UPDATE provider_call SET status = $2, error = $3, claimed_until = $4, idempotency_key = $5 WHERE id = $1 AND status IN ('waiting', 'failed')`,
     [
       call.id, stuck ? 'stuck' : 'failed', problem.message.slice(0, 500), stuck ? null : new Date(at.getTime() + waitS * 1000),
       problem.kind === 'unknown' ? call.idempotencyKey : `${call.kind}-${crypto.randomUUID()}`,

@@ -1,8 +1,11 @@
 import { afterAll, afterEach, beforeAll, beforeEach, describe, expect, it } from 'vitest';
 import { cancelBooking } from '~/server/commands/cancel-booking.ts';
+import { finishProviderCall } from '~/server/commands/finish-provider-call.ts';
 import { lapseUnpaid } from '~/server/commands/lapse-unpaid.ts';
+import { makeProviderCall } from '~/server/commands/make-provider-call.ts';
 import { reconcile } from '~/server/commands/reconcile.ts';
 import { recordProviderEvent } from '~/server/commands/record-provider-event.ts';
+import { retryProviderCall } from '~/server/commands/retry-provider-call.ts';
 import { settleBooking } from '~/server/commands/settle-booking.ts';
 import { startCheckout } from '~/server/commands/start-checkout.ts';
 import { inTransaction, rows } from '~/server/db.ts';
@@ -165,7 +168,6 @@ describe('the payment deadline', () => {
 
 describe('a refund that the bank sends back', () => {
   it('is owed again, stands before a moderator, and is made anew', async () => {
-    const { retryProviderCall } = await import('~/server/commands/retry-provider-call.ts');
     const booking = await held();
     await cancel(cast.ada, booking);
     await house.work();
@@ -181,6 +183,37 @@ describe('a refund that the bank sends back', () => {
     await house.work();
     expect((await ProviderCall.findByPk(call.id, { rejectOnEmpty: true })).status).toBe('done');
     expect(await balances(booking.id)).toMatchObject({ 'refund payable': 0 });
+  });
+});
+
+describe('what was read of a refund before it came back', () => {
+  const callFor = async (booking: Booking): Promise<ProviderCall> => ProviderCall.findOne({ where: { bookingId: booking.id, kind: 'refund' }, rejectOnEmpty: true });
+
+  it('changes nothing when it is heard after, whether the refund had been entered or not', async () => {
+    for (const entered of [true, false]) {
+      const booking = await held();
+      await cancel(cast.ada, booking);
+      // Made at the provider while the line is dead on the way back: nothing is entered yet.
+      if (!entered) house.fake.control.fault({ on: 'POST /v1/refunds', times: 1, effect: 'drop' });
+      const { id } = await callFor(booking);
+      await makeProviderCall(id, new Date()).catch(() => undefined);
+      const refund = house.fake.control.objects('refund').find(({ metadata }) => metadata?.['call'] === id);
+      if (!refund) throw new Error('No refund was made.');
+      house.fake.control.failRefund(refund.id);
+      await finishProviderCall(id, { providerId: refund.id, status: 'came back' }, new Date());
+      await finishProviderCall(id, { providerId: refund.id, status: 'moved' }, new Date());
+      await finishProviderCall(id, { providerId: refund.id, status: 'waiting' }, new Date());
+      expect((await callFor(booking)).status).toBe('stuck');
+      expect(await balances(booking.id)).toMatchObject({ 'refund payable': -60_000 });
+
+      await retryProviderCall(cast.mo, id, new Date());
+      await finishProviderCall(id, { providerId: refund.id, status: 'moved' }, new Date());
+      expect((await callFor(booking)).status).toBe('waiting');
+      await house.work();
+      expect((await callFor(booking)).status).toBe('done');
+      expect(await balances(booking.id)).toMatchObject({ 'refund payable': 0 });
+      expect(await checkBooks(house, [booking.id])).toEqual([]);
+    }
   });
 });
 
