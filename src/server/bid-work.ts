@@ -6,8 +6,9 @@ import { greenSize } from '~/domain/sawing/green-size.ts';
 import type { BidTerms, RateCard as Card } from '~/domain/trade/rate-card.ts';
 import type { QuoteOptions } from '~/domain/trade/quote.ts';
 import type { Defect } from '~/domain/timber/defects.ts';
-import { checkMillingDay } from '~/domain/time.ts';
+import { checkMillingDay, formatDay, type Day } from '~/domain/time.ts';
 import type { BidForm } from '~/schemas/bid-form.ts';
+import { rows } from './db.ts';
 import { AccountBlock } from './models/account.ts';
 import { type Listing, Log, Piece } from './models/listing.ts';
 import { Mill, RateCard, SawyerProfile } from './models/sawyer.ts';
@@ -134,6 +135,15 @@ export async function millOf(sawyerId: string, millId: string): Promise<BidMill>
   const mill = await Mill.findOne({ where: { id: millId, sawyerId, retiredAt: null } });
   if (!mill) throw invalid([{ path: 'millId', message: 'Choose one of your mills.' }]);
   return bidMill(mill);
+}
+
+/**
+ * That none of the days to be offered is one the sawyer has taken off.
+ * @throws Refusal `invalid` at the days
+ */
+export async function refuseDaysOff(sawyerId: string, days: readonly Day[], path = 'days'): Promise<void> {
+  const off = await rows<{ day: Day }>('SELECT day::text AS day FROM day_off WHERE sawyer_id = $1 AND day = ANY($2::date[]) ORDER BY day', [sawyerId, days]);
+  if (off.length > 0) throw invalid([{ path, message: `You are off on ${off.map(({ day }) => formatDay(day)).join(', ')}. Offer another day, or give it back in your calendar first.` }]);
 }
 
 /** Refuses when the listing is hidden, past its closing, at another revision than the sawyer saw, or either side has blocked the other. */

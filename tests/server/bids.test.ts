@@ -9,7 +9,7 @@ import { withdrawBid } from '~/server/commands/withdraw-bid.ts';
 import { rows } from '~/server/db.ts';
 import { AccountBlock } from '~/server/models/account.ts';
 import { Listing, Log } from '~/server/models/listing.ts';
-import { Bid, Mill, RateCard, SawyerProfile } from '~/server/models/sawyer.ts';
+import { Bid, DayOff, Mill, RateCard, SawyerProfile } from '~/server/models/sawyer.ts';
 import type { FrozenEstimate } from '~/server/bid-work.ts';
 import { type Cast, makeCast } from '../support/cast.ts';
 import { OAK_CARD } from '../support/rate-cards.ts';
@@ -44,6 +44,18 @@ describe('a bid', () => {
     expect((bid.estimate as FrozenEstimate).terms.card).toEqual(OAK_CARD);
     const mail = await rows<{ data: { to: string; subject: string } }>(`SELECT data FROM pgboss.job WHERE name = 'send-mail' ORDER BY created_on DESC LIMIT 1`);
     expect(mail[0]?.data).toMatchObject({ to: cast.ada.email, subject: 'A bid on White oak, 3 logs' });
+  });
+
+  it('offers no day that the sawyer has taken off', async () => {
+    const id = await placeBid(cast.bram, listing.number, bidOf(bramsMill), MARKET_AT);
+    const [day = ''] = (await Bid.findByPk(id, { rejectOnEmpty: true })).daysOffered;
+    await DayOff.create({ sawyerId: cast.bram.id, day, source: 'own' });
+    const refusal = { kind: 'invalid', problems: [{ path: 'days', message: expect.stringContaining('You are off on') }] };
+    await expect(changeBid(cast.bram, id, bidOf(bramsMill), MARKET_AT)).rejects.toMatchObject(refusal);
+    await withdrawBid(cast.bram, id, MARKET_AT);
+    await expect(placeBid(cast.bram, listing.number, bidOf(bramsMill), MARKET_AT)).rejects.toMatchObject(refusal);
+    await DayOff.destroy({ where: { sawyerId: cast.bram.id } });
+    await placeBid(cast.bram, listing.number, bidOf(bramsMill), MARKET_AT);
   });
 
   it('stands though the rate card changes afterwards', async () => {

@@ -12,7 +12,7 @@ import { Listing } from '../models/listing.ts';
 import { Bid } from '../models/sawyer.ts';
 import { transition } from '../transition.ts';
 import type { Viewer } from '../viewer.ts';
-import { bidFigures, checkBiddable, currentCard, foresee, millOf, workOut } from '../bid-work.ts';
+import { bidFigures, checkBiddable, currentCard, foresee, millOf, refuseDaysOff, workOut } from '../bid-work.ts';
 import { lockListingAndBid } from './lock-listing-and-bid.ts';
 
 /** Changes a live bid: worked out anew on the logs, with the sawyer's rate card as it is now. A bid to confirm is thereby confirmed. */
@@ -23,6 +23,7 @@ export async function changeBid(by: Viewer, bidId: string, form: BidForm, at: Da
     const { bid, listing } = await lockListingAndBid(bidId);
     authorize(by, 'bid', 'change', rolesOnBid(by, bid, listing), bid.status);
     await checkBiddable(listing, by.id, form.listingRevision, at);
+    await refuseDaysOff(by.id, form.days);
     const card = await currentCard(by.id);
     if (card === null) throw invalid([{ path: '', message: 'Fill in your rate card before you bid.' }]);
     const mill = await millOf(by.id, form.millId);

@@ -6,7 +6,7 @@ import { hourWords } from '~/domain/trade/job-worth.ts';
 import { tripOffered } from '~/emails/trip-letters.ts';
 import { authorize } from '../authorize.ts';
 import { readerOf } from '../bidders.ts';
-import { currentCard } from '../bid-work.ts';
+import { currentCard, refuseDaysOff } from '../bid-work.ts';
 import { inTransaction, lockFor, refusedBy } from '../db.ts';
 import { conflict, invalid, notFound } from '../errors.ts';
 import { enqueue } from '../jobs/queue.ts';
@@ -86,6 +86,7 @@ export async function offerTrip(by: Viewer, asked: TripOffer, at: Date): Promise
   try {
     return await inTransaction(async () => {
       await lockFor('calendar', by.id);
+      await refuseDaysOff(by.id, [offer.day], 'day');
       const card: RateCard | null = await currentCard(by.id);
       if (!card) throw invalid([{ path: '', message: 'Fill in your rate card first.' }]);
       const booked = await bookedOn(by.id, offer.day);

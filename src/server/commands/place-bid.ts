@@ -13,7 +13,7 @@ import { Bid } from '../models/sawyer.ts';
 import { holdActive } from '../standing.ts';
 import { record } from '../transition.ts';
 import type { Viewer } from '../viewer.ts';
-import { bidFigures, checkBiddable, currentCard, foresee, millOf, workOut } from '../bid-work.ts';
+import { bidFigures, checkBiddable, currentCard, foresee, millOf, refuseDaysOff, workOut } from '../bid-work.ts';
 
 /**
  * Bids on an open listing: the estimate is worked out here, on the logs as they stand, and frozen with the mill and the rate card.
@@ -30,6 +30,7 @@ export async function placeBid(by: Viewer, listingNumber: number, form: BidForm,
       await refuseBlocked(by.id, listing.ownerId);
       if (!(await holdActive(by.id))) throw forbidden('This account is suspended.');
       await checkBiddable(listing, by.id, form.listingRevision, at);
+      await refuseDaysOff(by.id, form.days);
       const card = await currentCard(by.id);
       if (card === null) throw invalid([{ path: '', message: 'Fill in your rate card before you bid.' }]);
       const mill = await millOf(by.id, form.millId);
