@@ -1,6 +1,6 @@
 import { beforeAll, describe, expect, it } from 'vitest';
 import { coarsePoint, type Point } from '~/domain/geo.ts';
-import { execute } from '~/server/db.ts';
+import { execute, rows } from '~/server/db.ts';
 import { Account, Mill, RateCard, SawyerProfile } from '~/server/models/index.ts';
 import { sawyerPage } from '~/server/queries/sawyer-page.ts';
 import { sawyersNear } from '~/server/queries/sawyers-near.ts';
@@ -55,5 +55,29 @@ describe('sawyers near', () => {
 
   it('answer not found to an id that is none', async () => {
     await expect(sawyerPage("x'; DROP", null, at)).rejects.toMatchObject({ kind: 'notFound' });
+  });
+});
+
+describe('many sawyers', () => {
+  it('come a page at a time, each once, nearest first and by name', async () => {
+    for (let index = 0; index < 60; index += 1) await makeSawyer(`many ${index % 20}-${index}`, { lat: 43.55 + (index % 15) * 0.01, lng: -90.9 }, 200);
+    for (const place of [from, null]) {
+      const seen: string[] = [];
+      let after: string | null = null;
+      do {
+        const page = await sawyersNear(place, true, at, after);
+        expect(page.sawyers.length).toBeLessThanOrEqual(50);
+        seen.push(...page.sawyers.map(({ id }) => id));
+        after = page.next;
+      } while (after !== null);
+      expect(new Set(seen).size).toBe(seen.length);
+      const whole = await rows<{ id: string }>(
+        `SELECT a.id FROM sawyer_profile s JOIN account a ON a.id = s.account_id WHERE a.status = 'active' AND EXISTS (SELECT 1 FROM mill WHERE sawyer_id = a.id) AND EXISTS (SELECT 1 FROM rate_card WHERE sawyer_id = a.id)
+         ${place ? `AND (s.base <-> ST_SetSRID(ST_MakePoint($2, $1), 4326)::geography) * 1.25 <= s.travel_miles * 1609.344 ORDER BY s.base <-> ST_SetSRID(ST_MakePoint($2, $1), 4326)::geography, a.id` : 'ORDER BY s.business_name, a.id'}`,
+        place ? [place.lat, place.lng] : [],
+      );
+      expect(seen).toEqual(whole.map(({ id }) => id));
+    }
+    expect((await sawyersNear(from, true, at, '00000000-0000-4000-8000-000000000000')).sawyers.length).toBe(50);
   });
 });

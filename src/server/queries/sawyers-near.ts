@@ -35,9 +35,12 @@ export interface PublicSawyer {
   readonly certificateExpiresOn: string | null;
 }
 
+/** What a sawyer is called in public, in SQL. */
+const sawyerName = `coalesce(nullif(s.business_name, ''), a.name)`;
+
 /** The columns of a public sawyer, for `sawyer_profile s JOIN account a`. `metres` is SQL for the distance. */
 export const publicSawyerColumns = (metres: string, at: string): string => `
-  a.id, coalesce(nullif(s.business_name, ''), a.name) AS name, coalesce(s.town, '') AS town, coalesce(s.state, '') AS state,
+  a.id, ${sawyerName} AS name, coalesce(s.town, '') AS town, coalesce(s.state, '') AS state,
   round((${metres} / ${METRES_PER_MILE})::numeric, 1)::float8 AS "distanceMi", s.travel_miles AS "travelMiles",
   (SELECT coalesce(json_agg(json_build_object('name', m.name, 'kind', m.kind, 'kerfIn', m.kerf_in, 'largestLogIn', m.largest_log_in, 'widestCutIn', m.widest_cut_in,
      'widestBoardIn', m.widest_board_in, 'longestFt', m.longest_ft, 'shortestFt', m.shortest_ft, 'turnsLogsBy', m.turns_logs_by) ORDER BY m.created_at), '[]')
@@ -58,17 +61,21 @@ export const mostSawyers = 50;
 /**
  * Sawyers nearest first, or by name when no place is given. `wouldCome` keeps those whose reach holds the place's road miles.
  * Leans on `sawyer_near` by nearest neighbour; one more than the page shows is asked for, to know whether there are more.
+ * @param after the id of the sawyer after whom the page begins; one who is gone begins the list again
  */
-export async function sawyersNear(from: Point | null, wouldCome: boolean, at: Date): Promise<{ readonly sawyers: readonly PublicSawyer[]; readonly more: boolean }> {
+export async function sawyersNear(from: Point | null, wouldCome: boolean, at: Date, after: string | null = null): Promise<{ readonly sawyers: readonly PublicSawyer[]; readonly next: string | null }> {
   const sql = sqlBuilder();
   const today = sql.value(at);
   const here = from && `ST_SetSRID(ST_MakePoint(${sql.value(from.lng)}::float8, ${sql.value(from.lat)}::float8), 4326)::geography`;
   const metres = here ? `(s.base <-> ${here})` : 'NULL::float8';
   const reach = here && wouldCome ? `AND ${metres} * ${ROAD_FACTOR} <= s.travel_miles * ${METRES_PER_MILE}` : '';
+  const key = here ? metres : sawyerName;
+  // Whoever is last on a page is looked up again: the address says who, not how far.
+  const past = after === null ? '' : `AND coalesce((${key}, a.id) > (SELECT ${key}, a.id FROM sawyer_profile s JOIN account a ON a.id = s.account_id WHERE a.id = ${sql.value(after)}::uuid), true)`;
   const found = await rows<PublicSawyer>(
     `SELECT ${publicSawyerColumns(metres, today)} FROM sawyer_profile s JOIN account a ON a.id = s.account_id
-     WHERE ${publicSawyerConditions} ${reach} ORDER BY ${here ? `s.base <-> ${here}` : 'name'}, a.id LIMIT ${mostSawyers + 1}`,
+     WHERE ${publicSawyerConditions} ${reach} ${past} ORDER BY ${key}, a.id LIMIT ${mostSawyers + 1}`,
     sql.values,
   );
-  return { sawyers: found.slice(0, mostSawyers), more: found.length > mostSawyers };
+  return { sawyers: found.slice(0, mostSawyers), next: found.length > mostSawyers ? (found[mostSawyers - 1]?.id ?? null) : null };
 }
