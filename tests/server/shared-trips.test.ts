@@ -12,7 +12,9 @@ import { moneyTermsOf } from '~/server/booking-money.ts';
 import { execute, rows } from '~/server/db.ts';
 import { BookedDay, Booking, DayProposal, Outing } from '~/server/models/booking.ts';
 import type { Listing } from '~/server/models/listing.ts';
-import { Bid } from '~/server/models/sawyer.ts';
+import { Bid, DayOff } from '~/server/models/sawyer.ts';
+import { accountExport } from '~/server/queries/account-export.ts';
+import { tripsAskedOf } from '~/server/queries/trip-page.ts';
 import { SharedTrip, TripStop } from '~/server/models/trip.ts';
 import { agreementOf } from '~/server/queries/agreement.ts';
 import { coarsePoint } from '~/domain/geo.ts';
@@ -58,6 +60,18 @@ const agree = (index: number, trip: number, version = 1) => agreeToTrip(who(inde
 const letters = async (subject: string): Promise<string[]> => (await rows<{ to: string }>(`SELECT data->>'to' AS to FROM pgboss.job WHERE name = 'send-mail' AND data->>'subject' LIKE $1 ORDER BY created_on, id`, [`${subject}%`])).map(({ to }) => to);
 
 describe('a shared trip', () => {
+  it('is not offered for a day that the sawyer has taken off, and is taken along by both sides', async () => {
+    await DayOff.create({ sawyerId: sawyer.id, day, source: 'own' });
+    await expect(offerTrip(sawyer, offer(2), MARKET_AT)).rejects.toMatchObject({ kind: 'invalid', problems: [{ path: 'day' }] });
+    await DayOff.destroy({ where: { sawyerId: sawyer.id } });
+    const number = await offerTrip(sawyer, offer(2), MARKET_AT);
+    expect(await accountExport(sawyer, MARKET_AT)).toMatchObject({ sharedTrips: [{ number, day, status: 'offered' }], sharedTripStops: [{ trip: number, as: 'sawyer' }, { trip: number, as: 'sawyer' }] });
+    const theirs = (await accountExport(who(0), MARKET_AT)) as { sharedTrips: unknown[]; sharedTripStops: { trip: number; as: string; listing: number }[] };
+    expect(theirs.sharedTrips).toEqual([]);
+    expect(theirs.sharedTripStops.filter(({ trip }) => trip === number)).toMatchObject([{ as: 'landowner', listing: listings[0]?.number }]);
+    expect(await tripsAskedOf(who(0))).toMatchObject([{ number, day, answered: false }]);
+  });
+
   it('is offered with a bid where there is none, the travel shared to the cent', async () => {
     await placeBid(sawyer, numberOf(0), bidOf(mill, { roadMiles: 40 }), MARKET_AT);
     const trip = await offerTrip(sawyer, offer(3), MARKET_AT);

@@ -23,6 +23,10 @@ const parts: Readonly<Record<string, string>> = {
   savedSearches: 'SELECT name, tells, zip, radius_mi, species, min_board_feet, max_largest_end_in, closing, fits, min_per_hour_cents, created_at FROM saved_search WHERE sawyer_id = $1',
   bids: `SELECT listing.number AS listing, bid.listing_revision, bid.status, mill, card, estimate, road_miles, expected_cents, hold_cents, metal_cap_cents, off_bearer, days_offered, message,
     bid.created_at, bid.updated_at FROM bid JOIN listing ON listing.id = listing_id WHERE sawyer_id = $1`,
+  sharedTrips: `SELECT number, status, day, start_time, time_zone, miles, alone_miles, whole_cents, alone_cents, answer_by, ended_because, created_at FROM shared_trip WHERE sawyer_id = $1`,
+  sharedTripStops: `SELECT trip.number AS trip, trip.day, listing.number AS listing, CASE WHEN stop.landowner_id = $1 THEN 'landowner' ELSE 'sawyer' END AS as, stop.status, stop.position, alone_travel_cents, travel_cents,
+    set_up_cents, alone_cost_cents, cost_cents, hold_cents, answered_at, out_because FROM trip_stop stop JOIN shared_trip trip ON trip.id = stop.trip_id JOIN listing ON listing.id = stop.listing_id
+    WHERE stop.landowner_id = $1 OR trip.sawyer_id = $1 ORDER BY trip.number, stop.position`,
   bookings: `SELECT booking.number, listing.number AS listing, CASE WHEN landowner_id = $1 THEN 'landowner' ELSE 'sawyer' END AS as, booking.status, booking.time_zone, starts_at, pay_by, sign_by,
     booking.created_at FROM booking JOIN listing ON listing.id = listing_id WHERE landowner_id = $1 OR sawyer_id = $1`,
   agreements: 'SELECT booking.number AS booking, terms, frozen_at FROM work_agreement JOIN booking ON booking.id = booking_id WHERE landowner_id = $1 OR sawyer_id = $1',
