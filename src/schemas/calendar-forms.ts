@@ -1,6 +1,6 @@
 import { z } from 'zod';
 import { addDays, daysBetween } from '~/domain/time.ts';
-import { choice, day, fieldOf, list, optional } from './fields.ts';
+import { choice, day, fieldOf, list, optional, text } from './fields.ts';
 
 /** At most this many days are taken off at once. */
 export const MOST_DAYS_OFF = 366;
@@ -24,11 +24,11 @@ const range = z.object({ deed: z.literal('range'), from: fieldOf(day), until: fi
 const only = <const Deed extends string>(deed: Deed) => z.object({ deed: z.literal(deed) });
 
 /** What the calendar page can be asked to do. */
-export const calendarForm = z.union([mark, range, only('renew-feed'), only('stop-feed'), only('forget-imported')]);
+export const calendarForm = z.union([mark, range, only('renew-feed'), only('stop-feed'), only('stop-other'), only('forget-imported')]);
 export type CalendarForm = z.output<typeof calendarForm>;
 
 /** How busy a day of the other calendar must be to count as a day off: hours of entries, whole-day entries always count. */
 export const busyMeasures = { day: 24, half: 4, any: 0 } as const;
 
-/** How an imported calendar is to be read; the file itself is read beside the form. */
-export const importForm = z.object({ which: fieldOf(choice(['day', 'half', 'any'], 'Say which entries count.')) });
+/** How an imported calendar is to be read, and where it is when it is not a file; the file itself is read beside the form. */
+export const importForm = z.object({ address: fieldOf(text(2000)), which: fieldOf(choice(['day', 'half', 'any'], 'Say which entries count.')) });

@@ -24,6 +24,7 @@ const schema = z.object({
   MAIL_FROM: z.string().min(3),
   FEE_BASIS_POINTS: z.coerce.number().int().min(0).max(5000).default(500),
   TRUSTED_PROXY: z.string().default(''),
+  INNER_CALENDAR_HOSTS: z.string().default(''),
   LOG_LEVEL: z.enum(['debug', 'info', 'warn', 'error', 'silent']).default('info'),
 });
 

@@ -104,6 +104,17 @@ describe('the calendar', () => {
     const page = await (await sawyer.get(`/sawyer/calendar?month=${day(25).slice(0, 7)}`)).text();
     expect(page).toContain('One day off ahead comes from it.');
     expect(page).not.toContain('Private matter');
+    const address = async (typed: string): Promise<Response> => {
+      const body = new FormData();
+      body.set('address', typed);
+      body.set('which', 'half');
+      return sawyer.request('/sawyer/calendar/import', { method: 'POST', body });
+    };
+    for (const typed of [origin, 'http://127.0.0.1/mine.ics', 'http://[::1]/mine.ics', 'webcal://localhost/mine.ics', 'ftp://calendar.example/mine.ics', 'nonsense']) {
+      const refused = await address(typed);
+      expect(refused.status).toBe(422);
+      expect(await refused.text()).toContain('href="#f-address"');
+    }
     for (const [text, which] of [[null, 'half'], ['hello', 'half'], [whole, 'some']] as const) expect((await send(text, which)).status).toBe(422);
     expect((await send('x'.repeat(1_100_000))).status).toBe(413);
   });

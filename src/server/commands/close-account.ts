@@ -17,6 +17,7 @@ const gone = [
   'DELETE FROM account_block WHERE blocker_id = $1 OR blocked_id = $1',
   'DELETE FROM day_off WHERE sawyer_id = $1',
   'DELETE FROM calendar_feed WHERE sawyer_id = $1',
+  'DELETE FROM other_calendar WHERE sawyer_id = $1',
   'DELETE FROM ready_message WHERE sawyer_id = $1',
   "UPDATE log SET note = '' FROM listing WHERE listing.id = log.listing_id AND owner_id = $1",
 ];

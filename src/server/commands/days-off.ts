@@ -20,12 +20,12 @@ export interface DaysOffChanged {
 const today = async (by: Viewer, at: Date): Promise<Day> => dayAt(at, (await SawyerProfile.findByPk(by.id))?.timeZone ?? 'UTC');
 
 /** The days on which a booking stands. The sawyer's calendar is locked, so nobody books one meanwhile. */
-async function lockedBookedDays(by: Viewer): Promise<ReadonlySet<Day>> {
+async function lockedBookedDays(by: Pick<Viewer, 'id'>): Promise<ReadonlySet<Day>> {
   await lockFor('calendar', by.id);
   return new Set((await rows<{ day: Day }>('SELECT day::text AS day FROM booked_day WHERE sawyer_id = $1 AND active', [by.id])).map(({ day }) => day));
 }
 
-async function put(by: Viewer, days: readonly Day[], source: 'own' | 'imported'): Promise<number> {
+async function put(by: Pick<Viewer, 'id'>, days: readonly Day[], source: 'own' | 'imported'): Promise<number> {
   // An own day off that another calendar names too stays the sawyer's own.
   const put = await rows<{ day: Day }>('INSERT INTO day_off (sawyer_id, day, source) SELECT $1, unnest($2::date[]), $3 ON CONFLICT (sawyer_id, day) DO NOTHING RETURNING day', [by.id, days, source]);
   return put.length;
@@ -55,20 +55,29 @@ export async function changeDaysOff(by: Viewer, change: { readonly add: readonly
  */
 export async function importCalendar(by: Viewer, calendar: { readonly text: string; readonly leastHours: number }, at: Date): Promise<DaysOffChanged> {
   authorize(by, 'sawyer', 'keepCalendar', baseRoles(by));
-  const zone = (await SawyerProfile.findByPk(by.id))?.timeZone ?? 'UTC';
-  const first = dayAt(at, zone);
-  const last = addDays(first, IMPORT_DAYS);
-  const busy = busyDays(busySpans(calendar.text, zone, first, last), zone, first, last, calendar.leastHours);
   return inTransaction(async () => {
-    const booked = await lockedBookedDays(by);
-    const removed = await forget(by, first);
-    const added = await put(by, busy.filter((day) => !booked.has(day)), 'imported');
-    await record(by, 'importCalendar', 'account', by.id, at, { data: { added, removed } });
-    return { added, removed, booked: busy.filter((day) => booked.has(day)) };
+    const changed = await takeBusyDays(by.id, calendar, at);
+    await record(by, 'importCalendar', 'account', by.id, at, { data: { added: changed.added, removed: changed.removed } });
+    return changed;
   });
 }
 
-const forget = async (by: Viewer, from: Day): Promise<number> => (await rows('DELETE FROM day_off WHERE sawyer_id = $1 AND day >= $2 AND source = $3 RETURNING day', [by.id, from, 'imported'])).length;
+/**
+ * Puts the busy days of a calendar in place of those taken before, whoever asks for it; to be called in a transaction.
+ * @throws Refusal `invalid` when the text is no calendar
+ */
+export async function takeBusyDays(sawyerId: string, calendar: { readonly text: string; readonly leastHours: number }, at: Date): Promise<DaysOffChanged> {
+  const zone = (await SawyerProfile.findByPk(sawyerId))?.timeZone ?? 'UTC';
+  const first = dayAt(at, zone);
+  const last = addDays(first, IMPORT_DAYS);
+  const busy = busyDays(busySpans(calendar.text, zone, first, last), zone, first, last, calendar.leastHours);
+  const booked = await lockedBookedDays({ id: sawyerId });
+  const removed = await forget({ id: sawyerId }, first);
+  const added = await put({ id: sawyerId }, busy.filter((day) => !booked.has(day)), 'imported');
+  return { added, removed, booked: busy.filter((day) => booked.has(day)) };
+}
+
+const forget = async (by: Pick<Viewer, 'id'>, from: Day): Promise<number> => (await rows('DELETE FROM day_off WHERE sawyer_id = $1 AND day >= $2 AND source = $3 RETURNING day', [by.id, from, 'imported'])).length;
 
 /** Gives back every day that was taken from another calendar. @returns how many */
 export async function forgetImported(by: Viewer, at: Date): Promise<number> {

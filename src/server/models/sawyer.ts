@@ -39,6 +39,10 @@ export const ReadyMessage = table('ready_message', { id: id(), sawyerId: ref(), 
 export type ReadyMessage = Row<typeof ReadyMessage>;
 
 /** The private address of a sawyer's calendar: the secret's hash, and the secret sealed for its owner. */
+/** Another calendar of the sawyer's, read again by itself. */
+export const OtherCalendar = table('other_calendar', { sawyerId: keyRef(), addressSealed: text(), host: text(), leastHours: whole(), madeAt: instant(), readAt: instant(), readNext: instant(), failures: filled(whole()), failedBecause: nullable(text()) });
+export type OtherCalendar = Row<typeof OtherCalendar>;
+
 export const CalendarFeed = table('calendar_feed', { sawyerId: keyRef(), secretHash: text(), secretSealed: text(), madeAt: instant() });
 
 export type MillKind = 'band' | 'swing-blade' | 'chainsaw' | 'circular';

@@ -18,6 +18,7 @@ const parts: Readonly<Record<string, string>> = {
   daysOff: 'SELECT day, source FROM day_off WHERE sawyer_id = $1',
   readyMessages: 'SELECT name, body, created_at, updated_at FROM ready_message WHERE sawyer_id = $1',
   calendarFeed: 'SELECT made_at FROM calendar_feed WHERE sawyer_id = $1',
+  otherCalendar: 'SELECT host, least_hours, made_at, read_at FROM other_calendar WHERE sawyer_id = $1',
   mills: 'SELECT * FROM mill WHERE sawyer_id = $1',
   rateCards: 'SELECT revision, card, created_at FROM rate_card WHERE sawyer_id = $1',
   savedSearches: 'SELECT name, tells, zip, radius_mi, species, min_board_feet, max_largest_end_in, closing, fits, min_per_hour_cents, created_at FROM saved_search WHERE sawyer_id = $1',

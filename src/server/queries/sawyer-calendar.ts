@@ -5,7 +5,7 @@ import { dayAt, type Day } from '~/domain/time.ts';
 import { authorize } from '../authorize.ts';
 import { rows } from '../db.ts';
 import { openFeedSecret } from '../feed-secret.ts';
-import { CalendarFeed, SawyerProfile } from '../models/sawyer.ts';
+import { CalendarFeed, OtherCalendar, SawyerProfile } from '../models/sawyer.ts';
 import { linkTo } from '../parties.ts';
 import { baseRoles, type Viewer } from '../viewer.ts';
 
@@ -31,6 +31,8 @@ export interface SawyerCalendar {
   readonly importedAhead: number;
   /** The address to subscribe to; null until one is made. */
   readonly feed: string | null;
+  /** Another calendar that is read again by itself; null when there is none. */
+  readonly other: { readonly host: string; readonly readAt: Date; readonly failedBecause: string | null; readonly timeZone: string } | null;
 }
 
 /** How many months back and ahead can be looked at. */
@@ -71,6 +73,7 @@ export async function sawyerCalendar(viewer: Viewer | null, asked: string, at: D
   const off = await rows<{ day: Day; source: 'own' | 'imported' }>('SELECT day::text AS day, source FROM day_off WHERE sawyer_id = $1 AND day BETWEEN $2 AND $3', [viewer.id, from, to]);
   const [imported] = await rows<{ count: number }>(`SELECT count(*)::int AS count FROM day_off WHERE sawyer_id = $1 AND source = 'imported' AND day >= $2`, [viewer.id, today]);
   const workingDays = profile?.workingDays ?? [1, 2, 3, 4, 5, 6];
+  const other = await OtherCalendar.findByPk(viewer.id, { attributes: ['host', 'readAt', 'failedBecause'] });
   const feed = await CalendarFeed.findByPk(viewer.id);
   const secret = feed ? openFeedSecret(viewer.id, feed.secretSealed) : null;
   return {
@@ -85,5 +88,6 @@ export async function sawyerCalendar(viewer: Viewer | null, asked: string, at: D
     })),
     workingDays, noticeDays: profile?.noticeDays ?? 1, hasProfile: profile !== null, importedAhead: imported?.count ?? 0,
     feed: secret === null ? null : linkTo(paths.calendarFeed(secret)),
+    other: other && { host: other.host, readAt: other.readAt, failedBecause: other.failedBecause, timeZone: profile?.timeZone ?? 'UTC' },
   };
 }

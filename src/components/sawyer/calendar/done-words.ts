@@ -17,6 +17,8 @@ export function calendarDone(params: URLSearchParams): Done | undefined {
       return { kind: 'good', title: 'The address is ready.', text: 'An address you gave out before has stopped answering.' };
     case 'stopped':
       return { kind: 'good', title: 'The address has stopped answering.', text: '' };
+    case 'other-stopped':
+      return { kind: 'good', title: 'Your other calendar is not read any more.', text: 'The days taken from it stay off until you give them back.' };
     case 'days': {
       const [added, removed, booked] = [count(params, 'added'), count(params, 'removed'), count(params, 'booked')];
       const parts = [added > 0 && `${days(added)} taken off.`, removed > 0 && `${days(removed)} given back.`].filter(Boolean);

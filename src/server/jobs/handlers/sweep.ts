@@ -1,5 +1,6 @@
 import { now } from '../../clock.ts';
 import { closeToBids, lapseListings } from '../../commands/close-listings.ts';
+import { readOtherCalendars } from '../../commands/other-calendar.ts';
 import { reviewTrips } from '../../commands/review-trip.ts';
 import { tellSearches } from '../../commands/tell-searches.ts';
 import { log } from '../../log.ts';
@@ -20,6 +21,7 @@ export const sweeps: Readonly<Record<string, Sweep>> = {
   ...photoSweeps,
   'tell of logs found': tellSearches,
   'look at offered trips': reviewTrips,
+  'read other calendars': readOtherCalendars,
   'sign or recall tallies': sweepTallies,
   'tell of tomorrow': tellEveningBefore,
   'remind of boards': remindOfBoards,
