@@ -69,6 +69,8 @@ export default defineConfig({
   },
   vite: {
     plugins: [serverOnly()],
+    // A thread of the browser is a bundle of its own, under the same rule.
+    worker: { format: 'es', plugins: () => [serverOnly()] },
     // An inlined asset is a data: address, which font-src and script-src refuse.
     build: { assetsInlineLimit: 0 },
   },

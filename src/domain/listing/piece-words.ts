@@ -1,5 +1,6 @@
 import { formatFeet, formatFraction } from '../measure.ts';
 import { dressedSoftwood, lumberClass } from '../timber/sizes.ts';
+import type { PieceTyped } from './draft.ts';
 import type { PieceRead } from './rows.ts';
 
 type Sized = Pick<PieceRead, 'thicknessIn' | 'widthIn' | 'lengthFt' | 'count' | 'sizing'>;
@@ -30,3 +31,8 @@ export function pieceSaid(piece: Sized): string {
   const dressed = dressedSize(piece);
   return `${feet}; ${dressed ? `planed and dry ${dressed}` : 'not a size stores list, sawn to the size written'}`;
 }
+
+/** A piece as its form's row again. */
+export const typedPiece = ({ label, thicknessIn, widthIn, lengthFt, count, sizing, kind, forDwelling }: PieceRead): PieceTyped => ({
+  label, thickness: thickness(thicknessIn), width: formatFraction(widthIn), length: formatFeet(lengthFt), count: String(count), sizing, kind, dwelling: forDwelling ? 'on' : '',
+});

@@ -33,3 +33,25 @@ export function modelText({ columns, rows }: Model): string {
     'End',
   ].join('\n');
 }
+
+/** What a solver's program answers for a model in text: HiGHS's own shape, as far as it is read. */
+export interface TextSolution {
+  readonly Status: string;
+  readonly ObjectiveValue: number;
+  readonly Columns: Readonly<Record<string, { readonly Primal?: number }>>;
+  readonly Rows: readonly { readonly Name: string; readonly Dual?: number }[];
+}
+
+/** A solver out of a program that reads models in text and answers by names, as HiGHS does on a server and in a browser. */
+export const solverOf =
+  (run: (text: string, seconds: number) => TextSolution): Solver =>
+  (model, seconds) => {
+    const solution = run(modelText(model), seconds);
+    const columns = model.columns.map((_, index) => solution.Columns[`c${index}`]?.Primal ?? Number.NaN);
+    if (solution.Status === 'Infeasible' || columns.some((value) => !Number.isFinite(value))) return null;
+    const duals = new Map(solution.Rows.flatMap(({ Name, Dual }) => (Dual === undefined ? [] : [[Name, Dual] as const])));
+    return { proven: solution.Status === 'Optimal', cost: solution.ObjectiveValue, columns, prices: model.rows.map((_, index) => duals.get(`r${index}`) ?? 0) };
+  };
+
+/** How HiGHS is asked: without a gap, within the seconds given. */
+export const highsOptions = (seconds: number) => ({ output_flag: false, time_limit: seconds, mip_rel_gap: 0, mip_abs_gap: 1e-6 });
