@@ -69,7 +69,8 @@ export default defineConfig({
   },
   vite: {
     plugins: [serverOnly()],
-    // A thread of the browser is a bundle of its own, under the same rule.
+    // A thread of the browser is a bundle of its own, under the same rule; it does not read the paths of tsconfig.json.
+    resolve: { alias: { '~': new URL('./src', import.meta.url).pathname } },
     worker: { format: 'es', plugins: () => [serverOnly()] },
     // An inlined asset is a data: address, which font-src and script-src refuse.
     build: { assetsInlineLimit: 0 },

@@ -40,3 +40,34 @@ test('anyone sees the boards of an open listing drawn, on a mill of their choice
   await page.setViewportSize({ width: 320, height: 800 });
   expect(await page.evaluate(() => document.documentElement.scrollWidth)).toBeLessThanOrEqual(320);
 });
+
+test('anyone tries a list of their own on the logs, watches it, and stops it', async ({ page }) => {
+  await page.goto('/logs');
+  await page.locator('main a[href^="/listings/"]').first().click();
+  await page.getByRole('link', { name: /See the boards in these logs/ }).click();
+  const own = page.getByRole('region', { name: 'Try a list of your own' });
+  await own.scrollIntoViewIfNeeded();
+  await expect(page.locator('astro-island:has(h2:text("Try a list of your own")):not([ssr])')).toBeAttached();
+  const rows = own.getByRole('group');
+  while ((await rows.count()) > 0) await own.getByRole('button', { name: /^Remove size/ }).first().click();
+  const work = own.getByRole('button', { name: 'Work it out' });
+  await work.click();
+  await expect(own.getByRole('alert')).toHaveText('Write at least one size.');
+  await own.getByRole('button', { name: 'Add a size' }).click();
+  await own.getByLabel('Thickness').fill('1');
+  await own.getByLabel('Width').fill('4');
+  await own.getByLabel('Length').fill('4 ft');
+  await own.getByLabel('How many').fill('some');
+  await work.click();
+  await expect(own.getByText('Write how many, as a whole number.')).toBeVisible();
+  await own.getByLabel('How many').fill('2');
+  await work.click();
+  await expect(own.getByRole('heading', { name: /These logs make the whole list, from 1 log/ })).toBeVisible();
+  await expectAccessible(page);
+
+  await own.getByLabel('How many').fill('5000');
+  await work.click();
+  await own.getByRole('button', { name: 'Cancel' }).click();
+  await expect(own.getByText('Stopped. What you wrote is still here.')).toBeVisible();
+  await expect(own.getByLabel('How many')).toHaveValue('5000');
+});
