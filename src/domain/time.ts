@@ -93,6 +93,9 @@ export const formatDayWithYear = (day: Day): string => formatInTimeZone(new Date
 /** `Thu 10 Dec, 8:00 am CST`: the site's own clock, its name said. */
 export const formatInstant = (instant: Date, zone: string): string => `${formatInTimeZone(instant, zone, 'EEE d MMM, h:mm aaa')} ${zoneName(instant, zone)}`;
 
+/** `8:00 am` for the `08:00` of a clock. */
+export const formatClock = (time: string): string => formatInTimeZone(new Date(`1970-01-01T${time}:00Z`), 'UTC', 'h:mm aaa');
+
 /** `8:00 am`. */
 export const formatTimeOfDay = (instant: Date, zone: string): string => formatInTimeZone(instant, zone, 'h:mm aaa');
 

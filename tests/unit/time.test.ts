@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { addDays, addSiteDays, cancelCutOff, checkMillingDay, dayAt, dayEnd, daysBetween, dayStart, formatDay, formatInstant, isTimeZone, listingLapse, parseDay, paymentDeadline, signingDeadline } from '~/domain/time.ts';
+import { addDays, addSiteDays, cancelCutOff, checkMillingDay, dayAt, dayEnd, daysBetween, dayStart, formatClock, formatDay, formatInstant, isTimeZone, listingLapse, parseDay, paymentDeadline, signingDeadline } from '~/domain/time.ts';
 
 const CHICAGO = 'America/Chicago';
 // United States: clocks go back on Sunday 1 Nov 2026 and forward on Sunday 14 Mar 2027 (Energy Policy Act of 2005).
@@ -9,6 +9,9 @@ describe('a milling day', () => {
     expect(dayStart('2026-12-10', CHICAGO).toISOString()).toBe('2026-12-10T14:00:00.000Z');
     expect(dayStart('2026-07-10', CHICAGO).toISOString()).toBe('2026-07-10T13:00:00.000Z');
     expect(dayStart('2026-07-10', 'America/Denver', '07:30').toISOString()).toBe('2026-07-10T13:30:00.000Z');
+  });
+  it('is shown by a clock of twelve hours', () => {
+    expect(['08:00', '12:30', '00:05', '17:45'].map(formatClock)).toEqual(['8:00 am', '12:30 pm', '12:05 am', '5:45 pm']);
   });
   it('is shown with the name of the site’s time', () => {
     expect(formatInstant(dayStart('2026-12-10', CHICAGO), CHICAGO)).toBe('Thu 10 Dec, 8:00 am CST');
