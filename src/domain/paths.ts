@@ -72,6 +72,9 @@ export const paths = {
   signTally: (number: number) => `/bookings/${number}/sign`,
   tallyPdf: (number: number) => `/bookings/${number}/tally.pdf`,
   afterJob: (number: number) => `/bookings/${number}/after`,
+  shareJob: (number: number) => `/bookings/${number}/share`,
+  /** A job shown around, by its booking's number. */
+  job: (number: number) => `/jobs/${number}`,
   decideTally: (number: number) => `/bookings/${number}/decide`,
   receipt: (number: number) => `/bookings/${number}/receipt`,
   receiptPdf: (number: number) => `/bookings/${number}/receipt.pdf`,

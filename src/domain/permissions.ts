@@ -34,6 +34,7 @@ export const permissions = {
     chooseBid: { who: ['owner'], states: ['open', 'closed'] },
     seePlace: { who: ['owner', 'moderator'] },
     bid: { who: ['anySawyer'], states: ['open'] },
+    askAboutBoards: { who: ['member'], states: ['matched', 'done'] },
     ask: { who: ['anySawyer', 'owner'], states: ['open', 'closed', 'matched'] },
     hide: { who: ['moderator'], states: ['open', 'closed', 'matched', 'done', 'withdrawn', 'lapsed'] },
   }),
@@ -73,6 +74,9 @@ export const permissions = {
     acceptHeld: { who: ['sawyer'], states: ['signed'], whileSuspended: true },
     keepBoards: { who: ['landowner'], states: ['sawing', 'tallied', 'queried', 'signed', 'settled'] },
     review: { who: ['landowner', 'sawyer'], states: ['settled'] },
+    offerBoardsLeft: { who: ['landowner'], states: ['settled'] },
+    keepJobPage: { who: ['landowner'], states: ['settled'] },
+    agreeToJobPage: { who: ['landowner', 'sawyer'], states: ['settled'], whileSuspended: true },
   }),
   sawyer: rules<never>()({
     keepProfile: { who: ['anySawyer'] },

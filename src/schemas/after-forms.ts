@@ -31,3 +31,19 @@ export const moistureForm = z.object({
 export type MoistureForm = z.infer<typeof moistureForm>;
 
 export const removeReadingForm = z.object({ reading: z.uuid() });
+
+/** A notice of boards left over. `asks` is words, not a price that anybody is charged. */
+export const boardsLeftForm = z.object({
+  boards: z.string().max(4000, 'At most 4,000 characters.'),
+  asks: z.string().trim().max(200, 'At most 200 characters.').default(''),
+});
+export type BoardsLeftForm = z.infer<typeof boardsLeftForm>;
+
+export const nothingForm = z.object({});
+
+const asList = (value: unknown): unknown => (value === undefined ? [] : Array.isArray(value) ? value : [value]);
+export const jobPageForm = z.object({
+  photos: z.preprocess(asList, z.array(z.uuid()).max(100)),
+  words: z.string().trim().max(2000, 'At most 2,000 characters.').default(''),
+});
+export type JobPageForm = z.infer<typeof jobPageForm>;

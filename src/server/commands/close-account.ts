@@ -26,6 +26,8 @@ const gone = [
 const blanked = [
   `UPDATE sawyer_profile SET business_name = '', about = '', zip = NULL, town = NULL, base = NULL, services = '{}', languages = '{}', certificate_key = NULL, certificate_sent_at = NULL,
      certificate_says_until = NULL, certificate_seen_at = NULL, certificate_expires_on = NULL, updated_at = $2 WHERE account_id = $1`,
+  'UPDATE boards_left SET taken_down_at = coalesce(taken_down_at, $2) FROM listing WHERE listing.id = listing_id AND owner_id = $1',
+  "UPDATE job_page SET landowner_agreed_at = NULL, sawyer_agreed_at = NULL, words = '', updated_at = $2 FROM booking WHERE booking.id = booking_id AND $1 IN (landowner_id, sawyer_id)",
   'UPDATE mill SET retired_at = coalesce(retired_at, $2) WHERE sawyer_id = $1',
   "UPDATE photo SET removed_at = coalesce(removed_at, $2), caption = '', file_name = '' WHERE owner_id = $1",
   // Logs and measures stay for the other side's records of the job; where it was becomes the coarse point.

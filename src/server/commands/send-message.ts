@@ -1,6 +1,7 @@
 import { messageWaiting } from '~/emails/booking-letters.ts';
 import { paths } from '~/domain/paths.ts';
 import { authorize, rolesOnListing } from '../authorize.ts';
+import { boardsLeftOn } from '../boards-left.ts';
 import { refuseBlocked } from '../blocks.ts';
 import { inTransaction } from '../db.ts';
 import { forbidden, invalid, notFound } from '../errors.ts';
@@ -20,13 +21,13 @@ function checkedBody(text: string): string {
   return body;
 }
 
-/** Opens the conversation of a sawyer about a listing, or finds it. */
+/** Opens the conversation of a sawyer about a listing, or of anybody about boards left over from it, or finds it. */
 export async function openConversation(by: Viewer, listingNumber: number, at: Date): Promise<Conversation> {
   return inTransaction(async () => {
     const listing = await lockListing(listingNumber);
     if (listing.status === 'draft' || listing.hiddenAt) throw notFound('listing');
-    authorize(by, 'listing', 'ask', rolesOnListing(by, listing), listing.status);
-    if (by.id === listing.ownerId) throw forbidden('Sawyers write to you about your listing; answer them under Messages.');
+    authorize(by, 'listing', (await boardsLeftOn(listing.id)) ? 'askAboutBoards' : 'ask', rolesOnListing(by, listing), listing.status);
+    if (by.id === listing.ownerId) throw forbidden('Others write to you about your listing; answer them under Messages.');
     await refuseBlocked(by.id, listing.ownerId);
     const known = await Conversation.findOne({ where: { listingId: listing.id, sawyerId: by.id } });
     return known ?? Conversation.create({ listingId: listing.id, landownerId: listing.ownerId, sawyerId: by.id, lastMessageAt: at });

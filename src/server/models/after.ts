@@ -1,4 +1,4 @@
-import { day, filled, id, instant, keyRef, nullable, real, ref, table, text, type Row } from './table.ts';
+import { day, filled, id, instant, json, keyRef, nullable, real, ref, table, text, texts, type Row } from './table.ts';
 
 export const DryingPlan = table('drying_plan', {
   bookingId: keyRef(),
@@ -24,3 +24,17 @@ export const MoistureReading = table('moisture_reading', {
   enteredAt: instant(),
 });
 export type MoistureReading = Row<typeof MoistureReading>;
+
+/** `boards` is a list of `BoardLine`. */
+export const BoardsLeft = table('boards_left', { id: id(), bookingId: ref(), listingId: ref(), boards: json<unknown[]>(), asks: filled(text()), putUpAt: instant(), takenDownAt: nullable(instant()) });
+export type BoardsLeft = Row<typeof BoardsLeft>;
+
+export const JobPage = table('job_page', {
+  bookingId: keyRef(),
+  photoIds: filled(texts()),
+  words: filled(text()),
+  landownerAgreedAt: nullable(instant()),
+  sawyerAgreedAt: nullable(instant()),
+  updatedAt: instant(),
+});
+export type JobPage = Row<typeof JobPage>;

@@ -1,10 +1,12 @@
 import { abilities, type Action } from '~/domain/permissions.ts';
 import { airDryingDays, equilibriumMoisturePct } from '~/domain/timber/drying.ts';
+import { boardLine, gathered } from '~/domain/timber/board-lines.ts';
 import { cutProject, dryBoards, type DryBoards, type ProjectCut } from '~/domain/timber/dry-boards.ts';
 import { readProjectPieces } from '~/domain/timber/project-pieces.ts';
 import { speciesOf } from '~/domain/timber/species.ts';
 import { planStack, usualSpacingIn, type Stack } from '~/domain/timber/stack.ts';
 import { rolesOnBooking } from '../authorize.ts';
+import { boardsLeftOn, type BoardsLeftNotice } from '../boards-left.ts';
 import { notFound } from '../errors.ts';
 import { Booking, DryingPlan, Listing, MoistureReading } from '../models/index.ts';
 import { tallyWork } from '../tally-work.ts';
@@ -34,6 +36,11 @@ export interface AfterPage {
   readonly boards: readonly (DryBoards & { readonly speciesName: string })[];
   readonly cuts: readonly ProjectCut[];
   readonly readings: readonly { readonly id: string; readonly readOn: string; readonly moisturePct: number; readonly note: string }[];
+  /** The notice of boards left over that stands. */
+  readonly boardsLeft: BoardsLeftNotice | null;
+  /** Every board of the tally, as the form of a notice has it. */
+  readonly allBoards: string;
+  readonly listingNumber: number;
   readonly can: Record<Action<'booking'>, boolean>;
 }
 
@@ -63,6 +70,9 @@ export async function afterPage(viewer: Viewer, number: number): Promise<AfterPa
     boards: boards.map((board) => ({ ...board, speciesName: speciesOf(board.species).name })),
     cuts: pieces.ok && pieces.value.length > 0 ? cutProject(boards, pieces.value, plan.sawKerfIn) : [],
     readings: readings.map(({ id, readOn, moisturePct, note }) => ({ id, readOn, moisturePct, note })),
+    boardsLeft: await boardsLeftOn(booking.listingId),
+    allBoards: gathered(work.boards.filter(({ kind }) => kind === 'board').map(({ logId, thicknessIn, widthIn, lengthFt, count }) => ({ species: speciesOfLog(logId), thicknessIn, widthIn, lengthFt, count }))).map(boardLine).join('\n'),
+    listingNumber: listing.number,
     can,
   };
 }

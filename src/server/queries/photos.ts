@@ -116,18 +116,24 @@ export async function photoEditor(viewer: Viewer | null, number: number): Promis
 /**
  * Whether the viewer may see a photograph's renditions now, and whether everyone may keep them: then any cache may, for a while.
  * They are seen by whoever may read the listing's page: everyone once it is published and while it is not hidden, its owner
- * always, moderators except for drafts. A photograph of the milling day is for the two sides of its booking and moderators.
+ * always, moderators except for drafts. A photograph of the milling day is for the two sides of its booking and moderators,
+ * and for everyone on a job's page that both sides have agreed to.
  * @throws Refusal `notFound`, the same for what does not exist and what is not theirs to see.
  */
 export async function photoAudience(viewer: Viewer | null, photoId: string): Promise<'everyone' | 'viewer'> {
-  const found = await oneRow<{ ownerId: string; status: ListingState; isHidden: boolean; sides: string[] | null }>(
+  const found = await oneRow<{ ownerId: string; status: ListingState; isHidden: boolean; sides: string[] | null; onJobPage: boolean }>(
     `SELECT listing.owner_id AS "ownerId", listing.status, listing.hidden_at IS NOT NULL AS "isHidden",
-       CASE WHEN booking.id IS NOT NULL THEN ARRAY[booking.landowner_id, booking.sawyer_id]::text[] END AS sides
+       CASE WHEN booking.id IS NOT NULL THEN ARRAY[booking.landowner_id, booking.sawyer_id]::text[] END AS sides,
+       EXISTS (SELECT 1 FROM job_page JOIN booking job ON job.id = job_page.booking_id JOIN account landowner ON landowner.id = job.landowner_id JOIN account sawyer ON sawyer.id = job.sawyer_id
+         WHERE job.listing_id = photo.listing_id AND job.status = 'settled' AND photo.id = ANY(job_page.photo_ids) AND landowner_agreed_at IS NOT NULL AND sawyer_agreed_at IS NOT NULL
+           AND landowner.status = 'active' AND sawyer.status = 'active') AND listing.hidden_at IS NULL AS "onJobPage"
      FROM photo JOIN listing ON listing.id = photo.listing_id LEFT JOIN booking ON booking.id = photo.booking_id
      WHERE photo.id = $1 AND photo.status = 'ready' AND photo.removed_at IS NULL`,
     [photoId],
   );
   if (!found) throw notFound('photograph');
+  // Both sides may take their word back, so no cache keeps it for everybody.
+  if (found.onJobPage) return 'viewer';
   if (found.sides !== null) {
     if (viewer && (found.sides.includes(viewer.id) || (viewer.active && viewer.isModerator))) return 'viewer';
     throw notFound('photograph');
