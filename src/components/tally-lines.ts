@@ -1,4 +1,5 @@
 import { formatFraction } from '~/domain/measure.ts';
+import { correctionWords } from '~/domain/trade/clock.ts';
 import { tallyRuleOf } from '~/domain/trade/tally-count.ts';
 import { thicknessName } from '~/domain/timber/tally.ts';
 import type { TallyView } from '~/schemas/tally-view.ts';
@@ -25,6 +26,6 @@ export function tallyLines(view: TallyView, zone: string): TallyLine[] {
     })),
     ...view.hits.map((hit) => ({ ref: `hit:${hit.id}`, log: logName(hit.logId), count: null, text: `Metal hit: blade ${hit.outcome}${hit.note ? `, ${hit.note}` : ''}` })),
     ...view.culls.map((cull) => ({ ref: `cull:${cull.id}`, log: logName(cull.logId), count: null, text: `Cull log: ${cull.reason}${cull.openingMinutes ? `, ${cull.openingMinutes} min to open` : ''}` })),
-    ...view.clock.map((entry) => ({ ref: `clock:${entry.id}`, log: '', count: null, text: `${activityWords[entry.activity]}, ${clockTime(entry.startsAt)} to ${clockTime(entry.endsAt)}` })),
+    ...view.clock.map((entry) => ({ ref: `clock:${entry.id}`, log: '', count: null, text: `${activityWords[entry.activity]}, ${clockTime(entry.startsAt)} to ${clockTime(entry.endsAt)}${correctionWords(entry, clockTime)}` })),
   ];
 }

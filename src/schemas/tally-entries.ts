@@ -22,6 +22,11 @@ const cull = z.strictObject({
   openingMinutes: z.number().int().min(0).max(600).default(0), passes: z.number().int().min(0).max(100).default(0),
 });
 const clock = z.strictObject({ kind: z.literal('clock'), id: z.uuid(), activity: z.enum(['preparing', 'sawing', 'waiting', 'breakdown', 'sharpening']), startsAt: z.iso.datetime({ offset: true }), endsAt: z.iso.datetime({ offset: true }) });
+/** Hours put right before the tally is signed, with a reason; what was first written stays in sight. */
+const correctClock = z.strictObject({
+  kind: z.literal('correctClock'), id: z.uuid(), clockId: z.uuid(), startsAt: z.iso.datetime({ offset: true }), endsAt: z.iso.datetime({ offset: true }),
+  reason: z.string().trim().min(1, 'Say why the hours are put right.').max(200, 'At most 200 characters.'),
+});
 const remove = z.strictObject({ kind: z.literal('remove'), id: z.uuid() });
 const logIds = z.array(z.uuid()).max(200);
 /** What is charged beside the sawing. Only what changed is sent, so that two phones do not undo each other. */
@@ -57,7 +62,7 @@ const sign = z.strictObject({ kind: z.literal('sign'), id: z.uuid(), sha256, cod
 /** The check-list has been gone through: sawing begins. */
 const start = z.strictObject({ kind: z.literal('start'), id: z.uuid() });
 
-export const tallyEntry = z.discriminatedUnion('kind', [board, hit, cull, clock, remove, extras, start, measure, addLog, allow, part, offer, sign]);
+export const tallyEntry = z.discriminatedUnion('kind', [board, hit, cull, clock, correctClock, remove, extras, start, measure, addLog, allow, part, offer, sign]);
 export type TallyEntry = z.infer<typeof tallyEntry>;
 
 /** What a phone or page sends: entries in the order they were made. `account` is who made them: nobody else's session may send them. */

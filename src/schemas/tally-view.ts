@@ -1,5 +1,5 @@
 import type { BookingState } from '~/domain/states/booking.ts';
-import type { ClockActivity } from '~/domain/trade/clock.ts';
+import type { ClockActivity, ClockCorrection } from '~/domain/trade/clock.ts';
 import type { Allowance } from '~/domain/trade/day-job.ts';
 import type { MillLimits } from '~/domain/trade/mill-fit.ts';
 import type { BidTerms } from '~/domain/trade/rate-card.ts';
@@ -40,7 +40,7 @@ export interface TallyView {
   readonly boards: readonly TallyBoardView[];
   readonly hits: readonly { readonly id: string; readonly logId: string | null; readonly outcome: 're-sharpened' | 'destroyed'; readonly note: string }[];
   readonly culls: readonly { readonly id: string; readonly logId: string | null; readonly reason: string; readonly openingMinutes: number; readonly passes: number }[];
-  readonly clock: readonly { readonly id: string; readonly activity: ClockActivity; readonly startsAt: string; readonly endsAt: string }[];
+  readonly clock: readonly { readonly id: string; readonly activity: ClockActivity; readonly startsAt: string; readonly endsAt: string; readonly corrections?: readonly ClockCorrection[] | undefined }[];
   readonly extras: TallyExtras;
   readonly metalAllowed: number;
   readonly allowances: readonly (Allowance & { readonly name: string })[];

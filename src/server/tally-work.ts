@@ -1,7 +1,7 @@
 import { createHash } from 'node:crypto';
 import { Op } from 'sequelize';
 import { logToCharge } from '~/domain/trade/bid-estimate.ts';
-import type { ClockActivity } from '~/domain/trade/clock.ts';
+import type { ClockActivity, ClockCorrection } from '~/domain/trade/clock.ts';
 import { jobOf, limitOf } from '~/domain/trade/day-job.ts';
 import { asLogInput, chargedMeasures, type DayLog } from '~/domain/trade/day-logs.ts';
 import type { MillLimits } from '~/domain/trade/mill-fit.ts';
@@ -23,6 +23,7 @@ export interface KeptClock {
   readonly activity: ClockActivity;
   readonly startsAt: string;
   readonly endsAt: string;
+  readonly corrections?: readonly ClockCorrection[] | undefined;
 }
 
 /** Everything of a booking's tally, as kept and as counted by the frozen terms. */

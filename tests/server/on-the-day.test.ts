@@ -3,6 +3,7 @@ import { randomUUID } from 'node:crypto';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { addDays, dayAt, dayStart } from '~/domain/time.ts';
 import type { RateCard } from '~/domain/trade/rate-card.ts';
+import { tallyLines } from '~/components/tally-lines.ts';
 import { hashOf } from '~/islands/day/content-hash.ts';
 import { withEntries } from '~/islands/tally-book/with-entries.ts';
 import type { TallyEntry } from '~/schemas/tally-entries.ts';
@@ -198,6 +199,27 @@ describe('hours', () => {
     // From the first cut: 140 + 22 + 88 = 250 min = 4.17 h, to the quarter 4.25 h × $90 = $382.50; 75 + 24: $481.50.
     const tally = await page(number);
     expect([tally.settlement.costCents, lineOf(tally, /saw/i)?.quantity]).toEqual([48_150, 4.25]);
+  });
+
+  it('are put right with a reason before signing, once, and both times stay in sight', async () => {
+    const number = await sawing({ basis: { kind: 'hourly', from: 'first-cut', perHour: { withCents: 11_000, withoutCents: 9_000 } } });
+    // The phone's clock was an hour fast at the end: 12:00 was 11:00.
+    const wrong = clock('sawing', '08:00', '12:00');
+    await take(number, wrong, clock('waiting', '12:00', '12:30'));
+    const before = await page(number);
+    expect(before.settlement.costCents).toBe(9_900 + 40_500);
+    const right: TallyEntry = { kind: 'correctClock', id: randomUUID(), clockId: wrong.id, startsAt: '2026-08-04T08:00:00-05:00', endsAt: '2026-08-04T11:00:00-05:00', reason: 'The phone was an hour fast' };
+    for (const _ of ['sent', 'sent again']) await take(number, right);
+    const after = await page(number);
+    // Three and a half hours × $90 = $315, with 75 + 24.
+    expect(after.settlement.costCents).toBe(9_900 + 31_500);
+    expect(after.sha256).not.toBe(before.sha256);
+    expect(after.view.clock.find(({ id }) => id === wrong.id)).toMatchObject({ endsAt: '2026-08-04T11:00:00-05:00', corrections: [{ startsAt: '2026-08-04T08:00:00-05:00', endsAt: '2026-08-04T12:00:00-05:00', reason: 'The phone was an hour fast' }] });
+    expect(tallyLines(after.view, 'America/Chicago').find(({ ref }) => ref === `clock:${wrong.id}`)?.text).toBe('Sawing, Aug 4, 8:00 AM to Aug 4, 11:00 AM; put right, first written Aug 4, 8:00 AM to Aug 4, 12:00 PM: The phone was an hour fast');
+    // The phone shows the same before it has sent it, and is bound to the same.
+    expect(await hashOf(withEntries(before.view, [right]))).toBe(after.sha256);
+    expect(withEntries(after.view, [right]).clock).toEqual(after.view.clock);
+    await expect(take(number, { ...right, id: randomUUID(), endsAt: '2026-08-04T12:10:00-05:00' })).rejects.toMatchObject({ kind: 'invalid' });
   });
 });
 

@@ -9,6 +9,23 @@ export interface ClockEntry {
   readonly endsAt: Date;
 }
 
+/** How a clock entry was first written, before it was put right, and why. */
+export interface ClockCorrection {
+  readonly startsAt: string;
+  readonly endsAt: string;
+  readonly reason: string;
+}
+
+/** A clock entry that has been put right before the tally was signed: what it said before goes on standing beside it, oldest first. */
+export function corrected<Entry extends { readonly startsAt: string; readonly endsAt: string; readonly corrections?: readonly ClockCorrection[] | undefined }>(entry: Entry, to: ClockCorrection): Entry {
+  const { startsAt, endsAt, corrections = [] } = entry;
+  return { ...entry, startsAt: to.startsAt, endsAt: to.endsAt, corrections: [...corrections, { startsAt, endsAt, reason: to.reason }] };
+}
+
+/** What an entry said before, in words; empty for one that was never put right. */
+export const correctionWords = (entry: { readonly corrections?: readonly ClockCorrection[] | undefined }, time: (iso: string) => string): string =>
+  (entry.corrections ?? []).map(({ startsAt, endsAt, reason }) => `; put right, first written ${time(startsAt)} to ${time(endsAt)}: ${reason}`).join('');
+
 const MS_PER_MINUTE = 60_000;
 const LONGEST_HOURS = 18;
 

@@ -1,6 +1,7 @@
 import { useState, type ReactElement } from 'react';
 import { buttonKinds, gloveSize, join } from '~/components/classes.ts';
 import { formatCents } from '~/domain/money.ts';
+import { correctionWords } from '~/domain/trade/clock.ts';
 import { settle } from '~/domain/trade/settlement.ts';
 import { countTally } from '~/domain/trade/tally-count.ts';
 import { jobOf } from '~/domain/trade/day-job.ts';
@@ -39,6 +40,8 @@ export function OfferAndSign({ queue, otherName }: { readonly queue: TallyQueue;
   );
 }
 
+const clockTime = (iso: string): string => new Date(iso).toLocaleTimeString('en-US', { hour: 'numeric', minute: '2-digit' });
+
 const moneyOf = (view: TallyView): ReturnType<typeof settle> =>
   settle(view.terms, countTally(view.terms, jobOf(view), view.logs), { heldCents: view.heldCents, feeBasisPoints: view.feeBasisPoints }, { endedBySawyer: view.endedBySawyer });
 
@@ -57,6 +60,11 @@ function TallyToSign({ view }: { readonly view: TallyView }): ReactElement {
           <tbody>{group.rows.map((row) => <tr key={row.key}><th scope="row" className="figure font-normal">{sizeName(view, row)}{row.kind === 'board' ? '' : ` (${row.kind === 'slab' ? 'slab' : 'out of size'})`}</th><td className="num">{row.count}</td><td className="num">{row.kind === 'board' ? Number(row.boardFeet.toFixed(2)) : '·'}</td></tr>)}</tbody>
         </table>
       ))}
+      {view.clock.some(({ corrections }) => corrections?.length) && (
+        <ul className="mt-3">
+          {view.clock.filter(({ corrections }) => corrections?.length).map((entry) => <li key={entry.id} className="border-b border-rule py-1">Hours {clockTime(entry.startsAt)} to {clockTime(entry.endsAt)}{correctionWords(entry, clockTime)}</li>)}
+        </ul>
+      )}
       <table className="ruled mt-4 w-full">
         <caption className="text-left font-bold">What it comes to</caption>
         <tbody>

@@ -57,6 +57,7 @@ function describe(entry: TallyQueue['refused'][number]['entry']): string {
     case 'hit': return `Metal hit, blade ${entry.outcome}`;
     case 'cull': return `Cull log: ${entry.reason}`;
     case 'clock': return 'Hours';
+    case 'correctClock': return 'Hours put right';
     case 'remove': return 'A line taken back';
     case 'extras': return 'Extras';
     case 'start': return 'The start of sawing';

@@ -1,5 +1,6 @@
 import { useState, type ReactElement } from 'react';
 import { buttonKinds, gloveSize, join } from '~/components/classes.ts';
+import { correctionWords } from '~/domain/trade/clock.ts';
 import { Field, Select } from '~/islands/form/fields.tsx';
 import type { TallyEntry } from '~/schemas/tally-entries.ts';
 import type { TallyView } from '~/schemas/tally-view.ts';
@@ -85,6 +86,41 @@ const activities = [
   { value: 'sharpening', label: 'Sharpening (off the clock)' },
 ] as const;
 
+const dayOf = (iso: string): string => new Date(iso).toLocaleDateString('en-CA');
+const clockField = (iso: string): string => new Date(iso).toTimeString().slice(0, 5);
+
+/** Puts one entry's hours right, with a reason: the landowner sees both. */
+function PutRight({ entry, others, onCorrect }: { readonly entry: TallyView['clock'][number]; readonly others: TallyView['clock']; readonly onCorrect: (startsAt: string, endsAt: string, reason: string) => void }): ReactElement {
+  const [open, setOpen] = useState(false);
+  const [day, setDay] = useState(dayOf(entry.startsAt));
+  const [from, setFrom] = useState(clockField(entry.startsAt));
+  const [to, setTo] = useState(clockField(entry.endsAt));
+  const [reason, setReason] = useState('');
+  const [problem, setProblem] = useState<string | undefined>();
+  const take = (): void => {
+    const startsAt = new Date(`${day}T${from}`);
+    const endsAt = new Date(`${day}T${to}`);
+    if (Number.isNaN(startsAt.getTime()) || Number.isNaN(endsAt.getTime())) return setProblem('Choose the day and both times.');
+    if (endsAt <= startsAt) return setProblem('The end must be after the start.');
+    if (others.some((other) => new Date(other.startsAt) < endsAt && startsAt < new Date(other.endsAt))) return setProblem('This time overlaps another entry.');
+    if (reason.trim() === '') return setProblem('Say why, in a few words.');
+    onCorrect(startsAt.toISOString(), endsAt.toISOString(), reason.trim());
+    setReason('');
+    setProblem(undefined);
+    setOpen(false);
+  };
+  if (!open) return <button type="button" className={buttonKinds.quiet} onClick={() => setOpen(true)}>Put right<span className="sr-only"> the hours from {time(entry.startsAt)}</span></button>;
+  return (
+    <div className="grid gap-3 border-l-4 border-ink pb-3 pl-3 sm:grid-cols-2">
+      <Field name={`day-${entry.id}`} label="Day" type="date" figure value={day} onChange={(event) => setDay(event.target.value)} />
+      <Field name={`from-${entry.id}`} label="From" type="time" figure value={from} error={problem} onChange={(event) => setFrom(event.target.value)} />
+      <Field name={`to-${entry.id}`} label="To" type="time" figure value={to} onChange={(event) => setTo(event.target.value)} />
+      <Field name={`why-${entry.id}`} label="Why" hint="The landowner reads this beside both times." maxLength={200} value={reason} onChange={(event) => setReason(event.target.value)} />
+      <p><button type="button" className={join(buttonKinds.outlined, gloveSize)} onClick={take}>Put the hours right</button></p>
+    </div>
+  );
+}
+
 /** Hours, when they are charged or the landowner kept the mill waiting. */
 export function Hours({ view, add }: BesideProps): ReactElement {
   const [activity, setActivity] = useState<(typeof activities)[number]['value']>(view.terms.card.basis.kind === 'hourly' ? 'sawing' : 'waiting');
@@ -113,7 +149,7 @@ export function Hours({ view, add }: BesideProps): ReactElement {
         <Field name="clockTo" label="To" type="time" figure value={to} onChange={(event) => setTo(event.target.value)} />
         <p><button type="button" className={join(buttonKinds.outlined, gloveSize)} onClick={take}>Add the time</button></p>
       </div>
-      <ul>{view.clock.map((entry) => <li key={entry.id} className="border-b border-rule"><Taken text={`${activities.find(({ value }) => value === entry.activity)?.label ?? entry.activity}, ${time(entry.startsAt)} to ${time(entry.endsAt)}`} onUndo={() => add({ kind: 'remove', id: entry.id })} /></li>)}</ul>
+      <ul>{view.clock.map((entry) => <li key={entry.id} className="border-b border-rule"><Taken text={`${activities.find(({ value }) => value === entry.activity)?.label ?? entry.activity}, ${time(entry.startsAt)} to ${time(entry.endsAt)}${correctionWords(entry, time)}`} onUndo={() => add({ kind: 'remove', id: entry.id })} /><PutRight key={entry.startsAt + entry.endsAt} entry={entry} others={view.clock.filter(({ id }) => id !== entry.id)} onCorrect={(startsAt, endsAt, reason) => add({ kind: 'correctClock', id: newId(), clockId: entry.id, startsAt, endsAt, reason })} /></li>)}</ul>
     </details>
   );
 }

@@ -1,3 +1,4 @@
+import { corrected } from '~/domain/trade/clock.ts';
 import type { DayLog } from '~/domain/trade/day-logs.ts';
 import type { TallyEntry } from '~/schemas/tally-entries.ts';
 import { tallyLog } from '~/schemas/tally-log.ts';
@@ -41,6 +42,9 @@ function withEntry(view: TallyView, entry: TallyEntry): TallyView {
       const { kind: _, ...row } = entry;
       return { ...view, clock: once(view.clock, row) };
     }
+    case 'correctClock':
+      // A correction that the server has already made is not made twice.
+      return { ...view, clock: view.clock.map((row) => (row.id === entry.clockId && (row.startsAt !== entry.startsAt || row.endsAt !== entry.endsAt) ? corrected(row, entry) : row)) };
     case 'remove':
       return { ...view, boards: without(view.boards, entry.id), hits: without(view.hits, entry.id), culls: without(view.culls, entry.id), clock: without(view.clock, entry.id) };
     case 'extras': {

@@ -1,4 +1,4 @@
-import { checkClock } from '~/domain/trade/clock.ts';
+import { checkClock, corrected } from '~/domain/trade/clock.ts';
 import { authorize, rolesOnBooking } from '../authorize.ts';
 import { execute, inTransaction, oneRow } from '../db.ts';
 import { conflict, invalid } from '../errors.ts';
@@ -33,6 +33,9 @@ async function enter(entry: Line, booking: Booking, tally: Tally, sequence: numb
       if (!clock.some(({ id }) => id === entry.id)) tally.clock = [...clock, kept];
       return;
     }
+    case 'correctClock':
+      tally.clock = (tally.clock as KeptClock[]).map((kept) => (kept.id === entry.clockId ? corrected(kept, entry) : kept));
+      return;
     case 'remove':
       for (const table of ['tally_board', 'metal_hit', 'cull_log']) await execute(`UPDATE ${table} SET removed_at = $1 WHERE id = $2 AND tally_id = $3 AND removed_at IS NULL`, [at, entry.id, tally.id]);
       tally.clock = (tally.clock as KeptClock[]).filter(({ id }) => id !== entry.id);
@@ -61,7 +64,7 @@ async function enter(entry: Line, booking: Booking, tally: Tally, sequence: numb
 }
 
 /** Entries without a row of their own, which are known again by this table. */
-const remembered: ReadonlySet<Line['kind']> = new Set(['extras', 'start', 'measure', 'addLog']);
+const remembered: ReadonlySet<Line['kind']> = new Set(['extras', 'start', 'measure', 'addLog', 'correctClock']);
 
 /** Whether an entry is new. A repeated one was done before and is left alone. */
 async function isNew(entry: Line, by: Viewer, booking: Booking, at: Date): Promise<boolean> {
@@ -84,7 +87,7 @@ async function refuseStrangeLogs(entries: readonly Line[], booking: Booking): Pr
 /** What was signed for part of the work stands: only a query changes it. */
 async function refuseSignedLines(entries: readonly Line[], tally: Tally): Promise<void> {
   const signed = new Set((await TallyPart.findAll({ where: { tallyId: tally.id }, attributes: ['lineIds'] })).flatMap(({ lineIds }) => lineIds));
-  const problems = entries.flatMap((entry, index) => (entry.kind === 'remove' && signed.has(entry.id) ? [{ path: `entries.${index}.id`, message: 'This line was signed for part of the work and stands. The landowner can query it when the whole tally is offered.' }] : []));
+  const problems = entries.flatMap((entry, index) => ((entry.kind === 'remove' && signed.has(entry.id)) || (entry.kind === 'correctClock' && signed.has(entry.clockId)) ? [{ path: `entries.${index}.id`, message: 'This line was signed for part of the work and stands. The landowner can query it when the whole tally is offered.' }] : []));
   if (problems.length > 0) throw invalid(problems);
 }
 
