@@ -15,6 +15,7 @@ import { RainStop } from './RainStop.tsx';
 import { sizeName } from './size-name.ts';
 import { Stops } from './Stops.tsx';
 import { AddLog, LevelThePith, MeasureAgain } from './ThisLog.tsx';
+import { Voice } from './Voice.tsx';
 import { useTallyQueue, type TallyQueue } from './use-tally-queue.ts';
 
 interface Props {
@@ -119,6 +120,8 @@ export function TallyPad({ queue }: { readonly queue: TallyQueue }): ReactElemen
           <button type="button" className={join(buttonKinds.quiet, 'min-h-glove')} disabled={!lastBoard} onClick={() => lastBoard && add({ kind: 'remove', id: lastBoard.id })}>Undo last</button>
           <label className="flex items-center gap-2">How many<input className="min-h-glove w-20 border-2 border-ink bg-sheet px-2 font-mono text-xl" type="number" min={1} max={500} value={several} onChange={(event) => setSeveral(event.target.value)} /></label>
         </div>
+
+        <Voice name={(boards) => sizeName(view, boards)} onAdd={({ count: howMany, ...size }) => addBoards(size, howMany)} />
 
         <SizeTable view={view} add={add} />
         {logAt < view.logs.length - 1 && <button type="button" className={join(buttonKinds.outlined, gloveSize, 'mt-4 w-full')} onClick={() => goTo(logAt + 1)}>{log?.label} done · next log</button>}
