@@ -1,4 +1,3 @@
-import PDFDocument from 'pdfkit';
 import { byRule, logRuleNames, whyRulesDiffer, type LogRule } from '~/domain/timber/log-rules.ts';
 import { estimateLog, estimateRange } from '~/domain/timber/estimate.ts';
 import { eachLog, type LogGroup } from '~/domain/timber/logs-in-url.ts';
@@ -7,6 +6,7 @@ import { speciesOf } from '~/domain/timber/species.ts';
 import { largeEndOrTaper } from '~/domain/timber/taper-and-bark.ts';
 import { greenWeightWithBark } from '~/domain/timber/weight.ts';
 import { formatFeet, formatFraction } from '~/domain/measure.ts';
+import { openPaper } from './paper.ts';
 
 const rules: readonly LogRule[] = ['internationalQuarter', 'scribnerDecimalC', 'doyle'];
 
@@ -29,21 +29,15 @@ const describe = (log: LogGroup): string => {
 
 /** A list of logs with its figures as a PDF: net board feet by three rules, green weight with bark, and the range. */
 export function logListPdf(logs: readonly LogGroup[], settings: ScaleSettings, origin: string): Promise<Uint8Array<ArrayBuffer>> {
-  const sheet = new PDFDocument({ size: 'LETTER', margin: 54, info: { Title: 'Log estimate', Creator: 'Skidway' }, bufferPages: true });
-  const parts: Buffer[] = [];
-  const done = new Promise<Uint8Array<ArrayBuffer>>((resolve, reject) => {
-    sheet.on('data', (part: Buffer) => parts.push(part));
-    sheet.on('end', () => resolve(new Uint8Array(Buffer.concat(parts))));
-    sheet.on('error', reject);
-  });
+  const { paper: sheet, done } = openPaper('Log estimate');
 
   const row = (texts: readonly string[], bold: boolean): void => {
-    sheet.font(bold ? 'Helvetica-Bold' : 'Helvetica').fontSize(9.5);
+    sheet.font(bold ? 'bold' : 'plain').fontSize(9.5);
     const tall = Math.max(...columns.map((column, index) => sheet.heightOfString(texts[index] ?? '', { width: column.width })));
     if (sheet.y + tall > sheet.page.height - 80) {
       sheet.addPage();
       row(columns.map(({ heading }) => heading), true);
-      sheet.font(bold ? 'Helvetica-Bold' : 'Helvetica').fontSize(9.5);
+      sheet.font(bold ? 'bold' : 'plain').fontSize(9.5);
     }
     const top = sheet.y;
     columns.forEach((column, index) => sheet.text(texts[index] ?? '', column.x, top, { width: column.width, align: column.align }));
@@ -53,8 +47,8 @@ export function logListPdf(logs: readonly LogGroup[], settings: ScaleSettings, o
     sheet.y = foot + 5;
   };
 
-  sheet.font('Helvetica-Bold').fontSize(20).text('Log estimate');
-  sheet.moveDown(0.4).font('Helvetica').fontSize(9.5).text('Board feet are net of defects. Diameters inside bark, small end to large end. Weights are green, with bark.');
+  sheet.font('bold').fontSize(20).text('Log estimate');
+  sheet.moveDown(0.4).font('plain').fontSize(9.5).text('Board feet are net of defects. Diameters inside bark, small end to large end. Weights are green, with bark.');
   sheet.moveDown(0.8);
   row(columns.map(({ heading }) => heading), true);
   const figures = logs.map((log) => ({ log, net: estimateLog(log, settings).netBoardFeet, weightLb: greenWeightWithBark(log, speciesOf(log.species)) }));
@@ -65,7 +59,7 @@ export function logListPdf(logs: readonly LogGroup[], settings: ScaleSettings, o
 
   const { low, high } = estimateRange({ ...settings, logs: eachLog(logs) }, 'landowner');
   const ranges = rules.map((rule) => `${whole(low.netBoardFeet[rule])} to ${whole(high.netBoardFeet[rule])} bf ${logRuleNames[rule]}`).join(', ');
-  sheet.moveDown(0.6).font('Helvetica').fontSize(9.5);
+  sheet.moveDown(0.6).font('plain').fontSize(9.5);
   sheet.text(`Measured by a landowner: ${ranges} (every diameter an inch less to half an inch more).`, 54, sheet.y, { width: 504 });
   sheet.moveDown(0.5).text(whyRulesDiffer);
   sheet.moveDown(0.5).text(`An exact half inch goes ${settings.halfInchRounding ?? 'up'}; logs longer than ${settings.longestScalingLengthFt ?? 20} ft are scaled in pieces. An estimate, not a scaling ticket. Green logs roll and crush: lift, load and saw them by the equipment’s manual, with trained help.`);

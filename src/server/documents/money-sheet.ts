@@ -1,5 +1,5 @@
 import Papa from 'papaparse';
-import PDFDocument from 'pdfkit';
+import { openPaper } from './paper.ts';
 
 export interface SheetColumn {
   readonly heading: string;
@@ -25,21 +25,15 @@ const WIDTH = 504;
 
 /** The sheet on Letter paper; the headings stand again on every page, with the number and the page's own at the foot. */
 export function moneyPdf(sheet: MoneySheet): Promise<Uint8Array<ArrayBuffer>> {
-  const paper = new PDFDocument({ size: 'LETTER', margin: LEFT, bufferPages: true, info: { Title: `${sheet.title} ${sheet.number}`, Creator: 'Skidway' } });
-  const parts: Buffer[] = [];
-  const done = new Promise<Uint8Array<ArrayBuffer>>((resolve, reject) => {
-    paper.on('data', (part: Buffer) => parts.push(part));
-    paper.on('end', () => resolve(new Uint8Array(Buffer.concat(parts))));
-    paper.on('error', reject);
-  });
+  const { paper, done } = openPaper(`${sheet.title} ${sheet.number}`);
   const row = (texts: readonly string[], bold: boolean): void => {
-    paper.font(bold ? 'Helvetica-Bold' : 'Helvetica').fontSize(9);
+    paper.font(bold ? 'bold' : 'plain').fontSize(9);
     const widths = sheet.columns.map(({ part }) => part * WIDTH - 8);
     const tall = Math.max(...texts.map((text, index) => paper.heightOfString(text, { width: widths[index] ?? 0 })));
     if (paper.y + tall > paper.page.height - 90) {
       paper.addPage();
       row(sheet.columns.map(({ heading }) => heading), true);
-      paper.font(bold ? 'Helvetica-Bold' : 'Helvetica').fontSize(9);
+      paper.font(bold ? 'bold' : 'plain').fontSize(9);
     }
     const top = paper.y;
     let x = LEFT;
@@ -52,14 +46,14 @@ export function moneyPdf(sheet: MoneySheet): Promise<Uint8Array<ArrayBuffer>> {
     paper.x = LEFT;
     paper.y = foot + 5;
   };
-  paper.font('Helvetica-Bold').fontSize(20).text(sheet.title);
+  paper.font('bold').fontSize(20).text(sheet.title);
   paper.moveDown(0.3).fontSize(9.5);
-  for (const [label, value] of [['Number', sheet.number] as const, ...sheet.facts]) paper.font('Helvetica-Bold').text(`${label}: `, { continued: true }).font('Helvetica').text(value);
+  for (const [label, value] of [['Number', sheet.number] as const, ...sheet.facts]) paper.font('bold').text(`${label}: `, { continued: true }).font('plain').text(value);
   paper.moveDown(0.8);
   row(sheet.columns.map(({ heading }) => heading), true);
   for (const texts of sheet.rows) row(texts, false);
   for (const texts of sheet.totals) row(texts, true);
-  paper.moveDown(0.6).font('Helvetica').fontSize(9);
+  paper.moveDown(0.6).font('plain').fontSize(9);
   for (const note of sheet.notes) paper.text(note, LEFT, paper.y, { width: WIDTH }).moveDown(0.4);
   const { start, count } = paper.bufferedPageRange();
   for (let page = start; page < start + count; page += 1) {

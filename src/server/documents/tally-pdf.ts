@@ -1,4 +1,3 @@
-import PDFDocument from 'pdfkit';
 import { formatFraction } from '~/domain/measure.ts';
 import { formatCents } from '~/domain/money.ts';
 import { formatInstant } from '~/domain/time.ts';
@@ -7,6 +6,7 @@ import { countBoards, tallyRuleOf } from '~/domain/trade/tally-count.ts';
 import { TALLY_RULE_NAMES } from '~/domain/trade/rate-card.ts';
 import type { Settlement } from '~/domain/trade/settlement.ts';
 import type { TallyBoardView, TallyView } from '~/schemas/tally-view.ts';
+import { openPaper } from './paper.ts';
 
 /** What the tally's sheet says beside its lines. */
 export interface TallySheet {
@@ -47,16 +47,10 @@ function rowsOf(view: TallyView, boards: readonly TallyBoardView[]): (readonly [
 
 /** The tally by log and by size, the bill and the signature, as a Letter sheet for both sides. */
 export function tallyPdf(sheet: TallySheet): Promise<Uint8Array<ArrayBuffer>> {
-  const paper = new PDFDocument({ size: 'LETTER', margin: LEFT, info: { Title: `Tally of booking ${sheet.number}`, Creator: 'Skidway' }, bufferPages: true });
-  const parts: Buffer[] = [];
-  const done = new Promise<Uint8Array<ArrayBuffer>>((resolve, reject) => {
-    paper.on('data', (part: Buffer) => parts.push(part));
-    paper.on('end', () => resolve(new Uint8Array(Buffer.concat(parts))));
-    paper.on('error', reject);
-  });
+  const { paper, done } = openPaper(`Tally of booking ${sheet.number}`);
   const row = (label: string, value: string, bold = false): void => {
     if (paper.y > paper.page.height - 90) paper.addPage();
-    paper.font(bold ? 'Helvetica-Bold' : 'Helvetica').fontSize(9.5);
+    paper.font(bold ? 'bold' : 'plain').fontSize(9.5);
     const tall = paper.heightOfString(label, { width: 380 });
     const top = paper.y;
     paper.text(label, LEFT, top, { width: 380 });
@@ -67,14 +61,14 @@ export function tallyPdf(sheet: TallySheet): Promise<Uint8Array<ArrayBuffer>> {
   };
   const heading = (text: string): void => {
     if (paper.y > paper.page.height - 130) paper.addPage();
-    paper.moveDown(0.8).font('Helvetica-Bold').fontSize(12).text(text, LEFT);
+    paper.moveDown(0.8).font('bold').fontSize(12).text(text, LEFT);
     paper.moveDown(0.3);
   };
 
   const { view, settlement } = sheet;
   const rule = tallyRuleOf(view.terms);
-  paper.font('Helvetica-Bold').fontSize(20).text(`Tally of booking ${sheet.number}`);
-  paper.font('Helvetica').fontSize(10).text(`${sheet.title}. Landowner: ${sheet.landownerName}. Sawyer: ${sheet.sawyerName}.`);
+  paper.font('bold').fontSize(20).text(`Tally of booking ${sheet.number}`);
+  paper.font('plain').fontSize(10).text(`${sheet.title}. Landowner: ${sheet.landownerName}. Sawyer: ${sheet.sawyerName}.`);
   paper.text(`${figure(countBoards(rule, view.boards))} bf by the ${TALLY_RULE_NAMES[rule]}.`);
   for (const log of [...view.logs.map(({ id, label, speciesName, size }) => ({ id, title: `${label}: ${speciesName}, ${size}` })), { id: null, title: 'Whole job' }]) {
     const boards = view.boards.filter(({ logId }) => logId === log.id);
@@ -103,7 +97,7 @@ export function tallyPdf(sheet: TallySheet): Promise<Uint8Array<ArrayBuffer>> {
 
 function signatureOn(paper: PDFKit.PDFDocument, sheet: TallySheet, heading: (text: string) => void): void {
   heading(sheet.signedAt ? 'Signature' : 'Not signed yet');
-  paper.font('Helvetica').fontSize(10);
+  paper.font('plain').fontSize(10);
   if (sheet.signedAt) {
     paper.text(`${howSigned[sheet.signedBy ?? ''] ?? ''}${sheet.signedName ? ` ${sheet.signedName}` : ''}, ${formatInstant(sheet.signedAt, sheet.timeZone)}.`, LEFT);
     if (sheet.signature) {
