@@ -65,16 +65,24 @@ export function bandWorks(stock: Stock): BandWorks {
   // Flat layers held between two sides: a cant that runs into the wane holds no more than these do in its height.
   const held = new Map<number, ReturnType<OutwardStacks['snapshot']>>();
   const steps = Math.ceil(reach / SIDE_STEP) + 1;
+  // Neighbouring sides mostly fall into the same step: the last answer is kept.
+  let [lastKey, lastAbove, lastBelow, lastHeld] = [-1, -1, -1, 0];
   const heldTo = (one: Units, other: Units, { below, above }: Band): number => {
-    const [near, far] = [Math.ceil(one / SIDE_STEP), Math.min(steps, Math.ceil(other / SIDE_STEP))];
+    const near = Math.ceil(one / SIDE_STEP);
+    const far = Math.min(steps, Math.ceil(other / SIDE_STEP));
     const key = (near + steps) * (2 * steps + 2) + far;
+    if (key === lastKey && above === lastAbove && below === lastBelow) return lastHeld;
     let found = held.get(key);
     if (!found) {
       scratch.build({ below: near * SIDE_STEP, above: far * SIDE_STEP });
       found = scratch.snapshot();
       held.set(key, found);
     }
-    return found.total - found.valueFrom(above + kerf) - found.valueFrom(below + kerf);
+    lastKey = key;
+    lastAbove = above;
+    lastBelow = below;
+    lastHeld = found.total - found.valueFrom(above + kerf) - found.valueFrom(below + kerf);
+    return lastHeld;
   };
 
   function worth(band: Band, enough: number): BandWorth {

@@ -72,12 +72,14 @@ export interface QuarteredPlan {
 /**
  * Quartersawn: each quarter's boards lie along its radius. The quarters are planned apart, each exactly; where boards of two
  * quarters would meet at a diagonal, both or one of them gives way by the kerf, whichever is worth more.
+ * @param enough value that is already had: where no quartersawn plan can pass it, none is made.
  */
-export function quartersawnPlan(stock: Stock): QuarteredPlan {
+export function quartersawnPlan(stock: Stock, enough = 0): QuarteredPlan {
   const widest = stock.mill.widestCutIn;
   const free = quarter(stock, 0);
   if (widest !== undefined && widest < 2 * inches(stock.woodRadius)) return { boards: [], bound: 4 * free.value };
   const bound = 4 * free.value;
+  if (bound <= enough) return { boards: [], bound };
   const full = { flat: twoQuarters(stock, free, false), turned: twoQuarters(stock, free, true) };
   if (keepsKerf(stock, full.flat, full.turned)) return { boards: [...full.flat, ...full.turned], bound };
   const one = quarter(stock, stock.kerf);

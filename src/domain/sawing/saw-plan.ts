@@ -47,10 +47,10 @@ export class Planner {
     private readonly effort: number,
   ) {}
 
-  /** The best boards of one pattern, counts left aside, and a bound for it. */
-  solve(pattern: Pattern): Solved {
+  /** The best boards of one pattern, counts left aside, and a bound for it. Quartersawn boards worth no more than `enough` are left out. */
+  solve(pattern: Pattern, enough = 0): Solved {
     const { stock } = this;
-    if (pattern === 'quartersawn') return quartersawnPlan(stock);
+    if (pattern === 'quartersawn') return quartersawnPlan(stock, enough);
     this.flats ??= flatStack(stock);
     const live = this.flats.above(-stock.reach);
     if (pattern === 'live') return { boards: livePlan(stock, this.flats), bound: live };
@@ -116,10 +116,14 @@ export function sawPlan(request: SawPlanRequest): SawPlan {
     return planner;
   };
   const rounds = Math.max(3, Math.ceil(COUNT_ROUNDS * share));
-  const tried = (pattern === 'best' ? PATTERNS : [pattern]).map((each) => ({
-    pattern: each,
-    ...withCounts(whole, waneAllowanceIn, (stock) => plannerOf(stock).solve(each), rounds, each !== 'quartersawn'),
-  }));
+  // Of several patterns a later one has to be worth more; counts may turn that round, so with counts every pattern is made.
+  const counted = pieces.some((piece) => piece.count !== undefined);
+  let had = 0;
+  const tried = (pattern === 'best' ? PATTERNS : [pattern]).map((each) => {
+    const solved = withCounts(whole, waneAllowanceIn, (stock) => plannerOf(stock).solve(each, counted ? 0 : had), rounds, each !== 'quartersawn');
+    had = Math.max(had, totalValue(solved.boards, pieces));
+    return { pattern: each, ...solved };
+  });
   const won = tried.reduce((best, each) => (totalValue(each.boards, pieces) > totalValue(best.boards, pieces) + 1e-9 ? each : best));
   if (won.boards.length === 0) return { ...empty(pattern, nothingFits(request)), upperBoundValue: Math.max(0, ...tried.map((each) => each.bound)) };
   const value = totalValue(won.boards, pieces);
