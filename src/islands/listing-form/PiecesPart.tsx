@@ -14,7 +14,7 @@ import type { Row, Rows } from './use-rows.ts';
 export function PiecesPart({ rows }: { readonly rows: Rows<PieceTyped> }): ReactElement {
   const { typed } = useForm();
   return (
-    <Part id="pieces" number={7} title="What you hope to build" lead="Sizes and how many of each, if you know them. Full-sawn is the size you write, rough from the saw. Store size is the name it has in a store: a 2 × 4 is 1 1/2 × 3 1/2 in once planed. Leave it empty and sawyers bid on the logs alone.">
+    <Part id="pieces" number={7} title="What you hope to build" lead="Sizes and how many of each, if you know them. Full-sawn is the size you write, rough from the saw. Store size is the name it has in a store: a 2 × 4 is 1 1/2 × 3 1/2 in once planed. A timber has the heart of the tree in its middle, or is cut clear of it (FOHC) so that it checks less; a live-edge slab keeps both edges, and its width is the least of its faces. Leave it empty and sawyers bid on the logs alone.">
       <div className="border-t border-rule">
         {rows.list.map((row, index) => <PieceRow key={row.key} row={row} index={index} typed={typed.pieces[index] ?? row.opened} onRemove={() => rows.remove(index)} />)}
       </div>
