@@ -61,6 +61,17 @@ test('rot drawn on the log end comes off the scale', async ({ page }) => {
   await page.mouse.up();
   await expect(page.getByLabel('Kind')).toHaveValue('interiorRot');
   await expect(page.getByTestId('doyle')).not.toHaveText('256');
+  await page.getByRole('button', { name: 'Remove defect 1' }).click();
+
+  // From the top of the end to its right-hand side: a quarter.
+  await page.getByRole('button', { name: 'Draw a scar or seam' }).click();
+  await page.mouse.move(box.x + box.width * 0.5, box.y + box.height * 0.2);
+  await page.mouse.down();
+  await page.mouse.move(box.x + box.width * 0.8, box.y + box.height * 0.5, { steps: 5 });
+  await page.mouse.up();
+  await expect(page.getByLabel('Kind')).toHaveValue('wedge');
+  await expect(page.getByLabel('Angle of the slice')).toHaveValue('90');
+  await expect(page.getByTestId('doyle')).toHaveText('192');
 });
 
 test('a pasted table adds what can be read and names what cannot', async ({ page }) => {

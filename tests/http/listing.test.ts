@@ -118,7 +118,7 @@ describe('a listing’s page', () => {
       expect(page).toContain('White oak, 3 logs');
       expect(page).toMatch(/near Viroqua, WI/);
       expect(page).toContain('Bench');
-      expect(page).toContain('Stay at least 10 ft from any overhead line');
+      expect(page).toContain('at least 10 feet from lines up to 50 kV');
       expect(page).toContain('grade stamp or certification');
       for (const secret of ['43.612', '90.876', 'red barn', 'Lena', 'lena@']) expect(page).not.toContain(secret);
     }

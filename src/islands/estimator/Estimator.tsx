@@ -85,7 +85,7 @@ export default function Estimator(): ReactElement {
             <h2 className="mb-4">What is in this log</h2>
             {log ? (
               <div className="grid gap-6 md:grid-cols-[15rem_minmax(0,1fr)]">
-                <LogPicture log={log} settings={settings} units={units} onDrawRot={(widthIn, heightIn) => change({ draft: { ...draft, defects: [...draft.defects, { kind: 'interiorRot', values: { widthIn: sayInches(widthIn, units), heightIn: sayInches(heightIn, units), lengthFt: sayFeet(log.lengthFt, units) } }] } })} />
+                <LogPicture log={log} settings={settings} units={units} onDrawRot={(widthIn, heightIn) => change({ draft: { ...draft, defects: [...draft.defects, { kind: 'interiorRot', values: { widthIn: sayInches(widthIn, units), heightIn: sayInches(heightIn, units), lengthFt: sayFeet(log.lengthFt, units) } }] } })} onDrawWedge={(angleDeg) => change({ draft: { ...draft, defects: [...draft.defects, { kind: 'wedge', values: { angleDeg: String(angleDeg), lengthFt: sayFeet(log.lengthFt, units) } }] } })} />
                 <LogFigures log={log} settings={settings} units={units} practice={nearby.practice} />
               </div>
             ) : (
