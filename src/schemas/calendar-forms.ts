@@ -1,4 +1,6 @@
 import { z } from 'zod';
+import { numberIn } from '~/domain/paths.ts';
+import { good, refused, type Result } from '~/domain/result.ts';
 import { addDays, daysBetween } from '~/domain/time.ts';
 import { choice, day, fieldOf, list, optional, text } from './fields.ts';
 
@@ -21,10 +23,18 @@ const range = z.object({ deed: z.literal('range'), from: fieldOf(day), until: fi
   return { deed: 'change' as const, add: count >= 1 && count <= MOST_DAYS_OFF ? Array.from({ length: count }, (_, index) => addDays(from, index)) : [], remove: [] };
 });
 
+const listingOrOff = (typed: string): Result<'off' | number> => {
+  const listing = numberIn(typed);
+  return typed === 'off' ? good('off') : listing === null ? refused('', 'Say which day is to be moved.') : good(listing);
+};
+
+/** A day off, or the day offered with the bid on a listing (by its number), moved to another. */
+const move = z.object({ deed: z.literal('move'), what: fieldOf(listingOrOff), from: fieldOf(day), to: fieldOf(day) });
+
 const only = <const Deed extends string>(deed: Deed) => z.object({ deed: z.literal(deed) });
 
 /** What the calendar page can be asked to do. */
-export const calendarForm = z.union([mark, range, only('renew-feed'), only('stop-feed'), only('stop-other'), only('forget-imported')]);
+export const calendarForm = z.union([mark, range, move, only('renew-feed'), only('stop-feed'), only('stop-other'), only('forget-imported')]);
 export type CalendarForm = z.output<typeof calendarForm>;
 
 /** How busy a day of the other calendar must be to count as a day off: hours of entries, whole-day entries always count. */

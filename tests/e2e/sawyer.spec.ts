@@ -87,6 +87,17 @@ test('a sawyer keeps a calendar', async ({ page, request }) => {
   await expect(page.getByText('One day taken off.')).toBeVisible();
   await expect(page.getByRole('listitem').filter({ hasText: 'Day off' })).toBeVisible();
 
+  // Moved by the form of its line, then by dragging it in the month.
+  const line = page.getByRole('listitem').filter({ hasText: 'Day off' });
+  const month = new URL(page.url()).searchParams.get('month') ?? '';
+  await line.getByText('Move', { exact: false }).first().click();
+  await line.getByLabel('To').fill(`${month}-12`);
+  await line.getByRole('button', { name: 'Move it' }).click();
+  await expect(page.getByRole('status')).toContainText(/Moved to \w+ 12 /);
+  await page.locator(`[data-day="${month}-12"]`).dragTo(page.locator(`[data-day="${month}-17"]`));
+  await expect(page.getByRole('status')).toContainText(/Moved to \w+ 17 /);
+  await expect(page.getByRole('checkbox', { name: /\b17 \w+ \d{4}/ })).toBeChecked();
+
   await page.getByRole('button', { name: 'Make the address' }).click();
   const address = await page.getByLabel('Address to subscribe to').inputValue();
   expect(await (await request.get(address)).text()).toMatch(/BEGIN:VCALENDAR[\s\S]*SUMMARY:Day off/);
@@ -98,7 +109,7 @@ test('a sawyer keeps a calendar', async ({ page, request }) => {
   await expect(page.getByText('An address you gave out before has stopped answering.')).toBeVisible();
   expect((await request.get(address)).status()).toBe(404);
 
-  await page.getByRole('link', { name: 'Bring a calendar file' }).click();
+  await page.getByRole('link', { name: 'Bring a calendar' }).click();
   await expectSound(page);
   await page.getByLabel('Calendar file').setInputFiles({ name: 'mine.ics', mimeType: 'text/calendar', buffer: Buffer.from('not one') });
   await page.getByRole('button', { name: 'Take these days off' }).click();

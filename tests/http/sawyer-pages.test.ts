@@ -72,7 +72,11 @@ describe('the calendar', () => {
     expect(await (await sawyer.get(month)).text()).toMatch(new RegExp(`name="shown\\[\\]" value="${day(11)}"`));
     const marked = await sawyer.post(month, { deed: 'mark', 'shown[]': [day(11), day(12)], 'off[]': [day(12), day(14)] });
     expect(marked.headers.get('location')).toMatch(/added=1&removed=1$/);
-    for (const form of [{ deed: 'range', from: '2026-02-30' }, { deed: 'range', from: day(9), until: day(8) }, { deed: 'bake' }, {}]) expect((await sawyer.post('/sawyer/calendar', form)).status).toBe(422);
+    await sawyer.post('/sawyer/calendar', { deed: 'range', from: day(40) });
+    expect((await sawyer.post(month, { deed: 'move', what: 'off', from: day(40), to: day(41) })).headers.get('location')).toMatch(/done=moved/);
+    expect((await sawyer.post(month, { deed: 'move', what: 'off', from: day(41), to: day(-1) })).status).toBe(422);
+    expect((await sawyer.post(month, { deed: 'move', what: '999999', from: day(41), to: day(42) })).status).toBe(404);
+    for (const form of [{ deed: 'move', what: 'x', from: day(3), to: day(4) }, { deed: 'move', what: 'off', from: day(3), to: '' }, { deed: 'range', from: '2026-02-30' }, { deed: 'range', from: day(9), until: day(8) }, { deed: 'bake' }, {}]) expect((await sawyer.post('/sawyer/calendar', form)).status).toBe(422);
   });
 
   test('is read at its secret address by anybody who has it, until it is renewed', async () => {

@@ -1,3 +1,5 @@
+import { formatDay, parseDay } from '~/domain/time.ts';
+
 interface Done {
   readonly kind: 'good' | 'care';
   readonly title: string;
@@ -17,6 +19,10 @@ export function calendarDone(params: URLSearchParams): Done | undefined {
       return { kind: 'good', title: 'The address is ready.', text: 'An address you gave out before has stopped answering.' };
     case 'stopped':
       return { kind: 'good', title: 'The address has stopped answering.', text: '' };
+    case 'moved': {
+      const to = parseDay(params.get('to') ?? '');
+      return { kind: 'good', title: to.ok ? `Moved to ${formatDay(to.value)}.` : 'Moved.', text: '' };
+    }
     case 'other-stopped':
       return { kind: 'good', title: 'Your other calendar is not read any more.', text: 'The days taken from it stay off until you give them back.' };
     case 'days': {
