@@ -37,7 +37,7 @@ describe('boards left over', () => {
   const form = { boards: 'White oak, 5/4, 8, 10, 4', asks: '$3 a board foot' };
 
   it('are put up by the landowner alone, from the boards of the tally', async () => {
-    expect((await afterPage(cast.ada, booking.number)).allBoards).toBe('White oak, 5/4, 8, 10, 6');
+    expect((await afterPage(cast.ada, booking.number, at)).allBoards).toBe('White oak, 5/4, 8, 10, 6');
     for (const other of [cast.bram, cast.cleo, cast.mo]) await expect(offerBoardsLeft(other, booking.number, form, at)).rejects.toMatchObject({ kind: 'forbidden' });
     await expect(offerBoardsLeft(cast.ada, booking.number, { ...form, boards: 'White oak' }, at)).rejects.toMatchObject({ kind: 'invalid' });
     await offerBoardsLeft(cast.ada, booking.number, form, at);

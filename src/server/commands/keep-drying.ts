@@ -19,7 +19,7 @@ export async function keepDryingPlan(by: Viewer, number: number, form: DryingPla
     authorize(by, 'booking', 'keepBoards', rolesOnBooking(by, booking), booking.status);
     const before = await DryingPlan.findByPk(booking.id);
     const remindedAt = before?.remindOn === form.remindOn ? before.remindedAt : null;
-    await DryingPlan.upsert({ bookingId: booking.id, ...form, remindedAt, updatedAt: at });
+    await DryingPlan.upsert({ bookingId: booking.id, ...form, temperatureF: null, humidityPct: null, remindedAt, updatedAt: at });
   });
 }
 

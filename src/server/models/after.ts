@@ -2,8 +2,11 @@ import { day, filled, id, instant, json, keyRef, nullable, real, ref, table, tex
 
 export const DryingPlan = table('drying_plan', {
   bookingId: keyRef(),
-  temperatureF: real(),
-  humidityPct: real(),
+  /** `MonthAir` as typed; the single figures are from before months could be typed. */
+  months: filled(json<unknown[]>()),
+  airSource: filled(text()),
+  temperatureF: nullable(real()),
+  humidityPct: nullable(real()),
   targetPct: real(),
   stackWidthFt: real(),
   sawKerfIn: real(),

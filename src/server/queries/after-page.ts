@@ -1,5 +1,7 @@
 import { abilities, type Action } from '~/domain/permissions.ts';
-import { airDryingDays, equilibriumMoisturePct } from '~/domain/timber/drying.ts';
+import { dryingMonths, type DryingMonth, type MonthAir } from '~/domain/timber/monthly-air.ts';
+import { dayAt } from '~/domain/time.ts';
+import { airDryingDays } from '~/domain/timber/drying.ts';
 import { boardLine, gathered } from '~/domain/timber/board-lines.ts';
 import { cutProject, dryBoards, type DryBoards, type ProjectCut } from '~/domain/timber/dry-boards.ts';
 import { readProjectPieces } from '~/domain/timber/project-pieces.ts';
@@ -13,8 +15,8 @@ import { tallyWork } from '../tally-work.ts';
 import type { Viewer } from '../viewer.ts';
 
 const STICKER_IN = 0.75;
-/** Before anything is typed: a mild month outdoors, and 20 %, which is air-dried. */
-const DEFAULTS = { temperatureF: 60, humidityPct: 70, targetPct: 20, stackWidthFt: 4, sawKerfIn: 0.125, pieces: '', remindOn: null } as const;
+/** Before anything is typed: 20 %, which is air-dried, and no air at all. */
+const DEFAULTS = { months: [], airSource: '', temperatureF: null, humidityPct: null, targetPct: 20, stackWidthFt: 4, sawKerfIn: 0.125, pieces: '', remindOn: null } as const;
 
 /** One stack: boards of one species. */
 export interface SpeciesStack {
@@ -30,8 +32,12 @@ export interface AfterPage {
   readonly number: number;
   readonly title: string;
   readonly timeZone: string;
-  readonly plan: { readonly temperatureF: number; readonly humidityPct: number; readonly targetPct: number; readonly stackWidthFt: number; readonly sawKerfIn: number; readonly pieces: string; readonly remindOn: string | null };
-  readonly equilibriumPct: number;
+  readonly plan: { readonly airSource: string; readonly targetPct: number; readonly stackWidthFt: number; readonly sawKerfIn: number; readonly pieces: string; readonly remindOn: string | null };
+  /** The months that were typed, each with where boards end in its air. */
+  readonly months: readonly DryingMonth[];
+  /** The air of the month that it is, where it was typed; otherwise of what was typed. Null while nothing was. */
+  readonly now: DryingMonth | null;
+  readonly isThisMonth: boolean;
   readonly stacks: readonly SpeciesStack[];
   readonly boards: readonly (DryBoards & { readonly speciesName: string })[];
   readonly cuts: readonly ProjectCut[];
@@ -48,7 +54,7 @@ export interface AfterPage {
  * What follows the job: the stack of these very boards, their drying, their sizes when dry, the project cut from them.
  * @throws Refusal `notFound` for others, and before anything is tallied
  */
-export async function afterPage(viewer: Viewer, number: number): Promise<AfterPage> {
+export async function afterPage(viewer: Viewer, number: number, at: Date): Promise<AfterPage> {
   const booking = Number.isSafeInteger(number) ? await Booking.findOne({ where: { number } }) : null;
   if (!booking) throw notFound('booking');
   const can = abilities('booking', rolesOnBooking(viewer, booking), booking.status);
@@ -60,12 +66,17 @@ export async function afterPage(viewer: Viewer, number: number): Promise<AfterPa
   const commonest = listing.species[0] ?? 'white-oak';
   const speciesOfLog = (logId: string | null): string => work.onTheDay.find(({ id }) => id === logId)?.species ?? commonest;
   const boards = dryBoards(work.boards, speciesOfLog, plan.targetPct);
+  const thisMonth = Number(dayAt(at, booking.timeZone).slice(5, 7));
+  const single = plan.temperatureF !== null && plan.humidityPct !== null ? [{ month: thisMonth, temperatureF: plan.temperatureF, humidityPct: plan.humidityPct }] : [];
+  const months = dryingMonths(plan.months.length > 0 ? (plan.months as MonthAir[]) : single);
   const pieces = readProjectPieces(plan.pieces);
   const readings = await MoistureReading.findAll({ where: { bookingId: booking.id }, order: [['readOn', 'ASC'], ['enteredAt', 'ASC']] });
   return {
     number, title: listing.title ?? '', timeZone: booking.timeZone,
-    plan: { temperatureF: plan.temperatureF, humidityPct: plan.humidityPct, targetPct: plan.targetPct, stackWidthFt: plan.stackWidthFt, sawKerfIn: plan.sawKerfIn, pieces: plan.pieces, remindOn: plan.remindOn },
-    equilibriumPct: equilibriumMoisturePct(plan.temperatureF, plan.humidityPct),
+    plan: { airSource: plan.airSource, targetPct: plan.targetPct, stackWidthFt: plan.stackWidthFt, sawKerfIn: plan.sawKerfIn, pieces: plan.pieces, remindOn: plan.remindOn },
+    months,
+    now: months.find(({ month }) => month === thisMonth) ?? months[0] ?? null,
+    isThisMonth: months.some(({ month }) => month === thisMonth),
     stacks: [...new Set(boards.map(({ species }) => species))].map((code) => stackOf(code, boards.filter(({ species }) => species === code), plan.stackWidthFt)),
     boards: boards.map((board) => ({ ...board, speciesName: speciesOf(board.species).name })),
     cuts: pieces.ok && pieces.value.length > 0 ? cutProject(boards, pieces.value, plan.sawKerfIn) : [],
