@@ -27,9 +27,9 @@ export async function moneyTermsOf(bookingId: string): Promise<{ readonly terms:
 }
 
 /** What the signed tally came to, by whom it was signed; null while nothing is signed. */
-export async function signedSettlement(bookingId: string): Promise<{ readonly settlement: Settlement; readonly signedBy: string | null } | null> {
+export async function signedSettlement(bookingId: string): Promise<{ readonly settlement: Settlement; readonly signedBy: string | null; readonly signedAt: Date } | null> {
   const tally = await Tally.findOne({ where: { bookingId }, order: [['part', 'DESC']] });
-  return tally?.signedAt && tally.settlement ? { settlement: tally.settlement as Settlement, signedBy: tally.signedBy } : null;
+  return tally?.signedAt && tally.settlement ? { settlement: tally.settlement as Settlement, signedBy: tally.signedBy, signedAt: tally.signedAt } : null;
 }
 
 /** The settlement's cost split against what is held now: a top-up may have come since it was signed. */

@@ -1,5 +1,5 @@
 import { formatCents } from '~/domain/money.ts';
-import { formatDayWithYear } from '~/domain/time.ts';
+import { dayAt, formatDayWithYear } from '~/domain/time.ts';
 import type { EarningsStatement } from '../queries/earnings-statement.ts';
 import type { MoneyOfBooking } from '../queries/money-of-booking.ts';
 import type { PaymentsStatement } from '../queries/payments-statement.ts';
@@ -53,7 +53,7 @@ export function receiptSheet(money: MoneyOfBooking, number: string): MoneySheet 
     : [total('Paid for the work', parts.payableCents), total(`Fee (${money.feeBasisPoints / 100} %, not on tax)`, -parts.feeCents), total('To the sawyer', parts.transferCents)];
   return {
     title: 'Receipt', number,
-    facts: [['Job', `${money.title}, booking ${money.number}`], ['Landowner', money.landownerName], ['Sawyer', money.sawyerName]],
+    facts: [['Day', formatDayWithYear(dayAt(settlement.signedAt, money.timeZone))], ['Job', `${money.title}, booking ${money.number}`], ['Landowner', money.landownerName], ['Sawyer', money.sawyerName]],
     columns: [{ heading: 'For', part: 0.46 }, { heading: 'Quantity', part: 0.2, figure: true }, { heading: 'Price', part: 0.16, figure: true }, { heading: 'Amount', part: 0.18, figure: true }],
     rows: whole.lines.map((line) => [line.label, `${line.quantity.toLocaleString('en-US', { maximumFractionDigits: 2 })} ${line.unit}`, line.unit === '%' ? '' : formatCents(line.unitCents), formatCents(line.amountCents)]),
     totals: [total('The work came to', whole.costCents), ...sums, ...(lostCents > 0 ? [total('Given back by the bank after a dispute', lostCents)] : [])],

@@ -35,7 +35,7 @@ export interface MoneyOfBooking {
   readonly heldCents: number;
   readonly feeBasisPoints: number;
   /** What the signed tally came to, and how it is split against what was or is held. */
-  readonly settlement: { readonly whole: Settlement; readonly parts: Split; readonly lackingCents: number; /** Given back to the card by the bank. */ readonly lostCents: number } | null;
+  readonly settlement: { readonly signedAt: Date; readonly whole: Settlement; readonly parts: Split; readonly lackingCents: number; /** Given back to the card by the bank. */ readonly lostCents: number } | null;
   readonly waitsFor: 'payout account' | 'top-up' | 'bank' | 'moderator' | null;
   readonly steps: readonly MoneyStep[];
   readonly newestCheckout: { readonly status: Checkout['status']; readonly purpose: Checkout['purpose']; readonly cents: number; readonly createdAt: Date } | null;
@@ -69,7 +69,7 @@ async function settlementOf(booking: Booking, payment: HeldPayment | null, heldC
   const against = ledger['landowner held'] === 0 ? (sum?.cents ?? 0) : heldCents;
   const lackingCents = payment?.status === 'held' && !payment.heldAcceptedAt && signed.signedBy !== 'deadline' ? Math.max(0, signed.settlement.costCents - heldCents) : 0;
   const lost = await oneRow<{ cents: number }>(`SELECT coalesce(sum(dispute.amount_cents), 0)::int AS cents FROM card_dispute dispute JOIN charge ON charge.id = dispute.charge_id WHERE dispute.booking_id = $1 AND dispute.status = 'lost' AND charge.returned_because IS NULL`, [booking.id]);
-  return { whole: signed.settlement, lostCents: lost?.cents ?? 0, parts: splitNow(signed.settlement, against, feeBasisPoints), lackingCents };
+  return { signedAt: signed.signedAt, whole: signed.settlement, lostCents: lost?.cents ?? 0, parts: splitNow(signed.settlement, against, feeBasisPoints), lackingCents };
 }
 
 function waitingFor(status: BookingState, disputed: boolean, steps: readonly MoneyStep[], lackingCents: number): MoneyOfBooking['waitsFor'] {
