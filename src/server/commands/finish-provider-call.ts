@@ -38,7 +38,7 @@ async function withCall<T>(callId: string, work: (call: ProviderCall, booking: B
 export async function finishProviderCall(callId: string, moved: Moved, at: Date): Promise<void> {
   await withCall(callId, async (call, booking, payment) => {
     if (moved.status === 'came back') return comeBack(booking, call, moved.providerId, at);
-    if (call.status === 'done' || call.status === 'dropped' || call.cameBackId === moved.providerId) return;
+    if (call.status === 'done' || call.status === 'dropped' || call.cameBack.includes(moved.providerId)) return;
     if (moved.status === 'waiting') return void (await call.update({ providerId: moved.providerId, claimedUntil: null }));
     await call.update({ status: 'done', providerId: moved.providerId, doneAt: at, claimedUntil: null, error: null });
     await post({ at, cause: call.kind, causeId: moved.providerId, bookingId: booking.id, sides: sidesOf(call) });
@@ -56,14 +56,19 @@ export async function dropProviderCall(callId: string, at: Date): Promise<void> 
   });
 }
 
-/** A refund came back from the bank: it is owed again, and a moderator is needed. Told of an older refund of the call, nothing changes. */
+/**
+ * A refund came back from the bank: it is owed again, and a moderator is needed. The next try has a new key: under the old one the
+ * provider would answer with the refund that came back. Told again of one that is known, or of an older one of a call that is done,
+ * nothing moves.
+ */
 async function comeBack(booking: Booking, call: ProviderCall, refundId: string, at: Date): Promise<void> {
-  if (call.cameBackId === refundId || (call.providerId !== null && call.providerId !== refundId)) return;
+  if (call.cameBack.includes(refundId)) return;
+  const cameBack = [...call.cameBack, refundId];
+  if (call.status === 'dropped' || (call.status === 'done' && call.providerId !== refundId)) return void (await call.update({ cameBack }));
   if (call.status === 'done')
     await post({
       at, cause: 'refund came back', causeId: refundId, bookingId: booking.id,
       sides: [{ account: 'provider balance', amountCents: centsOf(call) }, { account: 'refund payable', amountCents: -centsOf(call) }],
     });
-  const status = call.status === 'dropped' ? 'dropped' : 'stuck';
-  await call.update({ status, providerId: refundId, cameBackId: refundId, error: 'The bank sent the refund back.', doneAt: null, claimedUntil: null });
+  await call.update({ status: 'stuck', providerId: refundId, cameBack, idempotencyKey: `refund-${crypto.randomUUID()}`, error: 'The bank sent the refund back.', doneAt: null, claimedUntil: null });
 }

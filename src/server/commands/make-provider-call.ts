@@ -63,7 +63,11 @@ async function make(work: Work): Promise<Moved> {
   if (!charge) throw new Error(`The call ${call.id} names no charge.`);
   const common = { callId: call.id, idempotencyKey: call.idempotencyKey, amountCents: centsOf(call), bookingNumber };
   if (call.kind === 'reversal' && transfer !== null) return makeReversal({ ...common, transfer });
-  if (call.kind === 'refund') return makeRefund({ ...common, charge: charge.providerChargeId });
+  if (call.kind === 'refund') {
+    const made = await makeRefund({ ...common, charge: charge.providerChargeId });
+    // A repeated key is answered with what was said the first time; the refund may have come back since.
+    return call.attempts > 1 ? readRefund(made.providerId) : made;
+  }
   if (call.kind !== 'transfer' || destination === null) throw new Error(`The call ${call.id} cannot be made.`);
   return makeTransfer({ ...common, destination, sourceCharge: charge.providerChargeId, transferGroup: payment.transferGroup });
 }
@@ -99,15 +103,16 @@ export async function makeProviderCall(callId: string, at: Date): Promise<void> 
   }
 }
 
+/** Notes how a try ended, unless the call went another way meanwhile: its key is then another. */
 async function noteFailure(call: ProviderCall, problem: PaymentsProblem, at: Date): Promise<void> {
   const curable = problem.kind !== 'refused' || (problem.code !== null && CURABLE.has(problem.code));
   const stuck = !curable || call.attempts >= MOST_ATTEMPTS;
   const waitS = Math.min(2 ** call.attempts, 6 * 3600);
   await execute(
-    `UPDATE provider_call SET status = $2, error = $3, claimed_until = $4, idempotency_key = $5 WHERE id = $1 AND status IN ('waiting', 'failed')`,
+    `UPDATE provider_call SET status = $2, error = $3, claimed_until = $4, idempotency_key = $5 WHERE id = $1 AND status IN ('waiting', 'failed') AND idempotency_key = $6`,
     [
       call.id, stuck ? 'stuck' : 'failed', problem.message.slice(0, 500), stuck ? null : new Date(at.getTime() + waitS * 1000),
-      problem.kind === 'unknown' ? call.idempotencyKey : `${call.kind}-${crypto.randomUUID()}`,
+      problem.kind === 'unknown' ? call.idempotencyKey : `${call.kind}-${crypto.randomUUID()}`, call.idempotencyKey,
     ],
   );
   if (!stuck) throw problem;

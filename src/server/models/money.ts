@@ -60,8 +60,8 @@ export const ProviderCall = table('provider_call', {
   doneAt: nullable(instant()),
   /** For a reversal: the call whose transfer it takes back. */
   reverses: nullable(ref()),
-  /** For a refund: the last one of this call that the bank sent back. It never moves again. */
-  cameBackId: nullable(text()),
+  /** For a refund: those of this call that the bank sent back, by the provider's ids. They never move again. */
+  cameBack: filled(json<readonly string[]>()),
 });
 export type ProviderCall = Row<typeof ProviderCall>;
 

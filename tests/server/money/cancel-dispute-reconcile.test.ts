@@ -215,6 +215,48 @@ describe('what was read of a refund before it came back', () => {
       expect(await checkBooks(house, [booking.id])).toEqual([]);
     }
   });
+
+  it('is not taken from the answer that the provider repeats for a key', async () => {
+    const booking = await held();
+    await cancel(cast.ada, booking);
+    const { id } = await callFor(booking);
+    const refunds = (): { id: string; status: string | null }[] => house.fake.control.objects('refund').filter(({ metadata }) => metadata?.['call'] === id);
+    const makeWithDeadLine = async (): Promise<string> => {
+      house.fake.control.fault({ on: 'POST /v1/refunds', times: 2, effect: 'drop' });
+      await makeProviderCall(id, new Date(Date.now() + 86_400_000)).catch(() => undefined);
+      house.fake.control.clearFaults();
+      return refunds().find(({ status }) => status !== 'failed')?.id ?? '';
+    };
+    // The first refund comes back and is known; the second is made while the line is dead, and comes back before anybody knows of it.
+    const first = await makeWithDeadLine();
+    house.fake.control.failRefund(first);
+    await finishProviderCall(id, { providerId: first, status: 'came back' }, new Date());
+    await retryProviderCall(cast.mo, id, new Date());
+    const second = await makeWithDeadLine();
+    expect(second).not.toBe(first);
+    house.fake.control.failRefund(second);
+    await finishProviderCall(id, { providerId: second, status: 'came back' }, new Date());
+    expect(await callFor(booking)).toMatchObject({ status: 'stuck', cameBack: [first, second] });
+    await retryProviderCall(cast.mo, id, new Date());
+    await house.work();
+    expect((await callFor(booking)).status).toBe('done');
+    expect(refunds()).toHaveLength(3);
+    expect(await checkBooks(house, [booking.id])).toEqual([]);
+  });
+
+  it('is read anew when the line was dead, and nobody has told yet that it came back', async () => {
+    const booking = await held();
+    await cancel(cast.ada, booking);
+    const { id } = await callFor(booking);
+    house.fake.control.webhooks({ paused: true });
+    house.fake.control.fault({ on: 'POST /v1/refunds', times: 2, effect: 'drop' });
+    await makeProviderCall(id, new Date()).catch(() => undefined);
+    house.fake.control.clearFaults();
+    house.fake.control.failRefund(house.fake.control.objects('refund').find(({ metadata }) => metadata?.['call'] === id)?.id ?? '');
+    await makeProviderCall(id, new Date(Date.now() + 86_400_000));
+    expect((await callFor(booking)).status).toBe('stuck');
+    house.fake.control.webhooks({ paused: false });
+  });
 });
 
 describe('the message door', () => {
