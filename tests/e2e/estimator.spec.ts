@@ -65,9 +65,12 @@ test('rot drawn on the log end comes off the scale', async ({ page }) => {
 
   // From the top of the end to its right-hand side: a quarter.
   await page.getByRole('button', { name: 'Draw a scar or seam' }).click();
-  await page.mouse.move(box.x + box.width * 0.5, box.y + box.height * 0.2);
+  await end.scrollIntoViewIfNeeded();
+  const now = await end.boundingBox();
+  if (!now) throw new Error('The log end is not drawn.');
+  await page.mouse.move(now.x + now.width * 0.5, now.y + now.height * 0.2);
   await page.mouse.down();
-  await page.mouse.move(box.x + box.width * 0.8, box.y + box.height * 0.5, { steps: 5 });
+  await page.mouse.move(now.x + now.width * 0.8, now.y + now.height * 0.5, { steps: 5 });
   await page.mouse.up();
   await expect(page.getByLabel('Kind')).toHaveValue('wedge');
   await expect(page.getByLabel('Angle of the slice')).toHaveValue('90');
