@@ -8,6 +8,7 @@ import { tellListings } from './listings.ts';
 import { standIn } from './money.ts';
 import { tellPeople } from './people.ts';
 import { photosReady, tellPhotos } from './photos.ts';
+import { tellShowing } from './showing.ts';
 import { tellSawyers } from './sawyers.ts';
 import { tellTalks } from './talk.ts';
 import { tellTallies } from './tallies.ts';
@@ -34,5 +35,6 @@ export async function tellStory(now: Date): Promise<void> {
   });
   await timeline.run();
   await photosReady();
+  await tellShowing(now);
   await record(system('story'), 'tellStory', 'story', null, now);
 }

@@ -37,6 +37,10 @@ const parts: Readonly<Record<string, string>> = {
     JOIN booking ON booking.id = ledger_entry.booking_id WHERE landowner_id = $1 OR sawyer_id = $1`,
   messages: `SELECT conversation_id AS conversation, CASE WHEN sender_id = $1 THEN 'sent' ELSE 'received' END AS way, body, sent_at, read_at FROM message
     WHERE (sender_id = $1 OR recipient_id = $1) AND hidden_at IS NULL`,
+  drying: `SELECT booking.number AS booking, months, air_source, target_pct, stack_width_ft, saw_kerf_in, pieces, remind_on, (SELECT coalesce(json_agg(json_build_object('readOn', read_on, 'moisturePct', moisture_pct, 'note', note) ORDER BY read_on), '[]') FROM moisture_reading WHERE booking_id = booking.id) AS readings
+    FROM booking JOIN drying_plan ON drying_plan.booking_id = booking.id WHERE landowner_id = $1`,
+  boardsLeftOver: 'SELECT booking.number AS booking, boards, asks, put_up_at, taken_down_at FROM boards_left JOIN booking ON booking.id = booking_id WHERE landowner_id = $1',
+  jobPages: "SELECT booking.number AS booking, words, photo_ids, CASE WHEN landowner_id = $1 THEN landowner_agreed_at ELSE sawyer_agreed_at END AS agreed_at FROM job_page JOIN booking ON booking.id = booking_id WHERE landowner_id = $1 OR sawyer_id = $1",
   reviewsWritten: 'SELECT booking.number AS booking, stars, body, review.created_at FROM review JOIN booking ON booking.id = booking_id WHERE author_id = $1',
   reviewsReceived: 'SELECT booking.number AS booking, stars, body, review.created_at FROM review JOIN booking ON booking.id = booking_id WHERE subject_id = $1 AND hidden_at IS NULL',
   reports: 'SELECT thing, thing_id, reason, note, created_at, handled_at, outcome FROM report WHERE reporter_id = $1',
