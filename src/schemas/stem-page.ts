@@ -1,7 +1,8 @@
 import { parseLengthFt, parseLengthIn } from '~/domain/measure.ts';
 import type { Problem, Result } from '~/domain/result.ts';
 import type { BuckingRules, Stem } from '~/domain/sawing/bucking.ts';
-import { logRules, type LogRule } from '~/domain/timber/log-rules.ts';
+import type { StemWorth } from '~/domain/sawing/stem-plan.ts';
+import { logRules } from '~/domain/timber/log-rules.ts';
 import { findSpecies, type Species } from '~/domain/timber/species.ts';
 import { insideBarkIn } from '~/domain/timber/taper-and-bark.ts';
 
@@ -13,12 +14,14 @@ export const LOG_LENGTHS_FT: readonly number[] = [6, 8, 10, 12, 14, 16, 18, 20];
 /** Trim over the length, in: common practice is 4 to 6. */
 export const TRIM_IN: readonly number[] = [3, 4, 5, 6, 8];
 const LONGEST_STEM_FT = 150;
+/** Planned by boards a longer stem takes too long. */
+const LONGEST_BY_BOARDS_FT = 100;
 
 export interface StemAsked {
   readonly species: Species;
   readonly stem: Stem;
   readonly rules: BuckingRules;
-  readonly rule: LogRule;
+  readonly by: StemWorth;
 }
 
 export interface StemPage {
@@ -29,6 +32,8 @@ export interface StemPage {
   readonly said: (name: string) => string;
   readonly lengths: readonly string[];
 }
+
+const worths: readonly StemWorth[] = [...logRules, 'boards'];
 
 const first: Readonly<Record<string, string>> = { bark: 'over', trim: '5', smallest: '8', by: 'internationalQuarter', at0: '0' };
 const firstLengths = ['8', '10', '12', '16'];
@@ -43,9 +48,10 @@ export function readStemPage(params: URLSearchParams): StemPage {
   const species = reader.species();
   const stem = reader.stem(species);
   const rules = reader.rules(lengths);
-  const rule = logRules.find((one) => one === said('by'));
-  if (!rule) reader.say('by', 'Choose a log rule.');
-  const asked = species && stem && rules && rule && reader.problems.length === 0 ? { species, stem, rules, rule } : null;
+  const by = worths.find((one) => one === said('by'));
+  if (!by) reader.say('by', 'Choose what the logs shall give most of.');
+  if (by === 'boards' && stem?.measures.some(({ fromButtFt }) => fromButtFt > LONGEST_BY_BOARDS_FT)) reader.say('by', `By its boards a stem is worked out up to ${LONGEST_BY_BOARDS_FT} ft. Choose a log rule for a longer one.`);
+  const asked = species && stem && rules && by && reader.problems.length === 0 ? { species, stem, rules, by } : null;
   return { asked, problems: reader.problems, said, lengths };
 }
 

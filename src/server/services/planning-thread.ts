@@ -3,10 +3,11 @@ import { cutList, type CutListRequest, type Patience } from '../../domain/sawing
 import { expectedLumber, type LumberRequest } from '../../domain/sawing/expected.ts';
 import { listingPlan, type ListingPlanRequest } from '../../domain/sawing/listing-plan.ts';
 import { sawPlan, type SawPlanRequest } from '../../domain/sawing/saw-plan.ts';
+import { planStem, type StemRequest } from '../../domain/sawing/stem-plan.ts';
 
 /** A task for a planning thread. */
 export type Task = { readonly id: number } & Work;
-export type Work = { readonly kind: 'saw-plan'; readonly request: SawPlanRequest } | { readonly kind: 'cut-list'; readonly request: CutListRequest } | { readonly kind: 'listing'; readonly request: ListingPlanRequest } | { readonly kind: 'lumber'; readonly request: LumberRequest };
+export type Work = { readonly kind: 'saw-plan'; readonly request: SawPlanRequest } | { readonly kind: 'cut-list'; readonly request: CutListRequest } | { readonly kind: 'listing'; readonly request: ListingPlanRequest } | { readonly kind: 'lumber'; readonly request: LumberRequest } | { readonly kind: 'stem'; readonly request: StemRequest };
 
 export type Answer = { readonly id: number } & ({ readonly value: unknown } | { readonly error: string } | { readonly late: true });
 
@@ -27,6 +28,7 @@ function patience(): Patience {
 async function done(task: Task): Promise<unknown> {
   if (task.kind === 'saw-plan') return sawPlan(task.request);
   if (task.kind === 'lumber') return expectedLumber(task.request.logs, task.request.mill, task.request.wanted, task.request.measuredBy);
+  if (task.kind === 'stem') return planStem(task.request);
   const { highsSolver } = await import('./solver.ts'); // only where it is needed: it is large
   const solve = await highsSolver();
   if (task.kind === 'listing') return listingPlan(task.request, solve, patience());

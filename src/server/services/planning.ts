@@ -4,6 +4,7 @@ import type { CutListAnswer, CutListRequest } from '~/domain/sawing/cut-list.ts'
 import { type Expected, expectedLumber, isQuick, type LumberRequest } from '~/domain/sawing/expected.ts';
 import type { ListingPlan, ListingPlanRequest } from '~/domain/sawing/listing-plan.ts';
 import type { SawPlan, SawPlanRequest } from '~/domain/sawing/saw-plan.ts';
+import type { StemPlan, StemRequest } from '~/domain/sawing/stem-plan.ts';
 import { unavailable } from '../errors.ts';
 import type { Answer, Work } from './planning-thread.ts';
 
@@ -108,6 +109,15 @@ export const planLumber = (request: LumberRequest): Promise<Expected> =>
     if (isQuick(request)) return expectedLumber(request.logs, request.mill, request.wanted, request.measuredBy);
     notTooMany(plans);
     return plans.planned<Expected>({ kind: 'lumber', request }, WAIT_MS);
+  });
+
+const stems = new Kept<StemRequest, StemPlan>(50);
+
+/** Where to cut a stem for the boards of its logs, worked out in a thread. @throws unavailable when too many wait. */
+export const planStemBoards = (request: StemRequest): Promise<StemPlan> =>
+  stems.answer(request, async () => {
+    notTooMany(plans);
+    return plans.planned<StemPlan>({ kind: 'stem', request }, WAIT_MS);
   });
 
 /** The boards of a whole listing on one mill, worked out in a thread. @throws unavailable when too many wait. */

@@ -39,6 +39,7 @@ describe('the address of the stem page', () => {
     ['smallest', { smallest: '0' }],
     ['longest', { longest: 'long' }],
     ['by', { by: 'sawmill' }],
+    ['by', { by: 'boards', at1: '101' }],
   ])('names %s when it cannot be used: %j', (path, fields, lengths) => {
     expect(paths(fields, lengths)).toContain(path);
   });
@@ -54,7 +55,7 @@ describe('the address of the stem page', () => {
 describe('a planned stem', () => {
   const { asked } = page(stem);
   if (!asked) throw new Error('the stem of the check cannot be read');
-  const { best, oneLength } = planStem(asked.stem, asked.rules, asked.rule);
+  const { best, oneLength } = planStem(asked);
 
   it('is worth what its logs scale by themselves, and no less than any single length', () => {
     const logs = logsOfStem(best, 'white-oak', asked.rules.trimIn);
@@ -62,6 +63,15 @@ describe('a planned stem', () => {
     expect(logs.reduce((sum, log) => sum + estimateLog(log).boardFeet.internationalQuarter, 0)).toBe(best.value);
     expect(best.value).toBeGreaterThanOrEqual(oneLength?.value ?? Infinity);
     expect(best.logs[0]?.fromButtFt).toBe(0);
+  });
+
+  it('by its boards is worth what they are, and no less than the boards of the best by scale', () => {
+    const byBoards = planStem({ ...asked, by: 'boards' });
+    expect(byBoards.best.logs.reduce((sum, log) => sum + log.value, 0)).toBeCloseTo(byBoards.best.value, 9);
+    expect(byBoards.best.value).toBeGreaterThanOrEqual(byBoards.oneLength?.value ?? Infinity);
+    // A mill saws about what International ¼ says (tests/unit/sawing/published.test.ts).
+    expect(byBoards.best.value / best.value).toBeGreaterThan(0.85);
+    expect(byBoards.best.value / best.value).toBeLessThan(1.3);
   });
 
   it('goes to the estimator and a listing by the address', () => {
