@@ -13,6 +13,7 @@ import { tellSawyers } from './sawyers.ts';
 import { tellTalks } from './talk.ts';
 import { tellTallies } from './tallies.ts';
 import { Timeline } from './timeline.ts';
+import { tellTrips } from './trips.ts';
 
 /**
  * Tells the story into an empty database, as of now. The web process and the stand-ins must be running, and no worker: the story
@@ -27,6 +28,7 @@ export async function tellStory(now: Date): Promise<void> {
   tellBids(timeline);
   tellBookings(timeline);
   tellTallies(timeline);
+  tellTrips(timeline);
   tellTalks(timeline);
   // The provider keeps its fee when a whole hold goes back, so the platform pays some money of its own in.
   timeline.add(-60, '09:00', async (at) => {

@@ -26,6 +26,7 @@ describe('the demo story', () => {
     // `settling` lasts only as long as the provider's answer.
     expect(await statesOf('held_payment')).toEqual(['due', 'held', 'refunded', 'settled', 'void']);
     expect(await statesOf('photo')).toEqual(['ready']);
+    expect([await statesOf('shared_trip'), await statesOf('trip_stop')]).toEqual([['offered'], ['agreed', 'asked']]);
   });
 
   it('gives both demo accounts something to do', async () => {
