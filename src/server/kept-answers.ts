@@ -2,10 +2,17 @@
 export interface Keeping {
   /** Kept when it took this long or longer, ms. */
   readonly costlyMs: number;
-  /** For so long, ms. */
-  readonly forMs: number;
+  /** Good as new for so long, ms. */
+  readonly freshMs: number;
+  /** After that, still given for so long while it is worked out anew, ms. */
+  readonly staleMs: number;
   /** As many answers as are kept; the one asked for longest ago gives way. */
   readonly most: number;
+}
+
+interface Kept<Answer> {
+  readonly since: number;
+  readonly answer: Answer;
 }
 
 /**
@@ -13,44 +20,56 @@ export interface Keeping {
  * What is cheap is never kept, so it is never old.
  */
 export class KeptAnswers<Answer> {
-  readonly #kept = new Map<string, { readonly until: number; readonly answer: Answer }>();
+  readonly #kept = new Map<string, Kept<Answer>>();
   readonly #coming = new Map<string, Promise<Answer>>();
 
-  constructor(readonly keeping: Keeping) {}
+  /** @param clock milliseconds that only go forward */
+  constructor(
+    readonly keeping: Keeping,
+    readonly clock: () => number = () => performance.now(),
+  ) {}
 
   /** Whether asking costs nothing now. */
   has(key: string): boolean {
-    return this.#coming.has(key) || (this.#kept.get(key)?.until ?? 0) > performance.now();
+    return this.#coming.has(key) || this.#age(key) < this.keeping.freshMs;
   }
 
   /** The answer that is kept or on its way, or what `workOut` gives. */
   get(key: string, workOut: () => Promise<Answer>): Promise<Answer> {
+    const age = this.#age(key);
     const known = this.#kept.get(key);
-    if (known && known.until > performance.now()) {
+    if (known && age < this.keeping.freshMs + this.keeping.staleMs) {
       // Put last again: the first of the map is the one asked for longest ago.
       this.#kept.delete(key);
       this.#kept.set(key, known);
+      // Whoever asks next has the new one, or hears why there is none.
+      if (age >= this.keeping.freshMs) this.#comingOne(key, workOut).catch(() => undefined);
       return Promise.resolve(known.answer);
     }
-    const coming = this.#coming.get(key) ?? this.#workOut(key, workOut);
+    return this.#comingOne(key, workOut);
+  }
+
+  #age(key: string): number {
+    const known = this.#kept.get(key);
+    return known ? this.clock() - known.since : Infinity;
+  }
+
+  #comingOne(key: string, workOut: () => Promise<Answer>): Promise<Answer> {
+    const coming = this.#coming.get(key) ?? this.#workOut(key, workOut).finally(() => this.#coming.delete(key));
     this.#coming.set(key, coming);
     return coming;
   }
 
   async #workOut(key: string, workOut: () => Promise<Answer>): Promise<Answer> {
-    const began = performance.now();
-    try {
-      const answer = await workOut();
-      const now = performance.now();
-      this.#kept.delete(key);
-      if (now - began >= this.keeping.costlyMs) this.#kept.set(key, { until: now + this.keeping.forMs, answer });
-      for (const oldest of this.#kept.keys()) {
-        if (this.#kept.size <= this.keeping.most) break;
-        this.#kept.delete(oldest);
-      }
-      return answer;
-    } finally {
-      this.#coming.delete(key);
+    const began = this.clock();
+    const answer = await workOut();
+    const now = this.clock();
+    this.#kept.delete(key);
+    if (now - began >= this.keeping.costlyMs) this.#kept.set(key, { since: now, answer });
+    for (const oldest of this.#kept.keys()) {
+      if (this.#kept.size <= this.keeping.most) break;
+      this.#kept.delete(oldest);
     }
+    return answer;
   }
 }

@@ -65,6 +65,8 @@ describe('seven thousand listings', () => {
     ['a few of a rare species, near by', { radiusMi: 60, species: 'black-walnut' }],
     ['a few of a rare species, far', { radiusMi: 240, species: 'black-walnut' }],
     ['the largest, from anywhere', { minBoardFeet: 998 }],
+    ['more than are counted of the larger, from anywhere', { minBoardFeet: 700 }],
+    ['more than are counted of the larger, far', { radiusMi: 240, minBoardFeet: 700 }],
     ['all of them', {}],
     ['none', { radiusMi: 60, minBoardFeet: 5000 }],
   ])('come in order, each once, page by page: %s', async (_, wanted) => {

@@ -201,7 +201,7 @@ export async function openListings(asked: ListingsAsked, at: Date): Promise<Foun
   const sql = sqlBuilder();
   const here = asked.from && pointSql(sql, asked.from);
   const nearestFirst = asked.sort === 'distance' || asked.among !== undefined;
-  const few = count < counted(asked);
+  const few = count < counted(asked) || (!nearestFirst && !near(asked) && (await foreseenFew(asked, at)));
   const { key, first, order, after } = ordering(sql, asked, here);
   const met =
     few && near(asked)
@@ -235,6 +235,19 @@ export async function openListings(asked: ListingsAsked, at: Date): Promise<Foun
     total: Math.min(count, COUNT_TO),
     totalIsExact: count <= COUNT_TO,
   };
+}
+
+/**
+ * Whether a filter by itself leaves few enough to be gathered, where more met it than were counted: as the planner foresees it from what
+ * it knows of the columns. Counting on would cost much where a filter leaves very many. By distance the walk is short either way.
+ */
+async function foreseenFew(asked: ListingsAsked, at: Date): Promise<boolean> {
+  const { species, minBoardFeet, maxLargestEndIn } = asked;
+  if (species === undefined && minBoardFeet === undefined && maxLargestEndIn === undefined) return false;
+  const sql = sqlBuilder();
+  const where = conditions(sql, { ...asked, radiusMi: undefined }, at).join(' AND ');
+  const [plan] = await rows<{ 'QUERY PLAN': readonly { readonly Plan: { readonly 'Plan Rows': number } }[] }>(`EXPLAIN (FORMAT JSON) SELECT 1 FROM listing l WHERE ${where}`, sql.values);
+  return (plan?.['QUERY PLAN'][0]?.Plan['Plan Rows'] ?? Infinity) <= GATHER_TO;
 }
 
 async function countUpTo(most: number, asked: ListingsAsked, at: Date): Promise<number> {

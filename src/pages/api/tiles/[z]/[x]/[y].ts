@@ -10,7 +10,7 @@ import { KeptAnswers } from '~/server/kept-answers.ts';
 import { logsTile } from '~/server/queries/logs-tile.ts';
 
 /** A tile that gathers very many listings takes longer, and changes by a few of them in a minute. */
-const kept = new KeptAnswers<Buffer>({ costlyMs: 30, forMs: 60_000, most: 500 });
+const kept = new KeptAnswers<Buffer>({ costlyMs: 80, freshMs: 60_000, staleMs: 600_000, most: 500 });
 
 /** A tile of the map of logs. Session and cookies have no part in it. */
 export const GET = openEndpoint({
