@@ -81,3 +81,26 @@ export function cantByTrying(log: GridLog, stepIn: number): number {
   }
   return best;
 }
+
+/**
+ * The best quartersawn plan whose layers begin on the grid, by trying every stack: rows of a quarter begin a kerf past the diagonal of
+ * their layer, so that boards of two quarters are never closer than the kerf, and all four quarters are alike.
+ */
+export function quartersByTrying(log: GridLog, stepIn: number): number {
+  const lines = Math.ceil((2 * log.radiusIn) / stepIn);
+  const known = new Map<number, number>();
+  const from = (line: number): number => {
+    if (line >= lines) return 0;
+    const found = known.get(line);
+    if (found !== undefined) return found;
+    const atIn = line * stepIn - log.radiusIn;
+    const best = thicknesses(log).reduce((most, thicknessIn) => {
+      const far = Math.max(Math.abs(atIn), Math.abs(atIn + thicknessIn));
+      const value = layer(log, thicknessIn, atIn, far + log.kerfIn);
+      return value > 0 ? Math.max(most, value + from(line + Math.ceil((thicknessIn + log.kerfIn) / stepIn - 1e-9))) : most;
+    }, from(line + 1));
+    known.set(line, best);
+    return best;
+  };
+  return 4 * from(0);
+}

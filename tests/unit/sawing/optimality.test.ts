@@ -2,7 +2,7 @@ import { beforeAll, describe, expect, it } from 'vitest';
 import { sawPlan } from '~/domain/sawing/saw-plan.ts';
 import type { Solver } from '~/domain/sawing/solver.ts';
 import { highsSolver } from '~/server/services/solver.ts';
-import { cantByTrying, type GridLog, liveBySolver } from './grid.ts';
+import { cantByTrying, type GridLog, liveBySolver, quartersByTrying } from './grid.ts';
 
 let solve: Solver;
 beforeAll(async () => {
@@ -10,7 +10,7 @@ beforeAll(async () => {
 });
 
 /** Straight logs, so that the grid's boards all run the whole length. */
-const planOf = (log: GridLog, pattern: 'live' | 'cant') =>
+const planOf = (log: GridLog, pattern: 'live' | 'cant' | 'quartersawn') =>
   sawPlan({ log: { smallEndIn: 2 * log.radiusIn, largeEndIn: 2 * log.radiusIn, lengthFt: log.lengthFt }, mill: { kerfIn: log.kerfIn }, pattern, pieces: log.pieces.map((piece) => ({ ...piece, lengthFt: log.lengthFt })) });
 
 const small: readonly GridLog[] = [
@@ -29,6 +29,14 @@ describe('a plan against others made without it', () => {
     expect(value).toBeGreaterThanOrEqual(other - 1e-6);
     expect(value).toBeCloseTo(upperBoundValue, 6);
   }, 60_000);
+
+  it.each([...small, ...large])('quartersawn is no worse than every stack of a quarter on a grid: radius $radiusIn in', (log) => {
+    const other = quartersByTrying(log, 1 / 16);
+    const { value, upperBoundValue } = planOf(log, 'quartersawn');
+    console.info(`quartersawn, ${2 * log.radiusIn} in: ${value.toFixed(2)} against ${other.toFixed(2)} on the grid, bound ${upperBoundValue.toFixed(2)}`);
+    expect(value).toBeGreaterThanOrEqual(other - 1e-6);
+    expect(upperBoundValue).toBeGreaterThanOrEqual(value - 1e-9);
+  });
 
   it.each(small)('round a cant is no worse than every way on a grid: radius $radiusIn in', (log) => {
     const other = cantByTrying(log, 1 / 2);
