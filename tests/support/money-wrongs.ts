@@ -15,7 +15,9 @@ export async function wrongs(house: MoneyHouse, bookings: readonly Booking[]): P
     if (!disputed && open.length > 0) faults.push(`booking ${booking.number}: ${open.map((call) => `${call.kind} ${call.status} ${call.attempts} ${call.error ?? ''}`).join('; ')}`);
     const now = await Booking.findByPk(booking.id, { rejectOnEmpty: true });
     if (now.status === 'held' && payment.status !== 'held') faults.push(`booking ${booking.number} is held, its payment ${payment.status}`);
-    if (now.status === 'settled' && payment.status !== 'settled') faults.push(`booking ${booking.number} is settled, its payment ${payment.status}`);
+    // Signed, and the bank had given the whole hold back to the card: nothing was left to settle.
+    const gone = disputed && payment.status === 'refunded';
+    if (now.status === 'settled' && payment.status !== 'settled' && !gone) faults.push(`booking ${booking.number} is settled, its payment ${payment.status}`);
     if (['cancelled', 'lapsed'].includes(now.status) && !['void', 'refunded', 'settled'].includes(payment.status) && !disputed && calls.every(({ status }) => status === 'done' || status === 'dropped')) faults.push(`booking ${booking.number} is ${now.status}, its payment ${payment.status}`);
   }
   return faults;
