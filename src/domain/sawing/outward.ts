@@ -30,6 +30,8 @@ export class OutwardStacks {
   private readonly edgeCount: Int32Array;
   private readonly atEdge: Int32Array;
   private readonly atPlace: Int32Array;
+  private readonly nextEdge: Float64Array;
+  private readonly thicknesses: Int32Array;
   private readonly groupsAt = new Int16Array(8192);
   readonly places = new Float64Array(8192);
   readonly values = new Float64Array(8192);
@@ -49,6 +51,8 @@ export class OutwardStacks {
     this.edges = this.rows.map((rows) => new Float64Array(rows.length));
     this.edgeValues = this.rows.map((rows) => new Float64Array(rows.length));
     this.edgeCount = new Int32Array(groups.length);
+    this.nextEdge = new Float64Array(groups.length);
+    this.thicknesses = Int32Array.from(groups, ({ thickness }) => thickness);
     this.atEdge = new Int32Array(groups.length);
     this.atPlace = new Int32Array(groups.length);
   }
@@ -92,33 +96,44 @@ export class OutwardStacks {
     this.count = 0;
     atEdge.fill(-1);
     atPlace.fill(-1);
-    const afterEdge = (g: number): number => ((atEdge[g] as number) + 1 < (edgeCount[g] as number) ? ((edges[g] as Float64Array)[(atEdge[g] as number) + 1] as number) : -Infinity);
-    const afterPlace = (g: number): number => ((atPlace[g] as number) + 1 < this.count ? (places[(atPlace[g] as number) + 1] as number) - kerf : -Infinity);
-    while (this.count < places.length) {
+    const { nextEdge, groupsAt, edgeValues } = this;
+    for (let g = 0; g < groups.length; g++) nextEdge[g] = (edgeCount[g] as number) > 0 ? ((edges[g] as Float64Array)[0] as number) : -Infinity;
+    let count = 0;
+    while (count < places.length) {
       let next = -1;
       let place = -Infinity;
       let edge = 0;
       for (let g = 0; g < groups.length; g++) {
         if ((edgeCount[g] as number) === 0) continue;
-        const candidate = Math.max(afterEdge(g), afterPlace(g));
-        const t = groups[g]?.thickness as number;
+        const after = (atPlace[g] as number) + 1;
+        const byPlace = after < count ? (places[after] as number) - kerf : -Infinity;
+        const byEdge = nextEdge[g] as number;
+        const candidate = byEdge > byPlace ? byEdge : byPlace;
+        const t = this.thicknesses[g] as number;
         if (candidate < t / 2 || candidate - t <= place) continue;
         next = g;
         place = candidate - t;
         edge = candidate;
       }
-      if (next < 0) return;
-      while (afterEdge(next) >= edge) atEdge[next] = (atEdge[next] as number) + 1;
-      while (afterPlace(next) >= edge) atPlace[next] = (atPlace[next] as number) + 1;
-      if ((atEdge[next] as number) < 0) continue;
-      const beyond = (atPlace[next] as number) < 0 ? 0 : (values[atPlace[next] as number] as number);
-      const value = ((this.edgeValues[next] as Float64Array)[atEdge[next] as number] as number) + beyond;
-      if (this.count > 0 && value <= (values[this.count - 1] as number) + 1e-9) continue;
-      places[this.count] = place;
-      values[this.count] = value;
-      this.groupsAt[this.count] = next;
-      this.count++;
+      if (next < 0) break;
+      const own = edges[next] as Float64Array;
+      const most = edgeCount[next] as number;
+      let atE = atEdge[next] as number;
+      while (atE + 1 < most && (own[atE + 1] as number) >= edge) atE++;
+      atEdge[next] = atE;
+      nextEdge[next] = atE + 1 < most ? (own[atE + 1] as number) : -Infinity;
+      let atP = atPlace[next] as number;
+      while (atP + 1 < count && (places[atP + 1] as number) - kerf >= edge) atP++;
+      atPlace[next] = atP;
+      if (atE < 0) continue;
+      const value = ((edgeValues[next] as Float64Array)[atE] as number) + (atP < 0 ? 0 : (values[atP] as number));
+      if (count > 0 && value <= (values[count - 1] as number) + 1e-9) continue;
+      places[count] = place;
+      values[count] = value;
+      groupsAt[count] = next;
+      count++;
     }
+    this.count = count;
   }
 
   private indexAt(from: Units): number {
