@@ -81,7 +81,7 @@ async function measure(databaseUrl: string, group: ReturnType<typeof processGrou
   const environment = { ...localEnvironment({ base, databaseUrl, dataFolder: mkdtempSync(join(tmpdir(), 'skidway-bench-')) }), LOG_LEVEL: 'error' };
   await group.start(`web on ${name}`, 'src/server/http/main.ts', [], environment).ready;
   await portAnswers(base);
-  const bare = new pg.Client({ connectionString: databaseUrl });
+  const bare = new pg.Client({ connectionString: databaseUrl, options: '-c jit=off' });
   await bare.connect();
   const places = (await bare.query<Place>('SELECT ST_Y(coarse::geometry) AS lat, ST_X(coarse::geometry) AS lng FROM (SELECT coarse FROM listing ORDER BY md5(number::text) LIMIT $1) few', [rounds])).rows;
   const [{ count } = { count: '' }] = (await bare.query<{ count: string }>('SELECT count(*) FROM listing')).rows;
