@@ -107,18 +107,25 @@ async function beginToPay(scene: Scene, booking: Booking): Promise<void> {
   await tolerating(async () => house.fake.control.pay(new URL(url).pathname.split('/').at(-1) ?? '', pick(scene, CARDS)));
 }
 
+/** Five seconds of the provider's clock: slow refunds, refunds that fail later and the card that disputes take two. Card pages are opened by the same clock. */
+function letTimePass(): void {
+  house.fake.control.advance(5);
+  aheadMs += 5_000;
+}
+
 /** Lets everything come to rest: no more troubles, lost messages found, stuck calls tried again by the moderator. */
 async function settleDown(): Promise<void> {
   house.fake.control.clearFaults();
   house.fake.control.webhooks({ duplicates: 0, shuffleMs: 0, dropNext: 0 });
-  // Slow refunds and the card that disputes take two seconds. Card pages are opened by the same clock.
-  house.fake.control.advance(5);
-  aheadMs += 5_000;
   for (let round = 0; round < 4; round += 1) {
+    letTimePass();
     house.fake.control.resend();
     await house.work(8);
     for (const call of await ProviderCall.findAll({ where: { status: 'stuck' } })) await tolerating(() => retryProviderCall(cast.mo, call.id, new Date()));
   }
+  await house.work(8);
+  // What was made just now may come back yet: otherwise it would while the books are compared.
+  letTimePass();
   await house.work(8);
 }
 
