@@ -3,6 +3,7 @@ import { correctionWords } from '~/domain/trade/clock.ts';
 import { tallyRuleOf } from '~/domain/trade/tally-count.ts';
 import { thicknessName } from '~/domain/timber/tally.ts';
 import type { TallyView } from '~/schemas/tally-view.ts';
+import { dayAndTime } from '~/islands/clock.ts';
 
 /** One entry of a tally as a line that can be read, queried and decided. `ref` is how forms name it. */
 export interface TallyLine {
@@ -18,7 +19,7 @@ const activityWords = { preparing: 'Arriving and setting up', sawing: 'Sawing', 
 export function tallyLines(view: TallyView, zone: string): TallyLine[] {
   const logName = (id: string | null): string => view.logs.find((log) => log.id === id)?.label ?? '';
   const rule = tallyRuleOf(view.terms) === 'hardwood' ? 'hardwood' : 'softwood';
-  const clockTime = (iso: string): string => new Date(iso).toLocaleString('en-US', { month: 'short', day: 'numeric', hour: 'numeric', minute: '2-digit', timeZone: zone });
+  const clockTime = (iso: string): string => dayAndTime(iso, zone);
   return [
     ...view.boards.map((board) => ({
       ref: `board:${board.id}`, log: logName(board.logId), count: board.count,

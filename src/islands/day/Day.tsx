@@ -6,6 +6,7 @@ import { signInAgain, type Sending } from './send.ts';
 import type { Day as KeptDay } from './use-day.ts';
 import { useDay } from './use-day.ts';
 import type { KeptBooking } from './store.ts';
+import { dayAndTime } from '../clock.ts';
 
 const bookingInAddress = (): number | null => (/^#\d{1,9}$/.test(location.hash) ? Number(location.hash.slice(1)) : null);
 const pageWanted = (): string | null => new URLSearchParams(location.search).get('wanted');
@@ -58,15 +59,13 @@ function Row({ booking }: { readonly booking: KeptBooking }): ReactElement {
   );
 }
 
-const clock = (iso: string): string => new Date(iso).toLocaleString('en-US', { weekday: 'short', month: 'short', day: 'numeric', hour: 'numeric', minute: '2-digit' });
-
 /** Whose days these are, when they were kept, and what has not been sent. */
 function KeptLine({ day, heard }: { readonly day: KeptDay; readonly heard: Sending | null }): ReactElement | null {
   const { holder, unsent } = day;
   if (!holder) return null;
   return (
     <div className="mt-1 text-ink-soft" role="status" data-testid="kept">
-      <p>{holder.name}. Saved on this phone {clock(holder.heardAt)}{heard === 'no-signal' ? '; no signal now' : ''}.</p>
+      <p>{holder.name}. Saved on this phone {dayAndTime(holder.heardAt)}{heard === 'no-signal' ? '; no signal now' : ''}.</p>
       {Math.abs(holder.clockOffMs) > 5 * 60_000 && <p>This phone’s clock is {Math.round(Math.abs(holder.clockOffMs) / 60_000)} minutes {holder.clockOffMs > 0 ? 'slow' : 'fast'}. Hours entered here follow it: check them before you offer the tally.</p>}
       {unsent > 0 && <p className="font-semibold text-ink">{unsent} {unsent === 1 ? 'entry is' : 'entries are'} saved here and not sent yet.</p>}
       {(holder.signedOut || heard === 'signed-out') && <p className="font-semibold text-ink">You are signed out. <a href={signInAgain}>Sign in again</a> to send and to see what is new.</p>}

@@ -11,6 +11,7 @@ import type { TallyQueue } from '~/islands/tally-book/use-tally-queue.ts';
 import type { TallyView } from '~/schemas/tally-view.ts';
 import { hashOf } from './content-hash.ts';
 import { LandownersWord } from './LandownersWord.tsx';
+import { timeOfDay } from '../clock.ts';
 
 /** All sawn: the tally is offered, and signed here and now if the landowner is here. Works without signal. */
 export function OfferAndSign({ queue, otherName }: { readonly queue: TallyQueue; readonly otherName: string }): ReactElement | null {
@@ -40,8 +41,6 @@ export function OfferAndSign({ queue, otherName }: { readonly queue: TallyQueue;
   );
 }
 
-const clockTime = (iso: string): string => new Date(iso).toLocaleTimeString('en-US', { hour: 'numeric', minute: '2-digit' });
-
 const moneyOf = (view: TallyView): ReturnType<typeof settle> =>
   settle(view.terms, countTally(view.terms, jobOf(view), view.logs), { heldCents: view.heldCents, feeBasisPoints: view.feeBasisPoints }, { endedBySawyer: view.endedBySawyer });
 
@@ -62,7 +61,7 @@ function TallyToSign({ view }: { readonly view: TallyView }): ReactElement {
       ))}
       {view.clock.some(({ corrections }) => corrections?.length) && (
         <ul className="mt-3">
-          {view.clock.filter(({ corrections }) => corrections?.length).map((entry) => <li key={entry.id} className="border-b border-rule py-1">Hours {clockTime(entry.startsAt)} to {clockTime(entry.endsAt)}{correctionWords(entry, clockTime)}</li>)}
+          {view.clock.filter(({ corrections }) => corrections?.length).map((entry) => <li key={entry.id} className="border-b border-rule py-1">Hours {timeOfDay(entry.startsAt)} to {timeOfDay(entry.endsAt)}{correctionWords(entry, (iso) => timeOfDay(iso))}</li>)}
         </ul>
       )}
       <table className="ruled mt-4 w-full">

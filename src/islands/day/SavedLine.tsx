@@ -2,12 +2,11 @@ import type { ReactElement } from 'react';
 import { join } from '~/components/classes.ts';
 import type { TallyQueue } from '~/islands/tally-book/use-tally-queue.ts';
 import { signInAgain } from './send.ts';
-
-const clock = (iso: string): string => new Date(iso).toLocaleTimeString('en-US', { hour: 'numeric', minute: '2-digit' });
+import { timeOfDay } from '../clock.ts';
 
 /** In one line: what is saved on this phone, and what the server has. */
 export function savedWords({ waiting, sentAt, sending }: Pick<TallyQueue, 'waiting' | 'sentAt' | 'sending'>): string {
-  if (waiting === 0) return sentAt ? `All sent at ${clock(sentAt)}` : 'Nothing waits to be sent';
+  if (waiting === 0) return sentAt ? `All sent at ${timeOfDay(sentAt)}` : 'Nothing waits to be sent';
   const saved = `${waiting} saved here`;
   if (sending === 'no-signal') return `No signal · ${saved}`;
   if (sending === 'signed-out') return `Signed out · ${saved}`;

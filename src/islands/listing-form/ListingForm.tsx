@@ -2,6 +2,7 @@ import { useCallback, useEffect, useLayoutEffect, useRef, useState, type Keyboar
 import { blankLog, blankPiece, listingFromFields, typedOver, type Answer, type ListingTyped } from '~/domain/listing/draft.ts';
 import { paths } from '~/domain/paths.ts';
 import type { Problem } from '~/domain/result.ts';
+import { dayAndTime } from '../clock.ts';
 import { Button } from '../form/choices.tsx';
 import { DatesPart } from './DatesPart.tsx';
 import { newId } from './ids.ts';
@@ -83,7 +84,7 @@ export default function ListingForm(props: ListingFormProps): ReactElement {
       {older && (
         <div className="mb-6 border-l-4 border-amber bg-sheet px-4 py-3" role="status">
           <p className="font-bold text-amber">This browser kept other text for this listing</p>
-          <p>It was typed {new Date(older.at).toLocaleString('en-US', { dateStyle: 'medium', timeStyle: 'short' })} and never saved; the listing was saved elsewhere since.</p>
+          <p>It was typed {dayAndTime(older.at)} and never saved; the listing was saved elsewhere since.</p>
           <p className="flex flex-wrap gap-x-5">
             <Button kind="quiet" onClick={() => { restore(older.typed); setOlder(null); }}>Use the kept text</Button>
             <Button kind="quiet" onClick={() => { forgetLocal(props.number); setOlder(null); }}>Forget it</Button>

@@ -2,17 +2,16 @@ import type { ReactElement } from 'react';
 import { paths } from '~/domain/paths.ts';
 import { Button } from '../form/choices.tsx';
 import type { Draft, Kept } from './use-draft.ts';
-
-const clock = (at: Date): string => at.toLocaleTimeString('en-US', { hour: 'numeric', minute: '2-digit' }).toLowerCase();
+import { timeOfDay } from '../clock.ts';
 
 const plain = (kept: Kept): string => {
   switch (kept.kind) {
     case 'saving':
       return 'Saving';
     case 'saved':
-      return `Saved ${clock(kept.at)}`;
+      return `Saved ${timeOfDay(kept.at)}`;
     case 'in browser':
-      return `Kept in this browser ${clock(kept.at)}`;
+      return `Kept in this browser ${timeOfDay(kept.at)}`;
     default:
       return '';
   }

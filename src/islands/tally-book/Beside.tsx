@@ -5,6 +5,7 @@ import { Field, Select } from '~/islands/form/fields.tsx';
 import type { TallyEntry } from '~/schemas/tally-entries.ts';
 import type { TallyView } from '~/schemas/tally-view.ts';
 import { TakeOne, type Photographs } from './Photographs.tsx';
+import { timeOfDay } from '../clock.ts';
 
 interface BesideProps {
   readonly view: TallyView;
@@ -13,7 +14,7 @@ interface BesideProps {
 }
 
 const newId = (): string => crypto.randomUUID();
-const time = (iso: string): string => new Date(iso).toLocaleTimeString('en-US', { hour: 'numeric', minute: '2-digit' });
+const time = (iso: string): string => timeOfDay(iso);
 /** The line that opens one of the book's further parts. */
 export const summaryClass = 'flex min-h-glove cursor-pointer items-center border-t border-rule text-lg font-bold text-crayon';
 
