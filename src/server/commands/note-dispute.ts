@@ -8,12 +8,23 @@ import { heldFor, post } from '../ledger.ts';
 import { oweBack } from '../lost-charges.ts';
 import { CardDispute, Charge, HeldPayment, ProviderCall, type Booking } from '../models/index.ts';
 import { bookingLink, partiesOf } from '../parties.ts';
-import type { DisputeSeen } from '../services/card-payments.ts';
+import { checkoutOfCharge, type DisputeSeen } from '../services/card-payments.ts';
 import { record, transition } from '../transition.ts';
 import { system } from '../viewer.ts';
+import { receiveCheckout } from './receive-checkout.ts';
 import { settleBooking } from './settle-booking.ts';
 
 const provider = system('payment provider');
+
+/** A charge of ours. The message of its payment may be late or lost: then the provider is asked for it, and it is taken in first. */
+async function chargeOf(chargeId: string, at: Date): Promise<Charge | null> {
+  const known = await Charge.findOne({ where: { providerChargeId: chargeId } });
+  if (known) return known;
+  const paid = await checkoutOfCharge(chargeId);
+  if (!paid) return null;
+  await receiveCheckout(paid, at);
+  return Charge.findOne({ where: { providerChargeId: chargeId } });
+}
 
 /**
  * Takes in a card dispute as it stands at the provider now; told in any order, each step is entered once.
@@ -22,7 +33,7 @@ const provider = system('payment provider');
  * where it can be had. A booking that has no hold left before sawing ends.
  */
 export async function noteDispute(seen: DisputeSeen, at: Date): Promise<'not ours' | 'noted' | 'nothing new'> {
-  const charge = await Charge.findOne({ where: { providerChargeId: seen.chargeId } });
+  const charge = await chargeOf(seen.chargeId, at);
   const owner = charge && (await HeldPayment.findByPk(charge.paymentId));
   if (!charge || !owner) return 'not ours';
   return inTransaction(async () => {

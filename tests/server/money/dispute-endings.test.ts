@@ -1,10 +1,12 @@
 import { afterAll, afterEach, beforeAll, beforeEach, describe, expect, it } from 'vitest';
 import { acceptHeld } from '~/server/commands/accept-held.ts';
 import { cancelBooking } from '~/server/commands/cancel-booking.ts';
+import { noteDispute } from '~/server/commands/note-dispute.ts';
 import { reconcile } from '~/server/commands/reconcile.ts';
 import { startCheckout } from '~/server/commands/start-checkout.ts';
 import { balances, heldFor } from '~/server/ledger.ts';
 import { BookedDay, Booking, Charge, HeldPayment, Listing, ProviderCall } from '~/server/models/index.ts';
+import { readDispute } from '~/server/services/card-payments.ts';
 import { makeCast, type Cast } from '../../support/cast.ts';
 import { checkBooks, makeAgreedBooking, makePayoutAccount, openMoneyHouse, sawAndSign, type MoneyHouse } from '../../support/money-market.ts';
 
@@ -36,6 +38,8 @@ const held = async (options: Parameters<typeof makeAgreedBooking>[2] = {}): Prom
   await pay(booking);
   return booking;
 };
+/** Everything that the provider would tell, told of this kind alone. */
+const readAgain = async (disputeId: string): Promise<string> => noteDispute(await readDispute(disputeId), new Date());
 const statusOf = async (booking: Booking): Promise<[string, string]> => {
   const now = await Booking.findByPk(booking.id, { rejectOnEmpty: true });
   return [now.status, (await HeldPayment.findOne({ where: { bookingId: booking.id }, rejectOnEmpty: true })).status];
@@ -55,6 +59,25 @@ const close = async (dispute: string, outcome: 'won' | 'lost'): Promise<void> =>
 };
 const groupOf = (booking: Booking) => house.fake.control.books().groups[`booking-${booking.number}`];
 const callsOf = async (booking: Booking): Promise<string[]> => (await ProviderCall.findAll({ where: { bookingId: booking.id }, order: [['createdAt', 'ASC']] })).map(({ kind, status }) => `${kind} ${status}`);
+
+describe('a dispute whose payment nobody has told of yet', () => {
+  it('takes the payment in first, and then the dispute', async () => {
+    const booking = await makeAgreedBooking(cast.ada, cast.bram);
+    house.fake.control.webhooks({ dropNext: 50 });
+    const url = await startCheckout(cast.ada, { booking: booking.number }, new Date());
+    house.fake.control.pay(new URL(url).pathname.split('/').at(-1) ?? '');
+    const charge = house.fake.control.objects('charge').find(({ transfer_group }) => transfer_group === `booking-${booking.number}`);
+    if (!charge) throw new Error('Nothing was charged.');
+    const { id } = house.fake.control.openDispute(charge.id);
+    expect(await readAgain(id)).toBe('noted');
+    expect(await statusOf(booking)).toEqual(['held', 'held']);
+    house.fake.control.closeDispute(id, 'won');
+    expect(await readAgain(id)).toBe('noted');
+    house.fake.control.webhooks({ dropNext: 0 });
+    expect(await heldFor(booking.id)).toBe(60_000);
+    expect(await checkBooks(house)).toEqual([]);
+  });
+});
 
 describe('won', () => {
   it('goes on to pay the tally that was signed in the meantime', async () => {
