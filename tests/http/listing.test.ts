@@ -119,7 +119,7 @@ describe('a listing’s page', () => {
       expect(page).toMatch(/near Viroqua, WI/);
       expect(page).toContain('Bench');
       expect(page).toContain('at least 10 feet from lines up to 50 kV');
-      expect(page).toContain('grade stamp or certification');
+      expect(page).toContain('grade stamp or a certificate');
       for (const secret of ['43.612', '90.876', 'red barn', 'Lena', 'lena@']) expect(page).not.toContain(secret);
     }
     expect(await (await stranger.get(`/listings/${number}`)).text()).toContain('Bid on these logs');

@@ -57,7 +57,6 @@ describe('a hidden listing', () => {
 
 describe('reports', () => {
   const report = (by: Cast['ada'] | null, thing: 'listing' | 'message' | 'account', thingId: string) => reportThing(by, { thing, thingId, reason: 'scam', note: 'See for yourself.', clientAddress: '192.0.2.7' }, at);
-  const lastReport = () => Report.findOne({ order: [['createdAt', 'DESC'], ['id', 'DESC']], where: { thingId: listing.id }, rejectOnEmpty: true });
 
   it('come from anyone for a listing, once while the first waits, and are handled once of eight at once', async () => {
     await report(null, 'listing', listing.id);
@@ -73,7 +72,7 @@ describe('reports', () => {
     expect(await Report.findByPk(waiting.id)).toMatchObject({ outcome: 'Hidden.', handledBy: cast.mo.id });
     expect(await subjects(cast.bram.email)).toContain('We have looked at your report');
     await report(cast.bram, 'listing', listing.id);
-    expect((await lastReport()).handledAt).toBeNull();
+    expect(await Report.count({ where: { thingId: listing.id, reporterId: cast.bram.id, handledAt: null } })).toBe(1);
   });
 
   it('are only about what the reporter can see, and never about oneself', async () => {
