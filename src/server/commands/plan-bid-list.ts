@@ -7,6 +7,9 @@ import { listedShapes, listedPieces } from '../listed-pieces.ts';
 import { Listing } from '../models/listing.ts';
 import { Bid } from '../models/sawyer.ts';
 
+/** Nobody compares these any more. */
+const OVER: ReadonlySet<Bid['status']> = new Set(['declined', 'withdrawn', 'lapsed', 'released']);
+
 /**
  * Works out what a bid's mill makes of the listing's cut list, and keeps it with the bid. A bid that was changed meanwhile, or whose
  * listing was, is left alone: its own job follows. May run as often as one likes.
@@ -14,7 +17,7 @@ import { Bid } from '../models/sawyer.ts';
 export async function planBidList(bidId: string): Promise<void> {
   const bid = await Bid.findByPk(bidId);
   const listing = bid && (await Listing.findByPk(bid.listingId));
-  if (!bid || !listing || listing.revision !== bid.listingRevision) return;
+  if (!bid || !listing || listing.revision !== bid.listingRevision || OVER.has(bid.status)) return;
   const pieces = sawnPieces(await listedPieces(listing.id));
   if (pieces.length === 0) return;
   const { list } = await boardPlans(await listedShapes(listing.id), pieces, bid.mill as BidMill);
