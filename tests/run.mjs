@@ -62,7 +62,8 @@ async function runner(name, program, args, report, read, extra) {
   failed += code !== 0 && counts.failed === 0 ? 1 : counts.failed;
 }
 
-const vitestCounts = (report) => ({ passed: report.numPassedTests, failed: report.numFailedTests + report.numFailedTestSuites - new Set(report.testResults.filter((file) => file.assertionResults.some((one) => one.status === 'failed')).map((file) => file.name)).size });
+/** A file that could not be run at all has no check that failed, and counts as one. */
+const vitestCounts = (report) => ({ passed: report.numPassedTests, failed: report.numFailedTests + report.testResults.filter((file) => file.status === 'failed' && !file.assertionResults.some((one) => one.status === 'failed')).length });
 const playwrightCounts = (report) => ({ passed: report.stats.expected, failed: report.stats.unexpected + report.stats.flaky });
 
 try {
