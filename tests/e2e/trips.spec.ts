@@ -3,7 +3,6 @@ import { dayAhead, publishListing, setUpSawing } from '../support/bidding-forms.
 import { Browser, PASSWORD, readMail } from '../support/browser.ts';
 import { another, expect, expectAccessible, mailbox, origin, test } from './support/check.ts';
 import { signIn } from './support/people.ts';
-import { forgetSignUps } from './support/sign-up-limit.ts';
 
 /** A day that is not a Sunday, far enough ahead for everybody to answer. */
 const tripDay = [8, 9].map(dayAhead).find((day) => new Date(`${day}T12:00:00Z`).getUTCDay() !== 0) ?? dayAhead(8);
@@ -12,7 +11,6 @@ const narrow = async (page: Page): Promise<void> => expect(await page.evaluate((
 
 test('from a saved search to a trip that two landowners share', async ({ page, browser }) => {
   test.setTimeout(240_000);
-  await forgetSignUps();
   const mark = Date.now().toString(36);
   const email = (name: string): string => `${name}.${mark}@trips.example`;
   const [sawyer, pia, quin] = [new Browser(origin()), new Browser(origin()), new Browser(origin())];

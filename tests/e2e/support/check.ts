@@ -1,5 +1,6 @@
 import AxeBuilder from '@axe-core/playwright';
 import { test as base, expect, type Browser, type Page } from '@playwright/test';
+import { forgetTries } from './limits.ts';
 
 /** Where the product answers. */
 export const origin = (): string => process.env['E2E_ORIGIN'] ?? '';
@@ -25,6 +26,7 @@ export const test = base.extend<{ faults: string[] }>({
   baseURL: async ({}, use) => use(origin()),
   faults: [
     async ({ page }, use) => {
+      await forgetTries();
       const faults = watch(page);
       await use(faults);
       expect(faults).toEqual([]);

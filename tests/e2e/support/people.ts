@@ -1,7 +1,6 @@
 import type { Page } from '@playwright/test';
 import { PASSWORD, readMail } from '../../support/browser.ts';
 import { expect, mailbox } from './check.ts';
-import { forgetSignUps } from './sign-up-limit.ts';
 
 /** A person of a journey. The address is new for each run of a check, so that none depends on another. */
 export interface Person {
@@ -32,7 +31,6 @@ export async function confirmAddress(page: Page, email: string): Promise<Page> {
 
 /** Opens an account from nothing and confirms its address. The page is signed in afterwards. */
 export async function openAccount(page: Page, person: Person): Promise<void> {
-  await forgetSignUps();
   await page.goto('/sign-up');
   await fillSignUp(page, person);
   await expect(page).not.toHaveURL(/sign-up/);
