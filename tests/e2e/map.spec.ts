@@ -25,7 +25,7 @@ test('the map is in step with the list, by mouse and by keyboard', async ({ page
   await page.goto('/logs?zip=54665&radiusMi=40');
   // A pile that lies by itself: the journeys publish theirs in one place.
   const row = page.locator('[data-listing]').filter({ hasText: 'Red pine, 5 logs' });
-  const mark = page.getByRole('button', { name: /^Red pine, 5 logs, \d+ miles away/ });
+  const mark = page.getByRole('button', { name: /^Red pine, 5 logs, [\d.]+ miles away/ });
   await expect(mark).toBeVisible();
   await expect(mark).not.toHaveAttribute('data-lit');
   await row.hover();
