@@ -15,6 +15,17 @@ interface BesideProps {
 
 const newId = (): string => crypto.randomUUID();
 const time = (iso: string): string => timeOfDay(iso);
+
+/** Hours as they were typed, as instants; or, in words, why they cannot be. @param others the hours beside which they have to fit */
+function readHours(day: string, from: string, to: string, others: readonly { readonly startsAt: string; readonly endsAt: string }[]): { readonly startsAt: string; readonly endsAt: string } | string {
+  const startsAt = new Date(`${day}T${from}`);
+  const endsAt = new Date(`${day}T${to}`);
+  if (Number.isNaN(startsAt.getTime()) || Number.isNaN(endsAt.getTime())) return 'Choose the day and both times.';
+  if (endsAt <= startsAt) return 'The end must be after the start.';
+  if (others.some((other) => new Date(other.startsAt) < endsAt && startsAt < new Date(other.endsAt))) return 'This time overlaps another entry.';
+  return { startsAt: startsAt.toISOString(), endsAt: endsAt.toISOString() };
+}
+
 /** The line that opens one of the book's further parts. */
 export const summaryClass = 'flex min-h-glove cursor-pointer items-center border-t border-rule text-lg font-bold text-crayon';
 
@@ -99,13 +110,10 @@ function PutRight({ entry, others, onCorrect }: { readonly entry: TallyView['clo
   const [reason, setReason] = useState('');
   const [problem, setProblem] = useState<string | undefined>();
   const take = (): void => {
-    const startsAt = new Date(`${day}T${from}`);
-    const endsAt = new Date(`${day}T${to}`);
-    if (Number.isNaN(startsAt.getTime()) || Number.isNaN(endsAt.getTime())) return setProblem('Choose the day and both times.');
-    if (endsAt <= startsAt) return setProblem('The end must be after the start.');
-    if (others.some((other) => new Date(other.startsAt) < endsAt && startsAt < new Date(other.endsAt))) return setProblem('This time overlaps another entry.');
+    const hours = readHours(day, from, to, others);
+    if (typeof hours === 'string') return setProblem(hours);
     if (reason.trim() === '') return setProblem('Say why, in a few words.');
-    onCorrect(startsAt.toISOString(), endsAt.toISOString(), reason.trim());
+    onCorrect(hours.startsAt, hours.endsAt, reason.trim());
     setReason('');
     setProblem(undefined);
     setOpen(false);
@@ -130,12 +138,9 @@ export function Hours({ view, add }: BesideProps): ReactElement {
   const [day, setDay] = useState(() => new Date().toLocaleDateString('en-CA'));
   const [problem, setProblem] = useState<string | undefined>();
   const take = (): void => {
-    const startsAt = new Date(`${day}T${from}`);
-    const endsAt = new Date(`${day}T${to}`);
-    if (Number.isNaN(startsAt.getTime()) || Number.isNaN(endsAt.getTime())) return setProblem('Choose the day and both times.');
-    if (endsAt <= startsAt) return setProblem('The end must be after the start.');
-    if (view.clock.some((entry) => new Date(entry.startsAt) < endsAt && startsAt < new Date(entry.endsAt))) return setProblem('This time overlaps another entry.');
-    add({ kind: 'clock', id: newId(), activity, startsAt: startsAt.toISOString(), endsAt: endsAt.toISOString() });
+    const hours = readHours(day, from, to, view.clock);
+    if (typeof hours === 'string') return setProblem(hours);
+    add({ kind: 'clock', id: newId(), activity, ...hours });
     setFrom('');
     setTo('');
     setProblem(undefined);
