@@ -21,10 +21,11 @@ export const sweeps: Readonly<Record<string, Sweep>> = {
   ...photoSweeps,
   'tell of logs found': tellSearches,
   'look at offered trips': reviewTrips,
-  'read other calendars': readOtherCalendars,
   'sign or recall tallies': sweepTallies,
   'tell of tomorrow': tellEveningBefore,
   'remind of boards': remindOfBoards,
+  // Last: it waits for others' servers, and no deadline may wait with it.
+  'read other calendars': readOtherCalendars,
 };
 
 /** Runs every sweep for the given time. One that fails is logged and does not keep the others from running. */
