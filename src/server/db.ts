@@ -1,6 +1,6 @@
 import { AsyncLocalStorage } from 'node:async_hooks';
 import pg from 'pg';
-import { QueryTypes, Sequelize, type Transaction } from 'sequelize';
+import { QueryTypes, Sequelize, Transaction } from 'sequelize';
 import { env } from './env.ts';
 
 // Every query inside `inTransaction` joins its transaction without being told: one that forgot it would survive the rollback.
@@ -42,6 +42,15 @@ export const currentTransaction = (): Transaction | undefined => namespace.get('
 export async function inTransaction<T>(work: () => Promise<T>): Promise<T> {
   if (currentTransaction()) return work();
   return sequelize.transaction(() => work());
+}
+
+/**
+ * Reads as of one instant, in several statements: what others commit meanwhile is seen wholly or not at all. For pages whose parts must
+ * not contradict each other. Like `inTransaction` no `Promise.all` inside; nothing is written in it.
+ */
+export async function inSnapshot<T>(work: () => Promise<T>): Promise<T> {
+  if (currentTransaction()) return work();
+  return sequelize.transaction({ isolationLevel: Transaction.ISOLATION_LEVELS.REPEATABLE_READ }, () => work());
 }
 
 /** Runs after the current transaction has committed; at once when there is none. For calls that must not happen on a rollback. */

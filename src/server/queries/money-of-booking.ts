@@ -4,7 +4,7 @@ import type { PaymentState } from '~/domain/states/payment.ts';
 import type { Settlement, Split } from '~/domain/trade/settlement.ts';
 import { rolesOnBooking } from '../authorize.ts';
 import { signedSettlement, splitNow } from '../booking-money.ts';
-import { oneRow, rows } from '../db.ts';
+import { inSnapshot, oneRow, rows } from '../db.ts';
 import { notFound } from '../errors.ts';
 import { heldFor, balances } from '../ledger.ts';
 import { Booking, Checkout, HeldPayment, Listing, WorkAgreement } from '../models/index.ts';
@@ -80,10 +80,13 @@ function waitingFor(status: BookingState, disputed: boolean, steps: readonly Mon
 }
 
 /**
- * The money of one booking, as its sides and moderators may see it.
+ * The money of one booking, as its sides and moderators may see it, as of one instant: a payment that arrives meanwhile is not shown
+ * half, as received and due.
  * @throws Refusal `notFound` for anyone else
  */
-export async function moneyOfBooking(viewer: Viewer, number: number): Promise<MoneyOfBooking> {
+export const moneyOfBooking = (viewer: Viewer, number: number): Promise<MoneyOfBooking> => inSnapshot(() => moneyNow(viewer, number));
+
+async function moneyNow(viewer: Viewer, number: number): Promise<MoneyOfBooking> {
   const booking = Number.isSafeInteger(number) ? await Booking.findOne({ where: { number } }) : null;
   const can = booking && abilities('booking', rolesOnBooking(viewer, booking), booking.status);
   if (!booking || !can?.see) throw notFound('booking');

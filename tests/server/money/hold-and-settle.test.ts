@@ -1,10 +1,13 @@
+import pg from 'pg';
 import { afterAll, afterEach, beforeAll, beforeEach, describe, expect, it } from 'vitest';
 import { acceptHeld } from '~/server/commands/accept-held.ts';
 import { connectPayoutAccount } from '~/server/commands/payout-account.ts';
 import { startCheckout } from '~/server/commands/start-checkout.ts';
 import { rows } from '~/server/db.ts';
+import { env } from '~/server/env.ts';
 import { balances, heldFor } from '~/server/ledger.ts';
 import { Booking, Checkout, Event, HeldPayment, ProviderCall, ProviderEvent, SawyerProfile } from '~/server/models/index.ts';
+import { moneyOfBooking } from '~/server/queries/money-of-booking.ts';
 import { makeCast, type Cast } from '../../support/cast.ts';
 import { checkBooks, makeAgreedBooking, makePayoutAccount, openMoneyHouse, sawAndSign, type MoneyHouse } from '../../support/money-market.ts';
 
@@ -47,6 +50,29 @@ const held = async (holdCents = 60_000): Promise<Booking> => {
 };
 
 describe('paying the hold', () => {
+  it('is never shown half: what arrives while a page reads is on it wholly or not at all', async () => {
+    const booking = await makeAgreedBooking(cast.ada, cast.bram);
+    await startCheckout(cast.ada, { booking: booking.number }, new Date());
+    const { id } = await HeldPayment.findOne({ where: { bookingId: booking.id }, rejectOnEmpty: true });
+    const arriving = new pg.Client({ connectionString: env().DATABASE_URL });
+    await arriving.connect();
+    const set = async (payment: string, checkout: string): Promise<void> => {
+      await arriving.query('UPDATE held_payment SET status = $2 WHERE id = $1', [id, payment]);
+      await arriving.query('UPDATE checkout SET status = $2 WHERE payment_id = $1', [id, checkout]);
+    };
+    // The reader has read the payment and waits for the listing when the payment and its checkout change.
+    await arriving.query('BEGIN');
+    await arriving.query('LOCK TABLE listing IN ACCESS EXCLUSIVE MODE');
+    const reading = moneyOfBooking(cast.ada, booking.number);
+    const waits = async (): Promise<number> => (await arriving.query(`SELECT 1 FROM pg_locks WHERE NOT granted AND relation = 'listing'::regclass`)).rowCount ?? 0;
+    await expect.poll(waits, { timeout: 10_000 }).toBeGreaterThan(0);
+    await set('held', 'complete');
+    await arriving.query('COMMIT');
+    const { payment, newestCheckout } = await reading;
+    expect([payment, newestCheckout?.status]).toEqual(['due', 'open']);
+    await set('due', 'open');
+    await arriving.end();
+  });
   it('holds the money when the message arrives, not before', async () => {
     const booking = await makeAgreedBooking(cast.ada, cast.bram);
     house.fake.control.webhooks({ paused: true });
