@@ -101,7 +101,13 @@ export const permissions = {
     endSecondFactor: { who: ['moderator'], states: ['active', 'suspended'] },
   }),
   message: rules<never>()({
-    hide: { who: ['moderator'] },
+    takeOut: { who: ['moderator'] },
+  }),
+  review: rules<never>()({
+    takeOut: { who: ['moderator'] },
+  }),
+  photo: rules<never>()({
+    takeOut: { who: ['moderator'] },
   }),
   report: rules<never>()({
     handle: { who: ['moderator'] },

@@ -21,6 +21,14 @@ export const reportHandled = (to: To, reportedAt: Date): MailMessage =>
     'What came of it concerns someone else, so we do not write it here. If it happens again, report it again.',
   ]);
 
+/** To whoever wrote or took what a moderator took out. */
+export const takenOut = (to: To, what: string, reason: string): MailMessage =>
+  letter(to.email, `A ${what} of yours was taken out`, to.name, [
+    `A moderator took out a ${what} of yours. Nobody sees it any more. The reason:`,
+    reason,
+    'If you think that this is wrong, answer this letter.',
+  ]);
+
 /** To a sawyer whose certificate of insurance a moderator has seen. */
 export const certificateSeen = (to: To, expiresOn: Day, link: string): MailMessage =>
   letter(to.email, 'Your certificate of insurance was seen', to.name, [

@@ -19,14 +19,16 @@ const deeds: Readonly<Record<string, string>> = {
   seePlace: 'saw the exact place', hide: 'hid', show: 'showed again', suspend: 'suspended', restore: 'restored', handle: 'closed a report', report: 'reported', sign: 'signed the tally',
   query: 'queried the tally', offerTally: 'offered the tally', endSecondFactor: 'ended the second step', seeCertificate: 'opened the certificate', noteCertificate: 'noted a certificate as seen', refuseCertificate: 'refused a certificate',
   handInCertificate: 'handed in a certificate', leaveToModerator: 'left to a moderator', acceptTerms: 'accepted the terms', signIn: 'signed in', signUp: 'signed up', signOut: 'signed out', openBooking: 'opened the booking', placeBid: 'bid',
-  closeToBids: 'closed to bids', block: 'blocked', unblock: 'unblocked', export: 'took their data along', retryProviderCall: 'tried a payment task again', review: 'reviewed',
+  closeToBids: 'closed to bids', block: 'blocked', unblock: 'unblocked', export: 'took their data along', takeOut: 'took out', retryProviderCall: 'tried a payment task again', review: 'reviewed',
 };
 
 /** A deed as the log says it: `suspended`, or the deed's own name in words. */
 export const deedWords = (action: string): string => deeds[action] ?? spaced(action);
 
-const thingNames: Readonly<Record<string, string>> = { heldPayment: 'held payment' };
+const thingNames: Readonly<Record<string, string>> = { heldPayment: 'held payment', photo: 'photograph' };
 export const thingWords = (thing: string): string => thingNames[thing] ?? spaced(thing);
+/** `A review`, `An account`: at the head of a sentence. */
+export const aThing = (thing: string): string => `${/^[aeiou]/.test(thing) ? 'An' : 'A'} ${thingWords(thing)}`;
 
 /** What the line is about: its words, and where the desk shows it. */
 export function aboutOf(line: Line): { readonly words: string; readonly href: string | null } {

@@ -3,7 +3,7 @@ import { inTransaction, refusedBy } from '../db.ts';
 import { conflict, forbidden, notFound, signedOut } from '../errors.ts';
 import { countTry } from '../http/limits.ts';
 import { Report } from '../models/account.ts';
-import { reportable, type ReportableThing } from '../queries/report-page.ts';
+import { reportable, visitorsReport, type ReportableThing } from '../queries/report-page.ts';
 import { record } from '../transition.ts';
 import { system, type Viewer } from '../viewer.ts';
 
@@ -17,11 +17,12 @@ export interface Reporting {
 }
 
 /**
- * Reports a listing (anyone), an account or a message (signed in; a message only by its reader). A suspended account may not.
+ * Reports a listing or a photograph of one (anyone), an account, a review or a message (signed in; a message only by its reader), as
+ * far as the reporter sees it. A suspended account may not.
  * @throws Refusal `notFound` for what the reporter cannot see, `conflict` while an earlier report of theirs waits, `tooMany`
  */
 export async function reportThing(by: Viewer | null, input: Reporting, at: Date): Promise<void> {
-  if (!by && input.thing !== 'listing') throw signedOut();
+  if (!by && !visitorsReport.includes(input.thing)) throw signedOut();
   if (by && !by.active) throw forbidden('This account is suspended.');
   const seen = await reportable(by, input.thing, input.thingId);
   if (!seen) throw notFound(input.thing);

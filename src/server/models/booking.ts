@@ -87,5 +87,6 @@ export const Review = table('review', {
   body: filled(text()),
   createdAt: instant(),
   hiddenAt: nullable(instant()),
+  hiddenReason: nullable(text()),
 });
 export type Review = Row<typeof Review>;

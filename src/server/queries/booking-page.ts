@@ -44,7 +44,7 @@ export interface BookingPage {
   /** Only for those who may see it now. */
   readonly place: { readonly lat: number; readonly lng: number } | null;
   readonly conversationId: string | null;
-  readonly reviews: readonly { readonly byName: string; readonly mine: boolean; readonly stars: number; readonly body: string }[];
+  readonly reviews: readonly { readonly id: string; readonly byName: string; readonly mine: boolean; readonly stars: number; readonly body: string }[];
   /** Photographs of the milling day, for the two sides and moderators. */
   readonly photos: readonly DayPhoto[];
   readonly history: readonly Happened[];
@@ -67,7 +67,7 @@ const historyOf = (bookingId: string): Promise<Happened[]> =>
 async function reviewsOf(bookingId: string, viewerId: string): Promise<BookingPage['reviews']> {
   const found = await Review.findAll({ where: { bookingId, hiddenAt: null }, order: [['createdAt', 'ASC']] });
   const names = await rows<{ id: string; name: string }>('SELECT id, name FROM account WHERE id = ANY($1::uuid[])', [found.map((review) => review.authorId)]);
-  return found.map((review) => ({ byName: names.find(({ id }) => id === review.authorId)?.name ?? '', mine: review.authorId === viewerId, stars: review.stars, body: review.body }));
+  return found.map((review) => ({ id: review.id, byName: names.find(({ id }) => id === review.authorId)?.name ?? '', mine: review.authorId === viewerId, stars: review.stars, body: review.body }));
 }
 
 async function noShowOf(booking: Booking, side: BookingPage['side'], may: boolean, at: Date): Promise<BookingPage['noShow']> {

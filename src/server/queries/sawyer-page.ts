@@ -6,6 +6,7 @@ import { publicSawyerColumns, publicSawyerConditions, type PublicSawyer } from '
 import { sqlBuilder } from './sql-builder.ts';
 
 export interface PublicReview {
+  readonly id: string;
   readonly stars: number;
   readonly body: string;
   readonly on: string;
@@ -43,7 +44,7 @@ export async function sawyerPage(id: string, from: Point | null, at: Date): Prom
   if (!found) throw notFound('sawyer');
   const { timeZone, ...sawyer } = found;
   const reviews = await rows<PublicReview>(
-    `SELECT v.stars, v.body, (v.created_at AT TIME ZONE 'UTC')::date::text AS on, split_part(a.name, ' ', 1) AS by
+    `SELECT v.id, v.stars, v.body, (v.created_at AT TIME ZONE 'UTC')::date::text AS on, split_part(a.name, ' ', 1) AS by
      FROM review v JOIN account a ON a.id = v.author_id WHERE v.subject_id = $1 AND v.hidden_at IS NULL ORDER BY v.created_at DESC LIMIT ${mostReviews}`,
     [id],
   );

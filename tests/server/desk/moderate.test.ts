@@ -3,16 +3,21 @@ import { chooseBid } from '~/server/commands/choose-bid.ts';
 import { endSecondFactor } from '~/server/commands/end-second-factor.ts';
 import { handleReport } from '~/server/commands/handle-report.ts';
 import { hideListing, showListing } from '~/server/commands/hide-listing.ts';
-import { hideMessage } from '~/server/commands/hide-message.ts';
 import { placeBid } from '~/server/commands/place-bid.ts';
 import { reportThing } from '~/server/commands/report-thing.ts';
 import { openConversation, sendMessage } from '~/server/commands/send-message.ts';
+import { takeOut } from '~/server/commands/take-out.ts';
 import { execute, rows } from '~/server/db.ts';
-import { Account, Event, Listing, Message, Report } from '~/server/models/index.ts';
+import { Account, Event, Listing, Message, Photo, Report, Review } from '~/server/models/index.ts';
 import { conversationPage } from '~/server/queries/conversations.ts';
+import { deskReport } from '~/server/queries/desk/reports.ts';
 import { listingPage } from '~/server/queries/listing-page.ts';
+import { photoAudience } from '~/server/queries/photos.ts';
+import { reportable, type ReportableThing } from '~/server/queries/report-page.ts';
+import { sawyerPage } from '~/server/queries/sawyer-page.ts';
 import { openSession, viewerOf } from '~/server/sessions.ts';
 import { makeCast, type Cast } from '../../support/cast.ts';
+import { makeAgreedBooking } from '../../support/money-market.ts';
 import { bidOf, makeOpenListing, MARKET_AT, setUpSawyer } from '../../support/sawing-market.ts';
 
 let cast: Cast;
@@ -56,7 +61,7 @@ describe('a hidden listing', () => {
 });
 
 describe('reports', () => {
-  const report = (by: Cast['ada'] | null, thing: 'listing' | 'message' | 'account', thingId: string) => reportThing(by, { thing, thingId, reason: 'scam', note: 'See for yourself.', clientAddress: '192.0.2.7' }, at);
+  const report = (by: Cast['ada'] | null, thing: ReportableThing, thingId: string) => reportThing(by, { thing, thingId, reason: 'scam', note: 'See for yourself.', clientAddress: '192.0.2.7' }, at);
 
   it('come from anyone for a listing, once while the first waits, and are handled once of eight at once', async () => {
     await report(null, 'listing', listing.id);
@@ -92,10 +97,51 @@ describe('reports', () => {
     const message = await Message.findOne({ where: { conversationId: id }, rejectOnEmpty: true });
     for (const other of [cast.bram, cast.dora, null]) await expect(report(other, 'message', message.id)).rejects.toMatchObject({ kind: other ? 'notFound' : 'signedOut' });
     await report(cast.ada, 'message', message.id);
-    await expect(hideMessage(cast.ada, { message: message.id, reason: 'x' }, at)).rejects.toMatchObject({ kind: 'forbidden' });
-    await hideMessage(cast.mo, { message: message.id, reason: 'Asks for cash.' }, at);
+    await expect(takeOut(cast.ada, { thing: 'message', id: message.id, reason: 'x' }, at)).rejects.toMatchObject({ kind: 'forbidden' });
+    await takeOut(cast.mo, { thing: 'message', id: message.id, reason: 'Asks for cash.' }, at);
     for (const reader of [cast.ada, cast.bram]) expect((await conversationPage(reader, id)).messages).toEqual([]);
-    await expect(hideMessage(cast.mo, { message: message.id, reason: 'x' }, at)).rejects.toMatchObject({ kind: 'conflict' });
+    await expect(takeOut(cast.mo, { thing: 'message', id: message.id, reason: 'x' }, at)).rejects.toMatchObject({ kind: 'conflict' });
+  });
+
+  it('of a review come from those who read it; taken out, it counts no more', async () => {
+    const booking = await makeAgreedBooking(cast.ada, cast.bram);
+    const review = (stars: number, body: string) => Review.create({ bookingId: booking.id, authorId: cast.ada.id, subjectId: cast.bram.id, stars, body, createdAt: at });
+    const rude = await review(1, 'He lives at the yellow house.');
+    await expect(report(null, 'review', rude.id)).rejects.toMatchObject({ kind: 'signedOut' });
+    await expect(report(cast.ada, 'review', rude.id)).rejects.toMatchObject({ kind: 'notFound' });
+    // The other way round, a review of a landowner is read by the two of its booking only.
+    const ofAda = await Review.create({ bookingId: booking.id, authorId: cast.bram.id, subjectId: cast.ada.id, stars: 4, body: '', createdAt: at });
+    expect(await reportable(cast.dora, 'review', ofAda.id)).toBeNull();
+    expect(await reportable(cast.ada, 'review', ofAda.id)).toMatchObject({ title: '4 of 5', person: { id: cast.bram.id } });
+    expect(await reportable(cast.dora, 'review', rude.id)).toMatchObject({ title: '1 of 5\nHe lives at the yellow house.' });
+    await report(cast.bram, 'review', rude.id);
+    const waiting = await Report.findOne({ where: { thingId: rude.id }, rejectOnEmpty: true });
+    expect(await deskReport(cast.mo, waiting.id)).toMatchObject({ about: '1 of 5:\nHe lives at the yellow house.', personName: 'Ada', isOut: false });
+    expect(await sawyerPage(cast.bram.id, null, at)).toMatchObject({ reviewCount: 1, meanStars: 1 });
+    await expect(takeOut(cast.bram, { thing: 'review', id: rude.id, reason: 'x' }, at)).rejects.toMatchObject({ kind: 'forbidden' });
+    const tries = await Promise.allSettled(Array.from({ length: 8 }, () => takeOut(cast.mo, { thing: 'review', id: rude.id, reason: 'It says where he lives.' }, at)));
+    expect(tries.filter(({ status }) => status === 'fulfilled')).toHaveLength(1);
+    expect(await sawyerPage(cast.bram.id, null, at)).toMatchObject({ reviewCount: 0, meanStars: null, reviews: [] });
+    expect((await deskReport(cast.mo, waiting.id)).isOut).toBe(true);
+    expect(await reportable(cast.bram, 'review', rude.id)).toBeNull();
+    expect((await subjects(cast.ada.email)).filter((subject) => subject === 'A review of yours was taken out')).toHaveLength(1);
+  });
+
+  it('of a photograph come from those who see it; taken out, nobody does', async () => {
+    const photo = await Photo.create({ listingId: listing.id, ownerId: cast.ada.id, position: 1, caption: 'Not my tree', originalKey: `private/${listing.id}`, status: 'ready', width: 800, height: 600, blur: '', createdAt: at });
+    await expect(report(cast.ada, 'photo', photo.id)).rejects.toMatchObject({ kind: 'notFound' });
+    await report(null, 'photo', photo.id);
+    expect(await reportable(cast.bram, 'photo', photo.id)).toMatchObject({ title: 'Not my tree', picture: { width: 800 } });
+    const waiting = await Report.findOne({ where: { thingId: photo.id }, rejectOnEmpty: true });
+    expect(await deskReport(cast.mo, waiting.id)).toMatchObject({ about: listing.title, listing: listing.number, picture: { width: 800 } });
+    await takeOut(cast.mo, { thing: 'photo', id: photo.id, reason: 'It shows a neighbour.' }, at);
+    for (const reader of [null, cast.ada, cast.mo]) await expect(photoAudience(reader, photo.id)).rejects.toMatchObject({ kind: 'notFound' });
+    expect(await deskReport(cast.mo, waiting.id)).toMatchObject({ isOut: true, picture: null });
+    await expect(takeOut(cast.mo, { thing: 'photo', id: photo.id, reason: 'x' }, at)).rejects.toMatchObject({ kind: 'conflict' });
+    // One of a listing that is hidden cannot be seen, nor reported.
+    const other = await Photo.create({ listingId: listing.id, ownerId: cast.ada.id, position: 2, caption: '', originalKey: `private/${listing.id}/2`, status: 'ready', width: 800, height: 600, blur: '', createdAt: at });
+    await listing.update({ hiddenAt: at });
+    expect(await reportable(cast.bram, 'photo', other.id)).toBeNull();
   });
 
   it('by one person are counted', async () => {

@@ -12,7 +12,7 @@ const roles: readonly Role[] = ['owner', 'bidder', 'landowner', 'sawyer', 'anySa
 
 /** Every role × action × state that is allowed, as lines a reviewer can read. */
 function matrix(): string[] {
-  const states = { listing: listingStates.states, bid: bidStates.states, booking: bookingStates.states, sawyer: [], trip: tripStates.states, tripStop: tripStopStates.states, account: accountStates.states, message: [], report: [], desk: [] } as const;
+  const states = { listing: listingStates.states, bid: bidStates.states, booking: bookingStates.states, sawyer: [], trip: tripStates.states, tripStop: tripStopStates.states, account: accountStates.states, message: [], review: [], photo: [], report: [], desk: [] } as const;
   const lines: string[] = [];
   for (const subject of Object.keys(permissions) as (keyof typeof permissions)[]) {
     for (const action of Object.keys(permissions[subject])) {

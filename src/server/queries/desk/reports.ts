@@ -1,8 +1,10 @@
+import type { PictureView } from '~/domain/photo.ts';
 import type { ReportReason } from '~/schemas/account-forms.ts';
 import { oneRow, rows } from '../../db.ts';
 import { DESK_PAGE, openDesk } from '../../desk.ts';
 import { notFound } from '../../errors.ts';
 import type { Viewer } from '../../viewer.ts';
+import { onePhoto } from '../photos.ts';
 
 export interface ReportRow {
   readonly id: string;
@@ -16,7 +18,7 @@ export interface ReportRow {
   readonly handledAt: Date | null;
   readonly handledByName: string | null;
   readonly outcome: string | null;
-  /** What is reported, as far as it has a name: a title, a person, or the words of a message. */
+  /** What is reported, as far as it has a name: a title, a person, or the words of a message, a review or below a photograph. */
   readonly about: string;
   readonly listing: number | null;
   readonly personId: string | null;
@@ -24,12 +26,14 @@ export interface ReportRow {
 }
 
 const select = `SELECT r.id, r.thing, r.thing_id AS "thingId", r.reason, r.note, r.created_at AS "createdAt", r.reporter_id AS "reporterId", reporter.name AS "reporterName",
-    r.handled_at AS "handledAt", handler.name AS "handledByName", r.outcome, coalesce(l.title, m.body, person.name, '') AS about, l.number AS listing,
+    r.handled_at AS "handledAt", handler.name AS "handledByName", r.outcome, coalesce(l.title, m.body, v.stars || ' of 5' || CASE WHEN v.body = '' THEN '' ELSE E':\\n' || v.body END, nullif(p.caption, ''), person.name, '') AS about, l.number AS listing,
     person.id AS "personId", person.name AS "personName"
   FROM report r LEFT JOIN account reporter ON reporter.id = r.reporter_id LEFT JOIN account handler ON handler.id = r.handled_by
-  LEFT JOIN listing l ON r.thing = 'listing' AND l.id = r.thing_id
+  LEFT JOIN photo p ON r.thing = 'photo' AND p.id = r.thing_id
+  LEFT JOIN review v ON r.thing = 'review' AND v.id = r.thing_id
+  LEFT JOIN listing l ON r.thing IN ('listing', 'photo') AND l.id = coalesce(p.listing_id, r.thing_id)
   LEFT JOIN message m ON r.thing = 'message' AND m.id = r.thing_id
-  LEFT JOIN account person ON person.id = CASE r.thing WHEN 'listing' THEN l.owner_id WHEN 'message' THEN m.sender_id WHEN 'account' THEN r.thing_id END`;
+  LEFT JOIN account person ON person.id = CASE r.thing WHEN 'listing' THEN l.owner_id WHEN 'photo' THEN p.owner_id WHEN 'message' THEN m.sender_id WHEN 'review' THEN v.author_id WHEN 'account' THEN r.thing_id END`;
 
 /** Reports that wait, the oldest first, or those that were handled, the newest first. Index: report_open. */
 export async function deskReports(viewer: Viewer | null, handled: boolean, page: number): Promise<{ readonly reports: readonly ReportRow[]; readonly more: boolean }> {
@@ -48,8 +52,10 @@ export async function reportsAbout(viewer: Viewer | null, thing: 'listing' | 'ac
 }
 
 export interface ReportPage extends ReportRow {
-  /** For a message: whether it is taken out already. */
-  readonly messageHidden: boolean;
+  /** Whether it was taken out by itself already. */
+  readonly isOut: boolean;
+  /** For a photograph that is still there: itself. */
+  readonly picture: PictureView | null;
   /** Other reports about the same thing that wait. */
   readonly alsoWaiting: number;
 }
@@ -61,10 +67,12 @@ export async function deskReport(viewer: Viewer | null, id: string): Promise<Rep
   openDesk(viewer);
   const report = uuid.test(id) ? await oneRow<ReportRow>(`${select} WHERE r.id = $1`, [id]) : undefined;
   if (!report) throw notFound('report');
-  const more = await oneRow<{ hidden: boolean; also: number }>(
-    `SELECT EXISTS (SELECT 1 FROM message WHERE id = $1 AND hidden_at IS NOT NULL) AS hidden,
+  const more = await oneRow<{ isOut: boolean; also: number }>(
+    `SELECT EXISTS (SELECT 1 FROM message WHERE $2 = 'message' AND id = $1 AND hidden_at IS NOT NULL UNION ALL SELECT 1 FROM review WHERE $2 = 'review' AND id = $1 AND hidden_at IS NOT NULL
+         UNION ALL SELECT 1 FROM photo WHERE $2 = 'photo' AND id = $1 AND removed_at IS NOT NULL) AS "isOut",
        (SELECT count(*)::int FROM report WHERE thing = $2 AND thing_id = $1 AND handled_at IS NULL AND id <> $3) AS also`,
     [report.thingId, report.thing, report.id],
   );
-  return { ...report, messageHidden: report.thing === 'message' && (more?.hidden ?? false), alsoWaiting: more?.also ?? 0 };
+  const isOut = more?.isOut ?? false;
+  return { ...report, isOut, picture: report.thing === 'photo' && !isOut ? (await onePhoto(report.thingId)).picture : null, alsoWaiting: more?.also ?? 0 };
 }
