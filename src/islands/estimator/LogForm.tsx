@@ -1,4 +1,4 @@
-import { useEffect, useRef, useState, type FormEvent, type ReactElement } from 'react';
+import { useEffect, useRef, useState, type SubmitEvent, type ReactElement } from 'react';
 import { scaleLog, type ScaleSettings } from '~/domain/timber/log-scale.ts';
 import type { LogGroup } from '~/domain/timber/logs-in-url.ts';
 import { speciesOf } from '~/domain/timber/species.ts';
@@ -45,7 +45,7 @@ export function LogForm({ draft, settings, units, changing, onChange, onAdd, onC
     if (seek > 0) form.current?.querySelector<HTMLElement>('[aria-invalid="true"]')?.focus();
   }, [seek]);
 
-  const submit = (event: FormEvent): void => {
+  const submit = (event: SubmitEvent): void => {
     event.preventDefault();
     if (log === null || blocked) {
       setTried(true);

@@ -1,4 +1,4 @@
-import { useEffect, useState, type FormEvent, type ReactElement } from 'react';
+import { useEffect, useState, type SubmitEvent, type ReactElement } from 'react';
 import { logRuleNames, type LogRule } from '~/domain/timber/log-rules.ts';
 import type { QuotingPractice } from '~/schemas/quoting-practice.ts';
 import { ApiRefusal, callApi } from '~/islands/call-api.ts';
@@ -68,7 +68,7 @@ export function NearbyRules({ practice, keep }: Nearby): ReactElement {
   const [error, setError] = useState<string | undefined>(undefined);
   const [asking, setAsking] = useState(false);
 
-  const ask = async (event: FormEvent): Promise<void> => {
+  const ask = async (event: SubmitEvent): Promise<void> => {
     event.preventDefault();
     if (!/^\d{5}(-\d{4})?$/.test(zip.trim())) return setError('A ZIP code has five digits.');
     setError(undefined);

@@ -1,4 +1,4 @@
-import { useId, useState, type FormEvent, type ReactElement } from 'react';
+import { useId, useState, type SubmitEvent, type ReactElement } from 'react';
 import { pieceKinds, sizings } from '~/domain/listing/answers.ts';
 import { blankPiece, isBlankPiece, MOST_PIECES, type PieceTyped } from '~/domain/listing/draft.ts';
 import { readPieceRow } from '~/domain/listing/rows.ts';
@@ -38,7 +38,7 @@ export default function TryList({ logs, mill, millName, pattern, pieces }: TryLi
   };
   const change = (key: number, part: Partial<PieceTyped>): void => setRows(rows.map((row) => (row.key === key ? { ...row, typed: { ...row.typed, ...part } } : row)));
 
-  const submit = (event: FormEvent): void => {
+  const submit = (event: SubmitEvent): void => {
     event.preventDefault();
     setTried(true);
     const sound = read.flatMap((row) => (row.read.ok ? [row.read.value] : []));
