@@ -1,5 +1,5 @@
 import { Op } from 'sequelize';
-import { inTransaction, oneRow, rows } from '../db.ts';
+import { inTransaction, rows } from '../db.ts';
 import { log } from '../log.ts';
 import { balances, post } from '../ledger.ts';
 import { CardDispute, ProviderCall, Reconciliation, type Finding } from '../models/index.ts';
@@ -12,15 +12,21 @@ import { receiveCheckout } from './receive-checkout.ts';
 /** Movements of this many days before the last comparison are looked at again. */
 const OVERLAP_DAYS = 3;
 
-/** What our ledger has entered on the provider's balance for one object of the provider's. */
-async function enteredFor(sourceId: string): Promise<{ cents: number; booking: number | null }> {
-  const found = await oneRow<{ cents: number; booking: number | null }>(
-    `SELECT coalesce(sum(entry.amount_cents), 0)::int AS cents, min(booking.number) AS booking
+interface Entered {
+  readonly cents: number;
+  readonly booking: number | null;
+}
+
+/** What our ledger has entered on the provider's balance for each of the provider's objects. Leans on ledger_group_of_cause. */
+async function entered(sourceIds: readonly string[]): Promise<(sourceId: string) => Entered> {
+  const found = await rows<Entered & { readonly sourceId: string }>(
+    `SELECT grp.cause_id AS "sourceId", sum(entry.amount_cents)::int AS cents, min(booking.number) AS booking
      FROM ledger_entry entry JOIN ledger_group grp ON grp.id = entry.group_id LEFT JOIN booking ON booking.id = grp.booking_id
-     WHERE grp.cause_id = $1 AND entry.account = 'provider balance'`,
-    [sourceId],
+     WHERE grp.cause_id = ANY($1::text[]) AND entry.account = 'provider balance' GROUP BY grp.cause_id`,
+    [sourceIds],
   );
-  return found ?? { cents: 0, booking: null };
+  const bySource = new Map(found.map((each) => [each.sourceId, each]));
+  return (sourceId) => bySource.get(sourceId) ?? { cents: 0, booking: null };
 }
 
 async function finishCall(kind: 'refund' | 'transfer', id: string, at: Date): Promise<void> {
@@ -71,12 +77,12 @@ async function compare(movements: readonly Movement[], at: Date): Promise<{ repa
   const differences: Finding[] = [];
   const bySource = new Map<string, Movement[]>();
   for (const movement of movements) bySource.set(movement.sourceId, [...(bySource.get(movement.sourceId) ?? []), movement]);
+  const before = await entered([...bySource.keys()]);
   for (const [sourceId, group] of bySource) {
     const theirsCents = group.reduce((sum, { netCents }) => sum + netCents, 0);
-    const before = await enteredFor(sourceId);
-    if (before.cents === theirsCents) continue;
+    if (before(sourceId).cents === theirsCents) continue;
     for (const movement of group) await repair(movement, at);
-    const after = await enteredFor(sourceId);
+    const after = (await entered([sourceId]))(sourceId);
     const finding: Finding = { what: group.map(wordsOf).join(', '), object: sourceId, oursCents: after.cents, theirsCents, ...(after.booking === null ? {} : { booking: after.booking }) };
     (after.cents === theirsCents ? repaired : differences).push(finding);
   }

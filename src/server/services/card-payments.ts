@@ -226,7 +226,8 @@ export interface Movement {
 /** The provider's books since an instant, oldest first. */
 export async function movementsSince(since: Date): Promise<Movement[]> {
   const list = provider().balanceTransactions.list({ created: { gte: Math.floor(since.getTime() / 1000) }, limit: 100 });
-  const found = await asked(list.autoPagingToArray({ limit: 10_000 }));
+  const found: Stripe.BalanceTransaction[] = [];
+  await asked(list.autoPagingEach((each) => void found.push(each)));
   return found.reverse().map((each) => ({
     id: each.id, type: each.type, category: each.reporting_category, sourceId: refId(each.source) ?? '',
     amountCents: each.amount, feeCents: each.fee, netCents: each.net, createdAt: new Date(each.created * 1000),
