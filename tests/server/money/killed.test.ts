@@ -133,13 +133,13 @@ async function killInTheMiddle(scene: Scene): Promise<void> {
 }
 
 /** No more troubles: lost messages come again, claims of the dead run out, a moderator tries stuck calls again. */
-async function settleDown(): Promise<void> {
+async function settleDown({ bookings }: Scene): Promise<void> {
   house.fake.control.clearFaults();
   await worker.kill();
   for (let round = 0; round < 4; round += 1) {
     house.fake.control.resend();
     await house.work(8);
-    for (const call of await ProviderCall.findAll({ where: { status: 'stuck' } })) {
+    for (const call of await ProviderCall.findAll({ where: { status: 'stuck', bookingId: bookings.map(({ id }) => id) } })) {
       await retryProviderCall(cast.mo, call.id, new Date()).catch((error: unknown) => {
         if (!(error instanceof Refusal)) throw error;
       });
@@ -161,7 +161,7 @@ describe(`money when processes are killed, seeds from ${FIRST_SEED}`, () => {
         if (url) outside(() => house.fake.control.pay(sessionIn(url)));
       }
       for (let at = 0; at < STEPS; at += 1) await (at % KILL_EVERY === KILL_EVERY - 1 ? killInTheMiddle(scene) : step(scene));
-      await settleDown();
+      await settleDown(scene);
       expect(await wrongs(house, scene.bookings), `seed ${seed}`).toEqual([]);
     }
     expect(web.killed + worker.killed).toBeGreaterThanOrEqual(SEQUENCES * 2);
