@@ -3,6 +3,7 @@ import node from '@astrojs/node';
 import react from '@astrojs/react';
 import tailwind from '@astrojs/tailwind';
 import pwa from '@vite-pwa/astro';
+import { frontEntry } from './src/launch/front-entry.mjs';
 import { serverOnly } from './src/launch/server-only.mjs';
 import { shellFiles } from './src/launch/shell-files.mjs';
 
@@ -68,7 +69,7 @@ export default defineConfig({
     },
   },
   vite: {
-    plugins: [serverOnly()],
+    plugins: [serverOnly(), frontEntry()],
     // A thread of the browser is a bundle of its own, under the same rule; it does not read the paths of tsconfig.json.
     resolve: { alias: { '~': new URL('./src', import.meta.url).pathname } },
     worker: { format: 'es', plugins: () => [serverOnly()] },

@@ -1,5 +1,8 @@
 import { defineMiddleware } from 'astro:middleware';
 
+// Asked for once: where modules are looked up by a loader of another thread, every dynamic import waits for it.
+let asked: Promise<typeof import('./server/http/on-request.ts')> | undefined;
+
 export const onRequest = defineMiddleware(async (context, next) => {
   context.locals.viewer = null;
   if (context.isPrerendered) {
@@ -8,6 +11,6 @@ export const onRequest = defineMiddleware(async (context, next) => {
     context.locals.origin = context.url.origin;
     return next();
   }
-  const request = await import('./server/http/on-request.ts');
+  const request = await (asked ??= import('./server/http/on-request.ts'));
   return request.onRequest(context, next);
 });

@@ -48,7 +48,7 @@ try {
   ensureBuild();
   if (must('db/migrate.ts')) {
     await startFakes(group, env, ports, join(data, 'fakes'));
-    await group.start('web', 'src/server/http/main.ts', [], env).ready;
+    await group.start('web', 'dist/server/front.mjs', [], env).ready;
     await portAnswers(ports.web);
     // The story is told before the worker begins: it does the worker's part itself, at the instants it tells of.
     if (must('db/story/tell.ts')) {

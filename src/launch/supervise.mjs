@@ -29,7 +29,7 @@ export function processGroup(onDeath) {
 
   /** Runs a TypeScript or JavaScript file of ours under its own name. */
   function start(name, file, args, env) {
-    const child = spawn(process.execPath, ['--import', 'tsx', join(root, file), ...args], {
+    const child = spawn(process.execPath, [...(file.endsWith('.ts') ? ['--import', 'tsx'] : []), join(root, file), ...args], {
       cwd: root,
       env: { ...process.env, ...env },
       stdio: ['ignore', 'inherit', 'inherit', 'ipc'],

@@ -45,7 +45,7 @@ export async function startProduct(name: string, options: { story?: boolean } = 
   };
   try {
     await startFakes(group, environment, ports, join(data, 'fakes'));
-    await group.start('web', 'src/server/http/main.ts', [], environment).ready;
+    await group.start('web', 'dist/server/front.mjs', [], environment).ready;
     await portAnswers(ports.web);
     // As `npm start` does it: the worker begins when the story is told.
     if (options.story) script('db/story/tell.ts');

@@ -1,15 +1,14 @@
-import { join } from 'node:path';
-import { fileURLToPath, pathToFileURL } from 'node:url';
+import { fileURLToPath } from 'node:url';
 import { env } from '../env.ts';
 import { log } from '../log.ts';
 import { createFront, type Handler } from './front.ts';
 import { warmUp } from './warm-up.ts';
 
-const dist = fileURLToPath(new URL('../../../dist', import.meta.url));
+// Built into `dist/server/front.mjs`, beside Astro's handler: only together do they make the web process.
 const settings = env();
-const { handler } = (await import(pathToFileURL(join(dist, 'server/entry.mjs')).href)) as { handler: Handler };
+const { handler } = (await import(/* @vite-ignore */ new URL('./entry.mjs', import.meta.url).href)) as { handler: Handler };
 
-const server = createFront(handler, join(dist, 'client'), settings);
+const server = createFront(handler, fileURLToPath(new URL('../client', import.meta.url)), settings);
 server.requestTimeout = 30_000;
 server.headersTimeout = 10_000;
 server.keepAliveTimeout = 5_000;

@@ -53,7 +53,7 @@ export async function ownWeb(): Promise<OwnWeb> {
   const origin = `http://localhost:${port}`;
   let child: ChildProcess | undefined;
   const start = async (): Promise<void> => {
-    child = spawn(process.execPath, tsx('src/server/http/main.ts'), { cwd: root, stdio: 'ignore', env: { ...process.env, ...productEnvironment(), PORT: String(port), ORIGIN: origin } });
+    child = spawn(process.execPath, [join(root, 'dist/server/front.mjs')], { cwd: root, stdio: 'ignore', env: { ...process.env, ...productEnvironment(), PORT: String(port), ORIGIN: origin } });
     for (let tries = 0; tries < 300; tries += 1) {
       const answer = await fetch(`${origin}/api/health/live`).catch(() => null);
       if (answer?.ok) return;
