@@ -79,7 +79,7 @@ async function measure(databaseUrl: string, group: ReturnType<typeof processGrou
   const name = new URL(databaseUrl).pathname.slice(1);
   const base = await freeBase();
   const environment = { ...localEnvironment({ base, databaseUrl, dataFolder: mkdtempSync(join(tmpdir(), 'skidway-bench-')) }), LOG_LEVEL: 'error' };
-  await group.start(`web on ${name}`, 'src/server/http/main.ts', [], environment).ready;
+  await group.start(`web on ${name}`, 'dist/server/front.mjs', [], environment).ready;
   await portAnswers(base);
   const bare = new pg.Client({ connectionString: databaseUrl, options: '-c jit=off' });
   await bare.connect();
@@ -88,6 +88,7 @@ async function measure(databaseUrl: string, group: ReturnType<typeof processGrou
   console.log(`\n${name}: ${Number(count).toLocaleString('en-US')} listings, ${rounds} rounds\n${'search'.padEnd(32)}  SQL p50   SQL p95  end p50   end p95   p95 ratio`);
   const { listingsQuery } = await import('~/schemas/listings.ts');
   const { openListings } = await import('~/server/queries/open-listings.ts');
+  await (await import('~/server/commands/count-map.ts')).countMap(new Date());
   const times: [string, Times][] = [];
   for (const [question, placed, query] of questions) {
     const [sql, endpoint]: [number[], number[]] = [[], []];
@@ -115,14 +116,15 @@ async function measure(databaseUrl: string, group: ReturnType<typeof processGrou
     console.log(`${question.padEnd(32)} ${ms(of.p50)}  ${ms(of.p95)} ${ms(end.p50)}  ${ms(end.p95)}  ${ms(end.p95 / of.p95)}`);
   }
 
-  console.log(`${'tiles'.padEnd(32)}  new p50   new p95 warm p50  warm p95   largest, kB (as sent)`);
+  console.log(`${'tiles'.padEnd(32)}  all p50   all p95  new p50   new p95 warm p50  warm p95   largest, kB (as sent)`);
   for (let zoom = 0; zoom <= 12; zoom += 1) {
-    const [fresh, warm]: [number[], number[]] = [[], []];
+    const [all, fresh, warm]: [number[], number[], number[]] = [[], [], []];
     let largest = 0;
     for (const [round, place] of places.entries()) {
       const { z, x, y } = tileAt(place, zoom);
-      // A filter that nobody asked for before makes a tile that nobody keeps yet; one asked for a second time is warm.
-      for (const [address, into] of [[`minBoardFeet=${round % 60}.${rounds}${round}`, fresh], ['', null], ['', warm]] as const) {
+      // All listings; those of a filter that nobody asked for before, a tile that nobody keeps yet; and those again, warm.
+      const filter = `minBoardFeet=${round % 60}.${rounds}${round}`;
+      for (const [address, into] of [['', all], [filter, fresh], [filter, warm]] as const) {
         let bytes = 0;
         const took = await timed(async () => {
           const answer = await fetch(`${environment.ORIGIN}/api/tiles/${z}/${x}/${y}?${address}`);
@@ -130,12 +132,12 @@ async function measure(databaseUrl: string, group: ReturnType<typeof processGrou
           bytes = (await answer.arrayBuffer()).byteLength;
           largest = Math.max(largest, Number(answer.headers.get('content-length') ?? bytes));
         });
-        if (round >= 3) into?.push(took);
+        if (round >= 3) into.push(took);
       }
     }
-    const [of, kept] = [timesOf(fresh), timesOf(warm)];
-    times.push([`zoom ${zoom}`, kept]);
-    console.log(`${`zoom ${zoom}`.padEnd(32)} ${ms(of.p50)}  ${ms(of.p95)} ${ms(kept.p50)}  ${ms(kept.p95)}  ${ms(largest / 1000)}`);
+    const [whole, of, kept] = [timesOf(all), timesOf(fresh), timesOf(warm)];
+    times.push([`zoom ${zoom}`, whole]);
+    console.log(`${`zoom ${zoom}`.padEnd(32)} ${ms(whole.p50)}  ${ms(whole.p95)} ${ms(of.p50)}  ${ms(of.p95)} ${ms(kept.p50)}  ${ms(kept.p95)}  ${ms(largest / 1000)}`);
   }
   await bare.end();
   return times;
@@ -165,6 +167,6 @@ if (first !== undefined && others.length === 0) {
 } else {
   const measured: Measured[] = [];
   for (const databaseUrl of databases) measured.push(await inOwnProcess(databaseUrl));
-  console.log("\nThe endpoint's p50, and warm tiles, from the first database to the last: times");
+  console.log("\nThe endpoint's p50, and tiles of all listings, from the first database to the last: times");
   for (const [index, [name, { p50 }]] of (measured.at(-1) ?? []).entries()) console.log(`${name.padEnd(32)} ${ms(p50 / (measured[0]?.[index]?.[1].p50 ?? Number.NaN))}`);
 }

@@ -2,7 +2,8 @@ import { randomUUID } from 'node:crypto';
 import { beforeAll, describe, expect, it } from 'vitest';
 import { cellOf, DEEPEST_TILE, mapPlace, markLevel, type Tile } from '~/domain/finding/tiles.ts';
 import { coarsePoint, greatCircleMiles, type Point } from '~/domain/geo.ts';
-import { rows } from '~/server/db.ts';
+import { countMap } from '~/server/commands/count-map.ts';
+import { execute, rows } from '~/server/db.ts';
 import { Account, Listing } from '~/server/models/index.ts';
 import { logsTile } from '~/server/queries/logs-tile.ts';
 import { openListings, type FoundListing, type ListingsWanted } from '~/server/queries/open-listings.ts';
@@ -99,5 +100,61 @@ describe('a tile', () => {
   it('is read from its own index', async () => {
     const [line] = await rows<{ indexdef: string }>(`SELECT indexdef FROM pg_indexes WHERE indexname = 'listing_open_map'`);
     expect(line?.indexdef).toContain(`WHERE ((status = 'open'::text) AND (hidden_at IS NULL))`);
+  });
+});
+
+describe('the counts of a low zoom', () => {
+  const low = [0, 2, 5, 6] as const;
+  const noted = async (): Promise<number> => (await rows('SELECT 1 AS one FROM map_changed')).length;
+  /** The marks as they are counted one by one: a filter that leaves everything in. */
+  const oneByOne = async (): Promise<unknown> => Promise.all(low.map((z) => marksAt(z, { minBoardFeet: 0 })));
+  const asKept = async (): Promise<unknown> => Promise.all(low.map((z) => marksAt(z)));
+
+  it('are the same from what is kept as one by one', async () => {
+    await countMap(at);
+    expect(await noted()).toBe(0);
+    expect(await asKept()).toEqual(await oneByOne());
+    // They are kept: listings that were never noted would not be in them.
+    await execute('UPDATE map_count SET listings = listings + 1000');
+    expect(await asKept()).not.toEqual(await oneByOne());
+    await execute('INSERT INTO map_changed (cell) SELECT cell FROM map_count');
+    expect(await asKept()).toEqual(await oneByOne());
+    await countMap(at);
+  });
+
+  it('are never behind what was listed, hidden, changed, moved, closed or taken away, before they are counted again and after', async () => {
+    const some = (change: string, share: number) => execute(`UPDATE listing SET ${change} WHERE number % 9 = ${share}`);
+    const changes: readonly (() => Promise<unknown>)[] = [
+      () => make(12),
+      () => some('hidden_at = now()', 1),
+      () => some('hidden_at = NULL', 1),
+      () => some("status = 'withdrawn'", 2),
+      () => some('largest_end_ob_in = 44', 3),
+      () => some('coarse = ST_SetSRID(ST_MakePoint(-91.2, 43.9), 4326)::geography', 4),
+      () => execute('DELETE FROM listing WHERE number % 9 = 5'),
+      () => some("closes_at = '2026-07-01'", 6),
+    ];
+    for (const [index, change] of changes.entries()) {
+      await change();
+      expect(await noted()).toBeGreaterThan(0);
+      expect(await asKept()).toEqual(await oneByOne());
+      if (index % 2 === 1) await countMap(at);
+      expect(await asKept()).toEqual(await oneByOne());
+    }
+  });
+
+  it('are not counted again for what no map shows', async () => {
+    await countMap(at);
+    await execute("UPDATE listing SET title = 'Other words'");
+    await execute("UPDATE listing SET largest_end_ob_in = 20 WHERE status = 'withdrawn'");
+    expect(await noted()).toBe(0);
+    expect(await asKept()).toEqual(await oneByOne());
+  });
+
+  it('hold what is committed while they are counted', async () => {
+    await Promise.all([make(6), countMap(at), make(6), countMap(at)]);
+    await countMap(at);
+    expect(await noted()).toBe(0);
+    expect(await asKept()).toEqual(await oneByOne());
   });
 });

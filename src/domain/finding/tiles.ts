@@ -52,6 +52,12 @@ export function cellsOf({ z, x, y }: Tile): { readonly first: number; readonly e
   return { first, end: first + size };
 }
 
+/** The level at which open listings are kept counted, and the deepest zoom whose marks are made of such counts. */
+const COUNTED_LEVEL = 9;
+export const DEEPEST_COUNTED = COUNTED_LEVEL - 3;
+/** How far a finest cell is divided to come to a counted one, in bits; the database says the same of `map_count`. */
+export const COUNTED_SHIFT = 2 * (FINEST - COUNTED_LEVEL);
+
 /** How far a finest cell is divided to come to a mark's cell (bits), and a finest column to a position in a tile of this zoom (units). */
 export const markShift = (z: number): number => 2 * (FINEST - markLevel(z));
 export const unitsPerStep = (z: number): number => (TILE_EXTENT * 2 ** z) / 2 ** FINEST;

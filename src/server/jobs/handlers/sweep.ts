@@ -1,5 +1,6 @@
 import { now } from '../../clock.ts';
 import { closeToBids, lapseListings } from '../../commands/close-listings.ts';
+import { countMap } from '../../commands/count-map.ts';
 import { readOtherCalendars } from '../../commands/other-calendar.ts';
 import { reviewTrips } from '../../commands/review-trip.ts';
 import { tellSearches } from '../../commands/tell-searches.ts';
@@ -17,6 +18,7 @@ export type Sweep = (at: Date) => Promise<void>;
 export const sweeps: Readonly<Record<string, Sweep>> = {
   'close to bids': closeToBids,
   'lapse listings': lapseListings,
+  'count the map': countMap,
   ...moneySweeps,
   ...photoSweeps,
   'tell of logs found': tellSearches,
