@@ -103,10 +103,17 @@ function inEachStretch(sql: Sql, asked: ListingsWanted, at: Date, most: number):
 }
 
 /**
- * The rows of what lies near by: only those wanted are read from the table.
+ * What meets the conditions, with what it may be put in order by: gathered first (`OFFSET 0` keeps the planner from walking an ordered index
+ * until enough are found, which would read every open listing), from the index of a filter alone where that has it all.
+ */
+const gathered = (sql: Sql, asked: ListingsWanted, at: Date): string =>
+  `(SELECT l.id, l.closes_at, l.saw_by, l.published_at FROM listing l WHERE ${[...conditions(sql, asked, at), ...inStretches(sql, stretches(asked))].join(' AND ')} OFFSET 0) l`;
+
+/**
+ * The rows of what was met: only those wanted are read from the table.
  * @param which an order with a limit, where the index has what it needs
  */
-const metNearBy = (met: string, which: string): string => `SELECT l.* FROM (SELECT l.id FROM ${met} ${which}) wanted JOIN listing l ON l.id = wanted.id OFFSET 0`;
+const rowsOf = (met: string, which: string): string => `SELECT l.* FROM (SELECT l.id FROM ${met} ${which}) wanted JOIN listing l ON l.id = wanted.id OFFSET 0`;
 
 /** As many as are counted: one more than a reader is told of, or than is gathered. Fewer are few. */
 const counted = (asked: ListingsAsked): number => (asked.sort !== 'distance' && near(asked) ? GATHER_TO : COUNT_TO) + 1;
@@ -203,9 +210,10 @@ export async function openListings(asked: ListingsAsked, at: Date): Promise<Foun
   const nearestFirst = asked.sort === 'distance' || asked.among !== undefined;
   const few = count < counted(asked) || (!nearestFirst && !near(asked) && (await foreseenFew(asked, at)));
   const { key, first, order, after } = ordering(sql, asked, here);
+  const wanted = nearestFirst ? '' : `${after ? `WHERE ${after} ` : ''}ORDER BY ${order} LIMIT ${asked.limit + 1}`;
   const met =
-    few && near(asked)
-      ? metNearBy(inEachStretch(sql, asked, at, GATHER_TO), nearestFirst ? '' : `${after ? `WHERE ${after} ` : ''}ORDER BY ${order} LIMIT ${asked.limit + 1}`)
+    few && (near(asked) || !nearestFirst)
+      ? rowsOf(near(asked) ? inEachStretch(sql, asked, at, GATHER_TO) : gathered(sql, asked, at), wanted)
       : `SELECT l.* FROM listing l WHERE ${[...conditions(sql, asked, at), ...(nearestFirst && !few ? [] : inStretches(sql, stretches(asked)))].join(' AND ')}${few ? ' OFFSET 0' : ''}`;
   const found = await rows<Row>(
     `WITH page AS (
