@@ -31,10 +31,13 @@ const listingOrOff = (typed: string): Result<'off' | number> => {
 /** A day off, or the day offered with the bid on a listing (by its number), moved to another. */
 const move = z.object({ deed: z.literal('move'), what: fieldOf(listingOrOff), from: fieldOf(day), to: fieldOf(day) });
 
+/** What is to become of a day that another calendar calls busy. */
+const busy = z.object({ deed: z.literal('busy'), day: fieldOf(day), answer: fieldOf(choice(['keep', 'open', 'close'], 'Say what is to become of the day.')) });
+
 const only = <const Deed extends string>(deed: Deed) => z.object({ deed: z.literal(deed) });
 
 /** What the calendar page can be asked to do. */
-export const calendarForm = z.union([mark, range, move, only('renew-feed'), only('stop-feed'), only('stop-other'), only('forget-imported')]);
+export const calendarForm = z.union([mark, range, move, only('renew-feed'), only('stop-feed'), only('stop-other'), busy, z.object({ deed: z.literal('forget-busy'), by: fieldOf(choice(['address', 'file'], 'Say of which calendar.')) })]);
 export type CalendarForm = z.output<typeof calendarForm>;
 
 /** How busy a day of the other calendar must be to count as a day off: hours of entries, whole-day entries always count. */

@@ -142,7 +142,7 @@ export async function millOf(sawyerId: string, millId: string): Promise<BidMill>
  * @throws Refusal `invalid` at the days
  */
 export async function refuseDaysOff(sawyerId: string, days: readonly Day[], path = 'days'): Promise<void> {
-  const off = await rows<{ day: Day }>('SELECT day::text AS day FROM day_off WHERE sawyer_id = $1 AND day = ANY($2::date[]) ORDER BY day', [sawyerId, days]);
+  const off = await rows<{ day: Day }>('SELECT day::text AS day FROM sawyer_off WHERE sawyer_id = $1 AND day = ANY($2::date[]) ORDER BY day', [sawyerId, days]);
   if (off.length > 0) throw invalid([{ path, message: `You are off on ${off.map(({ day }) => formatDay(day)).join(', ')}. Offer another day, or give it back in your calendar first.` }]);
 }
 

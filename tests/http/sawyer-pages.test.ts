@@ -106,8 +106,16 @@ describe('the calendar', () => {
     const taken = await send(whole);
     expect(taken.headers.get('location')).toMatch(/added=1/);
     const page = await (await sawyer.get(`/sawyer/calendar?month=${day(25).slice(0, 7)}`)).text();
-    expect(page).toContain('One day off ahead comes from it.');
+    expect(page).toMatch(/mine\.ics<\/strong>, a file: one day ahead is off\./);
+    expect(page).toContain('in mine.ics');
     expect(page).not.toContain('Private matter');
+    const month = `/sawyer/calendar?month=${day(25).slice(0, 7)}`;
+    expect((await sawyer.post(month, { deed: 'busy', day: day(25), answer: 'open' })).headers.get('location')).toMatch(/done=open/);
+    const opened = await (await sawyer.get(month)).text();
+    expect(opened).toContain('Open all the same');
+    expect(opened).toContain('busy in mine.ics');
+    for (const form of [{ deed: 'busy', day: day(25), answer: 'sell' }, { deed: 'busy', day: 'x', answer: 'open' }, { deed: 'forget-busy', by: 'pigeon' }]) expect((await sawyer.post(month, form)).status).toBe(422);
+    expect((await sawyer.post(month, { deed: 'busy', day: day(26), answer: 'open' })).status).toBe(409);
     const address = async (typed: string): Promise<Response> => {
       const body = new FormData();
       body.set('address', typed);

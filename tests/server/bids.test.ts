@@ -49,7 +49,7 @@ describe('a bid', () => {
   it('offers no day that the sawyer has taken off', async () => {
     const id = await placeBid(cast.bram, listing.number, bidOf(bramsMill), MARKET_AT);
     const [day = ''] = (await Bid.findByPk(id, { rejectOnEmpty: true })).daysOffered;
-    await DayOff.create({ sawyerId: cast.bram.id, day, source: 'own' });
+    await DayOff.create({ sawyerId: cast.bram.id, day });
     const refusal = { kind: 'invalid', problems: [{ path: 'days', message: expect.stringContaining('You are off on') }] };
     await expect(changeBid(cast.bram, id, bidOf(bramsMill), MARKET_AT)).rejects.toMatchObject(refusal);
     await withdrawBid(cast.bram, id, MARKET_AT);

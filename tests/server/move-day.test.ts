@@ -2,7 +2,8 @@ import { beforeAll, beforeEach, describe, expect, it } from 'vitest';
 import { addDays, dayAt } from '~/domain/time.ts';
 import { chooseBid } from '~/server/commands/choose-bid.ts';
 import { confirmDays } from '~/server/commands/confirm-days.ts';
-import { changeDaysOff, importCalendar } from '~/server/commands/days-off.ts';
+import { importCalendar } from '~/server/commands/busy-days.ts';
+import { changeDaysOff } from '~/server/commands/days-off.ts';
 import { moveDay } from '~/server/commands/move-day.ts';
 import { placeBid } from '~/server/commands/place-bid.ts';
 import { proposeDays } from '~/server/commands/propose-days.ts';
@@ -26,10 +27,11 @@ beforeAll(async () => {
 });
 beforeEach(async () => {
   await execute('DELETE FROM day_off');
+  await execute('DELETE FROM busy_day');
   listing = await makeOpenListing(cast.ada.id);
 });
 
-const daysOff = async (): Promise<string[]> => (await rows<{ day: string }>('SELECT day::text AS day FROM day_off WHERE sawyer_id = $1 ORDER BY day', [cast.bram.id])).map((row) => row.day);
+const daysOff = async (): Promise<string[]> => (await rows<{ day: string }>('SELECT day::text AS day FROM sawyer_off WHERE sawyer_id = $1 ORDER BY day', [cast.bram.id])).map((row) => row.day);
 const offered = async (id: string): Promise<readonly string[]> => (await Bid.findByPk(id, { rejectOnEmpty: true })).daysOffered;
 const atTo = { kind: 'invalid', problems: [{ path: 'to' }] };
 
@@ -59,9 +61,14 @@ describe('a day off', () => {
     expect(await daysOff()).toEqual([day(3), day(4)]);
   });
 
-  it('of another calendar is moved there', async () => {
-    await importCalendar(cast.bram, { text: `BEGIN:VCALENDAR\r\nVERSION:2.0\r\nPRODID:x\r\nBEGIN:VEVENT\r\nUID:1\r\nDTSTAMP:20260101T000000Z\r\nDTSTART;VALUE=DATE:${day(3).replaceAll('-', '')}\r\nEND:VEVENT\r\nEND:VCALENDAR\r\n`, leastHours: 4 }, MARKET_AT);
-    await expect(moveDay(cast.bram, { what: 'off', from: day(3), to: day(5) }, MARKET_AT)).rejects.toMatchObject({ kind: 'conflict' });
+  it('that another calendar names is moved here only, and stays moved when that calendar is read again', async () => {
+    const brought = { text: `BEGIN:VCALENDAR\r\nVERSION:2.0\r\nPRODID:x\r\nBEGIN:VEVENT\r\nUID:1\r\nDTSTAMP:20260101T000000Z\r\nDTSTART;VALUE=DATE:${day(3).replaceAll('-', '')}\r\nEND:VEVENT\r\nEND:VCALENDAR\r\n`, name: 'mine.ics', leastHours: 4 };
+    await importCalendar(cast.bram, brought, MARKET_AT);
+    await moveDay(cast.bram, { what: 'off', from: day(3), to: day(5) }, MARKET_AT);
+    expect(await daysOff()).toEqual([day(5)]);
+    await importCalendar(cast.bram, brought, MARKET_AT);
+    expect(await daysOff()).toEqual([day(5)]);
+    await expect(moveDay(cast.bram, { what: 'off', from: day(3), to: day(6) }, MARKET_AT)).rejects.toMatchObject({ kind: 'conflict' });
   });
 });
 

@@ -2,6 +2,7 @@ import { createServer, type RequestListener } from 'node:http';
 import type { AddressInfo } from 'node:net';
 import { afterAll, beforeAll, beforeEach, describe, expect, it, vi } from 'vitest';
 import { addHours } from '~/domain/time.ts';
+import { answerBusyDay, forgetBusyDays, importCalendar } from '~/server/commands/busy-days.ts';
 import { changeDaysOff } from '~/server/commands/days-off.ts';
 import { keepOtherCalendar, readOtherCalendars, stopOtherCalendar } from '~/server/commands/other-calendar.ts';
 import { execute, rows } from '~/server/db.ts';
@@ -29,7 +30,7 @@ const closed = createServer((_, response) => void response.end(calendar('2026-08
 const calendar = (...days: readonly string[]): string =>
   ['BEGIN:VCALENDAR', 'VERSION:2.0', 'PRODID:x', ...days.flatMap((day) => ['BEGIN:VEVENT', `UID:${day}`, 'DTSTAMP:20260101T000000Z', 'SUMMARY:Dentist', `DTSTART;VALUE=DATE:${day.replaceAll('-', '')}`, 'END:VEVENT']), 'END:VCALENDAR', ''].join('\r\n');
 const says = (text: string): RequestListener => (_, response) => void response.end(text);
-const offDays = async (): Promise<string[]> => (await rows<{ day: string }>(`SELECT day::text AS day FROM day_off WHERE sawyer_id = $1 AND source = 'imported' ORDER BY day`, [cast.bram.id])).map(({ day }) => day);
+const offDays = async (): Promise<string[]> => (await rows<{ day: string }>(`SELECT day::text AS day FROM busy_day WHERE sawyer_id = $1 AND given_back_at IS NULL ORDER BY day`, [cast.bram.id])).map(({ day }) => day);
 const address = (path = '/mine.ics'): string => `http://${host}${path}`;
 const problem = { kind: 'invalid', problems: [{ path: 'address', message: expect.stringMatching(/\.$/) }] };
 
@@ -51,24 +52,60 @@ beforeEach(async () => {
   answer = says(calendar('2026-08-20', '2026-08-21'));
   await execute('DELETE FROM other_calendar');
   await execute('DELETE FROM day_off');
+  await execute('DELETE FROM busy_day');
 });
 
 describe('another calendar', () => {
   it('gives its busy days at once and again by itself, as it then stands', async () => {
     await changeDaysOff(cast.bram, { add: ['2026-08-21'], remove: [] }, MARKET_AT);
     expect(await keepOtherCalendar(cast.bram, { address: address(), leastHours: 4 }, MARKET_AT)).toMatchObject({ added: 1, removed: 0 });
-    expect(await offDays()).toEqual(['2026-08-20']);
+    expect(await offDays()).toEqual(['2026-08-20', '2026-08-21']);
     answer = says(calendar('2026-08-25'));
     await readOtherCalendars(addHours(MARKET_AT, 5));
-    expect(await offDays()).toEqual(['2026-08-20']);
+    expect(await offDays()).toEqual(['2026-08-20', '2026-08-21']);
     await readOtherCalendars(addHours(MARKET_AT, 6));
     expect(await offDays()).toEqual(['2026-08-25']);
+    expect((await sawyerCalendar(cast.bram, '2026-08', MARKET_AT)).days.filter(({ off }) => off !== null).map(({ day, off, busyIn }) => [day, off, busyIn])).toEqual([['2026-08-21', 'own', []], ['2026-08-25', 'busy', [host]]]);
     expect((await sawyerCalendar(cast.bram, '2026-08', MARKET_AT)).other).toMatchObject({ host, failedBecause: null });
+  });
+
+  it('leaves open what the sawyer opened, and off what the sawyer kept, however often it is read', async () => {
+    await keepOtherCalendar(cast.bram, { address: address(), leastHours: 4 }, MARKET_AT);
+    await answerBusyDay(cast.bram, { day: '2026-08-20', answer: 'open' }, MARKET_AT);
+    await answerBusyDay(cast.bram, { day: '2026-08-21', answer: 'keep' }, MARKET_AT);
+    await readOtherCalendars(addHours(MARKET_AT, 6));
+    const standing = async (): Promise<unknown> => (await sawyerCalendar(cast.bram, '2026-08', MARKET_AT)).days.filter(({ day }) => day === '2026-08-20' || day === '2026-08-21').map(({ off, busyIn }) => [off, busyIn]);
+    expect(await standing()).toEqual([[null, [host]], ['own', [host]]]);
+    answer = says(calendar());
+    await readOtherCalendars(addHours(MARKET_AT, 12));
+    expect(await standing()).toEqual([[null, []], ['own', []]]);
+    for (const answer of ['keep', 'open', 'close'] as const) await expect(answerBusyDay(cast.bram, { day: '2026-08-20', answer }, MARKET_AT)).rejects.toMatchObject({ kind: 'conflict' });
+  });
+
+  it('takes a day again that was opened and is closed after all', async () => {
+    await keepOtherCalendar(cast.bram, { address: address(), leastHours: 4 }, MARKET_AT);
+    await changeDaysOff(cast.bram, { add: [], remove: ['2026-08-20'] }, MARKET_AT);
+    expect(await offDays()).toEqual(['2026-08-21']);
+    await answerBusyDay(cast.bram, { day: '2026-08-20', answer: 'close' }, MARKET_AT);
+    expect(await offDays()).toEqual(['2026-08-20', '2026-08-21']);
+    await expect(answerBusyDay(cast.ada, { day: '2026-08-20', answer: 'open' }, MARKET_AT)).rejects.toMatchObject({ kind: 'forbidden' });
+  });
+
+  it('and a file do not take each other’s days, and each says which it is', async () => {
+    await keepOtherCalendar(cast.bram, { address: address(), leastHours: 4 }, MARKET_AT);
+    expect(await importCalendar(cast.bram, { text: calendar('2026-08-21', '2026-08-28'), name: 'jobs.ics', leastHours: 4 }, MARKET_AT)).toMatchObject({ added: 1, removed: 0 });
+    await readOtherCalendars(addHours(MARKET_AT, 6));
+    const { days, busyAhead } = await sawyerCalendar(cast.bram, '2026-08', MARKET_AT);
+    expect(days.filter(({ off }) => off === 'busy').map(({ day, busyIn }) => [day, busyIn])).toEqual([['2026-08-20', [host]], ['2026-08-21', [host, 'jobs.ics']], ['2026-08-28', ['jobs.ics']]]);
+    expect(busyAhead).toEqual([{ by: 'address', calendar: host, days: 2 }, { by: 'file', calendar: 'jobs.ics', days: 2 }]);
+    // What both name stays off while one of them does.
+    expect(await forgetBusyDays(cast.bram, 'file', MARKET_AT)).toBe(1);
+    expect(await forgetBusyDays(cast.bram, 'address', MARKET_AT)).toBe(2);
   });
 
   it('keeps its address sealed and nothing of what its entries say', async () => {
     await keepOtherCalendar(cast.bram, { address: address('/secret-word.ics'), leastHours: 4 }, MARKET_AT);
-    const kept = JSON.stringify([await rows('SELECT * FROM other_calendar'), await rows('SELECT * FROM day_off'), await rows('SELECT * FROM event')]);
+    const kept = JSON.stringify([await rows('SELECT * FROM other_calendar'), await rows('SELECT * FROM busy_day'), await rows('SELECT * FROM event')]);
     expect(kept).not.toMatch(/secret-word|Dentist/);
   });
 

@@ -4,7 +4,8 @@ import { addDays, dayAt } from '~/domain/time.ts';
 import { renewCalendarFeed, stopCalendarFeed } from '~/server/commands/calendar-feed.ts';
 import { chooseBid } from '~/server/commands/choose-bid.ts';
 import { confirmDays } from '~/server/commands/confirm-days.ts';
-import { changeDaysOff, forgetImported, importCalendar } from '~/server/commands/days-off.ts';
+import { forgetBusyDays, importCalendar } from '~/server/commands/busy-days.ts';
+import { changeDaysOff } from '~/server/commands/days-off.ts';
 import { placeBid } from '~/server/commands/place-bid.ts';
 import { proposeDays } from '~/server/commands/propose-days.ts';
 import { rows } from '~/server/db.ts';
@@ -29,7 +30,7 @@ beforeAll(async () => {
   await setUpSawyer(cast.cleo.id);
 });
 
-const daysOff = async (): Promise<string[]> => (await rows<{ day: string }>('SELECT day::text AS day FROM day_off WHERE sawyer_id = $1 ORDER BY day', [cast.bram.id])).map((row) => row.day);
+const daysOff = async (): Promise<string[]> => (await rows<{ day: string }>('SELECT day::text AS day FROM sawyer_off WHERE sawyer_id = $1 ORDER BY day', [cast.bram.id])).map((row) => row.day);
 async function chosen(offered: readonly string[]): Promise<number> {
   const listing = await makeOpenListing(cast.ada.id);
   return chooseBid(cast.ada, await placeBid(cast.bram, listing.number, bidOf(mill, { days: [...offered] }), MARKET_AT), 1, MARKET_AT);
@@ -120,11 +121,11 @@ describe('a calendar that is brought along', () => {
   it('replaces what it brought before and keeps the sawyer’s own days off', async () => {
     await changeDaysOff(cast.bram, { add: [day(40)], remove: await daysOff() }, MARKET_AT);
     const whole = (ahead: number): string => entry(`w${ahead}`, `DTSTART;VALUE=DATE:${plain(day(ahead))}`);
-    expect(await importCalendar(cast.bram, { text: calendarOf(whole(40), whole(41), whole(9), whole(500)), leastHours: 4 }, MARKET_AT)).toEqual({ added: 1, removed: 0, booked: [day(9)] });
-    expect(await importCalendar(cast.bram, { text: calendarOf(whole(42)), leastHours: 4 }, MARKET_AT)).toMatchObject({ added: 1, removed: 1 });
+    expect(await importCalendar(cast.bram, { text: calendarOf(whole(40), whole(41), whole(9), whole(500)), name: 'mine.ics', leastHours: 4 }, MARKET_AT)).toEqual({ added: 1, removed: 0, booked: [day(9)] });
+    expect(await importCalendar(cast.bram, { text: calendarOf(whole(42)), name: 'mine.ics', leastHours: 4 }, MARKET_AT)).toMatchObject({ added: 1, removed: 1 });
     expect((await daysOff()).filter((one) => one >= day(40))).toEqual([day(40), day(42)]);
-    expect(await sawyerCalendar(cast.bram, day(42).slice(0, 7), MARKET_AT)).toMatchObject({ importedAhead: 1 });
-    expect(await forgetImported(cast.bram, MARKET_AT)).toBe(1);
+    expect(await sawyerCalendar(cast.bram, day(42).slice(0, 7), MARKET_AT)).toMatchObject({ busyAhead: [{ by: 'file', calendar: 'mine.ics', days: 1 }] });
+    expect(await forgetBusyDays(cast.bram, 'file', MARKET_AT)).toBe(1);
     expect((await daysOff()).filter((one) => one >= day(40))).toEqual([day(40)]);
   });
 });

@@ -61,7 +61,7 @@ const letters = async (subject: string): Promise<string[]> => (await rows<{ to: 
 
 describe('a shared trip', () => {
   it('is not offered for a day that the sawyer has taken off, and is taken along by both sides', async () => {
-    await DayOff.create({ sawyerId: sawyer.id, day, source: 'own' });
+    await DayOff.create({ sawyerId: sawyer.id, day });
     await expect(offerTrip(sawyer, offer(2), MARKET_AT)).rejects.toMatchObject({ kind: 'invalid', problems: [{ path: 'day' }] });
     await DayOff.destroy({ where: { sawyerId: sawyer.id } });
     const number = await offerTrip(sawyer, offer(2), MARKET_AT);

@@ -16,6 +16,7 @@ const gone = [
   'DELETE FROM email_token WHERE account_id = $1',
   'DELETE FROM account_block WHERE blocker_id = $1 OR blocked_id = $1',
   'DELETE FROM day_off WHERE sawyer_id = $1',
+  'DELETE FROM busy_day WHERE sawyer_id = $1',
   'DELETE FROM calendar_feed WHERE sawyer_id = $1',
   'DELETE FROM other_calendar WHERE sawyer_id = $1',
   'DELETE FROM ready_message WHERE sawyer_id = $1',

@@ -1,21 +1,22 @@
 import { paths } from '~/domain/paths.ts';
 import { bidStates } from '~/domain/states/bid.ts';
-import { checkMillingDay, dayAt, formatDay, type Day } from '~/domain/time.ts';
+import { checkMillingDay, formatDay, type Day } from '~/domain/time.ts';
 import { bidChanged } from '~/emails/bids.ts';
 import { authorize, rolesOnBid } from '../authorize.ts';
 import { refuseDaysOff } from '../bid-work.ts';
+import { daysOffFrom, giveDaysBack, takeDaysOff, todayOf } from '../days-off.ts';
 import { inTransaction, lockFor, rows } from '../db.ts';
 import { conflict, invalid, notFound } from '../errors.ts';
 import { enqueue } from '../jobs/queue.ts';
 import { Account } from '../models/account.ts';
 import { Listing } from '../models/listing.ts';
-import { Bid, DayOff, SawyerProfile } from '../models/sawyer.ts';
+import { Bid } from '../models/sawyer.ts';
 import { linkTo } from '../parties.ts';
 import { record, transition } from '../transition.ts';
 import { baseRoles, type Viewer } from '../viewer.ts';
 import { lockListingAndBid } from './lock-listing-and-bid.ts';
 
-/** A day of the calendar to be moved: a day off, or the day offered with the bid on a listing. */
+/** A day of the calendar to be moved: a day off, whoever took it, or the day offered with the bid on a listing. */
 export interface DayMove {
   readonly what: 'off' | number;
   readonly from: Day;
@@ -30,7 +31,8 @@ async function refuseBooked(by: Viewer, day: Day): Promise<void> {
 }
 
 /**
- * Moves a day off or an offered day to another day.
+ * Moves a day off or an offered day to another day. A day that another calendar calls busy is moved here only: it is open although that
+ * calendar names it still, and an own day off stands on the other.
  * @throws Refusal `invalid` at `to` for a day that is taken, `conflict` when nothing of the kind stands on the day any more
  */
 export async function moveDay(by: Viewer, move: DayMove, at: Date): Promise<void> {
@@ -41,12 +43,14 @@ export async function moveDay(by: Viewer, move: DayMove, at: Date): Promise<void
 
 async function moveDayOff(by: Viewer, { from, to }: DayMove, at: Date): Promise<void> {
   await lockFor('calendar', by.id);
-  const today = dayAt(at, (await SawyerProfile.findByPk(by.id))?.timeZone ?? 'UTC');
+  const today = await todayOf(by.id, at);
   if (to < today) throw wrong('That day is past. Choose a later one.');
   await refuseBooked(by, to);
-  if ((await DayOff.count({ where: { sawyerId: by.id, day: to } })) > 0) throw wrong(`You are off on ${formatDay(to)} already.`);
-  const [moved] = from < today ? [0] : await DayOff.update({ day: to }, { where: { sawyerId: by.id, day: from, source: 'own' } });
-  if (moved === 0) throw conflict(`${formatDay(from)} is no day off of yours any more. Load the calendar again.`);
+  const off = await daysOffFrom(by.id, today);
+  if (off.has(to)) throw wrong(`You are off on ${formatDay(to)} already.`);
+  if (!off.has(from)) throw conflict(`${formatDay(from)} is no day off of yours any more. Load the calendar again.`);
+  await giveDaysBack(by.id, [from], at);
+  await takeDaysOff(by.id, [to]);
   await record(by, 'moveDayOff', 'account', by.id, at, { data: { from, to } });
 }
 

@@ -1,5 +1,6 @@
 import { addHours } from '~/domain/time.ts';
 import { authorize } from '../authorize.ts';
+import type { DaysOffChanged } from '../days-off.ts';
 import { inTransaction, lockFor, rows } from '../db.ts';
 import { Refusal } from '../errors.ts';
 import { OtherCalendar } from '../models/sawyer.ts';
@@ -7,7 +8,7 @@ import { seal, unseal } from '../sealing.ts';
 import { outsideText, outsideUrl } from '../services/outside-text.ts';
 import { record } from '../transition.ts';
 import { baseRoles, system, type Viewer } from '../viewer.ts';
-import { takeBusyDays, type DaysOffChanged } from './days-off.ts';
+import { takeBusyDays } from './busy-days.ts';
 
 const PURPOSE = 'other-calendar';
 /** Read again after so many hours; after a failure sooner, then more and more seldom. */
@@ -30,7 +31,7 @@ export async function keepOtherCalendar(by: Viewer, calendar: { readonly address
   const text = await outsideText(href);
   try {
     return await inTransaction(async () => {
-      const changed = await takeBusyDays(by.id, { text, leastHours: calendar.leastHours }, at);
+      const changed = await takeBusyDays(by.id, { text, by: 'address', name: host, leastHours: calendar.leastHours }, at);
       await OtherCalendar.upsert({ sawyerId: by.id, addressSealed: seal(PURPOSE, by.id, href), host, leastHours: calendar.leastHours, madeAt: at, readAt: at, readNext: addHours(at, READ_EVERY_H), failures: 0, failedBecause: null });
       await record(by, 'keepOtherCalendar', 'account', by.id, at, { data: { host, added: changed.added, removed: changed.removed } });
       return changed;
@@ -74,9 +75,9 @@ async function readAgain(sawyerId: string, at: Date): Promise<void> {
       // Stopped or changed meanwhile: then what was read is no longer wanted.
       const current = await OtherCalendar.findByPk(sawyerId, { lock: true });
       if (current?.addressSealed !== kept.addressSealed) return;
-      const { added, removed } = await takeBusyDays(sawyerId, { text, leastHours: current.leastHours }, at);
+      const { added, removed } = await takeBusyDays(sawyerId, { text, by: 'address', name: current.host, leastHours: current.leastHours }, at);
       await current.update({ readAt: at, readNext: addHours(at, READ_EVERY_H), failures: 0, failedBecause: null });
-      if (added !== removed) await record(system('other calendar'), 'readOtherCalendar', 'account', sawyerId, at, { data: { added, removed } });
+      if (added + removed > 0) await record(system('other calendar'), 'readOtherCalendar', 'account', sawyerId, at, { data: { added, removed } });
     });
   } catch (error) {
     if (!(error instanceof Refusal)) throw error;

@@ -32,14 +32,19 @@ export async function readForm<T>(request: Request, schema: z.ZodType<T>): Promi
   return read.success ? { ok: true, value: read.data, typed } : { ok: false, typed, problems: problemsOf(read.error) };
 }
 
+/** A file's name may be anything the sender likes: so much of it is kept, on one line. */
+const LONGEST_NAME = 80;
+
 /**
- * The text of a file posted by a form, read beside the form's other fields; null when none was chosen.
+ * The text and the name of a file posted by a form, read beside the form's other fields; null when none was chosen.
  * @throws Refusal `invalid` when the body is not a form at all.
  */
-export async function uploadedText(request: Request, name: string): Promise<string | null> {
+export async function uploadedFile(request: Request, name: string): Promise<{ readonly text: string; readonly name: string } | null> {
   const data = await request.clone().formData().catch(() => {
     throw new Refusal('invalid', 'What was sent is not a form.');
   });
   const file = data.get(name);
-  return file instanceof File && file.size > 0 ? file.text() : null;
+  if (!(file instanceof File) || file.size === 0) return null;
+  const kept = file.name.replaceAll(/[\p{Cc}\p{Cf}]+/gu, ' ').trim().slice(0, LONGEST_NAME);
+  return { text: await file.text(), name: kept === '' ? 'a file' : kept };
 }

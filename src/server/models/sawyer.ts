@@ -30,19 +30,22 @@ export const SawyerProfile = table('sawyer_profile', {
 });
 export type SawyerProfile = Row<typeof SawyerProfile>;
 
-/** `imported`: taken over from a calendar the sawyer brought. */
-export type DayOffSource = 'own' | 'imported';
-export const DayOff = table('day_off', { sawyerId: keyRef(), day: { options: { ...day().options, primaryKey: true } } as ReturnType<typeof day>, source: filled(text<DayOffSource>()) });
+const keyDay = { options: { ...day().options, primaryKey: true } } as ReturnType<typeof day>;
+/** A day off that the sawyer took. */
+export const DayOff = table('day_off', { sawyerId: keyRef(), day: keyDay });
+
+/** How another calendar is brought: by its address, read again by itself, or once as a file. */
+export type BroughtBy = 'address' | 'file';
 
 /** Messages that a sawyer keeps ready for bids. */
 export const ReadyMessage = table('ready_message', { id: id(), sawyerId: ref(), name: text(), body: text(), createdAt: instant(), updatedAt: instant() });
 export type ReadyMessage = Row<typeof ReadyMessage>;
 
-/** The private address of a sawyer's calendar: the secret's hash, and the secret sealed for its owner. */
 /** Another calendar of the sawyer's, read again by itself. */
 export const OtherCalendar = table('other_calendar', { sawyerId: keyRef(), addressSealed: text(), host: text(), leastHours: whole(), madeAt: instant(), readAt: instant(), readNext: instant(), failures: filled(whole()), failedBecause: nullable(text()) });
 export type OtherCalendar = Row<typeof OtherCalendar>;
 
+/** The private address of a sawyer's calendar: the secret's hash, and the secret sealed for its owner. */
 export const CalendarFeed = table('calendar_feed', { sawyerId: keyRef(), secretHash: text(), secretSealed: text(), madeAt: instant() });
 
 export type MillKind = 'band' | 'swing-blade' | 'chainsaw' | 'circular';

@@ -87,7 +87,7 @@ export async function calendarFeed(secret: string, at: Date): Promise<string> {
       url: linkTo(paths.listing(listing)), status: ICalEventStatus.TENTATIVE, transparency: ICalEventTransparency.TRANSPARENT,
     });
   }
-  const off = await rows<{ day: Day }>('SELECT day::text AS day FROM day_off WHERE sawyer_id = $1 AND day >= $2', [feed.sawyerId, from]);
+  const off = await rows<{ day: Day }>('SELECT day::text AS day FROM sawyer_off WHERE sawyer_id = $1 AND day >= $2', [feed.sawyerId, from]);
   for (const run of runsOf(off.map(({ day }) => day))) {
     calendar.createEvent({ id: `off-${run.from}-${feed.sawyerId}@skidway`, start: wholeDay(run.from), end: wholeDay(addDays(run.to, 1)), allDay: true, stamp: wholeDay(run.from), summary: 'Day off', transparency: ICalEventTransparency.OPAQUE });
   }

@@ -12,7 +12,7 @@ export async function sawyerDays(sawyerId: string, zone: string, at: Date, offer
   const today = dayAt(at, zone);
   const profile = await SawyerProfile.findByPk(sawyerId);
   const booked = await rows<{ day: string }>('SELECT day::text AS day FROM booked_day WHERE sawyer_id = $1 AND active AND day >= $2 AND ($3::uuid IS NULL OR booking_id <> $3)', [sawyerId, today, ownBooking]);
-  const off = await rows<{ day: string }>('SELECT day::text AS day FROM day_off WHERE sawyer_id = $1 AND day >= $2', [sawyerId, today]);
+  const off = await rows<{ day: string }>('SELECT day::text AS day FROM sawyer_off WHERE sawyer_id = $1 AND day >= $2', [sawyerId, today]);
   return dayStates(today, FURTHEST_DAYS + 1, {
     workingDays: profile?.workingDays ?? [1, 2, 3, 4, 5, 6],
     notice: profile?.noticeDays ?? 1,

@@ -5,7 +5,7 @@ import { dayAt, type Day } from '~/domain/time.ts';
 import { authorize } from '../authorize.ts';
 import { rows } from '../db.ts';
 import { openFeedSecret } from '../feed-secret.ts';
-import { CalendarFeed, OtherCalendar, SawyerProfile } from '../models/sawyer.ts';
+import { CalendarFeed, OtherCalendar, SawyerProfile, type BroughtBy } from '../models/sawyer.ts';
 import { linkTo } from '../parties.ts';
 import { baseRoles, type Viewer } from '../viewer.ts';
 
@@ -14,7 +14,9 @@ export interface CalendarDay {
   readonly past: boolean;
   /** Whether this day of the week is worked. */
   readonly worked: boolean;
-  readonly off: 'own' | 'imported' | null;
+  readonly off: 'own' | 'busy' | null;
+  /** The other calendars that call the day busy, by the names the sawyer knows them by. */
+  readonly busyIn: readonly string[];
   readonly booked: readonly { readonly number: number; readonly title: string; readonly town: string; readonly status: BookingState }[];
   readonly offered: readonly { readonly listing: number; readonly title: string; readonly town: string }[];
 }
@@ -28,7 +30,8 @@ export interface SawyerCalendar {
   readonly workingDays: readonly number[];
   readonly noticeDays: number;
   readonly hasProfile: boolean;
-  readonly importedAhead: number;
+  /** How many days ahead are off because a calendar names them, by how it was brought. */
+  readonly busyAhead: readonly { readonly by: BroughtBy; readonly calendar: string; readonly days: number }[];
   /** The address to subscribe to; null until one is made. */
   readonly feed: string | null;
   /** Another calendar that is read again by itself; null when there is none. */
@@ -70,8 +73,12 @@ export async function sawyerCalendar(viewer: Viewer | null, asked: string, at: D
   const [from, to] = [all[0] ?? today, all.at(-1) ?? today];
   const booked = await bookedIn(viewer.id, from, to);
   const offered = await offeredIn(viewer.id, from, to);
-  const off = await rows<{ day: Day; source: 'own' | 'imported' }>('SELECT day::text AS day, source FROM day_off WHERE sawyer_id = $1 AND day BETWEEN $2 AND $3', [viewer.id, from, to]);
-  const [imported] = await rows<{ count: number }>(`SELECT count(*)::int AS count FROM day_off WHERE sawyer_id = $1 AND source = 'imported' AND day >= $2`, [viewer.id, today]);
+  const own = await rows<{ day: Day }>('SELECT day::text AS day FROM day_off WHERE sawyer_id = $1 AND day BETWEEN $2 AND $3', [viewer.id, from, to]);
+  const busy = await rows<{ day: Day; calendar: string; off: boolean }>('SELECT day::text AS day, calendar, given_back_at IS NULL AS off FROM busy_day WHERE sawyer_id = $1 AND day BETWEEN $2 AND $3 ORDER BY brought_by', [viewer.id, from, to]);
+  const busyAhead = await rows<{ by: BroughtBy; calendar: string; days: number }>(
+    'SELECT brought_by AS by, min(calendar) AS calendar, (count(*) FILTER (WHERE given_back_at IS NULL))::int AS days FROM busy_day WHERE sawyer_id = $1 AND day >= $2 GROUP BY brought_by ORDER BY brought_by',
+    [viewer.id, today],
+  );
   const workingDays = profile?.workingDays ?? [1, 2, 3, 4, 5, 6];
   const other = await OtherCalendar.findByPk(viewer.id, { attributes: ['host', 'readAt', 'failedBecause'] });
   const feed = await CalendarFeed.findByPk(viewer.id);
@@ -82,11 +89,12 @@ export async function sawyerCalendar(viewer: Viewer | null, asked: string, at: D
     after: month < latest ? addMonths(month, 1) : null,
     days: all.map((day) => ({
       day, past: day < today, worked: workingDays.includes(weekdayOf(day)),
-      off: off.find((one) => one.day === day)?.source ?? null,
+      off: own.some((one) => one.day === day) ? 'own' : busy.some((one) => one.day === day && one.off) ? 'busy' : null,
+      busyIn: busy.filter((one) => one.day === day).map(({ calendar }) => calendar),
       booked: booked.filter((one) => one.day === day),
       offered: offered.filter((one) => one.day === day),
     })),
-    workingDays, noticeDays: profile?.noticeDays ?? 1, hasProfile: profile !== null, importedAhead: imported?.count ?? 0,
+    workingDays, noticeDays: profile?.noticeDays ?? 1, hasProfile: profile !== null, busyAhead,
     feed: secret === null ? null : linkTo(paths.calendarFeed(secret)),
     other: other && { host: other.host, readAt: other.readAt, failedBecause: other.failedBecause, timeZone: profile?.timeZone ?? 'UTC' },
   };

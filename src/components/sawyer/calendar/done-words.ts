@@ -23,6 +23,14 @@ export function calendarDone(params: URLSearchParams): Done | undefined {
       const to = parseDay(params.get('to') ?? '');
       return { kind: 'good', title: to.ok ? `Moved to ${formatDay(to.value)}.` : 'Moved.', text: '' };
     }
+    case 'keep':
+    case 'open':
+    case 'close': {
+      const on = parseDay(params.get('to') ?? '');
+      const day = on.ok ? formatDay(on.value) : 'The day';
+      if (params.get('done') === 'keep') return { kind: 'good', title: `${day} is your own day off now.`, text: 'It stays off when the other calendar changes or is no longer read.' };
+      return params.get('done') === 'open' ? { kind: 'good', title: `${day} is open.`, text: 'It stays open when the other calendar is read again.' } : { kind: 'good', title: `${day} is off again.`, text: '' };
+    }
     case 'other-stopped':
       return { kind: 'good', title: 'Your other calendar is not read any more.', text: 'The days taken from it stay off until you give them back.' };
     case 'days': {
