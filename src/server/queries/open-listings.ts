@@ -95,11 +95,12 @@ const near = ({ from, radiusMi }: ListingsWanted): boolean => from != null && ra
 /**
  * What meets the conditions near by, with what it may be put in order by: read in each stretch of the map from the index alone.
  * Farther off the planner knows better whether a filter finds fewer.
+ * @param besides more columns of `listing_open_map`, with a comma before each
  */
-function inEachStretch(sql: Sql, asked: ListingsWanted, at: Date, most: number): string {
+function inEachStretch(sql: Sql, asked: ListingsWanted, at: Date, most: number, besides = ''): string {
   const values = stretches(asked).map(({ first, end }) => `(${sql.value(first)}::bigint, ${sql.value(end)}::bigint)`);
   return `(VALUES ${values.join(', ')}) stretch (first, last)
-    CROSS JOIN LATERAL (SELECT l.id, l.closes_at, l.saw_by, l.published_at FROM listing l WHERE l.map_cell >= stretch.first AND l.map_cell < stretch.last AND ${conditions(sql, asked, at).join(' AND ')} LIMIT ${most}) l`;
+    CROSS JOIN LATERAL (SELECT l.id, l.closes_at, l.saw_by, l.published_at${besides} FROM listing l WHERE l.map_cell >= stretch.first AND l.map_cell < stretch.last AND ${conditions(sql, asked, at).join(' AND ')} LIMIT ${most}) l`;
 }
 
 /**
@@ -115,6 +116,19 @@ const gathered = (sql: Sql, asked: ListingsWanted, at: Date): string =>
  */
 const rowsOf = (met: string, which: string): string => `SELECT l.* FROM (SELECT l.id FROM ${met} ${which}) wanted JOIN listing l ON l.id = wanted.id OFFSET 0`;
 
+/** Products of unit vectors are worked out to some parts in 10^16: within this much two of them may be of one distance. */
+const SAME_PRODUCT = 1e-14;
+
+/**
+ * The rows of the nearest of what lies near by, `most` of them and any that may lie as near as the last: found from the index alone, by the
+ * product of the unit vectors, so that only these have their distance worked out as it is shown.
+ */
+const nearestOf = (sql: Sql, asked: ListingsWanted, from: Point, at: Date, most: number): string =>
+  `SELECT l.* FROM (
+     WITH met AS MATERIALIZED (SELECT l.id, l.product FROM ${inEachStretch(sql, asked, at, GATHER_TO, `, ${productWith(sql, from)} AS product`)})
+     SELECT id FROM met WHERE product >= (SELECT min(product) FROM (SELECT product FROM met ORDER BY product DESC LIMIT ${most}) nearest) - ${SAME_PRODUCT}
+   ) wanted JOIN listing l ON l.id = wanted.id OFFSET 0`;
+
 /** As many as are counted: one more than a reader is told of, or than is gathered. Fewer are few. */
 const counted = (asked: ListingsAsked): number => (asked.sort !== 'distance' && near(asked) ? GATHER_TO : COUNT_TO) + 1;
 
@@ -122,9 +136,12 @@ const counted = (asked: ListingsAsked): number => (asked.sort !== 'distance' && 
 export type ListingsWanted = Omit<ListingsAsked, 'from' | 'sort' | 'among' | 'cursor' | 'limit'> & { readonly from?: Point | null };
 
 /** Within so many miles, by the arc between two vectors of length one: three products, where the geography's own function costs a hundred times as much. */
-function within(sql: Sql, from: Point, radiusMi: number): string {
+const within = (sql: Sql, from: Point, radiusMi: number): string => `${productWith(sql, from)} >= ${sql.value(leastProduct(radiusMi))}::float8`;
+
+/** The product of a listing's unit vector with that of a point: the nearer, the larger. */
+function productWith(sql: Sql, from: Point): string {
   const [x, y, z] = unitVector(from).map((part) => `${sql.value(part)}::float8`);
-  return `l.unit_x * ${x} + l.unit_y * ${y} + l.unit_z * ${z} >= ${sql.value(leastProduct(radiusMi))}::float8`;
+  return `l.unit_x * ${x} + l.unit_y * ${y} + l.unit_z * ${z}`;
 }
 
 /** The stretches of the map that hold what lies within the distance; none when no distance is asked. */
@@ -210,16 +227,18 @@ export async function openListings(asked: ListingsAsked, at: Date): Promise<Foun
   const nearestFirst = asked.sort === 'distance' || asked.among !== undefined;
   const few = count < counted(asked) || (!nearestFirst && !near(asked) && (await foreseenFew(asked, at)));
   const { key, first, order, after } = ordering(sql, asked, here);
-  const wanted = nearestFirst ? '' : `${after ? `WHERE ${after} ` : ''}ORDER BY ${order} LIMIT ${asked.limit + 1}`;
+  const most = asked.limit + 1;
+  const inOrder = nearestFirst ? '' : `${after ? `WHERE ${after} ` : ''}ORDER BY ${order} LIMIT ${most}`;
   const met =
-    few && (near(asked) || !nearestFirst)
-      ? rowsOf(near(asked) ? inEachStretch(sql, asked, at, GATHER_TO) : gathered(sql, asked, at), wanted)
-      : `SELECT l.* FROM listing l WHERE ${[...conditions(sql, asked, at), ...(nearestFirst && !few ? [] : inStretches(sql, stretches(asked)))].join(' AND ')}${few ? ' OFFSET 0' : ''}`;
+    few && near(asked) && asked.from && asked.sort === 'distance' && asked.among === undefined && after === null ? nearestOf(sql, asked, asked.from, at, most)
+    : few && near(asked) ? rowsOf(inEachStretch(sql, asked, at, GATHER_TO), inOrder)
+    : few && !nearestFirst ? rowsOf(gathered(sql, asked, at), inOrder)
+    : `SELECT l.* FROM listing l WHERE ${[...conditions(sql, asked, at), ...(nearestFirst && !few ? [] : inStretches(sql, stretches(asked)))].join(' AND ')}${few ? ' OFFSET 0' : ''}`;
   const found = await rows<Row>(
     `WITH page AS (
        SELECT l.*, ${key} AS sort_key, ${here ? `l.coarse <-> ${here}` : 'NULL::float8'} AS metres, row_number() OVER (ORDER BY ${order}) AS place_in_page
-       FROM (SELECT l.* FROM ${drawnFrom(asked.among, met, here)} l${after ? ` WHERE ${after}` : ''} ORDER BY ${first ?? order} ${first ? `FETCH FIRST ${asked.limit + 1} ROWS WITH TIES` : `LIMIT ${asked.limit + 1}`}) l
-       ORDER BY ${order} LIMIT ${asked.limit + 1}
+       FROM (SELECT l.* FROM ${drawnFrom(asked.among, met, here)} l${after ? ` WHERE ${after}` : ''} ORDER BY ${first ?? order} ${first ? `FETCH FIRST ${most} ROWS WITH TIES` : `LIMIT ${most}`}) l
+       ORDER BY ${order} LIMIT ${most}
      )
      SELECT l.id, l.number, l.title, l.species, l.log_count AS "logCount", l.board_feet AS "boardFeet", l.largest_end_ob_in AS largest, l.metres,
        ST_Y(l.coarse::geometry) AS lat, ST_X(l.coarse::geometry) AS lng, coalesce(l.town, '') AS town, l.sort_key AS "sortKey",
