@@ -5,6 +5,7 @@ import { now } from '../clock.ts';
 import { Refusal, signedOut } from '../errors.ts';
 import { log } from '../log.ts';
 import type { Viewer } from '../viewer.ts';
+import { jsonResponse } from './json-response.ts';
 import { problemResponse, refusalResponse } from './problem.ts';
 
 /** What an endpoint's deed is given. */
@@ -68,7 +69,7 @@ function handle<Body, Query, Who>(spec: Spec<Body, Query, Who>, who: (viewer: Vi
       const answer = await spec.run({ body, query, params: context.params, viewer, at: now(), requestId: context.locals.requestId, context });
       if (answer instanceof Response) return answer;
       if (answer === undefined) return new Response(null, { status: 204 });
-      return new Response(JSON.stringify(answer), { headers: { 'content-type': 'application/json', 'cache-control': 'no-store' } });
+      return jsonResponse(context.request, JSON.stringify(answer));
     } catch (error) {
       if (error instanceof Refusal) return refusalResponse(error);
       log().error({ err: error, requestId: context.locals.requestId, path: context.routePattern }, 'endpoint failed');
