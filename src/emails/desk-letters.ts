@@ -1,3 +1,4 @@
+import { certificateNames, type CertificateKind } from '~/domain/certificate.ts';
 import { formatDayWithYear, type Day } from '~/domain/time.ts';
 import { letter } from './letter.ts';
 import type { MailMessage } from '~/server/services/mail.ts';
@@ -29,14 +30,22 @@ export const takenOut = (to: To, what: string, reason: string): MailMessage =>
     'If you think that this is wrong, answer this letter.',
   ]);
 
-/** To a sawyer whose certificate of insurance a moderator has seen. */
-export const certificateSeen = (to: To, expiresOn: Day, link: string): MailMessage =>
-  letter(to.email, 'Your certificate of insurance was seen', to.name, [
+/** To a sawyer whose certificate a moderator has seen. */
+export const certificateSeen = (to: To, kind: CertificateKind, expiresOn: Day, link: string): MailMessage =>
+  letter(to.email, `Your ${certificateNames[kind]} was seen`, to.name, [
     `Landowners now read beside your name: certificate seen, expires on ${formatDayWithYear(expiresOn)}.`,
-    'Send the next one before that day.',
+    'Send the next one before that day; we remind you a month and a week ahead.',
     { button: 'See your page', href: link },
   ]);
 
 /** To a sawyer whose certificate a moderator could not take. */
-export const certificateRefused = (to: To, reason: string, link: string): MailMessage =>
-  letter(to.email, 'Your certificate of insurance cannot be taken', to.name, [reason, { button: 'Send another', href: link }]);
+export const certificateRefused = (to: To, kind: CertificateKind, reason: string, link: string): MailMessage =>
+  letter(to.email, `Your ${certificateNames[kind]} cannot be taken`, to.name, [reason, { button: 'Send another', href: link }]);
+
+/** To a sawyer whose certificate runs out soon, or has run out. */
+export const certificateRunsOut = (to: To, kind: CertificateKind, expiresOn: Day, expired: boolean, link: string): MailMessage =>
+  letter(to.email, `Your ${certificateNames[kind]} ${expired ? 'has run out' : `runs out on ${formatDayWithYear(expiresOn)}`}`, to.name, [
+    expired ? `It expired on ${formatDayWithYear(expiresOn)}. Landowners no longer read that one was seen.` : `Until then landowners read beside your name: certificate seen, expires on ${formatDayWithYear(expiresOn)}. After that day they no longer do.`,
+    'Send the next one as a PDF or a picture of the paper; a moderator looks at it.',
+    { button: 'Send the next one', href: link },
+  ]);

@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { certificateKinds } from '~/domain/certificate.ts';
 import { parseDay } from '~/domain/time.ts';
 import { fieldOf, text } from './fields.ts';
 
@@ -13,7 +14,8 @@ export const outcomeForm = z.object({ outcome: reasonOf('Write what came of it: 
 export const offerForm = z.object({ note: reasonOf('Write why: the landowner reads it beside the tally.') });
 
 const expiryDay = fieldOf(parseDay);
+const kind = z.enum(certificateKinds);
 /** `sentAt` names the paper that was looked at, so that a newer one is not taken for it. */
-export const certificateForm = z.object({ expiresOn: expiryDay, sentAt: z.string().max(40).default('') });
-export const certificateRefusedForm = z.object({ refusal: reasonOf('Write why: the sawyer reads it.'), sentAt: z.string().max(40).default('') });
-export const handInForm = z.object({ file: z.uuid('Choose the file first.'), saysUntil: expiryDay });
+export const certificateForm = z.object({ kind, expiresOn: expiryDay, sentAt: z.string().max(40).default('') });
+export const certificateRefusedForm = z.object({ kind, refusal: reasonOf('Write why: the sawyer reads it.'), sentAt: z.string().max(40).default('') });
+export const handInForm = z.object({ kind, file: z.uuid('Choose the file first.'), saysUntil: expiryDay });

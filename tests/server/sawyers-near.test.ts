@@ -2,6 +2,7 @@ import { beforeAll, describe, expect, it } from 'vitest';
 import { coarsePoint, type Point } from '~/domain/geo.ts';
 import { execute, rows } from '~/server/db.ts';
 import { Account, Mill, RateCard, SawyerProfile } from '~/server/models/index.ts';
+import { Certificate } from '~/server/models/sawyer.ts';
 import { sawyerPage } from '~/server/queries/sawyer-page.ts';
 import { sawyersNear } from '~/server/queries/sawyers-near.ts';
 import { OAK_CARD } from '../support/rate-cards.ts';
@@ -48,7 +49,7 @@ describe('sawyers near', () => {
   });
 
   it('say that a certificate was seen only while it is valid', async () => {
-    await SawyerProfile.update({ certificateSeenAt: at, certificateExpiresOn: '2026-12-31' }, { where: { accountId: ids['near'] } });
+    await Certificate.create({ sawyerId: ids['near'] ?? '', kind: 'insurance', seenAt: at, expiresOn: '2026-12-31' });
     expect((await sawyerPage(ids['near'] ?? '', null, at)).certificateExpiresOn).toBe('2026-12-31');
     expect((await sawyerPage(ids['near'] ?? '', null, new Date('2027-01-02T00:00:00Z'))).certificateExpiresOn).toBeNull();
   });

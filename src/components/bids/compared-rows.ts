@@ -94,7 +94,7 @@ export function comparedRows(bids: readonly ComparedBid[], wants: Wants): readon
     row('Expected lumber tally', (bid) => figure(`${bf(bid.expectedBf)} bf`, [bid.expectedBy, bid.overrideReason === null ? '' : `“${bid.overrideReason}”`].filter(Boolean).join(': '))),
     row('Cost per bf sawn', (bid) => lowestPerBf(bid, figure(bid.frozen.estimate.quote.costPerBfCents === null ? '–' : formatCents(bid.frozen.estimate.quote.costPerBfCents))), { strong: true }),
     ...(wants.list ? [row('Your cut list', cutList, { note: 'as planned on that mill' })] : []),
-    ...(wants.dwelling ? [row('Lumber for a dwelling', ({ lumberCredential }) => (lumberCredential === '' ? words('none stated') : words(lumberCredential, 'as the sawyer states it')), { note: 'local code asks for a grade or certification' })] : []),
+    ...(wants.dwelling ? [row('Lumber for a dwelling', ({ lumberCredential, lumberCertificate }) => (lumberCredential === '' ? words(lumberCertificate ?? 'none stated') : words(lumberCredential, lumberCertificate ?? 'as the sawyer states it')), { note: 'local code asks for a grade or certification' })] : []),
     row('Mill', (bid) => words(bid.mill.name, millWords(bid.mill))),
     row('Logs that fit it', fit),
     row('Slabs and sawdust', (bid) => words({ left: 'stay at the landing', hauled: 'hauled away', bundled: 'bundled and left' }[bid.frozen.terms.waste])),

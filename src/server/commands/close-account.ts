@@ -1,3 +1,4 @@
+import { FORM_HOURS } from '~/domain/certificate.ts';
 import { accountStates } from '~/domain/states/account.ts';
 import { accountClosed } from '~/emails/account-letters.ts';
 import { execute, inTransaction } from '../db.ts';
@@ -15,6 +16,7 @@ const gone = [
   'DELETE FROM session WHERE account_id = $1',
   'DELETE FROM email_token WHERE account_id = $1',
   'DELETE FROM account_block WHERE blocker_id = $1 OR blocked_id = $1',
+  'DELETE FROM certificate WHERE sawyer_id = $1',
   'DELETE FROM day_off WHERE sawyer_id = $1',
   'DELETE FROM busy_day WHERE sawyer_id = $1',
   'DELETE FROM calendar_feed WHERE sawyer_id = $1',
@@ -25,10 +27,11 @@ const gone = [
 
 /** Rows that others' records need: they stay, and say nothing about the person any more. $2 is the time. */
 const blanked = [
-  `UPDATE sawyer_profile SET business_name = '', about = '', zip = NULL, town = NULL, base = NULL, services = '{}', languages = '{}', certificate_key = NULL, certificate_sent_at = NULL,
-     certificate_says_until = NULL, certificate_seen_at = NULL, certificate_expires_on = NULL, updated_at = $2 WHERE account_id = $1`,
+  `UPDATE sawyer_profile SET business_name = '', about = '', zip = NULL, town = NULL, base = NULL, services = '{}', languages = '{}', updated_at = $2 WHERE account_id = $1`,
   'UPDATE boards_left SET taken_down_at = coalesce(taken_down_at, $2) FROM listing WHERE listing.id = listing_id AND owner_id = $1',
   "UPDATE job_page SET landowner_agreed_at = NULL, sawyer_agreed_at = NULL, words = '', updated_at = $2 FROM booking WHERE booking.id = booking_id AND $1 IN (landowner_id, sawyer_id)",
+  // The files follow once no form can send another to their place.
+  `UPDATE certificate_file SET remove_after = $2::timestamptz + interval '${FORM_HOURS} hours' WHERE sawyer_id = $1 AND removed_at IS NULL`,
   'UPDATE mill SET retired_at = coalesce(retired_at, $2) WHERE sawyer_id = $1',
   "UPDATE photo SET removed_at = coalesce(removed_at, $2), caption = '', file_name = '' WHERE owner_id = $1",
   // Logs and measures stay for the other side's records of the job; where it was becomes the coarse point.

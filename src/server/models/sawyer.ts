@@ -1,6 +1,7 @@
+import type { CertificateKind } from '~/domain/certificate.ts';
 import type { BidState } from '~/domain/states/bid.ts';
 import type { ListCover } from '~/domain/trade/list-cover.ts';
-import { day, days, filled, id, instant, json, keyRef, keyWhole, nullable, point, real, ref, table, text, texts, whole, wholes, yes, type Row } from './table.ts';
+import { day, days, filled, givenId, id, instant, json, keyRef, keyWhole, nullable, point, real, ref, table, text, texts, whole, wholes, yes, type Row } from './table.ts';
 
 /** `base` is snapped to the coarse grid before it is stored. */
 export const SawyerProfile = table('sawyer_profile', {
@@ -18,17 +19,29 @@ export const SawyerProfile = table('sawyer_profile', {
   lumberCredential: filled(text()),
   workingDays: filled(wholes()),
   noticeDays: filled(whole()),
-  certificateKey: nullable(text()),
-  /** Set while one waits for a moderator, with the last day that the sawyer read from it. */
-  certificateSentAt: nullable(instant()),
-  certificateSaysUntil: nullable(day()),
-  certificateSeenAt: nullable(instant()),
-  certificateExpiresOn: nullable(day()),
   payoutAccount: nullable(text()),
   payoutsReady: filled(yes()),
   updatedAt: instant(),
 });
 export type SawyerProfile = Row<typeof SawyerProfile>;
+
+const keyKind = { options: { ...text<CertificateKind>().options, primaryKey: true } } as ReturnType<typeof text<CertificateKind>>;
+/** A sawyer's certificate of a kind: the one that waits for a moderator, with the last day that the sawyer read from it, and the one that was seen. */
+export const Certificate = table('certificate', {
+  sawyerId: keyRef(),
+  kind: keyKind,
+  waitingFile: nullable(ref()),
+  sentAt: nullable(instant()),
+  saysUntil: nullable(day()),
+  seenFile: nullable(ref()),
+  seenAt: nullable(instant()),
+  expiresOn: nullable(day()),
+  reminders: filled(whole()),
+});
+export type Certificate = Row<typeof Certificate>;
+
+/** A file of a certificate, from the form that lets it be sent to its removal from storage. */
+export const CertificateFile = table('certificate_file', { id: givenId(), sawyerId: ref(), kind: text<CertificateKind>(), formMadeAt: instant(), handedInAt: nullable(instant()), removeAfter: nullable(instant()), removedAt: nullable(instant()) });
 
 const keyDay = { options: { ...day().options, primaryKey: true } } as ReturnType<typeof day>;
 /** A day off that the sawyer took. */

@@ -26,6 +26,8 @@ export interface ComparedBid {
   readonly stars: number | null;
   /** `certificate seen, expires on …`; null when none was seen or it has expired. */
   readonly certificate: string | null;
+  /** The same of the credential for lumber of a dwelling. */
+  readonly lumberCertificate: string | null;
   /** The grade or certification for lumber of a dwelling that the sawyer states; empty for none. */
   readonly lumberCredential: string;
   readonly roadMiles: number;
@@ -54,6 +56,7 @@ interface Row {
   readonly reviews: number;
   readonly stars: number | null;
   readonly certificate_expires_on: string | null;
+  readonly lumber_expires_on: string | null;
   readonly road_miles: number;
   readonly mill: BidMill;
   readonly mill_id: string;
@@ -79,7 +82,8 @@ const SQL = `
     b.days_offered::text[] AS days_offered, b.message,
     (SELECT count(*)::int FROM booking k WHERE k.sawyer_id = b.sawyer_id AND k.status = 'settled') AS settled_jobs,
     r.reviews, r.stars,
-    CASE WHEN p.certificate_seen_at IS NOT NULL AND p.certificate_expires_on >= $2::date THEN p.certificate_expires_on::text END AS certificate_expires_on
+    (SELECT c.expires_on::text FROM certificate c WHERE c.sawyer_id = b.sawyer_id AND c.kind = 'insurance' AND c.expires_on >= $2::date) AS certificate_expires_on,
+    (SELECT c.expires_on::text FROM certificate c WHERE c.sawyer_id = b.sawyer_id AND c.kind = 'lumber' AND c.expires_on >= $2::date) AS lumber_expires_on
   FROM bid b
   JOIN account a ON a.id = b.sawyer_id
   LEFT JOIN sawyer_profile p ON p.account_id = b.sawyer_id
@@ -114,9 +118,11 @@ const order: Readonly<Record<BidSort, (a: ComparedBid, b: ComparedBid) => number
   distance: (a, b) => a.roadMiles - b.roadMiles,
 };
 
+const seenWords = (until: Day | null): string | null => (until === null ? null : `certificate seen, expires on ${formatDayWithYear(until)}`);
+
 const toBid = (row: Row, earliest: Day | null): ComparedBid => ({
   id: row.id, status: row.status, sawyerId: row.sawyer_id, sawyer: row.sawyer, settledJobs: row.settled_jobs, reviews: row.reviews, stars: row.stars,
-  certificate: row.certificate_expires_on === null ? null : `certificate seen, expires ${formatDayWithYear(row.certificate_expires_on)}`,
+  certificate: seenWords(row.certificate_expires_on), lumberCertificate: seenWords(row.lumber_expires_on),
   roadMiles: row.road_miles, mill: row.mill, lumberCredential: row.lumber_credential ?? '',
   cover: row.cut_list?.revision === row.listing_revision && row.cut_list.millId === row.mill_id ? row.cut_list : null, frozen: row.estimate, expectedCents: row.expected_cents, lowCents: row.low_cents, highCents: row.high_cents,
   holdCents: row.hold_cents, expectedBf: row.expected_bf_hundredths / 100, expectedBy: row.expected_by, overrideReason: row.override_reason,

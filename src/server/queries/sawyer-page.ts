@@ -19,6 +19,8 @@ export interface SawyerPage extends PublicSawyer {
   readonly languages: readonly string[];
   /** The grade or certification for lumber of a dwelling that the sawyer states; empty for none. */
   readonly lumberCredential: string;
+  /** A moderator looked at the paper behind it, which is valid until this day. */
+  readonly lumberCertificateExpiresOn: string | null;
   readonly noticeDays: number;
   readonly earliestOpenDay: string | null;
   readonly reviews: readonly PublicReview[];
@@ -37,7 +39,8 @@ export async function sawyerPage(id: string, from: Point | null, at: Date): Prom
   const today = sql.value(at);
   const here = from && `ST_SetSRID(ST_MakePoint(${sql.value(from.lng)}::float8, ${sql.value(from.lat)}::float8), 4326)::geography`;
   const found = await oneRow<Omit<SawyerPage, 'earliestOpenDay' | 'reviews'> & { timeZone: string | null }>(
-    `SELECT ${publicSawyerColumns(here ? `(s.base <-> ${here})` : 'NULL::float8', today)}, s.about, s.services, s.languages, s.lumber_credential AS "lumberCredential", s.notice_days AS "noticeDays", s.time_zone AS "timeZone"
+    `SELECT ${publicSawyerColumns(here ? `(s.base <-> ${here})` : 'NULL::float8', today)}, s.about, s.services, s.languages, s.lumber_credential AS "lumberCredential",
+       (SELECT c.expires_on::text FROM certificate c WHERE c.sawyer_id = a.id AND c.kind = 'lumber' AND c.expires_on >= ${today}::date) AS "lumberCertificateExpiresOn", s.notice_days AS "noticeDays", s.time_zone AS "timeZone"
      FROM sawyer_profile s JOIN account a ON a.id = s.account_id WHERE ${publicSawyerConditions} AND a.id = ${sql.value(id)}`,
     sql.values,
   );

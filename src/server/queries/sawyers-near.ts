@@ -49,7 +49,7 @@ export const publicSawyerColumns = (metres: string, at: string): string => `
   (SELECT count(*)::int FROM booking b WHERE b.sawyer_id = a.id AND b.status = 'settled') AS "settledJobs",
   (SELECT count(*)::int FROM review v WHERE v.subject_id = a.id AND v.hidden_at IS NULL) AS "reviewCount",
   (SELECT round(avg(v.stars), 1)::float8 FROM review v WHERE v.subject_id = a.id AND v.hidden_at IS NULL) AS "meanStars",
-  CASE WHEN s.certificate_seen_at IS NOT NULL AND s.certificate_expires_on >= ${at}::date THEN s.certificate_expires_on::text END AS "certificateExpiresOn"`;
+  (SELECT c.expires_on::text FROM certificate c WHERE c.sawyer_id = a.id AND c.kind = 'insurance' AND c.expires_on >= ${at}::date) AS "certificateExpiresOn"`;
 
 /** Who is shown: an account in good standing with a base, a mill and a rate card. */
 export const publicSawyerConditions = `a.status = 'active' AND a.is_sawyer AND a.email_confirmed_at IS NOT NULL AND s.base IS NOT NULL

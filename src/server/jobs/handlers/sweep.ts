@@ -1,6 +1,7 @@
 import { now } from '../../clock.ts';
 import { closeToBids, lapseListings } from '../../commands/close-listings.ts';
 import { countMap } from '../../commands/count-map.ts';
+import { removeCertificateFiles, remindOfCertificates } from '../../commands/keep-certificates.ts';
 import { readOtherCalendars } from '../../commands/other-calendar.ts';
 import { reviewTrips } from '../../commands/review-trip.ts';
 import { tellSearches } from '../../commands/tell-searches.ts';
@@ -26,6 +27,8 @@ export const sweeps: Readonly<Record<string, Sweep>> = {
   'sign or recall tallies': sweepTallies,
   'tell of tomorrow': tellEveningBefore,
   'remind of boards': remindOfBoards,
+  'remind of certificates': remindOfCertificates,
+  'remove files of certificates': removeCertificateFiles,
   // Last: it waits for others' servers, and no deadline may wait with it.
   'read other calendars': readOtherCalendars,
 };

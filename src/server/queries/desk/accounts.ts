@@ -1,3 +1,4 @@
+import type { CertificateKind } from '~/domain/certificate.ts';
 import { abilities, type Action } from '~/domain/permissions.ts';
 import type { AccountState } from '~/domain/states/account.ts';
 import { oneRow, rows } from '../../db.ts';
@@ -55,7 +56,7 @@ export interface DeskAccount extends DeskAccountRow {
   readonly secondFactorSince: Date | null;
   readonly termsVersion: string | null;
   readonly sessions: number;
-  readonly certificate: { readonly sentAt: Date | null; readonly saysUntil: string | null; readonly seenAt: Date | null; readonly expiresOn: string | null; readonly hasFile: boolean } | null;
+  readonly certificates: readonly { readonly kind: CertificateKind; readonly sentAt: Date | null; readonly saysUntil: string | null; readonly seenAt: Date | null; readonly expiresOn: string | null; readonly hasFile: boolean }[];
   readonly listings: readonly { readonly number: number; readonly title: string; readonly status: string }[];
   readonly bookings: readonly { readonly number: number; readonly title: string; readonly status: string; readonly side: 'landowner' | 'sawyer' }[];
   readonly reports: readonly ReportRow[];
@@ -69,7 +70,7 @@ const uuid = /^[0-9a-f]{8}(-[0-9a-f]{4}){3}-[0-9a-f]{12}$/i;
 /** One account at the desk: its newest 20 listings and bookings, reports about it, and its history. @throws Refusal `notFound` */
 export async function deskAccount(viewer: Viewer | null, id: string, at: Date): Promise<DeskAccount> {
   openDesk(viewer);
-  type Found = Omit<DeskAccount, 'certificate' | 'listings' | 'bookings' | 'reports' | 'history' | 'isSelf' | 'can'>;
+  type Found = Omit<DeskAccount, 'certificates' | 'listings' | 'bookings' | 'reports' | 'history' | 'isSelf' | 'can'>;
   const found = uuid.test(id)
     ? await oneRow<Found>(
         `SELECT ${columns}, a.zip, a.suspended_reason AS "suspendedReason", a.totp_confirmed_at AS "secondFactorSince", a.terms_version AS "termsVersion",
@@ -78,9 +79,9 @@ export async function deskAccount(viewer: Viewer | null, id: string, at: Date): 
       )
     : undefined;
   if (!found) throw notFound('account');
-  const certificate = await oneRow<NonNullable<DeskAccount['certificate']>>(
-    `SELECT certificate_sent_at AS "sentAt", certificate_says_until::text AS "saysUntil", certificate_seen_at AS "seenAt", certificate_expires_on::text AS "expiresOn", certificate_key IS NOT NULL AS "hasFile"
-     FROM sawyer_profile WHERE account_id = $1`,
+  const certificates = await rows<DeskAccount['certificates'][number]>(
+    `SELECT kind, sent_at AS "sentAt", says_until::text AS "saysUntil", seen_at AS "seenAt", expires_on::text AS "expiresOn", coalesce(waiting_file, seen_file) IS NOT NULL AS "hasFile"
+     FROM certificate WHERE sawyer_id = $1 ORDER BY kind`,
     [id],
   );
   const listings = await rows<DeskAccount['listings'][number]>(`SELECT number, coalesce(title, '') AS title, status FROM listing WHERE owner_id = $1 AND status <> 'draft' ORDER BY number DESC LIMIT 20`, [id]);
@@ -90,7 +91,7 @@ export async function deskAccount(viewer: Viewer | null, id: string, at: Date): 
     [id],
   );
   return {
-    ...found, certificate: certificate ?? null, listings, bookings, isSelf: id.toLowerCase() === viewer.id,
+    ...found, certificates, listings, bookings, isSelf: id.toLowerCase() === viewer.id,
     reports: await reportsAbout(viewer, 'account', id), history: await historyOf(viewer, 'account', id),
     can: abilities('account', baseRoles(viewer), found.status),
   };

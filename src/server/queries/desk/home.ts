@@ -1,3 +1,4 @@
+import type { CertificateKind } from '~/domain/certificate.ts';
 import { rows, oneRow } from '../../db.ts';
 import { openDesk } from '../../desk.ts';
 import type { Viewer } from '../../viewer.ts';
@@ -13,6 +14,7 @@ export interface WaitingBooking {
 
 export interface WaitingCertificate {
   readonly accountId: string;
+  readonly kind: CertificateKind;
   readonly name: string;
   readonly sentAt: Date;
   readonly saysUntil: string;
@@ -55,8 +57,8 @@ export async function deskHome(viewer: Viewer | null): Promise<DeskHome> {
   const noShows = await rows<Counted<WaitingBooking>>(booking(`EXISTS (SELECT 1 FROM no_show n WHERE n.booking_id = k.id AND n.status = 'contested')`));
   const ofSuspended = await rows<Counted<WaitingBooking>>(booking(`k.status NOT IN ('settled', 'lapsed', 'cancelled') AND (a.status = 'suspended' OR s.status = 'suspended')`));
   const certificates = await rows<Counted<WaitingCertificate>>(
-    `SELECT p.account_id AS "accountId", a.name, p.certificate_sent_at AS "sentAt", p.certificate_says_until::text AS "saysUntil", count(*) OVER ()::int AS whole
-     FROM sawyer_profile p JOIN account a ON a.id = p.account_id WHERE p.certificate_sent_at IS NOT NULL AND a.status <> 'closed' ORDER BY p.certificate_sent_at LIMIT ${most}`,
+    `SELECT c.sawyer_id AS "accountId", c.kind, a.name, c.sent_at AS "sentAt", c.says_until::text AS "saysUntil", count(*) OVER ()::int AS whole
+     FROM certificate c JOIN account a ON a.id = c.sawyer_id WHERE c.sent_at IS NOT NULL AND a.status <> 'closed' ORDER BY c.sent_at LIMIT ${most}`,
   );
   const stuck = await rows<Counted<StuckCall>>(
     `SELECT c.id, c.kind, k.number AS booking, coalesce(c.error, '') AS error, c.created_at AS since, count(*) OVER ()::int AS whole
