@@ -4,6 +4,7 @@ import { system } from '../../src/server/viewer.ts';
 import { tellBids } from './bids.ts';
 import { tellBookings } from './bookings.ts';
 import { calendarFrom } from './calendar.ts';
+import { tellCertificates } from './certificates.ts';
 import { tellListings } from './listings.ts';
 import { standIn } from './money.ts';
 import { tellPeople } from './people.ts';
@@ -23,6 +24,7 @@ export async function tellStory(now: Date): Promise<void> {
   const timeline = new Timeline(calendarFrom(now));
   tellPeople(timeline);
   tellSawyers(timeline);
+  tellCertificates(timeline);
   tellListings(timeline);
   tellPhotos(timeline);
   tellBids(timeline);

@@ -1,5 +1,6 @@
 import { closeToBids, lapseListings } from '../../src/server/commands/close-listings.ts';
 import { lapseUnpaid } from '../../src/server/commands/lapse-unpaid.ts';
+import { remindOfCertificates } from '../../src/server/commands/keep-certificates.ts';
 import { sweepTallies } from '../../src/server/jobs/handlers/sweep-tallies.ts';
 import type { Calendar } from './calendar.ts';
 import { handleMoney } from './money.ts';
@@ -33,5 +34,6 @@ async function sweep(at: Date): Promise<void> {
   await lapseListings(at);
   await lapseUnpaid(at);
   await sweepTallies(at);
+  await remindOfCertificates(at);
   await handleMoney(at);
 }
