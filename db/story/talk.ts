@@ -1,7 +1,8 @@
+import { reportThing } from '../../src/server/commands/report-thing.ts';
 import { markRead, openConversation, sendMessage } from '../../src/server/commands/send-message.ts';
 import { writeReview } from '../../src/server/commands/write-review.ts';
 import { bookingOf } from './bookings.ts';
-import { numberOf } from './listings.ts';
+import { listingOf, numberOf } from './listings.ts';
 import { who } from './people.ts';
 import type { Timeline } from './timeline.ts';
 
@@ -67,8 +68,12 @@ function tellTalk({ listing, owner, sawyer, lines }: Talk, timeline: Timeline): 
   }
 }
 
-/** What people wrote to each other, and about each other afterwards. */
+/** What people wrote to each other, about each other afterwards, and to the moderators. */
 export function tellTalks(timeline: Timeline): void {
   for (const one of talks) tellTalk(one, timeline);
   for (const { listing, from, on, stars, body } of reviews) timeline.add(on, '20:45', async (at) => writeReview(await who(from), { booking: (await bookingOf(listing)).number, stars, body }, at));
+  timeline.add(-1, '21:35', async (at) => {
+    const { id } = await listingOf('corin-mix');
+    await reportThing(await who('otis'), { thing: 'listing', thingId: id, reason: 'not-theirs', note: 'The windbreak on that side of the road is the township’s, as far as I know. Could somebody ask?', clientAddress: '' }, at);
+  });
 }
