@@ -44,13 +44,16 @@ function passes(layers: readonly Slice[], kerf: number, turnDeg: number, face?: 
   return cuts;
 }
 
-/** Flat boards that lie in the band of the turned ones, and the band's own lower and upper face. */
-function bandOf(flat: readonly Board[], turned: readonly Board[]): { readonly bottom: number; readonly top: number; readonly cant: readonly Board[] } {
+/**
+ * Flat boards that lie in the band of the turned ones, and the band's own lower and upper face. A flat board nearer than a kerf belongs
+ * to the band: a pass between would take wood from the turned ones.
+ */
+function bandOf(flat: readonly Board[], turned: readonly Board[], kerf: number): { readonly bottom: number; readonly top: number; readonly cant: readonly Board[] } {
   let bottom = Math.min(...turned.map((board) => section(board).bottom));
   let top = Math.max(...turned.map((board) => section(board).top));
   let cant: readonly Board[] = [];
   for (;;) {
-    const within = flat.filter((board) => section(board).top > bottom + NEAR && section(board).bottom < top - NEAR);
+    const within = flat.filter((board) => section(board).top > bottom - kerf + NEAR && section(board).bottom < top + kerf - NEAR);
     bottom = Math.min(bottom, ...within.map((board) => section(board).bottom));
     top = Math.max(top, ...within.map((board) => section(board).top));
     if (within.length === cant.length) return { bottom, top, cant: within };
@@ -87,7 +90,7 @@ export function cutsOf(log: LogShape, kerfIn: number, boards: readonly Board[], 
   if (quartered) return number(quarterCuts(log, boards, kerfIn));
   const fromBark = (board: Board): Slice => ({ low: pith + section(board).bottom, high: pith + section(board).top });
   if (turned.length === 0) return number(passes(slices(flat, fromBark), kerfIn, 0));
-  const { bottom, top, cant } = bandOf(flat, turned);
+  const { bottom, top, cant } = bandOf(flat, turned, kerfIn);
   const aboveBand = flat.filter((board) => section(board).bottom >= top - NEAR);
   const belowBand = flat.filter((board) => section(board).top <= bottom + NEAR);
   const upsideDown = (board: Board): Slice => ({ low: top - section(board).top, high: top - section(board).bottom });

@@ -1,0 +1,42 @@
+import type { Cut } from './cuts.ts';
+import { largeEnd, type LogShape } from './log-shape.ts';
+
+/** Where a cut runs in the drawing of the log's end as it first lay. */
+export interface CutLine {
+  readonly order: number;
+  /** How far the log is turned for it, degrees, clockwise seen from the drawn end: the cut lies level once it is turned. */
+  readonly turnDeg: number;
+  /** From the pith to the cut along the turned log's upright, in; negative below the pith. */
+  readonly fromPithIn: number;
+}
+
+/**
+ * The lines of a plan's cuts; of a quartered log those that quarter it, because its quarters then lie on the bed one by one. A height is over what lies on the bed: the bark with the pith half the large end's diameter over it, or
+ * a flat that an earlier cut has left: the top face for the turn over, the first side for the side opposite, the lower face for the
+ * cant that is laid back on it.
+ * @param core the wood that was planned in
+ */
+export function cutLines(core: LogShape, cuts: readonly Cut[]): CutLine[] {
+  const pith = largeEnd(core) / 2;
+  if (cuts.some(({ kind }) => kind === 'quarter')) return cuts.filter(({ kind }) => kind === 'quarter').map(({ order, turnDeg, heightIn }) => ({ order, turnDeg, fromPithIn: heightIn - pith }));
+  let [top, bottom, right] = [pith, pith, pith];
+  let turnedOver = false;
+  return cuts.map(({ order, turnDeg, heightIn }) => {
+    const onBark = { order, turnDeg, fromPithIn: heightIn - pith };
+    if (turnDeg === 0 && !turnedOver) {
+      top = onBark.fromPithIn;
+      return onBark;
+    }
+    turnedOver = true;
+    if (turnDeg === 180) {
+      bottom = top - heightIn;
+      return { order, turnDeg, fromPithIn: -bottom };
+    }
+    if (turnDeg === 90) {
+      right = onBark.fromPithIn;
+      return onBark;
+    }
+    if (turnDeg === 270) return { order, turnDeg, fromPithIn: heightIn - right };
+    return { order, turnDeg, fromPithIn: bottom + heightIn };
+  });
+}
