@@ -21,6 +21,10 @@ export interface DayBooking {
   readonly access: readonly Said[];
   readonly landing: readonly Said[];
   readonly note: string;
+  /** What this side has ready the evening before. */
+  readonly ready: readonly string[];
+  /** Tells whether the cut sheet that the phone keeps is still the plan. */
+  readonly sheetKey: string;
   /** The landowner's own: by it they sign on the sawyer's phone. Null for the sawyer. */
   readonly signingCode: string | null;
   readonly tally: TallyView;

@@ -54,6 +54,7 @@ export const operations: readonly Operation[] = [
   { method: 'get', path: '/api/day', summary: 'The bookings to come with all that a phone keeps of them for the milling day', signedIn: true },
   { method: 'get', path: '/api/bookings/{number}/tally', summary: 'The tally of a booking, for its two sides', signedIn: true },
   { method: 'put', path: '/api/bookings/{number}/tally', summary: 'Enter boards, hits, cull logs, hours; each once by its id', signedIn: true, body: tallyEntriesBody },
+  { method: 'get', path: '/api/bookings/{number}/cut-sheet', summary: 'The cut sheet of a booking with its drawing, for its two sides', signedIn: true },
   { method: 'post', path: '/api/bookings/{number}/photos', summary: 'Begin the upload of a photograph of the milling day, under an id of its own', signedIn: true, body: beginDayPhotoSchema, answer: beginDayPhotoAnswer },
   { method: 'get', path: '/api/places', summary: 'What a ZIP code is called and where it lies', query: placeQuery, answer: placeAnswer },
   { method: 'get', path: '/api/quoting-practice', summary: 'What the sawyers near a ZIP code charge by: counts, and none where they are few', query: quotingPracticeQuery, answer: quotingPracticeAnswer },

@@ -158,6 +158,7 @@ export const routes: Readonly<Record<string, Route>> = {
   'api/listings/draft.ts': { path: at('/api/listings/draft'), POST: API_POST },
   'api/bookings/[number]/tally.ts': { path: ({ queried }) => `/api/bookings/${queried}/tally`, GET: '401 404 200 404 200 404 200', PUT: API_POST },
   'api/bookings/[number]/photos.ts': { path: ({ queried }) => `/api/bookings/${queried}/photos`, POST: API_POST },
+  'api/bookings/[number]/cut-sheet.ts': { path: ({ queried }) => `/api/bookings/${queried}/cut-sheet`, GET: '401 404 200 404 200 404 200' },
   'api/day.ts': { path: at('/api/day'), GET: '401 200 200 200 200 200 200' },
   'api/health/index.ts': { path: at('/api/health'), GET: ALL },
   'api/health/live.ts': { path: at('/api/health/live'), GET: ALL },

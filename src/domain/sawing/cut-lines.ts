@@ -10,6 +10,20 @@ export interface CutLine {
   readonly fromPithIn: number;
 }
 
+/** What the cuts made so far have left, as a rectangle round the pith in the drawing, y upward; infinite where nothing has been cut. */
+export interface Left {
+  readonly left: number;
+  readonly right: number;
+  readonly bottom: number;
+  readonly top: number;
+}
+
+/** What stands between the innermost cuts of each side. Cuts that quarter the log leave it whole: its quarters are drawn together. */
+export function leftAfter(made: readonly CutLine[]): Left {
+  const nearest = (turnDeg: number): number => Math.min(...made.filter((line) => line.turnDeg === turnDeg).map(({ fromPithIn }) => fromPithIn));
+  return { left: -nearest(270), right: nearest(90), bottom: -nearest(180), top: nearest(0) };
+}
+
 /**
  * The lines of a plan's cuts; of a quartered log those that quarter it, because its quarters then lie on the bed one by one. A height is over what lies on the bed: the bark with the pith half the large end's diameter over it, or
  * a flat that an earlier cut has left: the top face for the turn over, the first side for the side opposite, the lower face for the

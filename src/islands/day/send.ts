@@ -1,6 +1,7 @@
 import { paths } from '~/domain/paths.ts';
 import type { DayPack } from '~/schemas/day.ts';
 import type { TallyView } from '~/schemas/tally-view.ts';
+import { keepSheets } from './cut-sheets.ts';
 import { database, holderOf, keepPack, keepTally, markSignedOut, tellChange, type Waiting } from './store.ts';
 import { sendPictures } from './pictures.ts';
 import { setAside, takeOff } from './queue.ts';
@@ -101,6 +102,7 @@ export async function refresh(): Promise<Sending> {
     if (!response.ok) return 'no-signal';
     const pack: DayPack = await response.json();
     await keepPack(pack);
+    keepSheets(pack).catch(() => undefined);
     return 'sent';
   } catch {
     return 'no-signal';

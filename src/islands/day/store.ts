@@ -1,4 +1,5 @@
 import { openDB, type DBSchema, type IDBPDatabase } from 'idb';
+import type { CutSheetView } from '~/schemas/cut-sheet.ts';
 import type { DayBooking, DayPack } from '~/schemas/day.ts';
 import type { ShownOnTheDay } from '~/schemas/day-photo.ts';
 import type { TallyEntry } from '~/schemas/tally-entries.ts';
@@ -51,18 +52,22 @@ interface Schema extends DBSchema {
   refused: { key: number; value: Refused; indexes: { ofBooking: Key } };
   pictures: { key: string; value: Picture; indexes: { ofBooking: Key } };
   sent: { key: Key; value: { readonly accountId: string; readonly booking: number; readonly at: string } };
+  /** Cut sheets, with the cut at which the saw stands, log by log. */
+  sheets: { key: Key; value: CutSheetView & { readonly accountId: string; readonly cutAt: Readonly<Record<string, number>> } };
   holder: { key: string; value: Holder };
 }
 
 export type KeptBooking = Schema['kept']['value'];
+export type KeptSheet = Schema['sheets']['value'];
 
 let opened: Promise<IDBPDatabase<Schema>> | undefined;
 
 /** The phone's own database. */
 export const database = (): Promise<IDBPDatabase<Schema>> =>
-  (opened ??= openDB<Schema>('skidway', 2, {
+  (opened ??= openDB<Schema>('skidway', 3, {
     upgrade(db, before) {
       if (before < 2) db.createObjectStore('pictures', { keyPath: 'id' }).createIndex('ofBooking', ['accountId', 'booking']);
+      if (before < 3) db.createObjectStore('sheets', { keyPath: ['accountId', 'booking'] });
       if (before >= 1) return;
       db.createObjectStore('kept', { keyPath: ['accountId', 'number'] });
       db.createObjectStore('tally', { keyPath: ['accountId', 'booking'] });
@@ -103,7 +108,7 @@ export const holderOf = async (): Promise<Holder | undefined> => (await database
 export async function keepPack(pack: DayPack): Promise<void> {
   const db = await database();
   const { id: accountId, name } = pack.account;
-  const work = db.transaction(['kept', 'tally', 'holder', 'waiting', 'refused', 'pictures'], 'readwrite', { durability: 'strict' });
+  const work = db.transaction(['kept', 'tally', 'sheets', 'holder', 'waiting', 'refused', 'pictures'], 'readwrite', { durability: 'strict' });
   const told = new Set(pack.bookings.map(({ number }) => number));
   for (const old of await work.objectStore('kept').getAll()) {
     const key: Key = [old.accountId, old.number];
@@ -113,6 +118,7 @@ export async function keepPack(pack: DayPack): Promise<void> {
     if (unsent === 0 && (old.accountId !== accountId || !told.has(old.number))) {
       await work.objectStore('kept').delete(key);
       await work.objectStore('tally').delete(key);
+      await work.objectStore('sheets').delete(key);
     }
   }
   for (const { tally, ...booking } of pack.bookings) {
@@ -149,9 +155,10 @@ export async function unsentCount(accountId?: string): Promise<number> {
 /** On signing out: the days leave the phone, entries that were not sent stay for when their account signs in again. */
 export async function letGo(): Promise<void> {
   const db = await database();
-  const work = db.transaction(['kept', 'tally', 'holder', 'sent'], 'readwrite');
+  const work = db.transaction(['kept', 'tally', 'sheets', 'holder', 'sent'], 'readwrite');
   await work.objectStore('kept').clear();
   await work.objectStore('tally').clear();
+  await work.objectStore('sheets').clear();
   await work.objectStore('sent').clear();
   await work.objectStore('holder').clear();
   await work.done;

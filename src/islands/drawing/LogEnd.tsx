@@ -1,4 +1,5 @@
 import type { ReactElement } from 'react';
+import type { CutLine, Left } from '~/domain/sawing/cut-lines.ts';
 import { boardRect, outline, ringRadii, seedOf, smoothPath, closedPath, type DrawnBoard } from '~/domain/drawing.ts';
 
 export interface LogEndProps {
@@ -21,12 +22,14 @@ export interface LogEndProps {
   readonly scaleBarIn?: number | undefined;
   /** A dashed circle of this diameter, in: the small end of a log drawn at its large end. */
   readonly ringIn?: number | undefined;
+  /** Shows one cut as it is made: the log turned for it, what earlier cuts have left, the bed below. */
+  readonly cut?: { readonly line: CutLine; readonly left: Left } | undefined;
   /** What the picture shows, in words; left out, the picture is decoration beside its figures. */
   readonly label?: string | undefined;
 }
 
 /** A log end to scale with its sawing plan: bark, sapwood, heartwood, rings, and the boards it gives. Static SVG, no script. */
-export function LogEnd({ smallEndIn, barkIn = smallEndIn * 0.025, heartShare = 0.72, heartDefectIn, seed, boards = [], frameIn, sizePx = 184, scaleBarIn, ringIn, label }: LogEndProps): ReactElement {
+export function LogEnd({ smallEndIn, barkIn = smallEndIn * 0.025, heartShare = 0.72, heartDefectIn, seed, boards = [], frameIn, sizePx = 184, scaleBarIn, ringIn, cut, label }: LogEndProps): ReactElement {
   const radius = smallEndIn / 2;
   const number = seedOf(seed);
   const frame = Math.max(frameIn ?? 0, (radius + barkIn) * 2 * 1.075);
@@ -37,6 +40,8 @@ export function LogEnd({ smallEndIn, barkIn = smallEndIn * 0.025, heartShare = 0
   const grown = 1 + barkIn / radius;
   return (
     <svg className="log-drawing" width={sizePx} height={Math.round((sizePx * (frame + foot)) / frame)} viewBox={`${-half} ${-half} ${frame} ${frame + foot}`} focusable="false" {...words}>
+      {cut && <clipPath id={`left-${number}`}><rect {...clipOf(cut.left, half)} /></clipPath>}
+      <g transform={cut ? `rotate(${-cut.line.turnDeg})` : undefined}><g clipPath={cut ? `url(#left-${number})` : undefined}>
       <g data-wood="">
       <path className="log-bark" d={closedPath(wood.map((point) => ({ x: point.x * grown, y: point.y * grown })))} />
       <path className="log-sapwood" d={closedPath(wood)} />
@@ -50,9 +55,24 @@ export function LogEnd({ smallEndIn, barkIn = smallEndIn * 0.025, heartShare = 0
       {boards.map((board) => (
         <rect data-start={board.startFt} className={Math.min(board.thicknessIn, board.widthIn) >= 5 ? 'log-board-timber' : 'log-board'} key={`${board.xIn},${board.yIn}`} {...boardRect(board)} />
       ))}
+      </g></g>
+      {cut && <path className="log-scale" d={`M${-half} ${underside(cut, radius + barkIn)}h${frame}`} />}
+      {cut && <path className="log-cut-now" d={`M${-half} ${-cut.line.fromPithIn}h${frame}`} />}
       {scaleBarIn ? <ScaleBar lengthIn={scaleBarIn} top={half + foot * 0.25} size={frame * 0.07} /> : null}
     </svg>
   );
+}
+
+/** The rectangle that is left, in SVG's axes and no larger than the frame. */
+function clipOf({ left, right, bottom, top }: Left, half: number): { x: number; y: number; width: number; height: number } {
+  const [from, to, low, high] = [Math.max(-half, left), Math.min(half, right), Math.max(-half, bottom), Math.min(half, top)];
+  return { x: from, y: -high, width: to - from, height: high - low };
+}
+
+/** Where the bed lies below the turned log, in SVG's axes: under the flat that was cut on that side, or under the bark. */
+function underside({ line, left }: NonNullable<LogEndProps['cut']>, barkRadiusIn: number): number {
+  const flats: Readonly<Record<number, number>> = { 0: -left.bottom, 90: -left.left, 180: left.top, 270: left.right };
+  return Math.min(barkRadiusIn, flats[line.turnDeg] ?? barkRadiusIn);
 }
 
 function ScaleBar({ lengthIn, top, size }: { readonly lengthIn: number; readonly top: number; readonly size: number }): ReactElement {

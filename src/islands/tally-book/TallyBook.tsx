@@ -6,8 +6,10 @@ import { tallyRuleOf } from '~/domain/trade/tally-count.ts';
 import { thicknessName } from '~/domain/timber/tally.ts';
 import type { TallyEntry } from '~/schemas/tally-entries.ts';
 import type { TallyView } from '~/schemas/tally-view.ts';
+import { useCutSheet } from '~/islands/day/cut-sheets.ts';
 import { SavedBadge, SendingTrouble } from '~/islands/day/SavedLine.tsx';
 import { CullLogs, Extras, Hours, MetalHits } from './Beside.tsx';
+import { CutSheet } from './CutSheet.tsx';
 import { bySize, countView, oneBoard, stillWanted } from './count.ts';
 import { Pad, readInches } from './Pad.tsx';
 import { BoardPhotographs, usePhotographs } from './Photographs.tsx';
@@ -40,6 +42,7 @@ export function TallyBook({ view, accountId, fresh }: Props): ReactElement {
 export function TallyPad({ queue }: { readonly queue: TallyQueue }): ReactElement {
   const { view, add } = queue;
   const photographs = usePhotographs(queue.accountId, view.booking);
+  const { sheet, goTo: goToCut } = useCutSheet(queue.accountId, view.booking);
   const hardwood = tallyRuleOf(view.terms) === 'hardwood';
   const [logAt, setLogAt] = useState(0);
   const log = view.logs[logAt] ?? view.logs[0];
@@ -87,6 +90,7 @@ export function TallyPad({ queue }: { readonly queue: TallyQueue }): ReactElemen
             {view.logs.map((one, index) => <option key={one.id} value={index}>{one.label}: {one.speciesName}, {one.size}</option>)}
           </select>
         </fieldset>
+        {log && <CutSheet sheet={sheet} log={log} goTo={goToCut} />}
         {wanted.length > 0 && (
           <fieldset className="mt-3">
             <legend className="text-sm">Still wanted for the cut list</legend>

@@ -5,10 +5,13 @@ import { abilities } from '~/domain/permissions.ts';
 import { addHours, formatDayWithYear } from '~/domain/time.ts';
 import type { DayBooking, DayPack } from '~/schemas/day.ts';
 import { rolesOnBooking } from '../authorize.ts';
+import { readyTheEveningBefore } from '~/domain/trade/evening-before.ts';
+import { cutSheetKey } from '../cut-sheets.ts';
 import { bookedDaysOf } from '../invitations.ts';
 import { Booking, Listing, SigningCode } from '../models/index.ts';
 import { otherParty, partiesOf } from '../parties.ts';
 import { notePlaceSeen } from '../place-views.ts';
+import { stickersOf } from '../stickers-of.ts';
 import { tallyView } from '../tally-view.ts';
 import { tallyWork } from '../tally-work.ts';
 import type { Viewer } from '../viewer.ts';
@@ -26,10 +29,11 @@ async function dayBooking(viewer: Viewer, booking: Booking, at: Date): Promise<D
   const exact = can.seePlace && listing.place ? exactPlace(listing) : null;
   if (exact) await notePlaceSeen({ ...viewer, isModerator: false }, listing, at, { booking: booking.number });
   const { access, landing, waste } = listing;
+  const side = viewer.id === booking.landownerId ? 'landowner' : 'sawyer';
   return {
     number: booking.number,
     title: listing.title ?? '',
-    side: viewer.id === booking.landownerId ? 'landowner' : 'sawyer',
+    side,
     status: booking.status,
     otherName: other.name,
     otherEmail: other.email,
@@ -42,6 +46,8 @@ async function dayBooking(viewer: Viewer, booking: Booking, at: Date): Promise<D
     access: access ? accessSaid(access as unknown as Access) : [],
     landing: landing && waste ? landingSaid(landing as unknown as Landing, waste as unknown as Waste) : [],
     note: listing.note,
+    ready: readyTheEveningBefore(side, await stickersOf(listing)),
+    sheetKey: await cutSheetKey(booking),
     signingCode: viewer.id === booking.landownerId ? ((await SigningCode.findByPk(booking.id))?.code ?? null) : null,
     tally: await tallyView(booking, await tallyWork(booking)),
   };

@@ -1,19 +1,14 @@
 import { paths } from '~/domain/paths.ts';
 import { dayStart } from '~/domain/time.ts';
-import { boardsOf, isEveningBefore, readyTheEveningBefore, stickersFor } from '~/domain/trade/evening-before.ts';
+import { isEveningBefore, readyTheEveningBefore } from '~/domain/trade/evening-before.ts';
 import { eveningBefore } from '~/emails/booking-letters.ts';
 import { makeSigningCode } from '../../commands/sign-on-the-spot.ts';
 import { inTransaction, rows } from '../../db.ts';
 import { startTimeOf } from '../../invitations.ts';
-import { BookedDay, Booking, Listing, Piece } from '../../models/index.ts';
+import { BookedDay, Booking, Listing } from '../../models/index.ts';
 import { linkTo, partiesOf } from '../../parties.ts';
+import { stickersOf } from '../../stickers-of.ts';
 import { enqueue } from '../queue.ts';
-
-async function stickersOf(listing: Listing): Promise<number> {
-  const [species = 'white-oak'] = listing.species;
-  const pieces = await Piece.findAll({ where: { listingId: listing.id } });
-  return stickersFor(pieces.length > 0 ? pieces.map(({ thicknessIn, widthIn, lengthFt, count }) => ({ species, thicknessIn, widthIn, lengthFt, count })) : [boardsOf(species, listing.boardFeet)]);
-}
 
 async function tell(id: string, at: Date): Promise<void> {
   await inTransaction(async () => {
