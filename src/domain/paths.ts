@@ -72,6 +72,7 @@ export const paths = {
   tally: (number: number) => `/bookings/${number}/tally`,
   signTally: (number: number) => `/bookings/${number}/sign`,
   tallyPdf: (number: number) => `/bookings/${number}/tally.pdf`,
+  dayPhotographs: (number: number) => `/bookings/${number}/photographs`,
   afterJob: (number: number) => `/bookings/${number}/after`,
   shareJob: (number: number) => `/bookings/${number}/share`,
   /** A job shown around, by its booking's number. */

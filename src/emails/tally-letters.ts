@@ -53,6 +53,16 @@ export const holdNears = (to: To, warning: keyof typeof nearWords, facts: readon
     { button: isLandowner ? 'Decide' : 'Open the tally', href: link },
   ]);
 
+/** Logs are more than the landowner knows of: they are asked before these are sawn. */
+export const logsToAgree = (to: To, sawyer: string, logs: readonly (readonly [label: string, why: string])[], facts: readonly (readonly [string, string])[], link: string): MailMessage =>
+  letter(to.email, logs.length === 1 ? `${sawyer} asks about a log before it is sawn` : `${sawyer} asks about ${logs.length} logs before they are sawn`, to.name, [
+    `${sawyer} has measured at the landing:`,
+    { facts: logs },
+    ...(facts.length > 0 ? [{ facts }] : []),
+    'Until you agree, such a log is charged as listed, and boards of a log that is not on the listing count nothing.',
+    { button: 'Decide', href: link },
+  ]);
+
 /** Something was allowed in the landowner's name on the sawyer's phone: the landowner hears of it at once. */
 export const allowedOnPhone = (to: To, sawyer: string, what: string, name: string, link: string): MailMessage =>
   letter(to.email, `Allowed on ${sawyer}’s phone: ${what}`, to.name, [

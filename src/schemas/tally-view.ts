@@ -1,6 +1,7 @@
 import type { BookingState } from '~/domain/states/booking.ts';
 import type { ClockActivity, ClockCorrection } from '~/domain/trade/clock.ts';
 import type { Allowance } from '~/domain/trade/day-job.ts';
+import type { BidOfDay } from '~/domain/trade/day-estimate.ts';
 import type { MillLimits } from '~/domain/trade/mill-fit.ts';
 import type { BidTerms } from '~/domain/trade/rate-card.ts';
 import type { TallyExtras } from '~/domain/trade/tally-count.ts';
@@ -49,6 +50,8 @@ export interface TallyView {
   /** Photographs of the day that have arrived. */
   readonly photos: readonly { readonly id: string; readonly shows: 'metal' | 'boards'; readonly hitId: string | null }[];
   readonly mill: MillLimits | null;
+  /** What the bid froze of its estimate; null where there is none to go by. */
+  readonly bid: BidOfDay | null;
   readonly endedBySawyer: boolean;
   readonly queries: readonly TallyQueryView[];
 }

@@ -3,7 +3,7 @@ import { tallyLog } from '~/schemas/tally-log.ts';
 import type { TallyQueryView, TallyView } from '~/schemas/tally-view.ts';
 import { env } from './env.ts';
 import { dayPhotos } from './day-photos.ts';
-import { dayLogs, frozenMill } from './day-logs.ts';
+import { bidOfDay, dayLogs, frozenMill } from './day-logs.ts';
 import { type Booking, Piece, TallyQuery } from './models/index.ts';
 import { frozenTerms, heldCentsOf, jobLogs, type TallyWork } from './tally-work.ts';
 
@@ -42,6 +42,7 @@ export async function tallyView(booking: Booking, work: TallyWork | null): Promi
     parts: (work?.parts ?? []).map(({ id, signedName, lineIds, costCents }) => ({ id, name: signedName, lineIds, costCents })),
     photos: (await dayPhotos(booking.id)).map(({ id, shows, hitId }) => ({ id, shows, hitId })),
     mill,
+    bid: await bidOfDay(booking),
     endedBySawyer: work?.tally.endedBySawyer ?? false,
     queries: queries.map((query) => ({ id: query.id, line: query.line, lineId: query.lineId, says: query.says, answer: query.answer, decision: query.decision as TallyQueryView['decision'], because: query.decidedBecause })),
   };

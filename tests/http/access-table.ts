@@ -106,6 +106,7 @@ export const routes: Readonly<Record<string, Route>> = {
   'bookings/[number]/sign.astro': { path: ({ queried }) => `/bookings/${queried}/sign`, GET: PARTIES, POST: 'in 404 422 404 422 404 422' },
   'bookings/[number]/tally.pdf.ts': { path: ({ queried }) => `/bookings/${queried}/tally.pdf`, GET: PARTIES },
   'bookings/[number]/after.astro': { path: ({ queried }) => `/bookings/${queried}/after`, GET: PARTIES, POST: 'in 404 422 404 422 404 422' },
+  'bookings/[number]/photographs.astro': { path: ({ queried }) => `/bookings/${queried}/photographs`, GET: PARTIES, POST: 'in 404 422 404 422 404 422' },
   'bookings/[number]/share.astro': { path: ({ queried }) => `/bookings/${queried}/share`, GET: 'in 404 409 404 409 404 409', POST: 'in 404 409 404 409 404 409' },
   'jobs/[number].astro': { path: ({ queried }) => `/jobs/${queried}`, GET: NOBODY },
   'bookings/[number]/decide.astro': { path: ({ queried }) => `/bookings/${queried}/decide`, GET: DESK, POST: DESK_POST },

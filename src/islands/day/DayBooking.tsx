@@ -1,12 +1,13 @@
 import { useEffect, useState, type ReactElement } from 'react';
-import { buttonKinds, gloveSize, join } from '~/components/classes.ts';
 import type { Said } from '~/domain/listing/page-words.ts';
-import { paths } from '~/domain/paths.ts';
 import { formatDay, formatInstant } from '~/domain/time.ts';
+import { measuresSaid } from '~/domain/trade/day-logs.ts';
 import { TallyPad } from '~/islands/tally-book/TallyBook.tsx';
 import { useTallyQueue } from '~/islands/tally-book/use-tally-queue.ts';
 import type { TallyView } from '~/schemas/tally-view.ts';
 import { CheckList } from './CheckList.tsx';
+import { useCutSheet } from './cut-sheets.ts';
+import { LandownersDay } from './LandownersDay.tsx';
 import { OfferAndSign } from './OfferAndSign.tsx';
 import { entriesOf, putEntries } from './queue.ts';
 import { savedWords, SendingTrouble } from './SavedLine.tsx';
@@ -37,12 +38,13 @@ export function DayBooking({ booking }: { readonly booking: KeptBooking }): Reac
     <div data-ready={view ? 'true' : undefined} data-outdoors>
       <nav className="mx-auto max-w-[34rem] px-4" aria-label="Back"><a className="inline-flex min-h-glove items-center" href="#">All milling days</a></nav>
       {view && mine && begun && <DayTally view={view} booking={booking} />}
+      {view && !mine && <LandownersDay view={view} booking={booking} />}
       <div className="mx-auto max-w-[34rem] px-4 pb-12">
-        <h1 className={begun && mine ? 'mt-10 text-2xl' : 'mt-2'}>{booking.title}</h1>
+        <Title second={begun && !mine}>{booking.title}</Title>
         <p className="mt-1">{booking.startsAt ? `${booking.days.map(formatDay).join(', ')}. Starts ${formatInstant(new Date(booking.startsAt), booking.timeZone)}.` : 'No day yet.'}</p>
         {mine && view && !begun && <CheckList place={booking.place} onStart={start} />}
         {!mine && booking.signingCode && <p className="mt-4">To sign on {booking.otherName}’s phone: <span className="figure text-2xl font-bold">{booking.signingCode}</span>. Keep it to yourself until you sign.</p>}
-        {!mine && <p className="mt-4"><a className={join(buttonKinds.primary, gloveSize, 'w-full')} href={paths.signTally(booking.number)}>Read the tally</a></p>}
+        {!begun && <Ready booking={booking} />}
         <Facts booking={booking} />
         {view && <Logs view={view} />}
       </div>
@@ -62,6 +64,27 @@ function DayTally({ view, booking }: { readonly view: TallyView; readonly bookin
         <OfferAndSign queue={queue} otherName={booking.otherName} />
       </div>
     </>
+  );
+}
+
+/** The page's own heading, under the tally's once that is there. */
+const Title = ({ second, children }: { readonly second: boolean; readonly children: string }): ReactElement =>
+  second ? <h2 className="mt-10 text-2xl">{children}</h2> : <h1 className="mt-2">{children}</h1>;
+
+/** Whether the cut sheet has come, in words that end the line. */
+function SheetHere({ booking }: { readonly booking: KeptBooking }): ReactElement {
+  const { sheet } = useCutSheet(booking.accountId, booking.number);
+  return <>{sheet ? ' and the cut sheet with its drawings' : '. The cut sheet is not here yet: leave this page open with signal'}</>;
+}
+
+/** What this side has ready the evening before; and what of the day is on the phone. */
+function Ready({ booking }: { readonly booking: KeptBooking }): ReactElement {
+  return (
+    <section className="mt-8" aria-labelledby="ready">
+      <h2 id="ready">Ready the evening before</h2>
+      <ul className="mt-1 border-t border-rule">{booking.ready.map((line) => <li key={line} className="border-b border-rule py-2">{line}</li>)}</ul>
+      <p className="mt-2" data-testid="on-this-phone">On this phone: the place, the logs{booking.side === 'sawyer' ? <>, the tally book<SheetHere booking={booking} /></> : ' and the tally as it is sent'}.</p>
+    </section>
   );
 }
 
@@ -110,7 +133,7 @@ function Logs({ view }: { readonly view: TallyView }): ReactElement {
       <h2 className="mt-8">Logs</h2>
       <table className="ruled mt-1 w-full">
         <thead><tr><th scope="col">Log</th><th scope="col" className="num">Size</th><th scope="col" className="num">Intl ¼, bf</th></tr></thead>
-        <tbody>{view.logs.map((log) => <tr key={log.id}><th scope="row" className="font-normal">{log.label}: {log.speciesName}</th><td className="num">{log.size}</td><td className="num">{log.netBoardFeet.internationalQuarter}</td></tr>)}</tbody>
+        <tbody>{view.logs.map((log) => <tr key={log.id}><th scope="row" className="font-normal">{log.label}: {log.speciesName}</th><td className="num">{log.size}{log.measured && <span className="block text-ink-soft">listed {measuresSaid(log.listed)}</span>}</td><td className="num">{log.netBoardFeet.internationalQuarter}</td></tr>)}</tbody>
       </table>
       {view.cutList.length > 0 && (
         <>

@@ -17,11 +17,13 @@ interface LandownersWordProps {
   readonly children: ReactNode;
   /** Asks for the landowner's code, which only they know. */
   readonly withCode?: boolean;
+  /** The landowner's own phone: they are spoken to. */
+  readonly own?: boolean;
   readonly onSign: (word: Word, code: string | null) => void;
 }
 
-/** The phone is handed over: the landowner reads, writes their name and signs with a finger. */
-export function LandownersWord({ id, action, children, withCode = false, onSign }: LandownersWordProps): ReactElement {
+/** The landowner reads, writes their name and signs with a finger: on the sawyer's phone, handed over, or on their own. */
+export function LandownersWord({ id, action, children, withCode = false, own = false, onSign }: LandownersWordProps): ReactElement {
   const [name, setName] = useState('');
   const [code, setCode] = useState('');
   const [path, setPath] = useState('');
@@ -39,7 +41,7 @@ export function LandownersWord({ id, action, children, withCode = false, onSign 
   return (
     <form className="mt-3 grid gap-4 border-2 border-ink bg-paper p-4" onSubmit={(event) => (event.preventDefault(), sign())}>
       <div>{children}</div>
-      <Field name={`word-${id}`} label="Landowner’s name" autoComplete="off" value={name} error={problems.name} onChange={(event) => setName(event.target.value)} />
+      <Field name={`word-${id}`} label={own ? 'Your name' : 'Landowner’s name'} autoComplete={own ? 'name' : 'off'} value={name} error={problems.name} onChange={(event) => setName(event.target.value)} />
       {withCode && <Field name={`code-${id}`} label="Landowner’s signing code" hint="Only the landowner has it. Without it, they sign on their own phone or at home." inputMode="numeric" autoComplete="off" figure width="short" maxLength={6} value={code} error={problems.code} onChange={(event) => setCode(event.target.value)} />}
       <SignaturePad path={path} onChange={setPath} />
       {problems.path && <p className="border-l-4 border-heartwood pl-2 font-semibold text-heartwood" role="alert">{problems.path}</p>}

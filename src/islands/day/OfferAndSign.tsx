@@ -10,7 +10,7 @@ import { sizeName } from '~/islands/tally-book/size-name.ts';
 import type { TallyQueue } from '~/islands/tally-book/use-tally-queue.ts';
 import type { TallyView } from '~/schemas/tally-view.ts';
 import { hashOf } from './content-hash.ts';
-import { LandownersWord } from './LandownersWord.tsx';
+import { LandownersWord, type Word } from './LandownersWord.tsx';
 import { timeOfDay } from '../clock.ts';
 
 /** All sawn: the tally is offered, and signed here and now if the landowner is here. Works without signal. */
@@ -18,7 +18,7 @@ export function OfferAndSign({ queue, otherName }: { readonly queue: TallyQueue;
   const { view, add } = queue;
   const [endedBySawyer, setEnded] = useState(false);
   const hasLines = view.boards.length + view.culls.length + view.clock.length > 0;
-  if (view.status === 'signed') return <p className="mt-8 border-l-4 border-moss bg-sheet px-3 py-2 text-lg font-semibold" role="status">Signed. {queue.waiting > 0 ? 'The signature is kept on this phone and sent when signal returns; the money is then settled at once.' : 'It has been sent, and the money is being settled.'}</p>;
+  if (view.status === 'signed' || view.status === 'settled') return <Signed queue={queue} />;
   if (view.status === 'sawing') {
     return (
       <section className="mt-8 border-t border-rule pt-4" aria-labelledby="all-sawn">
@@ -34,18 +34,42 @@ export function OfferAndSign({ queue, otherName }: { readonly queue: TallyQueue;
       <h2 id="sign-now">{otherName} signs here, or at home</h2>
       <p className="mt-1">At home there are 72 hours, with a letter to answer. Here it is signed and settled today.</p>
       <TallyToSign view={view} />
-      <LandownersWord id="sign" action="Sign the tally" withCode onSign={({ name, signature }, code) => void hashOf(view).then((sha256) => add({ kind: 'sign', id: crypto.randomUUID(), sha256, code, name, signature }))}>
-        <p>By signing I accept this tally. {formatCents(moneyOf(view).payableCents)} is taken from the held money; {formatCents(moneyOf(view).refundCents)} goes back to my card.</p>
-      </LandownersWord>
+      <SignTheTally queue={queue} />
     </section>
   );
 }
 
-const moneyOf = (view: TallyView): ReturnType<typeof settle> =>
+/** What the tally comes to, as this phone counts it. */
+export const moneyOf = (view: TallyView): ReturnType<typeof settle> =>
   settle(view.terms, countTally(view.terms, jobOf(view), view.logs), { heldCents: view.heldCents, feeBasisPoints: view.feeBasisPoints }, { endedBySawyer: view.endedBySawyer });
 
+/** Where a signed tally stands: on this phone, or with the server. */
+export const Signed = ({ queue }: { readonly queue: TallyQueue }): ReactElement => (
+  <p className="mt-8 border-l-4 border-moss bg-sheet px-3 py-2 text-lg font-semibold" role="status">Signed. {queue.waiting > 0 ? 'The signature is kept on this phone and sent when signal returns; the money is then settled at once.' : queue.view.status === 'settled' ? 'The money is settled.' : 'It has been sent, and the money is being settled.'}</p>
+);
+
+/** The landowner's signature under what is on the screen; one under an older tally, which was refused, makes way for it. */
+export function SignTheTally({ queue, own = false }: { readonly queue: TallyQueue; readonly own?: boolean }): ReactElement {
+  const { view, add, drop } = queue;
+  const settlement = moneyOf(view);
+  const older = queue.refused.filter(({ entry }) => entry.kind === 'sign');
+  const sign = async ({ name, signature }: Word, code: string | null): Promise<void> => {
+    const sha256 = await hashOf(view);
+    older.forEach(drop);
+    add({ kind: 'sign', id: crypto.randomUUID(), sha256, code, name, signature });
+  };
+  return (
+    <>
+      {older.length > 0 && <p className="mt-3 border-l-4 border-amber bg-sheet px-3 py-2 font-semibold" role="alert">An earlier signature was not taken: {older[0]?.because}</p>}
+      <LandownersWord id="sign" action="Sign the tally" withCode={!own} own={own} onSign={(word, code) => void sign(word, code)}>
+        <p>By signing I accept this tally. {formatCents(settlement.payableCents)} is taken from the held money; {formatCents(settlement.refundCents)} goes back to my card.{settlement.overHold && ` It comes to ${formatCents(settlement.overHold.lackingCents)} more than is held: that is paid by a second checkout, or the sawyer accepts what is held. Nobody is charged on their own.`}</p>
+      </LandownersWord>
+    </>
+  );
+}
+
 /** The tally as it is signed: by log and size, then the bill. */
-function TallyToSign({ view }: { readonly view: TallyView }): ReactElement {
+export function TallyToSign({ view }: { readonly view: TallyView }): ReactElement {
   const { boardFeet } = countView(view);
   const settlement = moneyOf(view);
   const groups = [...view.logs.map(({ id, label }) => ({ id, label })), { id: null, label: 'Whole job' }].map((group) => ({ ...group, rows: bySize(view, view.boards.filter(({ logId }) => logId === group.id)) })).filter(({ rows }) => rows.length > 0);

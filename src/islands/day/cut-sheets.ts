@@ -17,8 +17,8 @@ async function fetchSheet(accountId: string, booking: number): Promise<void> {
 /** Asks, one after another, for the cut sheets that the phone does not keep or keeps by an older plan. What fails is asked for the next time. */
 export async function keepSheets({ account, bookings }: DayPack): Promise<void> {
   const db = await database();
-  for (const { number, status, sheetKey } of bookings) {
-    if (status !== 'held' && status !== 'sawing') continue;
+  for (const { number, side, status, sheetKey } of bookings) {
+    if (side !== 'sawyer' || (status !== 'held' && status !== 'sawing')) continue;
     const kept = await db.get('sheets', [account.id, number]);
     if (kept?.key !== sheetKey) await fetchSheet(account.id, number).catch(() => undefined);
   }

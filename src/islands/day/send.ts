@@ -28,6 +28,16 @@ async function reasonOf(response: Response): Promise<string> {
 const put = (booking: number, body: unknown): Promise<Response> =>
   fetch(`/api/bookings/${booking}/tally`, { method: 'PUT', headers: { 'content-type': 'application/json' }, body: JSON.stringify(body), signal: AbortSignal.timeout(PATIENCE_MS) });
 
+/** How the tally stands now, after a refusal: what is signed next is what is on the screen. */
+async function hearTally(accountId: string, booking: number): Promise<void> {
+  try {
+    const response = await fetch(`/api/bookings/${booking}/tally`, { signal: AbortSignal.timeout(PATIENCE_MS) });
+    if (response.ok) await keepTally(accountId, (await response.json()) as TallyView);
+  } catch {
+    // The next look hears it.
+  }
+}
+
 /**
  * Sends entries of one booking in their order. What the server refuses is halved until the one that it means is found and set aside;
  * everything else goes on. Sending again what has arrived changes nothing, because the ids were made here.
@@ -52,6 +62,7 @@ async function sendRun(items: readonly Waiting[]): Promise<Sending> {
   if (response.status === 408 || response.status === 429 || response.status >= 500) return 'no-signal';
   if (items.length === 1 || wholeBooking.has(response.status)) {
     await setAside(items, await reasonOf(response));
+    await hearTally(first.accountId, first.booking);
     return 'sent';
   }
   const middle = Math.ceil(items.length / 2);

@@ -47,7 +47,7 @@ type Key = [accountId: string, booking: number];
 
 interface Schema extends DBSchema {
   kept: { key: Key; value: Omit<DayBooking, 'tally'> & { readonly accountId: string; readonly savedAt: string } };
-  tally: { key: Key; value: TallyView & { readonly accountId: string } };
+  tally: { key: Key; value: TallyView & { readonly accountId: string; readonly heardAt?: string } };
   waiting: { key: number; value: Waiting; indexes: { ofBooking: Key } };
   refused: { key: number; value: Refused; indexes: { ofBooking: Key } };
   pictures: { key: string; value: Picture; indexes: { ofBooking: Key } };
@@ -123,7 +123,7 @@ export async function keepPack(pack: DayPack): Promise<void> {
   }
   for (const { tally, ...booking } of pack.bookings) {
     await work.objectStore('kept').put({ ...booking, accountId, savedAt: pack.at });
-    await work.objectStore('tally').put({ ...tally, accountId });
+    await work.objectStore('tally').put({ ...tally, accountId, heardAt: new Date().toISOString() });
   }
   const clockOffMs = new Date(pack.at).getTime() - Date.now();
   await work.objectStore('holder').put({ accountId, name, heardAt: pack.at, clockOffMs, signedOut: false }, 'now');
@@ -133,7 +133,7 @@ export async function keepPack(pack: DayPack): Promise<void> {
 
 /** Keeps a tally as the server has just told it. */
 export async function keepTally(accountId: string, view: TallyView): Promise<void> {
-  await (await database()).put('tally', { ...view, accountId });
+  await (await database()).put('tally', { ...view, accountId, heardAt: new Date().toISOString() });
   tellChange();
 }
 

@@ -68,7 +68,8 @@ export function BoardPhotographs({ view, photographs }: { readonly view: TallyVi
   );
 }
 
-function Kept({ picture }: { readonly picture: Picture }): ReactElement {
+/** A photograph that waits on this phone. */
+export function Kept({ picture }: { readonly picture: Picture }): ReactElement {
   const [src, setSrc] = useState('');
   useEffect(() => {
     const address = URL.createObjectURL(new Blob([picture.bytes], { type: picture.type }));

@@ -15,7 +15,7 @@ import { Pad, readInches } from './Pad.tsx';
 import { BoardPhotographs, usePhotographs } from './Photographs.tsx';
 import { RainStop } from './RainStop.tsx';
 import { sizeName } from './size-name.ts';
-import { Stops } from './Stops.tsx';
+import { ChangedEstimate, Stops } from './Stops.tsx';
 import { AddLog, LevelThePith, MeasureAgain } from './ThisLog.tsx';
 import { Voice } from './Voice.tsx';
 import { useTallyQueue, type TallyQueue } from './use-tally-queue.ts';
@@ -81,7 +81,7 @@ export function TallyPad({ queue }: { readonly queue: TallyQueue }): ReactElemen
         <div className="text-sm"><p>Sawn so far</p><p className="figure text-base">{formatCents(counted.job.costCents)} <span className="text-ink-soft">of {formatCents(counted.limitCents)} {counted.limitCents > view.heldCents ? 'allowed' : 'held'}</span></p></div>
         <p className="figure text-4xl font-bold" data-testid="sawn-so-far">{Number(counted.boardFeet.toFixed(2)).toLocaleString('en-US')} bf</p>
       </div>
-      <Stops {...{ view, counted, log, add }} />
+      <div className="px-4"><Stops {...{ view, counted, add }} logs={log ? [log] : []} /><ChangedEstimate view={view} /></div>
 
       <div className="px-4">
         <fieldset className="mt-4">

@@ -11,6 +11,8 @@ export interface TallyQueue {
   readonly accountId: string;
   /** The tally with everything entered on this phone, sent or not. */
   readonly view: TallyView;
+  /** When the server's tally was last heard here, by this phone's clock; null when that is not known. */
+  readonly heardAt: string | null;
   /** How many entries and photographs are kept here that the server does not have yet. */
   readonly waiting: number;
   readonly refused: readonly Refused[];
@@ -45,7 +47,7 @@ async function look(accountId: string, booking: number): Promise<void> {
  */
 export function useTallyQueue(initial: TallyView, accountId: string, fresh: boolean): TallyQueue {
   const { booking } = initial;
-  const [server, setServer] = useState(initial);
+  const [server, setServer] = useState<TallyView & { readonly heardAt?: string }>(initial);
   const [kept, setKept] = useState<Awaited<ReturnType<typeof entriesOf>>>({ waiting: [], refused: [], sentAt: null });
   const [pictures, setPictures] = useState(0);
   const [sending, setSending] = useState<Sending>('sent');
@@ -101,6 +103,7 @@ export function useTallyQueue(initial: TallyView, accountId: string, fresh: bool
   const view = useMemo(() => withEntries(server, kept.waiting.map(({ entry }) => entry)), [server, kept]);
   return {
     accountId, view, sending, trouble, add,
+    heardAt: server.heardAt ?? null,
     waiting: kept.waiting.length + pictures,
     refused: kept.refused,
     sentAt: kept.sentAt,

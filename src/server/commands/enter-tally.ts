@@ -9,7 +9,7 @@ import { record } from '../transition.ts';
 import type { Viewer } from '../viewer.ts';
 import { beginSawing } from './start-sawing.ts';
 import type { Line } from './take-entries.ts';
-import { watchHold, watchMetal } from './watch-day.ts';
+import { watchHold, watchLogs, watchMetal } from './watch-day.ts';
 
 /** Writes one entry. Everything is keyed by the id it was made with, so a repeated send changes nothing. */
 async function enter(entry: Line, booking: Booking, tally: Tally, sequence: number, at: Date): Promise<void> {
@@ -109,7 +109,13 @@ export async function enterTally(by: Viewer, input: { readonly booking: number; 
 
     const hitsBefore = await MetalHit.count({ where: { tallyId: tally.id, removedAt: null } });
     const last = await oneRow<{ sequence: number }>('SELECT coalesce(max(sequence), 0)::int AS sequence FROM tally_board WHERE tally_id = $1', [tally.id]);
-    for (const [index, entry] of input.entries.entries()) if (await isNew(entry, by, booking, at)) await enter(entry, booking, tally, (last?.sequence ?? 0) + index + 1, at);
+    const logsChanged = new Set<string>();
+    for (const [index, entry] of input.entries.entries()) {
+      if (!(await isNew(entry, by, booking, at))) continue;
+      await enter(entry, booking, tally, (last?.sequence ?? 0) + index + 1, at);
+      if (entry.kind === 'measure') logsChanged.add(entry.logId);
+      if (entry.kind === 'addLog') logsChanged.add(entry.id);
+    }
 
     const checked = checkClock((tally.clock as KeptClock[]).map(({ activity, startsAt, endsAt }) => ({ activity, startsAt: new Date(startsAt), endsAt: new Date(endsAt) })));
     if (!checked.ok) throw invalid(checked.problems.map(({ path, message }) => ({ path: `clock.${path}`, message })));
@@ -117,6 +123,7 @@ export async function enterTally(by: Viewer, input: { readonly booking: number; 
     await tally.save();
     await booking.update({ updatedAt: at });
     if (booking.status === 'queried') await record(by, 'amendTally', 'booking', booking.id, at, { data: { entries: input.entries.length } });
+    await watchLogs(by, booking, logsChanged);
     await watchMetal(by, booking, tally, hitsBefore);
     await watchHold(by, booking, tally, at);
     return { revision: tally.revision };

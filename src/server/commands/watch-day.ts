@@ -1,7 +1,10 @@
 import { formatCents } from '~/domain/money.ts';
+import { dayEstimate, estimateFacts } from '~/domain/trade/day-estimate.ts';
+import { measuresSaid, waitsForWord } from '~/domain/trade/day-logs.ts';
 import { paths } from '~/domain/paths.ts';
 import { holdWarning, mayGoOnAfterMetal, type HoldWarning } from '~/domain/trade/on-the-day.ts';
-import { holdNears, metalStops } from '~/emails/tally-letters.ts';
+import { holdNears, logsToAgree, metalStops } from '~/emails/tally-letters.ts';
+import { bidOfDay } from '../day-logs.ts';
 import { enqueue } from '../jobs/queue.ts';
 import { type Booking, MetalHit, type Tally } from '../models/index.ts';
 import { linkTo, partiesOf } from '../parties.ts';
@@ -19,6 +22,21 @@ export async function watchMetal(by: Viewer, booking: Booking, tally: Tally, bef
   const spent = hits.reduce((sum, { outcome }) => sum + (outcome === 'destroyed' ? terms.card.metal.destroyedCents : terms.card.metal.resharpenedCents), 0);
   const { landowner } = await partiesOf(booking);
   await enqueue('send-mail', metalStops(landowner, by.name, hits.length, Math.max(0, terms.metalCapCents - spent), linkTo(paths.signTally(booking.number))));
+}
+
+/** Logs measured or added just now that are more than the landowner knows of: they are told what it changes, and asked. */
+export async function watchLogs(by: Viewer, booking: Booking, changed: ReadonlySet<string>): Promise<void> {
+  if (changed.size === 0) return;
+  const work = await tallyWork(booking);
+  const waiting = (work?.onTheDay ?? []).flatMap((log, index) => {
+    const waits = changed.has(log.id) ? waitsForWord(log, work?.mill ?? null) : [];
+    return waits.length > 0 ? [[`${work?.logs[index]?.label || `Log ${index + 1}`}, ${measuresSaid(log.measured ?? log.listed)}`, waits.join(' ')] as const] : [];
+  });
+  if (!work || waiting.length === 0) return;
+  const bid = await bidOfDay(booking);
+  const estimate = bid && work.mill ? dayEstimate(work.onTheDay, work.mill, bid, work.terms) : null;
+  const { landowner } = await partiesOf(booking);
+  await enqueue('send-mail', logsToAgree(landowner, by.name, waiting, estimate ? estimateFacts(estimate, work.heldCents) : [], linkTo(paths.signTally(booking.number))));
 }
 
 /** Both are warned once each when the work reaches 80, 95 and 100 % of the limit; a higher limit begins anew. */
