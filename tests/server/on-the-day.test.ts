@@ -2,9 +2,11 @@ import { spawnSync } from 'node:child_process';
 import { randomUUID } from 'node:crypto';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { addDays, dayAt, dayStart } from '~/domain/time.ts';
+import { dayEstimate } from '~/domain/trade/day-estimate.ts';
 import type { RateCard } from '~/domain/trade/rate-card.ts';
 import { tallyLines } from '~/components/tally-lines.ts';
 import { hashOf } from '~/islands/day/content-hash.ts';
+import type { TallyView } from '~/schemas/tally-view.ts';
 import { withEntries } from '~/islands/tally-book/with-entries.ts';
 import type { TallyEntry } from '~/schemas/tally-entries.ts';
 import { chooseBid } from '~/server/commands/choose-bid.ts';
@@ -12,12 +14,14 @@ import { confirmDays } from '~/server/commands/confirm-days.ts';
 import { placeBid } from '~/server/commands/place-bid.ts';
 import { proposeDays } from '~/server/commands/propose-days.ts';
 import { makeSigningCode } from '~/server/commands/sign-on-the-spot.ts';
+import { answerQuery, queryTally } from '~/server/commands/query-tally.ts';
 import { startCheckout } from '~/server/commands/start-checkout.ts';
 import { takeEntries } from '~/server/commands/take-entries.ts';
 import { rows } from '~/server/db.ts';
 import { balances } from '~/server/ledger.ts';
 import { tellEveningBefore } from '~/server/jobs/handlers/evening-before.ts';
 import { BookedDay, Booking, DayProposal, Tally } from '~/server/models/index.ts';
+import { dayPack } from '~/server/queries/day-pack.ts';
 import { tallyPage, type TallyPage } from '~/server/queries/tally-page.ts';
 import { makeCast, type Cast } from '../support/cast.ts';
 import { checkBooks, makePayoutAccount, openMoneyHouse, type MoneyHouse } from '../support/money-market.ts';
@@ -147,6 +151,12 @@ describe('logs that are not as listed', () => {
     await take(number, measure(two, 18));
     const asks = await page(number);
     expect([asks.settlement.costCents, asks.view.logs[1]?.waits]).toEqual([30_650, ['It scales 30.8 % more than listed.']]);
+    // 170 + 170 + 115 = 455 against 400 listed is 13.8 % more; both read it, and Ada has a letter that asks before it is sawn.
+    const [letter] = await rows<{ text: string }>(`SELECT data->>'text' AS text FROM pgboss.job WHERE name = 'send-mail' AND data->>'to' = $1 AND data->>'subject' LIKE '%asks about a log%' ORDER BY created_on DESC LIMIT 1`, [cast.ada.email]);
+    expect(letter?.text).toContain('It scales 30.8 % more than listed.');
+    expect(letter?.text).toContain('455 bf; listed 400 bf, +13.8 %');
+    const { bid, mill: limits, logs, terms } = asks.view;
+    expect(bid && limits && dayEstimate(logs, limits, bid, terms)).toMatchObject({ listedScaleBf: 400, scaleBf: 455 });
     await expect(take(number, allow('larger-log', { logId: one })), 'nothing to agree on').rejects.toMatchObject({ kind: 'invalid' });
     await take(number, allow('larger-log', { logId: two }));
     // 170 + 170 + 115 = 455 bf × 0.50 = 227.50 + 99 = 326.50.
@@ -260,7 +270,7 @@ describe('rain', () => {
     const before = await BookedDay.findAll({ where: { bookingId: booking.id, active: true } });
     // The day that was sawn lies behind by then.
     const later = new Date(at.getTime() + (ahead + 1) * 86_400_000);
-    const next = addDays(dayAt(later, booking.timeZone), 3);
+    const next = addDays(dayAt(later, booking.timeZone), 25);
     await proposeDays(cast.bram, { booking: number, days: [next], startTime: '08:00', note: 'Rain.' }, later);
     await confirmDays(cast.ada, { booking: number, proposal: (await DayProposal.findOne({ where: { bookingId: booking.id, status: 'open' }, rejectOnEmpty: true })).id }, later);
     const days = await BookedDay.findAll({ where: { bookingId: booking.id, active: true }, order: [['day', 'ASC']] });
@@ -306,6 +316,42 @@ describe('signing on the spot', () => {
     await expectSheet(number, cast.bram.email, ['$9.10', '$172.90']);
     const ledger = await balances((await bookingOf(number)).id);
     expect([-ledger['platform fee'], ledger['sawyer payable'], ledger['landowner held']]).toEqual([910, 0, 0]);
+  });
+
+  it('takes the landowner’s signature from their own phone, kept without signal, for the lines that were on it alone', async () => {
+    const number = await sawing();
+    await take(number, boards(null, 1, 8, 12, 20), { kind: 'offer', id: randomUUID(), endedBySawyer: false, note: '' });
+    // Ada's phone has the tally as it was offered, and no signal any more.
+    const kept = (await dayPack(cast.ada, at)).bookings.find((booking) => booking.number === number);
+    if (!kept) throw new Error('The booking is not on her phone.');
+    const sign = async (view: TallyView): Promise<TallyEntry> => ({ kind: 'sign', id: randomUUID(), sha256: await hashOf(view), code: null, ...word });
+    const first = await sign(kept.tally);
+    // Before it is sent she queries a line at home and Bram corrects it: the signature was for other lines.
+    const [line] = kept.tally.boards;
+    await queryTally(cast.ada, { booking: number, lines: [{ line: 'board', lineId: line?.id ?? '' }], says: 'Two of them are split.' }, at);
+    await take(number, { kind: 'remove', id: line?.id ?? '' }, boards(null, 1, 8, 12, 18));
+    const [query] = (await tallyPage(cast.ada, number)).view.queries;
+    await answerQuery(cast.bram, { booking: number, query: query?.id ?? '', answer: 'They are. Eighteen.' }, at);
+    await expect(takeEntries(cast.ada, { booking: number, entries: [first] }, at)).rejects.toMatchObject({ kind: 'conflict' });
+    expect((await bookingOf(number)).status).toBe('queried');
+  });
+  it('takes an increase, a metal word and a part from the landowner’s own phone, each once', async () => {
+    const number = await sawing();
+    await take(number, boards(null, 1, 8, 12, 20), hit(), hit());
+    const view = (await dayPack(cast.ada, at)).bookings.find((booking) => booking.number === number)?.tally;
+    if (!view) throw new Error('The booking is not on her phone.');
+    const more = view.heldCents + 10_000;
+    const part: TallyEntry = { kind: 'part', id: randomUUID(), sha256: await hashOf(view), ...word };
+    const words = [part, allow('metal'), allow('increase', { limitCents: more })];
+    await takeEntries(cast.ada, { booking: number, entries: words }, at);
+    await takeEntries(cast.ada, { booking: number, entries: words }, at);
+    const after = (await page(number)).view;
+    expect(after.allowances.map(({ what, limitCents }) => [what, limitCents])).toEqual([['metal', null], ['increase', more]]);
+    // One row of boards and two hits stand: 20 × 8 bf × $0.50 = $80.00, set-up $75, travel $24, two blades at $35 = $249.00.
+    expect(after.parts.map(({ lineIds, costCents }) => [lineIds.length, costCents])).toEqual([[3, 24_900]]);
+    expect(after.metalAllowed).toBe(2);
+    // A landowner's phone writes no lines of the tally.
+    await expect(takeEntries(cast.ada, { booking: number, entries: [boards(null, 1, 8, 12, 1)] }, at)).rejects.toMatchObject({ kind: 'forbidden' });
   });
 
   it('shuts the code after five wrong ones; the landowner’s own account still signs', async () => {

@@ -39,7 +39,7 @@ export function dayEstimate(logs: readonly DayLog[], mill: MillLimits, bid: BidO
   const scaleBf = now(1).scaleBf.internationalQuarter;
   const share = listedScaleBf > 0 ? scaleBf / listedScaleBf : 1;
   const { lumber, quote } = now(share);
-  return { listedScaleBf, scaleBf, changePct: (share - 1) * 100, lumberBf: lumber.bf, costCents: { low: quote.low.costCents, expected: quote.expected.costCents, high: quote.high.costCents } };
+  return { listedScaleBf, scaleBf, changePct: listedScaleBf > 0 ? ((scaleBf - listedScaleBf) * 100) / listedScaleBf : 0, lumberBf: lumber.bf, costCents: { low: quote.low.costCents, expected: quote.expected.costCents, high: quote.high.costCents } };
 }
 
 const bf = (value: number): string => `${Math.round(value).toLocaleString('en-US')} bf`;

@@ -1,4 +1,5 @@
 import { useEffect, useState, type ReactElement } from 'react';
+import { formatFraction } from '~/domain/measure.ts';
 import type { Said } from '~/domain/listing/page-words.ts';
 import { formatDay, formatInstant } from '~/domain/time.ts';
 import { measuresSaid } from '~/domain/trade/day-logs.ts';
@@ -140,7 +141,7 @@ function Logs({ view }: { readonly view: TallyView }): ReactElement {
           <h2 className="mt-8">Cut list</h2>
           <table className="ruled mt-1 w-full">
             <thead><tr><th scope="col">Piece</th><th scope="col" className="num">t × w, in</th><th scope="col" className="num">ft</th><th scope="col" className="num">Count</th></tr></thead>
-            <tbody>{view.cutList.map((piece, index) => <tr key={index}><th scope="row" className="font-normal">{piece.label || 'Boards'}</th><td className="num">{piece.thicknessIn} × {piece.widthIn}</td><td className="num">{piece.lengthFt}</td><td className="num">{piece.count}</td></tr>)}</tbody>
+            <tbody>{view.cutList.map((piece, index) => <tr key={index}><th scope="row" className="font-normal">{piece.label || 'Boards'}</th><td className="num">{formatFraction(piece.thicknessIn)} × {formatFraction(piece.widthIn)}</td><td className="num">{formatFraction(piece.lengthFt)}</td><td className="num">{piece.count}</td></tr>)}</tbody>
           </table>
         </>
       )}

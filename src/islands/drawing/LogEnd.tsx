@@ -56,7 +56,7 @@ export function LogEnd({ smallEndIn, barkIn = smallEndIn * 0.025, heartShare = 0
         <rect data-start={board.startFt} className={Math.min(board.thicknessIn, board.widthIn) >= 5 ? 'log-board-timber' : 'log-board'} key={`${board.xIn},${board.yIn}`} {...boardRect(board)} />
       ))}
       </g></g>
-      {cut && <path className="log-scale" d={`M${-half} ${underside(cut, radius + barkIn)}h${frame}`} />}
+      {cut && <path className="log-scale" d={`M${-half} ${underside(cut, half * 0.99)}h${frame}`} />}
       {cut && <path className="log-cut-now" d={`M${-half} ${-cut.line.fromPithIn}h${frame}`} />}
       {scaleBarIn ? <ScaleBar lengthIn={scaleBarIn} top={half + foot * 0.25} size={frame * 0.07} /> : null}
     </svg>
@@ -70,9 +70,9 @@ function clipOf({ left, right, bottom, top }: Left, half: number): { x: number; 
 }
 
 /** Where the bed lies below the turned log, in SVG's axes: under the flat that was cut on that side, or under the bark. */
-function underside({ line, left }: NonNullable<LogEndProps['cut']>, barkRadiusIn: number): number {
+function underside({ line, left }: NonNullable<LogEndProps['cut']>, lowestIn: number): number {
   const flats: Readonly<Record<number, number>> = { 0: -left.bottom, 90: -left.left, 180: left.top, 270: left.right };
-  return Math.min(barkRadiusIn, flats[line.turnDeg] ?? barkRadiusIn);
+  return Math.min(lowestIn, flats[line.turnDeg] ?? lowestIn);
 }
 
 function ScaleBar({ lengthIn, top, size }: { readonly lengthIn: number; readonly top: number; readonly size: number }): ReactElement {

@@ -1,7 +1,7 @@
 import { useCallback, useEffect, useMemo, useState } from 'react';
 import { dropRefused, entriesOf, putEntries, tryRefusedAgain } from '~/islands/day/queue.ts';
 import { picturesOf } from '~/islands/day/pictures.ts';
-import { sendAll, type Sending } from '~/islands/day/send.ts';
+import { refresh, sendAll, type Sending } from '~/islands/day/send.ts';
 import { database, keepTally, onChange, type Refused } from '~/islands/day/store.ts';
 import type { TallyEntry } from '~/schemas/tally-entries.ts';
 import type { TallyView } from '~/schemas/tally-view.ts';
@@ -33,6 +33,8 @@ const FULL = 'This phone could not keep that entry: its storage is full or shut.
 
 /** Asks the server how the tally stands when this phone has nothing to say: the other phone may have. */
 async function look(accountId: string, booking: number): Promise<void> {
+  // Before sawing has begun there is no tally to ask for: the days are, which say when it has.
+  if ((await (await database()).get('tally', [accountId, booking]))?.status === 'held') return void (await refresh());
   const response = await fetch(`/api/bookings/${booking}/tally`);
   if (!response.ok) return;
   const view: TallyView = await response.json();

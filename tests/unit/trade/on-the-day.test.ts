@@ -2,9 +2,14 @@
 import { describe, expect, it } from 'vitest';
 import { checkClock, minutesOf, minutesOnClock } from '~/domain/trade/clock.ts';
 import { chargedBlades, holdWarning, largerLogs, mayGoOnAfterMetal, setUpsAfterRain, tripsAfterRain } from '~/domain/trade/on-the-day.ts';
+import { jobOf } from '~/domain/trade/day-job.ts';
+import { logToCharge } from '~/domain/trade/bid-estimate.ts';
+import { settle } from '~/domain/trade/settlement.ts';
+import { countTally, NO_EXTRAS } from '~/domain/trade/tally-count.ts';
 import { NO_WORK, priceWork } from '~/domain/trade/price.ts';
 import { OAK_TERMS, termsWith } from '../../support/rate-cards.ts';
 
+const oak = (id: string, smallEndIn: number) => logToCharge({ id, species: 'white-oak', smallEndIn, lengthFt: 12 });
 const came = { ...NO_WORK, setUps: 1, trips: 1 };
 const cost = (terms: typeof OAK_TERMS, work: typeof NO_WORK) => priceWork(terms, work).costCents;
 
@@ -86,6 +91,44 @@ describe('waste left or hauled against the bid', () => {
   });
   it('hauled against a bid to leave it is not charged', () => {
     expect(cost({ ...terms, waste: 'left' }, { ...came, boardFeet: 300, wasteDone: 'hauled' })).toBe(24_900);
+  });
+});
+
+describe('boards out of size', () => {
+  it('are recorded, at nothing', () => {
+    const row = { logId: 'log-1', thicknessIn: 1, widthIn: 8, lengthFt: 12 };
+    const work = countTally(OAK_TERMS, { boards: [{ ...row, kind: 'board', count: 20 }, { ...row, kind: 'out-of-size', count: 5 }], clock: [], blades: [], culls: [], extras: NO_EXTRAS }, [oak('log-1', 18)]);
+    // 20 × 8 bf × 0.50 = 80 + 75 + 24 = 179.00; the five are in the tally and cost nothing.
+    expect(cost(OAK_TERMS, work)).toBe(17_900);
+  });
+});
+
+describe('a log that was added and never accepted, or declined', () => {
+  it('costs nothing, whatever was sawn from it', () => {
+    const boards = [{ kind: 'board', logId: 'added', thicknessIn: 1, widthIn: 8, lengthFt: 12, count: 10 }, { kind: 'board', logId: 'log-1', thicknessIn: 1, widthIn: 8, lengthFt: 12, count: 20 }] as const;
+    const lines = { boards, hits: [], culls: [], clock: [], extras: NO_EXTRAS, allowances: [] };
+    const job = (agreed: boolean) => jobOf({ ...lines, logs: [{ id: 'log-1', added: false, agreed: false }, { id: 'added', added: true, agreed }] });
+    const logs = [oak('log-1', 18), oak('added', 12)];
+    // 160 × 0.50 = 80 + 75 + 24 = 179.00; accepted, 80 bf more at 0.50 = 40.00: 219.00.
+    expect([cost(OAK_TERMS, countTally(OAK_TERMS, job(false), logs)), cost(OAK_TERMS, countTally(OAK_TERMS, job(true), logs))]).toEqual([17_900, 21_900]);
+  });
+});
+
+describe('a sawyer who leaves early or breaks down', () => {
+  const rest = { clock: [], blades: [], culls: [], extras: NO_EXTRAS };
+  const money = { heldCents: 40_000, feeBasisPoints: 500 };
+  it('charges the tally and the journey once; an opened cant that gave no board is the owner’s and costs nothing', () => {
+    const terms = termsWith({ basis: { kind: 'log-scale', rule: 'internationalQuarter', smallestLog: null, perBf: { withCents: 50, withoutCents: 50 } }, minimum: { cents: 25_000, covers: 'whole-job' } });
+    const work = countTally(terms, { ...rest, boards: [{ kind: 'board', logId: 'log-1', thicknessIn: 1, widthIn: 8, lengthFt: 12, count: 9 }] }, [oak('log-1', 18), oak('opened', 16)]);
+    // Only the log that gave boards: 170 bf × 0.50 = 85 + travel 24 = 109.00; no set-up, no minimum of 250. Fee 5.45.
+    expect(settle(terms, work, money, { endedBySawyer: true })).toMatchObject({ costCents: 10_900, feeCents: 545, transferCents: 10_355, refundCents: 29_100 });
+  });
+  it('leaves the breakdown off the clock', () => {
+    const terms = termsWith({ basis: { kind: 'hourly', from: 'first-cut', perHour: { withCents: 10_000, withoutCents: 8_000 } } });
+    const clock = [['sawing', '08:00', '10:20'], ['breakdown', '10:20', '12:00']].map(([activity, from, to]) => ({ activity: activity as 'sawing' | 'breakdown', startsAt: new Date(`2026-08-04T${from}:00Z`), endsAt: new Date(`2026-08-04T${to}:00Z`) }));
+    const work = countTally(terms, { ...rest, clock, boards: [] }, []);
+    // 2 h 20 min → 2.25 h × 80.00 = 180 + travel 24 = 204.00.
+    expect(settle(terms, work, money, { endedBySawyer: true }).costCents).toBe(20_400);
   });
 });
 
