@@ -71,6 +71,23 @@ async function enterBoards(page: Page, width: string, count: number): Promise<vo
 
 const tallyOf = async (page: Page, job: Job): Promise<TallyView> => (await page.request.get(`${web.origin}/api/bookings/${job.number}/tally`)).json();
 
+/** For gloves and sun, with every part opened: 56 px to touch, 7:1 to read, upright, across, and with text at 200 %. */
+async function expectForField(page: Page): Promise<void> {
+  await page.locator('details:not([open]) > summary').evaluateAll((all) => { for (const one of all) (one as HTMLElement).click(); });
+  const small = await page.locator('[data-outdoors] :is(button, input:not([type=checkbox], [type=file]), label:has([type=checkbox], [type=file]), select, summary)').evaluateAll((all) => all.map((one) => ({ name: one.textContent?.trim().slice(0, 30), box: one.getBoundingClientRect() })).filter(({ box }) => box.height > 0 && (box.height < 56 || box.width < 56)).map(({ name, box }) => `${name}: ${box.width} × ${box.height}`));
+  expect(small).toEqual([]);
+  await expectAccessible(page);
+  const contrast = new AxeBuilder({ page }).include('[data-outdoors]').withRules(['color-contrast-enhanced']);
+  expect((await contrast.analyze()).violations.flatMap(({ nodes }) => nodes.map(({ html }) => html))).toEqual([]);
+  // 200 % text on a phone 390 px wide is the layout of 195 px: nothing may leave the screen sideways.
+  for (const viewport of [{ width: 390, height: 844 }, { width: 320, height: 700 }, { width: 195, height: 422 }, { width: 844, height: 390 }]) {
+    await page.setViewportSize(viewport);
+    const over = await page.evaluate(() => document.documentElement.scrollWidth - document.documentElement.clientWidth);
+    expect(over, `${viewport.width} px wide`).toBeLessThanOrEqual(0);
+  }
+  await page.setViewportSize({ width: 390, height: 844 });
+}
+
 /** The bookings are made at one go; each check takes the next. */
 function takeJob(): Job {
   const job = jobs.shift();
@@ -80,7 +97,7 @@ function takeJob(): Job {
 
 test.beforeAll(async () => {
   web = await ownWeb();
-  jobs = makeJobs(3);
+  jobs = makeJobs(4);
 });
 test.afterAll(async () => {
   await web.stop();
@@ -219,6 +236,49 @@ test('the landowner signs on the sawyer’s phone without signal, and it settles
   await phone.context.close();
 });
 
+test('the cut sheet is on the sawyer’s phone, and the landowner’s own phone keeps the tally and their signature without signal', async () => {
+  const job = takeJob();
+  const [sawyer, landowner] = [await newPhone(), await newPhone()];
+  await prepare(sawyer, job);
+  await prepare(landowner, { ...job, sawyer: job.landowner });
+  await sawyer.page.goto(`/day#${job.number}`);
+  await expect(sawyer.page.getByTestId('on-this-phone')).toContainText('the cut sheet with its drawings');
+  await sawyer.context.setOffline(true);
+  await begin(sawyer.page, job);
+  // The drawing, the toe board and the first cut; then the log as it lies for the next.
+  await sawyer.page.getByText(/^Cut sheet · \d+ boards, \d+ cuts/).click();
+  await expect(sawyer.page.getByText('Toe board under the small end')).toBeVisible();
+  await expect(sawyer.page.getByTestId('this-cut')).toContainText(/Cut 1 of \d+/);
+  await sawyer.page.getByRole('button', { name: 'Cut done · next' }).click();
+  await expect(sawyer.page.getByRole('img', { name: /as it lies for cut 2/ })).toBeVisible();
+  await sawyer.page.reload();
+  await sawyer.page.getByText(/^Cut sheet/).click();
+  await expect(sawyer.page.getByTestId('this-cut')).toContainText(/Cut 2 of \d+/);
+  await enterBoards(sawyer.page, '8', 20);
+  await sawyer.page.getByRole('button', { name: 'Offer the tally to Ada' }).click();
+  await sawyer.context.setOffline(false);
+  await expect(sawyer.page.getByTestId('saved')).toHaveText(/^All sent at/, { timeout: 30_000 });
+
+  // The landowner reads it once with signal, and signs it without, their phone switched off in between.
+  await landowner.page.goto(`/day#${job.number}`);
+  // 160 bf × $0.50 = $80.00, set-up $75, travel $24.
+  await expect(landowner.page.getByRole('row', { name: /The work comes to/ })).toContainText('$179.00');
+  await landowner.context.setOffline(true);
+  await landowner.page.reload();
+  await expect(landowner.page.getByRole('row', { name: /The work comes to/ })).toContainText('$179.00');
+  await expectForField(landowner.page);
+  await landowner.page.getByLabel('Your name').fill('Ada Example');
+  await drawSignature(landowner.page);
+  await landowner.page.getByRole('button', { name: 'Sign the tally' }).click();
+  await expect(landowner.page.getByText('The signature is kept on this phone')).toBeVisible();
+  await landowner.context.close();
+  Object.assign(landowner, await switchOn(landowner.folder, false));
+  await landowner.page.goto(`/day#${job.number}`);
+  await expect(landowner.page.getByText('It has been sent')).toBeVisible({ timeout: 30_000 });
+  expect((await tallyOf(sawyer.page, job)).status).toMatch(/^(signed|settled)$/);
+  for (const { context } of [sawyer, landowner]) await context.close();
+});
+
 test('is installable by the browser’s own criteria, and the estimator opens without signal', async () => {
   const phone = await newPhone();
   // The page opens so slowly that the worker, which another page asked for, takes over in the meantime.
@@ -261,18 +321,7 @@ test('the pad is for gloves and sun, and signing out asks about entries that wer
   await phone.context.setOffline(true);
   await begin(phone.page, job);
   await enterBoards(phone.page, '8', 3);
-  const small = await phone.page.locator('[data-outdoors] :is(button, input:not([type=checkbox], [type=file]), label:has([type=checkbox], [type=file]), select, summary)').evaluateAll((all) => all.map((one) => ({ name: one.textContent?.trim().slice(0, 30), box: one.getBoundingClientRect() })).filter(({ box }) => box.height > 0 && (box.height < 56 || box.width < 56)).map(({ name, box }) => `${name}: ${box.width} × ${box.height}`));
-  expect(small).toEqual([]);
-  await expectAccessible(phone.page);
-  const contrast = new AxeBuilder({ page: phone.page }).include('[data-outdoors]').withRules(['color-contrast-enhanced']);
-  expect((await contrast.analyze()).violations.flatMap(({ nodes }) => nodes.map(({ html }) => html))).toEqual([]);
-  // 200 % text on a phone 390 px wide is the layout of 195 px: nothing may leave the screen sideways.
-  for (const viewport of [{ width: 390, height: 844 }, { width: 320, height: 700 }, { width: 195, height: 422 }, { width: 844, height: 390 }]) {
-    await phone.page.setViewportSize(viewport);
-    const over = await phone.page.evaluate(() => document.documentElement.scrollWidth - document.documentElement.clientWidth);
-    expect(over, `${viewport.width} px wide`).toBeLessThanOrEqual(0);
-  }
-  await phone.page.setViewportSize({ width: 390, height: 844 });
+  await expectForField(phone.page);
 
   // Signing out takes the days off the phone, and keeps what was not sent for the next time.
   await phone.page.route('**/api/bookings/*/tally', (route) => route.abort());
