@@ -19,13 +19,14 @@ function must(program, args, why) {
 
 /**
  * Installs from Debian's packages whatever of the asked is missing.
- * @param {{ browser: boolean }} wanted browser: Chromium too, and what reads PDFs back, for the checks
+ * @param {{ browser: boolean }} wanted browser: Chromium too, and what reads PDFs and calendars back, for the checks
  */
 export function ensureSystemPackages({ browser }) {
   const missing = [];
   if (!postgresInstalled()) missing.push('postgresql-15', 'postgresql-15-postgis-3');
   if (browser && !existsSync('/usr/bin/chromium')) missing.push('chromium');
   if (browser && !existsSync('/usr/bin/pdftotext')) missing.push('poppler-utils');
+  if (browser && !existsSync('/usr/lib/python3/dist-packages/icalendar')) missing.push('python3-icalendar');
   if (missing.length === 0) return;
   console.log(`Installing from Debian: ${missing.join(', ')}`);
   const root = process.getuid?.() === 0;

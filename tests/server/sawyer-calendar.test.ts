@@ -1,3 +1,4 @@
+import { spawnSync } from 'node:child_process';
 import ICAL from 'ical.js';
 import { beforeAll, describe, expect, it } from 'vitest';
 import { addDays, dayAt } from '~/domain/time.ts';
@@ -142,6 +143,21 @@ describe('the private feed', () => {
     expect(milling?.location).toBe('Viroqua, WI');
     expect(events.filter((event) => event.summary === 'Day off').map((event) => [event.startDate.isDate, event.startDate.toString(), event.endDate.toString()])).toContainEqual([true, day(40), day(41)]);
     for (const leak of ['43.65', '-90.64', cast.ada.name, cast.ada.email, '54665']) expect(text).not.toContain(leak);
+  });
+
+  it('is read by a calendar library of another make', async () => {
+    const text = await calendarFeed(await secretOf(), MARKET_AT);
+    const program = `import sys, json, icalendar
+feed = icalendar.Calendar.from_ical(sys.stdin.buffer.read())
+print(json.dumps([[str(e["summary"]), e.decoded("dtstart").isoformat(), e.decoded("dtend").isoformat(), str(e.get("status", "")), str(e["uid"])] for e in feed.walk("VEVENT")]))`;
+    const read = spawnSync('/usr/bin/python3', ['-c', program], { input: text, encoding: 'utf8' });
+    expect([read.status, read.stderr]).toEqual([0, '']);
+    const entries = JSON.parse(read.stdout) as readonly (readonly string[])[];
+    const own = new ICAL.Component(ICAL.parse(text)).getAllSubcomponents('vevent');
+    expect(entries.length).toBe(own.length);
+    expect(new Set(entries.map(([, , , , uid]) => uid)).size).toBe(entries.length);
+    expect(entries.find(([summary, start]) => summary === 'Milling: White oak, 3 logs' && start?.startsWith(day(9)))?.[1]).toBe(`${day(9)}T12:30:00+00:00`);
+    expect(entries).toContainEqual(['Day off', day(40), day(41), '', expect.stringContaining('@skidway')]);
   });
 
   it('keeps its address hashed, and stops at once when renewed or stopped', async () => {
