@@ -14,6 +14,7 @@ import { tellSawyers } from './sawyers.ts';
 import { tellTalks } from './talk.ts';
 import { tellTallies } from './tallies.ts';
 import { Timeline } from './timeline.ts';
+import { tellWeeks } from './weeks.ts';
 import { tellTrips } from './trips.ts';
 
 /**
@@ -25,6 +26,7 @@ export async function tellStory(now: Date): Promise<void> {
   tellPeople(timeline);
   tellSawyers(timeline);
   tellCertificates(timeline);
+  tellWeeks(timeline);
   tellListings(timeline);
   tellPhotos(timeline);
   tellBids(timeline);
