@@ -9,6 +9,7 @@ import { execute, inTransaction } from '~/server/db.ts';
 import { Account, BoardsLeft, Booking, Listing, Photo, Tally } from '~/server/models/index.ts';
 import { afterPage } from '~/server/queries/after-page.ts';
 import { jobPage, jobPageSettings } from '~/server/queries/job-page.ts';
+import { jobsOfSawyer } from '~/server/queries/jobs-of-sawyer.ts';
 import { publicThings } from '~/server/queries/sitemap.ts';
 import { photoAudience } from '~/server/queries/photos.ts';
 import type { Viewer } from '~/server/viewer.ts';
@@ -85,12 +86,18 @@ describe('a job shown around', () => {
     await expect(photoAudience(null, picked)).rejects.toMatchObject({ kind: 'notFound' });
     expect((await read(cast.bram)).isPublic).toBe(false);
     expect((await publicThings(at)).jobs).toEqual([]);
+    // The sawyer's page tells of the job all the same, by month and town, without a picture of it.
+    const before = await jobsOfSawyer(cast.bram.id);
+    expect(before).toMatchObject({ photos: [], jobs: [{ title: listing.title, shown: null }] });
+    expect(before.jobs[0]?.month).toMatch(/^20\d\d-\d\d$/);
+    expect(JSON.stringify(before.jobs)).not.toMatch(/43\.65|90\.64|cents|Ada|54665/i);
 
     await agreeToJobPage(cast.bram, booking.number, true, at);
     // 5/4 × 8 × 10 has a surface measure of 8 × 10 / 12 = 6.67, to 7: 7 × 1.25 × 6 = 52.5, half up 53 bf.
     expect(await read(null)).toMatchObject({ isPublic: true, words: 'A storm oak.', tallyBf: 53, photos: [{ id: picked, words: 'Boards' }] });
     expect(await photoAudience(null, picked)).toBe('viewer');
     expect((await publicThings(at)).jobs).toEqual([booking.number]);
+    expect(await jobsOfSawyer(cast.bram.id)).toMatchObject({ photos: [{ id: picked, job: booking.number }], jobs: [{ shown: booking.number }] });
     await expect(photoAudience(null, left)).rejects.toMatchObject({ kind: 'notFound' });
     // Nothing of the place, the money or the landowner.
     expect(JSON.stringify(await read(null))).not.toMatch(/43\.65|90\.64|cents|Ada|54665/i);
