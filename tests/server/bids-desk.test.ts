@@ -10,6 +10,9 @@ import { Bid, SawyerProfile } from '~/server/models/sawyer.ts';
 import { bidStanding } from '~/server/queries/bid-standing.ts';
 import { bidsDesk } from '~/server/queries/bids-desk.ts';
 import { readyMessages } from '~/server/queries/ready-messages.ts';
+import { changeDaysOff } from '~/server/commands/days-off.ts';
+import { earliestOpenDayOf } from '~/server/queries/open-days.ts';
+import { Certificate } from '~/server/models/sawyer.ts';
 import { sawyerHome } from '~/server/queries/sawyer-home.ts';
 import { type Cast, makeAccount, makeCast, viewerFor } from '../support/cast.ts';
 import { termsWith } from '../support/rate-cards.ts';
@@ -71,6 +74,22 @@ describe('a sawyer’s home', () => {
     expect(home.bookings).toEqual([expect.objectContaining({ status: 'proposed', proposal: null, otherName: 'Ada', days: [] })]);
     expect(home.money).toEqual({ account: 'none', heldCents: 0, waitingCents: 0, owedBackCents: 0 });
     await expect(sawyerHome(cast.ada, MARKET_AT)).rejects.toMatchObject({ kind: 'forbidden' });
+  });
+});
+
+describe('the next seven days', () => {
+  it('say of each what stands on it, and which may still be filled', async () => {
+    // A Monday, with two days' notice and Sundays not worked.
+    await changeDaysOff(cast.cleo, { add: ['2026-07-24'], remove: [] }, MARKET_AT);
+    const listing = await makeOpenListing(cast.ada.id);
+    await placeBid(cast.cleo, listing.number, bidOf(mills.cleo, { days: ['2026-07-23'] }), MARKET_AT);
+    const { week, certificates } = await sawyerHome(cast.cleo, MARKET_AT);
+    expect(week.map(({ day, standing }) => `${day.slice(8)} ${standing}`)).toEqual(['20 too soon', '21 too soon', '22 open', '23 offered', '24 off', '25 open', '26 not worked']);
+    expect(week[3]?.offered).toEqual([expect.objectContaining({ listing: listing.number })]);
+    expect(await earliestOpenDayOf(cast.cleo.id, 'America/Chicago', MARKET_AT)).toBe('2026-07-22');
+    expect(certificates).toEqual([]);
+    await Certificate.create({ sawyerId: cast.cleo.id, kind: 'insurance', seenAt: MARKET_AT, expiresOn: '2026-08-01' });
+    expect((await sawyerHome(cast.cleo, MARKET_AT)).certificates).toEqual([expect.objectContaining({ kind: 'insurance', standing: 'soon' })]);
   });
 });
 

@@ -1,5 +1,6 @@
+import { certificateNames } from '~/domain/certificate.ts';
 import { paths } from '~/domain/paths.ts';
-import { dayAt, formatInstant } from '~/domain/time.ts';
+import { dayAt, formatDayWithYear, formatInstant } from '~/domain/time.ts';
 import type { HomeBooking, SawyerHome } from '~/server/queries/sawyer-home.ts';
 
 /** One line of a sawyer's home: what it is about, how it stands, and what to press. */
@@ -57,6 +58,11 @@ export function homeLines(home: SawyerHome, at: Date): readonly HomeLine[] {
     home.money.account !== 'ready' && home.bookings.length > 0
       ? [{ key: 'payouts', title: 'Payout account', about: '', mine: true, words: 'Your pay waits until the payment provider knows your bank.', action: { label: home.money.account === 'none' ? 'Set up payouts' : 'Go on setting up', href: paths.payouts } }]
       : [];
-  const lines = [...payouts, ...confirm, ...booked];
+  const papers = home.certificates.map(({ kind, seenUntil, standing }): HomeLine => ({
+    key: `certificate-${kind}`, title: certificateNames[kind].replace(/^./, (letter) => letter.toUpperCase()), about: '', mine: true,
+    words: standing === 'expired' ? `It expired on ${formatDayWithYear(seenUntil ?? '')}. Landowners no longer read that one was seen.` : `It expires on ${formatDayWithYear(seenUntil ?? '')}. Send the next one before that day.`,
+    action: { label: 'Send the next one', href: paths.certificateOf(kind) },
+  }));
+  const lines = [...payouts, ...confirm, ...booked, ...papers];
   return [...lines.filter(({ mine }) => mine), ...lines.filter(({ mine }) => !mine)];
 }

@@ -41,7 +41,8 @@ export interface SawyerCalendar {
 /** How many months back and ahead can be looked at. */
 const REACH_MONTHS = 13;
 
-const bookedIn = (sawyerId: string, from: Day, to: Day) =>
+/** What stands booked on a sawyer's days, from one day to another. */
+export const bookedIn = (sawyerId: string, from: Day, to: Day) =>
   rows<{ day: Day; number: number; title: string; town: string; status: BookingState }>(
     `SELECT booked.day::text AS day, booking.number, booking.status, coalesce(listing.title, '') AS title, concat_ws(', ', listing.town, listing.state) AS town
      FROM booked_day booked JOIN booking ON booking.id = booked.booking_id JOIN listing ON listing.id = booking.listing_id
@@ -49,7 +50,8 @@ const bookedIn = (sawyerId: string, from: Day, to: Day) =>
     [sawyerId, from, to],
   );
 
-const offeredIn = (sawyerId: string, from: Day, to: Day) =>
+/** What a sawyer's live bids offer, from one day to another. */
+export const offeredIn = (sawyerId: string, from: Day, to: Day) =>
   rows<{ day: Day; listing: number; title: string; town: string }>(
     `SELECT day::text AS day, listing.number AS listing, coalesce(listing.title, '') AS title, concat_ws(', ', listing.town, listing.state) AS town
      FROM bid JOIN listing ON listing.id = bid.listing_id, unnest(bid.days_offered) AS day

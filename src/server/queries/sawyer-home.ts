@@ -1,8 +1,12 @@
+import { weekdayOf } from '~/domain/month.ts';
 import { addDays, dayAt, type Day } from '~/domain/time.ts';
 import type { BookingState } from '~/domain/states/booking.ts';
 import { authorize } from '../authorize.ts';
+import { daysOffFrom } from '../days-off.ts';
 import { rows } from '../db.ts';
 import { baseRoles, type Viewer } from '../viewer.ts';
+import { certificatePage, type OwnCertificate } from './certificate-page.ts';
+import { offeredIn } from './sawyer-calendar.ts';
 import { payoutsPage, type PayoutsPage } from './payouts-page.ts';
 import { setUpOf, type SawyerSetUp } from './sawyer-setup.ts';
 
@@ -29,9 +33,20 @@ export interface SawyerHome {
   readonly toConfirm: readonly { readonly listing: number; readonly title: string; readonly town: string }[];
   readonly openBids: number;
   readonly bookings: readonly HomeBooking[];
-  /** Booked days from today to six days on. */
-  readonly week: readonly { readonly day: Day; readonly booking: HomeBooking }[];
+  /** Every day from today to six days on. */
+  readonly week: readonly HomeDay[];
+  /** Certificates that run out soon or have run out, with nothing sent since. */
+  readonly certificates: readonly OwnCertificate[];
   readonly money: Pick<PayoutsPage, 'account' | 'heldCents' | 'waitingCents' | 'owedBackCents'>;
+}
+
+/** One of the next days, and what stands on it. */
+export interface HomeDay {
+  readonly day: Day;
+  /** Open: a working day, far enough ahead for the notice the sawyer needs, with nothing on it. */
+  readonly standing: 'booked' | 'off' | 'offered' | 'open' | 'too soon' | 'not worked';
+  readonly bookings: readonly HomeBooking[];
+  readonly offered: readonly { readonly listing: number; readonly title: string; readonly town: string }[];
 }
 
 /** How long after settling a review is still asked for, in days. */
@@ -65,7 +80,18 @@ export async function sawyerHome(viewer: Viewer | null, at: Date): Promise<Sawye
   const [open] = await rows<{ count: number }>(`SELECT count(*)::int AS count FROM bid WHERE sawyer_id = $1 AND status = 'open'`, [viewer.id]);
   const bookings = await goingOn(viewer.id, at);
   const last = addDays(today, 6);
-  const week = bookings.flatMap((booking) => booking.days.filter((day) => day >= today && day <= last).map((day) => ({ day, booking }))).sort((a, b) => (a.day < b.day ? -1 : 1));
+  const offered = await offeredIn(viewer.id, today, last);
+  const off = await daysOffFrom(viewer.id, today);
+  const workingDays: readonly number[] = setUp.profile?.workingDays ?? [];
+  const noticeDays = setUp.profile?.noticeDays ?? 0;
+  const week = Array.from({ length: 7 }, (_, ahead): HomeDay => {
+    const day = addDays(today, ahead);
+    const here = bookings.filter(({ days }) => days.includes(day));
+    const offers = offered.filter((one) => one.day === day);
+    const standing = here.length > 0 ? 'booked' : off.has(day) ? 'off' : offers.length > 0 ? 'offered' : !workingDays.includes(weekdayOf(day)) ? 'not worked' : ahead < noticeDays ? 'too soon' : 'open';
+    return { day, standing, bookings: here, offered: offers };
+  });
+  const { certificates } = await certificatePage(viewer, at);
   const { account, heldCents, waitingCents, owedBackCents } = await payoutsPage(viewer);
-  return { setUp, today, toConfirm, openBids: open?.count ?? 0, bookings, week, money: { account, heldCents, waitingCents, owedBackCents } };
+  return { setUp, today, toConfirm, openBids: open?.count ?? 0, bookings, week, certificates: certificates.filter(({ standing, waits }) => (standing === 'soon' || standing === 'expired') && waits === null), money: { account, heldCents, waitingCents, owedBackCents } };
 }
