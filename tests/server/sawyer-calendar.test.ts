@@ -15,7 +15,7 @@ import { CalendarFeed } from '~/server/models/sawyer.ts';
 import { calendarFeed } from '~/server/queries/calendar-feed.ts';
 import { earliestOpenDayOf } from '~/server/queries/open-days.ts';
 import { sawyerCalendar } from '~/server/queries/sawyer-calendar.ts';
-import { busySpans } from '~/server/read-calendar.ts';
+import { busySpans } from '~/server/services/read-calendar.ts';
 import { type Cast, makeCast } from '../support/cast.ts';
 import { bidOf, makeOpenListing, MARKET_AT, setUpSawyer } from '../support/sawing-market.ts';
 

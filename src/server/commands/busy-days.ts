@@ -1,25 +1,33 @@
 import { addDays, dayAt, formatDay, type Day } from '~/domain/time.ts';
-import { busyDays } from '~/domain/trade/busy-days.ts';
 import { authorize } from '../authorize.ts';
 import { changedDays, daysOffFrom, giveDaysBack, lockedBookedDays, takeDaysOff, todayOf, type DaysOffChanged } from '../days-off.ts';
 import { execute, inTransaction, lockFor, rows } from '../db.ts';
 import { conflict } from '../errors.ts';
 import { SawyerProfile, type BroughtBy } from '../models/sawyer.ts';
-import { busySpans } from '../read-calendar.ts';
+import { calendarDays } from '../services/calendar-days.ts';
 import { record } from '../transition.ts';
 import { baseRoles, type Viewer } from '../viewer.ts';
 
 /** How far ahead a calendar that is brought along is read, in days. */
 const IMPORT_DAYS = 366;
 
-/** A calendar that a sawyer brings: its text, and by what the sawyer knows it. */
-export interface BroughtCalendar {
-  readonly text: string;
+/** The busy days of a calendar that a sawyer brings, and by what the sawyer knows it. */
+export interface BroughtDays {
+  readonly days: readonly Day[];
   readonly by: BroughtBy;
   /** The host of its address, or the name of its file. */
   readonly name: string;
-  /** How many hours of entries make a day busy; whole-day entries always do. */
-  readonly leastHours: number;
+}
+
+/**
+ * The busy days that a calendar names in the coming year; to be called before the transaction that takes them, for it may take seconds.
+ * @param leastHours how many hours of entries make a day busy; whole-day entries always do
+ * @throws Refusal `invalid` when the text is no calendar or repeats too much to be read
+ */
+export async function readBusyDays(sawyerId: string, { text, leastHours }: { readonly text: string; readonly leastHours: number }, at: Date): Promise<readonly Day[]> {
+  const zone = (await SawyerProfile.findByPk(sawyerId))?.timeZone ?? 'UTC';
+  const first = dayAt(at, zone);
+  return calendarDays({ text, zone, first, last: addDays(first, IMPORT_DAYS), leastHours }, sawyerId);
 }
 
 /**
@@ -27,10 +35,11 @@ export interface BroughtCalendar {
  * kept, nothing of what the entries say.
  * @throws Refusal `invalid` when the text is no calendar
  */
-export async function importCalendar(by: Viewer, calendar: Omit<BroughtCalendar, 'by'>, at: Date): Promise<DaysOffChanged> {
+export async function importCalendar(by: Viewer, calendar: { readonly text: string; readonly name: string; readonly leastHours: number }, at: Date): Promise<DaysOffChanged> {
   authorize(by, 'sawyer', 'keepCalendar', baseRoles(by));
+  const days = await readBusyDays(by.id, calendar, at);
   return inTransaction(async () => {
-    const changed = await takeBusyDays(by.id, { ...calendar, by: 'file' }, at);
+    const changed = await takeBusyDays(by.id, { days, by: 'file', name: calendar.name }, at);
     await record(by, 'importCalendar', 'account', by.id, at, { data: { added: changed.added, removed: changed.removed } });
     return changed;
   });
@@ -39,23 +48,19 @@ export async function importCalendar(by: Viewer, calendar: Omit<BroughtCalendar,
 /**
  * Puts the busy days of a calendar in place of those it had before, whoever asks for it; to be called in a transaction. A day that was
  * given back stays given back as long as the calendar names it.
- * @throws Refusal `invalid` when the text is no calendar
  */
-export async function takeBusyDays(sawyerId: string, { text, by, name, leastHours }: BroughtCalendar, at: Date): Promise<DaysOffChanged> {
-  const zone = (await SawyerProfile.findByPk(sawyerId))?.timeZone ?? 'UTC';
-  const first = dayAt(at, zone);
-  const last = addDays(first, IMPORT_DAYS);
-  const busy = busyDays(busySpans(text, zone, first, last), zone, first, last, leastHours);
+export async function takeBusyDays(sawyerId: string, { days, by, name }: BroughtDays, at: Date): Promise<DaysOffChanged> {
   const booked = await lockedBookedDays(sawyerId);
+  const first = await todayOf(sawyerId, at);
   const before = await daysOffFrom(sawyerId, first);
-  const named = busy.filter((day) => !booked.has(day));
+  const named = days.filter((day) => !booked.has(day));
   await execute('DELETE FROM busy_day WHERE sawyer_id = $1 AND brought_by = $2 AND day >= $3 AND day <> ALL ($4::date[])', [sawyerId, by, first, named]);
   await execute(
     `INSERT INTO busy_day (sawyer_id, day, brought_by, calendar) SELECT $1, unnest($2::date[]), $3, $4
      ON CONFLICT (sawyer_id, day, brought_by) DO UPDATE SET calendar = excluded.calendar`,
     [sawyerId, named, by, name],
   );
-  return { ...changedDays(before, await daysOffFrom(sawyerId, first)), booked: busy.filter((day) => booked.has(day)) };
+  return { ...changedDays(before, await daysOffFrom(sawyerId, first)), booked: days.filter((day) => booked.has(day)) };
 }
 
 /** Forgets every day ahead that was taken from the calendar brought so. @returns how many days are open that were not */

@@ -8,7 +8,7 @@ import { seal, unseal } from '../sealing.ts';
 import { outsideText, outsideUrl } from '../services/outside-text.ts';
 import { record } from '../transition.ts';
 import { baseRoles, system, type Viewer } from '../viewer.ts';
-import { takeBusyDays } from './busy-days.ts';
+import { readBusyDays, takeBusyDays } from './busy-days.ts';
 
 const PURPOSE = 'other-calendar';
 /** Read again after so many hours; after a failure sooner, then more and more seldom. */
@@ -30,8 +30,9 @@ export async function keepOtherCalendar(by: Viewer, calendar: { readonly address
   const { href, host } = outsideUrl(calendar.address);
   const text = await outsideText(href);
   try {
+    const days = await readBusyDays(by.id, { text, leastHours: calendar.leastHours }, at);
     return await inTransaction(async () => {
-      const changed = await takeBusyDays(by.id, { text, by: 'address', name: host, leastHours: calendar.leastHours }, at);
+      const changed = await takeBusyDays(by.id, { days, by: 'address', name: host }, at);
       await OtherCalendar.upsert({ sawyerId: by.id, addressSealed: seal(PURPOSE, by.id, href), host, leastHours: calendar.leastHours, madeAt: at, readAt: at, readNext: addHours(at, READ_EVERY_H), failures: 0, failedBecause: null });
       await record(by, 'keepOtherCalendar', 'account', by.id, at, { data: { host, added: changed.added, removed: changed.removed } });
       return changed;
@@ -68,14 +69,14 @@ async function readAgain(sawyerId: string, at: Date): Promise<void> {
   const address = unseal(PURPOSE, sawyerId, kept.addressSealed);
   try {
     if (address === null) throw new Refusal('invalid', 'The address can no longer be opened. Give it again.');
-    const text = await outsideText(address);
+    const days = await readBusyDays(sawyerId, { text: await outsideText(address), leastHours: kept.leastHours }, at);
     await inTransaction(async () => {
       // The calendar first, its address second, as whoever stops or changes it does.
       await lockFor('calendar', sawyerId);
       // Stopped or changed meanwhile: then what was read is no longer wanted.
       const current = await OtherCalendar.findByPk(sawyerId, { lock: true });
-      if (current?.addressSealed !== kept.addressSealed) return;
-      const { added, removed } = await takeBusyDays(sawyerId, { text, by: 'address', name: current.host, leastHours: current.leastHours }, at);
+      if (current?.addressSealed !== kept.addressSealed || current.leastHours !== kept.leastHours) return;
+      const { added, removed } = await takeBusyDays(sawyerId, { days, by: 'address', name: current.host }, at);
       await current.update({ readAt: at, readNext: addHours(at, READ_EVERY_H), failures: 0, failedBecause: null });
       if (added + removed > 0) await record(system('other calendar'), 'readOtherCalendar', 'account', sawyerId, at, { data: { added, removed } });
     });

@@ -11,7 +11,7 @@ const limits = {
   'sign-up': { points: 20, duration: 3600 },
   'password reset': { points: 6, duration: 3600 },
   'confirmation mail': { points: 6, duration: 3600 },
-  'calendar address': { points: 20, duration: 3600 },
+  'other calendar': { points: 20, duration: 3600 },
   upload: { points: 200, duration: 3600 },
   message: { points: 60, duration: 3600 },
   // A map asks for about twenty tiles each time it is moved; those that are kept do not count.

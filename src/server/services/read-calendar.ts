@@ -1,7 +1,7 @@
 import ICAL from 'ical.js';
-import type { BusySpan } from '~/domain/trade/busy-days.ts';
-import { addDays, dayStart, isTimeZone, type Day } from '~/domain/time.ts';
-import { invalid, Refusal } from './errors.ts';
+import type { BusySpan } from '../../domain/trade/busy-days.ts';
+import { addDays, dayStart, isTimeZone, type Day } from '../../domain/time.ts';
+import { invalid, Refusal } from '../errors.ts';
 
 /** Entries of ours in a calendar that subscribes to us are not taken back in. */
 const OUR_UID = /@skidway$/;
