@@ -16,6 +16,8 @@ const limits = {
   message: { points: 60, duration: 3600 },
   // A map asks for about twenty tiles each time it is moved; those that are kept do not count.
   'map tiles': { points: 1500, duration: 300 },
+  // Seconds of planning by the calculators that are for anyone.
+  planning: { points: 240, duration: 600 },
   report: { points: 20, duration: 3600 },
 } as const;
 
@@ -33,22 +35,29 @@ function limiterFor(name: LimitName): RateLimiterPostgres {
   return made;
 }
 
+const counted = (key: string): string => key.toLowerCase().slice(0, 200);
+
 /**
  * Counts one try of the deed for this key (an address, an account).
  * @throws Refusal `tooMany` with the seconds to wait.
  */
 export async function countTry(name: LimitName, key: string): Promise<void> {
   try {
-    await limiterFor(name).consume(key.toLowerCase().slice(0, 200));
+    await limiterFor(name).consume(counted(key));
   } catch (error) {
     if (error instanceof RateLimiterRes) throw tooMany(Math.max(1, Math.ceil(error.msBeforeNext / 1000)));
     throw error;
   }
 }
 
+/** Counts more to a try that is over, when it is known what it cost. */
+export async function countMore(name: LimitName, key: string, points: number): Promise<void> {
+  if (points > 0) await limiterFor(name).penalty(counted(key), points);
+}
+
 /** Forgets the tries of a key, after a success. */
 export async function forgetTries(name: LimitName, key: string): Promise<void> {
-  await limiterFor(name).delete(key.toLowerCase().slice(0, 200));
+  await limiterFor(name).delete(counted(key));
 }
 
 /** Closes the limiter's own connections, for tests and a graceful stop. */

@@ -43,15 +43,16 @@ async function millsFor(viewer: Viewer | null, listing: { readonly id: string; r
  * The boards that a listing's logs give on a mill, for whoever may read the listing.
  * @param key which of the mills; anything else shows the first that may be chosen
  * @param asked how boards are sawn; anything unknown leaves it to the planner
- * @throws Refusal `notFound` as the listing's page does
+ * @param visitor who is counted when nobody is signed in
+ * @throws Refusal `notFound` as the listing's page does, `tooMany` when the reader waits for several already
  */
-export async function boardsPage(viewer: Viewer | null, number: number, key: string | null, asked: string | null) {
+export async function boardsPage(viewer: Viewer | null, number: number, key: string | null, asked: string | null, visitor: string) {
   const listing = await listingPage(viewer, number);
   const mills = await millsFor(viewer, listing);
   const chosen = mills.find((mill) => mill.key === key) ?? mills[0] ?? typical;
   const pieces = sawnPieces(listing.pieces);
   const pattern = patternOf(asked);
-  return { listing, mills, chosen, pieces, pattern, plan: await boardPlans(listing.logs, pieces, chosen.mill, pattern) };
+  return { listing, mills, chosen, pieces, pattern, plan: await boardPlans(listing.logs, pieces, chosen.mill, pattern, viewer?.id ?? visitor) };
 }
 
 export type BoardsPage = Awaited<ReturnType<typeof boardsPage>>;

@@ -4,12 +4,11 @@ import { expectedLumber, type LumberRequest } from '../../domain/sawing/expected
 import { listingPlan, type ListingPlanRequest } from '../../domain/sawing/listing-plan.ts';
 import { sawPlan, type SawPlanRequest } from '../../domain/sawing/saw-plan.ts';
 import { planStem, type StemRequest } from '../../domain/sawing/stem-plan.ts';
+import type { Answer } from './thread.ts';
 
 /** A task for a planning thread. */
 export type Task = { readonly id: number } & Work;
 export type Work = { readonly kind: 'saw-plan'; readonly request: SawPlanRequest } | { readonly kind: 'cut-list'; readonly request: CutListRequest } | { readonly kind: 'listing'; readonly request: ListingPlanRequest } | { readonly kind: 'lumber'; readonly request: LumberRequest } | { readonly kind: 'stem'; readonly request: StemRequest };
-
-export type Answer = { readonly id: number } & ({ readonly value: unknown } | { readonly error: string } | { readonly late: true });
 
 /** How long a cut list's logs are planned: by the processor's clock, or by the wall's where others have the processor. */
 const PLANNING_CPU_MS = 900;
