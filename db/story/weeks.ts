@@ -18,13 +18,13 @@ function from(zip: string, radiusMi: number): SearchFilters['from'] {
   return { point, zip, radiusMi };
 }
 
-/** How two sawyers keep their weeks: days off, busy days of another calendar, and what they want to be told of. */
+/** How two sawyers keep their weeks: days off, busy days of another calendar (all past the days that are offered), and what they want to be told of. */
 export function tellWeeks(timeline: Timeline): void {
   const { day } = timeline.calendar;
   timeline.add(-28, '20:40', async (at) => {
     const bram = await who('bram');
     await changeDaysOff(bram, { add: [day(18), day(19)], remove: [] }, at);
-    await importCalendar(bram, { text: calendarFile([day(6), day(20), day(27)]), name: 'family.ics', leastHours: 4 }, at);
+    await importCalendar(bram, { text: calendarFile([day(17), day(20), day(27)]), name: 'family.ics', leastHours: 4 }, at);
   });
   timeline.add(-1, '21:05', async (at) => {
     await saveSearch(await who('bram'), { ...anything, from: from('54667', 40), species: 'white-oak' }, { name: 'White oak within an hour', tells: 'daily' }, at);
