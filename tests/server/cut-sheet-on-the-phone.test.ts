@@ -1,7 +1,7 @@
 import { beforeAll, describe, expect, it } from 'vitest';
 import { chooseBid } from '~/server/commands/choose-bid.ts';
 import { placeBid } from '~/server/commands/place-bid.ts';
-import { Booking, Log, Piece } from '~/server/models/index.ts';
+import { Booking, Log, MeasuredLog, Piece } from '~/server/models/index.ts';
 import { cutSheetPage, keptCutSheet } from '~/server/queries/cut-sheet.ts';
 import { cutSheetKey } from '~/server/cut-sheets.ts';
 import { dayPack } from '~/server/queries/day-pack.ts';
@@ -49,6 +49,19 @@ describe('the cut sheet that a phone keeps', () => {
     const after = await keyIn();
     expect(after).not.toBe(before);
     expect(after).toBe(await cutSheetKey(booking));
+  });
+
+  it('plans a log that was measured again by itself, and leaves the other plans as they were', async () => {
+    const before = await keptCutSheet(cast.bram, booking.number);
+    const logId = before.logs[1]?.logId ?? '';
+    await MeasuredLog.create({ bookingId: booking.id, logId, smallEndIn: 19, largeEndIn: 22, lengthFt: 12, measuredAt: at, agreedAt: null });
+    const after = await keptCutSheet(cast.bram, booking.number);
+    expect(after.key).not.toBe(before.key);
+    expect(after.logs.map(({ plannedAs }) => plannedAs.smallEndIn)[1]).toBe(19);
+    // The pith of a butt of 22 in inside bark lies more than 11 in over the bed, and half of the 3 in of taper goes under the small end.
+    expect(after.logs[1]?.pithHeightIn).toBeGreaterThan(11);
+    expect(after.logs[1]?.raiseSmallEndIn).toBeGreaterThan(1.5);
+    expect([after.logs[0], after.logs[2]]).toEqual([before.logs[0], before.logs[2]]);
   });
 
   it('is for the two sides alone', async () => {

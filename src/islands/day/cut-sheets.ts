@@ -10,7 +10,12 @@ async function fetchSheet(accountId: string, booking: number): Promise<void> {
   const response = await fetch(`/api/bookings/${booking}/cut-sheet`, { signal: AbortSignal.timeout(PATIENCE_MS) });
   if (!response.ok) return;
   const sheet: CutSheetView = await response.json();
-  await (await database()).put('sheets', { ...sheet, accountId, cutAt: {} });
+  const db = await database();
+  const before = await db.get('sheets', [accountId, booking]);
+  // Where the saw stands is kept of every log whose plan has not changed.
+  const plans = new Map(before?.logs.map((log) => [log.logId, JSON.stringify(log)]));
+  const same = sheet.logs.filter((log) => plans.get(log.logId) === JSON.stringify(log)).map(({ logId }) => logId);
+  await db.put('sheets', { ...sheet, accountId, cutAt: Object.fromEntries(Object.entries(before?.cutAt ?? {}).filter(([logId]) => same.includes(logId))) });
   tellChange();
 }
 

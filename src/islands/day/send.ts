@@ -56,6 +56,8 @@ async function sendRun(items: readonly Waiting[]): Promise<Sending> {
     // In this order: a page that reads between the two finds an entry twice, which it notices, and never not at all.
     await keepTally(first.accountId, view);
     await takeOff(items);
+    // Logs that are not as listed have a cut sheet of their own.
+    if (items.some(({ entry }) => entry.kind === 'measure' || entry.kind === 'addLog')) void refresh();
     return 'sent';
   }
   if (response.status === 401) return 'signed-out';

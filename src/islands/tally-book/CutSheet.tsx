@@ -26,7 +26,7 @@ export function CutSheet({ sheet, log, goTo }: CutSheetProps): ReactElement {
     <details className="mt-3">
       <summary className={summaryClass}>Cut sheet · {planned ? `${boards} ${boards === 1 ? 'board' : 'boards'}, ${planned.cuts.length} cuts` : 'none for this log'}</summary>
       {!sheet && <p className="pb-3">It is kept here once this page has been open with signal.</p>}
-      {sheet && !planned && <p className="pb-3">{log.label} was not on the listing when the sheet was made. Saw it as it shows.</p>}
+      {sheet && !planned && <p className="pb-3">{log.label} is not on the sheet that this phone keeps; it is planned by itself when signal returns. Until then saw it as it shows.</p>}
       {planned && <Planned {...{ planned, log, goTo }} millName={sheet?.millName ?? ''} at={Math.min(sheet?.cutAt[log.id] ?? 0, Math.max(0, planned.cuts.length - 1))} />}
     </details>
   );
@@ -37,7 +37,7 @@ function Planned({ planned, log, millName, at, goTo }: { readonly planned: LogOf
   const cut = cuts[at];
   return (
     <div className="pb-4">
-      {!same(planned.plannedAs, log.measured ?? log.listed) && <p className="mb-2 border-l-4 border-amber bg-sheet px-3 py-2 font-semibold" role="note">Planned for {measuresSaid(planned.plannedAs)}. {log.label} was measured again since: keep the order, set the heights by the log.</p>}
+      {!same(planned.plannedAs, log.measured ?? log.listed) && <p className="mb-2 border-l-4 border-amber bg-sheet px-3 py-2 font-semibold" role="note">Planned for {measuresSaid(planned.plannedAs)}. {log.label} was measured again since: it is planned anew when signal returns. Until then keep the order, and set the heights by the log.</p>}
       <p>{planned.use}. On {millName}. What the saw opens counts more than this sheet.</p>
       {core && cut && (
         <>

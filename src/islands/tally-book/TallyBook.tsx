@@ -112,7 +112,7 @@ export function TallyPad({ queue }: { readonly queue: TallyQueue }): ReactElemen
           </div>
         </fieldset>
         <Pad label={hardwood ? 'Thickness, quarters' : 'Thickness, in'} values={hardwood ? quarters : dimension} chosen={thicknessIn} name={(value) => thicknessName(value, hardwood ? 'hardwood' : 'softwood').replace(' in', '')} onChoose={setThickness} read={readInches(24)} />
-        <Pad label={kind === 'slab' ? 'One face at mid-length, in' : 'Width, in'} values={[4, 6, 7, 8, 9, 10, 12]} chosen={widthIn} name={formatFraction} onChoose={setWidth} read={readInches(60)} />
+        <Pad label={kind === 'slab' ? 'One face at mid-length, in' : 'Width, in'} values={hardwood ? [4, 5, 6, 7, 8, 9, 10, 11, 12] : [3, 4, 6, 8, 10, 12]} chosen={widthIn} name={formatFraction} onChoose={setWidth} read={readInches(60)} />
         {kind === 'slab' && <Pad label="The other face at mid-length, in" values={[6, 8, 10, 12, 16]} chosen={secondWidthIn} name={formatFraction} onChoose={setSecondWidth} read={readInches(60)} />}
         <Pad label="Length, ft" values={lengths} chosen={lengthFt} name={formatFraction} onChoose={setLength} read={readFeet} />
 

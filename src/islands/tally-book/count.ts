@@ -1,6 +1,7 @@
 import { priceWork, type PricedJob } from '~/domain/trade/price.ts';
 import { holdWarning, mayGoOnAfterMetal, type HoldWarning } from '~/domain/trade/on-the-day.ts';
 import { jobOf, limitOf } from '~/domain/trade/day-job.ts';
+import { leftOf } from '~/domain/trade/still-wanted.ts';
 import { countBoards, countTally, tallyRuleOf } from '~/domain/trade/tally-count.ts';
 import { tallyBoards } from '~/domain/timber/tally.ts';
 import type { TallyBoardView, TallyView } from '~/schemas/tally-view.ts';
@@ -61,8 +62,5 @@ export function oneBoard(view: TallyView, thicknessIn: number, widthIn: number, 
 
 /** How many of each wanted piece are still to be sawn. */
 export function stillWanted(view: TallyView): { readonly label: string; readonly thicknessIn: number; readonly widthIn: number; readonly lengthFt: number; readonly left: number }[] {
-  return view.cutList.map((piece) => {
-    const made = view.boards.filter((board) => board.kind === 'board' && board.thicknessIn === piece.thicknessIn && board.widthIn === piece.widthIn && board.lengthFt >= piece.lengthFt).reduce((sum, { count }) => sum + count, 0);
-    return { label: piece.label, thicknessIn: piece.thicknessIn, widthIn: piece.widthIn, lengthFt: piece.lengthFt, left: Math.max(0, piece.count - made) };
-  });
+  return view.cutList.map((piece) => ({ label: piece.label, thicknessIn: piece.thicknessIn, widthIn: piece.widthIn, lengthFt: piece.lengthFt, left: leftOf(piece, view.boards) }));
 }
