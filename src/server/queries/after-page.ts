@@ -2,6 +2,7 @@ import { abilities, type Action } from '~/domain/permissions.ts';
 import { dryingMonths, type DryingMonth, type MonthAir } from '~/domain/timber/monthly-air.ts';
 import { dayAt } from '~/domain/time.ts';
 import { airDryingDays } from '~/domain/timber/drying.ts';
+import { againstList, type PieceWhenDry } from '~/domain/timber/against-list.ts';
 import { boardLine, gathered } from '~/domain/timber/board-lines.ts';
 import { cutProject, dryBoards, type DryBoards, type ProjectCut } from '~/domain/timber/dry-boards.ts';
 import { readProjectPieces } from '~/domain/timber/project-pieces.ts';
@@ -10,6 +11,7 @@ import { planStack, usualSpacingIn, type Stack } from '~/domain/timber/stack.ts'
 import { rolesOnBooking } from '../authorize.ts';
 import { boardsLeftOn, type BoardsLeftNotice } from '../boards-left.ts';
 import { notFound } from '../errors.ts';
+import { listedPieces } from '../listed-pieces.ts';
 import { Booking, DryingPlan, Listing, MoistureReading } from '../models/index.ts';
 import { tallyWork } from '../tally-work.ts';
 import type { Viewer } from '../viewer.ts';
@@ -40,6 +42,10 @@ export interface AfterPage {
   readonly isThisMonth: boolean;
   readonly stacks: readonly SpeciesStack[];
   readonly boards: readonly (DryBoards & { readonly speciesName: string })[];
+  /** The cut list beside what was sawn for it, when dry. */
+  readonly list: readonly PieceWhenDry[];
+  /** The month in which the boards were stacked, which is the one they were sawn in. */
+  readonly stackedIn: number;
   readonly cuts: readonly ProjectCut[];
   readonly readings: readonly { readonly id: string; readonly readOn: string; readonly moisturePct: number; readonly note: string }[];
   /** The notice of boards left over that stands. */
@@ -79,6 +85,8 @@ export async function afterPage(viewer: Viewer, number: number, at: Date): Promi
     isThisMonth: months.some(({ month }) => month === thisMonth),
     stacks: [...new Set(boards.map(({ species }) => species))].map((code) => stackOf(code, boards.filter(({ species }) => species === code), plan.stackWidthFt)),
     boards: boards.map((board) => ({ ...board, speciesName: speciesOf(board.species).name })),
+    list: againstList(await listedPieces(booking.listingId), work.boards, (piece) => boards.find(({ greenThicknessIn, greenWidthIn }) => greenThicknessIn === piece.thicknessIn && greenWidthIn === piece.widthIn)?.species ?? commonest, plan.targetPct),
+    stackedIn: Number(dayAt(work.tally.offeredAt ?? booking.startsAt ?? at, booking.timeZone).slice(5, 7)),
     cuts: pieces.ok && pieces.value.length > 0 ? cutProject(boards, pieces.value, plan.sawKerfIn) : [],
     readings: readings.map(({ id, readOn, moisturePct, note }) => ({ id, readOn, moisturePct, note })),
     boardsLeft: await boardsLeftOn(booking.listingId),
