@@ -15,6 +15,8 @@ interface Section {
 export interface PieceWhenDry {
   readonly piece: PieceRead;
   readonly made: number;
+  /** Boards of its thickness that are wider, and long enough: they hold it too once they are edged. */
+  readonly wider: number;
   readonly green: Section;
   /** Flat-sawn, at the moisture asked for; null when the species has no published shrinkage. */
   readonly dry: Section | null;
@@ -45,6 +47,7 @@ export function againstList(pieces: readonly PieceRead[], boards: readonly Talli
     const dry = shrinkage && { thicknessIn: sizeAtMoisture(green.thicknessIn, shrinkage.thicknessPct, moisturePct), widthIn: sizeAtMoisture(green.widthIn, shrinkage.widthPct, moisturePct) };
     const finished = dressed(piece);
     const toPlane = dry && finished && { thicknessIn: dry.thicknessIn - finished.thicknessIn, widthIn: dry.widthIn - finished.widthIn };
-    return { piece, made: piece.count - leftOf(piece, boards), green, dry, finished, toPlane };
+    const wider = boards.filter((board) => board.kind === 'board' && board.thicknessIn === piece.thicknessIn && board.widthIn > piece.widthIn && board.lengthFt >= piece.lengthFt).reduce((sum, { count }) => sum + count, 0);
+    return { piece, made: piece.count - leftOf(piece, boards), wider, green, dry, finished, toPlane };
   });
 }

@@ -7,6 +7,7 @@ import { countTally } from '~/domain/trade/tally-count.ts';
 import { jobOf } from '~/domain/trade/day-job.ts';
 import { bySize, countView } from '~/islands/tally-book/count.ts';
 import { sizeName } from '~/islands/tally-book/size-name.ts';
+import { useClock } from '~/islands/tally-book/use-clock.ts';
 import type { TallyQueue } from '~/islands/tally-book/use-tally-queue.ts';
 import type { TallyView } from '~/schemas/tally-view.ts';
 import { hashOf } from './content-hash.ts';
@@ -17,6 +18,7 @@ import { timeOfDay } from '../clock.ts';
 export function OfferAndSign({ queue, otherName }: { readonly queue: TallyQueue; readonly otherName: string }): ReactElement | null {
   const { view, add } = queue;
   const [endedBySawyer, setEnded] = useState(false);
+  const { running, turnTo } = useClock(queue);
   const hasLines = view.boards.length + view.culls.length + view.clock.length > 0;
   if (view.status === 'signed' || view.status === 'settled') return <Signed queue={queue} />;
   if (view.status === 'sawing') {
@@ -24,7 +26,7 @@ export function OfferAndSign({ queue, otherName }: { readonly queue: TallyQueue;
       <section className="mt-8 border-t border-rule pt-4" aria-labelledby="all-sawn">
         <h2 id="all-sawn">All sawn?</h2>
         <label className="mt-2 flex min-h-glove cursor-pointer items-center gap-3"><input className="h-7 w-7 shrink-0 accent-crayon" type="checkbox" checked={endedBySawyer} onChange={(event) => setEnded(event.target.checked)} />I am leaving early or broke down: charge the tally and the journey only</label>
-        <button type="button" className={join(buttonKinds.primary, gloveSize, 'mt-3 w-full')} disabled={!hasLines} onClick={() => add({ kind: 'offer', id: crypto.randomUUID(), endedBySawyer, note: '' })}>Offer the tally to {otherName}</button>
+        <button type="button" className={join(buttonKinds.primary, gloveSize, 'mt-3 w-full')} disabled={!hasLines && !running} onClick={() => (turnTo(null), add({ kind: 'offer', id: crypto.randomUUID(), endedBySawyer, note: '' }))}>{running ? 'Stop the clock and offer' : 'Offer'} the tally to {otherName}</button>
       </section>
     );
   }

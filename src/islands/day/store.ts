@@ -2,6 +2,7 @@ import { openDB, type DBSchema, type IDBPDatabase } from 'idb';
 import type { CutSheetView } from '~/schemas/cut-sheet.ts';
 import type { DayBooking, DayPack } from '~/schemas/day.ts';
 import type { ShownOnTheDay } from '~/schemas/day-photo.ts';
+import type { RunningClock } from '~/domain/trade/running-clock.ts';
 import type { TallyEntry } from '~/schemas/tally-entries.ts';
 import type { TallyView } from '~/schemas/tally-view.ts';
 
@@ -54,6 +55,8 @@ interface Schema extends DBSchema {
   sent: { key: Key; value: { readonly accountId: string; readonly booking: number; readonly at: string } };
   /** Cut sheets, with the cut at which the saw stands, log by log. */
   sheets: { key: Key; value: CutSheetView & { readonly accountId: string; readonly cutAt: Readonly<Record<string, number>> } };
+  /** The clock that runs on this phone. */
+  clocks: { key: Key; value: RunningClock & { readonly accountId: string; readonly booking: number } };
   holder: { key: string; value: Holder };
 }
 
@@ -64,10 +67,11 @@ let opened: Promise<IDBPDatabase<Schema>> | undefined;
 
 /** The phone's own database. */
 export const database = (): Promise<IDBPDatabase<Schema>> =>
-  (opened ??= openDB<Schema>('skidway', 3, {
+  (opened ??= openDB<Schema>('skidway', 4, {
     upgrade(db, before) {
       if (before < 2) db.createObjectStore('pictures', { keyPath: 'id' }).createIndex('ofBooking', ['accountId', 'booking']);
       if (before < 3) db.createObjectStore('sheets', { keyPath: ['accountId', 'booking'] });
+      if (before < 4) db.createObjectStore('clocks', { keyPath: ['accountId', 'booking'] });
       if (before >= 1) return;
       db.createObjectStore('kept', { keyPath: ['accountId', 'number'] });
       db.createObjectStore('tally', { keyPath: ['accountId', 'booking'] });

@@ -5,6 +5,7 @@ import { Field, Select } from '~/islands/form/fields.tsx';
 import type { TallyEntry } from '~/schemas/tally-entries.ts';
 import type { TallyView } from '~/schemas/tally-view.ts';
 import { TakeOne, type Photographs } from './Photographs.tsx';
+import type { Clock } from './use-clock.ts';
 import { timeOfDay } from '../clock.ts';
 
 interface BesideProps {
@@ -130,8 +131,25 @@ function PutRight({ entry, others, onCorrect }: { readonly entry: TallyView['clo
   );
 }
 
+/** What the time goes to, by one tap: the clock that ran before becomes an entry. */
+function TheClock({ clock }: { readonly clock: Clock }): ReactElement {
+  const { running, turnTo } = clock;
+  return (
+    <fieldset className="pb-3">
+      <legend className="text-sm">The clock, now</legend>
+      <div className="mt-1 grid grid-cols-2 gap-2">
+        {activities.map(({ value, label }) => (
+          <button key={value} type="button" aria-pressed={running?.activity === value} className={join('min-h-glove rounded border-2 border-ink px-2 font-bold', running?.activity === value ? 'bg-ink text-paper' : 'bg-sheet')} onClick={() => turnTo(running?.activity === value ? null : value)}>{label}</button>
+        ))}
+        <button type="button" className="min-h-glove rounded border-2 border-heartwood bg-sheet px-2 font-bold text-heartwood" disabled={!running} onClick={() => turnTo(null)}>Stop the clock</button>
+      </div>
+      <p className="mt-2" role="status">{running ? `${activities.find(({ value }) => value === running.activity)?.label ?? ''} since ${time(running.startsAt)}. It runs on with the phone off, and is entered when you stop it or tap another.` : 'Stopped. Tap what the time goes to, or type hours below.'}</p>
+    </fieldset>
+  );
+}
+
 /** Hours, when they are charged or the landowner kept the mill waiting. */
-export function Hours({ view, add }: BesideProps): ReactElement {
+export function Hours({ view, add, clock }: BesideProps & { readonly clock: Clock }): ReactElement {
   const [activity, setActivity] = useState<(typeof activities)[number]['value']>(view.terms.card.basis.kind === 'hourly' ? 'sawing' : 'waiting');
   const [from, setFrom] = useState('');
   const [to, setTo] = useState('');
@@ -148,6 +166,7 @@ export function Hours({ view, add }: BesideProps): ReactElement {
   return (
     <details open={view.terms.card.basis.kind === 'hourly'}>
       <summary className={summaryClass}>Hours · {view.clock.length}</summary>
+      <TheClock clock={clock} />
       <div className="grid gap-3 pb-3 sm:grid-cols-2">
         <Select name="activity" label="What the time was" options={activities} value={activity} onChange={(event) => setActivity(event.target.value as typeof activity)} />
         <Field name="clockDay" label="Day" type="date" figure value={day} onChange={(event) => setDay(event.target.value)} />

@@ -3,6 +3,8 @@ import { buttonKinds, gloveSize, join } from '~/components/classes.ts';
 import { formatFraction } from '~/domain/measure.ts';
 import { formatCents } from '~/domain/money.ts';
 import { tallyRuleOf } from '~/domain/trade/tally-count.ts';
+import { minutesOf, minutesOnClock } from '~/domain/trade/clock.ts';
+import { minutesSaid } from '~/domain/trade/running-clock.ts';
 import { thicknessName } from '~/domain/timber/tally.ts';
 import type { TallyEntry } from '~/schemas/tally-entries.ts';
 import type { TallyView } from '~/schemas/tally-view.ts';
@@ -18,6 +20,7 @@ import { sizeName } from './size-name.ts';
 import { ChangedEstimate, Stops } from './Stops.tsx';
 import { AddLog, LevelThePith, MeasureAgain } from './ThisLog.tsx';
 import { Voice } from './Voice.tsx';
+import { useClock } from './use-clock.ts';
 import { useTallyQueue, type TallyQueue } from './use-tally-queue.ts';
 
 interface Props {
@@ -52,7 +55,13 @@ export function TallyPad({ queue }: { readonly queue: TallyQueue }): ReactElemen
   const [secondWidthIn, setSecondWidth] = useState(8);
   const [lengthFt, setLength] = useState(log?.wholeFt ?? 8);
   const [several, setSeveral] = useState('1');
-  const counted = countView(view);
+  const clock = useClock(queue);
+  const { running, soFar } = clock;
+  // The clock that runs counts against the hold too, before it is entered.
+  const counted = countView(running && soFar ? { ...view, clock: [...view.clock, { id: 'running', activity: running.activity, ...soFar }] } : view);
+  const spent = [...view.clock, ...(running && soFar ? [{ activity: running.activity, ...soFar }] : [])].map((one) => ({ ...one, startsAt: new Date(one.startsAt), endsAt: new Date(one.endsAt) }));
+  const { basis } = view.terms.card;
+  const onClock = basis.kind === 'hourly' ? minutesOnClock(spent, basis.from) : minutesOf(spent, 'sawing');
   const next = oneBoard(view, thicknessIn, widthIn, lengthFt);
   const lengths = [...new Set([log?.wholeFt ?? 8, 8, 10, 12, 16])].sort((a, b) => a - b);
   const lastBoard = view.boards.at(-1);
@@ -78,7 +87,7 @@ export function TallyPad({ queue }: { readonly queue: TallyQueue }): ReactElemen
       <SendingTrouble queue={queue} />
 
       <div className="flex flex-wrap items-end justify-between gap-x-4 px-4 pt-4">
-        <div className="text-sm"><p>Sawn so far</p><p className="figure text-base">{formatCents(counted.job.costCents)} <span className="text-ink-soft">of {formatCents(counted.limitCents)} {counted.limitCents > view.heldCents ? 'allowed' : 'held'}</span></p></div>
+        <div className="text-sm"><p>Sawn so far</p><p className="figure text-base">{formatCents(counted.job.costCents)} <span className="text-ink-soft">of {formatCents(counted.limitCents)} {counted.limitCents > view.heldCents ? 'allowed' : 'held'}</span></p><p>{basis.kind === 'hourly' ? 'On the clock' : 'Time sawing'} <span className="figure text-base">{minutesSaid(onClock)}</span>{running && <span className="text-ink-soft"> · clock running</span>}</p></div>
         <p className="figure text-4xl font-bold" data-testid="sawn-so-far">{Number(counted.boardFeet.toFixed(2)).toLocaleString('en-US')} bf</p>
       </div>
       <div className="px-4"><Stops {...{ view, counted, add }} logs={log ? [log] : []} /><ChangedEstimate view={view} /></div>
@@ -136,7 +145,7 @@ export function TallyPad({ queue }: { readonly queue: TallyQueue }): ReactElemen
           <MetalHits {...{ view, add, photographs }} logId={log?.id ?? null} />
           <BoardPhotographs {...{ view, photographs }} />
           <CullLogs {...{ view, add }} logId={log?.id ?? null} />
-          <Hours {...{ view, add }} logId={null} />
+          <Hours {...{ view, add, clock }} logId={null} />
           <Extras {...{ view, add }} logId={null} />
           <AddLog species={view.logs[0]?.species ?? 'white-oak'} add={add} />
           <RainStop {...{ view, add }} costCents={counted.job.costCents} />

@@ -9,6 +9,7 @@ describe('the cut list against the dry boards', () => {
   it('counts what was sawn of it, longer boards too, and shrinks it across and through', () => {
     const [top] = againstList([piece({})], [row(1.25, 8, 12, 4), row(1.25, 8, 8, 3), row(1, 8, 12, 9)], () => 'white-oak', 8);
     expect(top?.made).toBe(4);
+    expect(againstList([piece({ widthIn: 6 })], [row(1.25, 8, 12, 4), row(1, 8, 12, 9), row(1.25, 8, 8, 3)], () => 'white-oak', 8)[0]).toMatchObject({ made: 0, wider: 4 });
     // White oak 10.5 % across, 5.6 % through (Wood Handbook); 22/30 of it at 8 %: 8 × (1 − 0.077) = 7.384; 1.25 × (1 − 0.0410667) = 1.1987.
     expect(top?.dry?.widthIn).toBeCloseTo(7.384, 3);
     expect(top?.dry?.thicknessIn).toBeCloseTo(1.1987, 4);
