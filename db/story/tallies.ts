@@ -109,9 +109,9 @@ async function answer(owner: string, sawyer: string, listing: string, words: str
 
 async function decide(at: Date): Promise<void> {
   const { number } = await bookingOf('wim-basswood');
-  const { view } = await tallyPage(await who('mo'), number);
+  const { view, sha256 } = await tallyPage(await who('mo'), number);
   const decisions = view.queries.map(({ id }) => ({ query: id, decision: { kind: 'count' as const, count: 3 }, because: 'The photograph of the stack shows three of this width, and the sawyer agrees that one split.' }));
-  await decideTally(await who('mo'), { booking: number, decisions }, at);
+  await decideTally(await who('mo'), { booking: number, sha256, decisions }, at);
   await handleMoney(at);
 }
 

@@ -2,7 +2,7 @@ import { formatFraction } from '~/domain/measure.ts';
 import { correctionWords } from '~/domain/trade/clock.ts';
 import { tallyRuleOf } from '~/domain/trade/tally-count.ts';
 import { thicknessName } from '~/domain/timber/tally.ts';
-import type { TallyView } from '~/schemas/tally-view.ts';
+import type { TallyQueryView, TallyView } from '~/schemas/tally-view.ts';
 import { dayAndTime } from '~/islands/clock.ts';
 
 /** One entry of a tally as a line that can be read, queried and decided. `ref` is how forms name it. */
@@ -14,6 +14,9 @@ export interface TallyLine {
 }
 
 const activityWords = { preparing: 'Arriving and setting up', sawing: 'Sawing', waiting: 'Waiting for the landowner', breakdown: 'Breakdown, off the clock', sharpening: 'Sharpening, off the clock' } as const;
+
+/** Why a line is queried: what the landowner says of it, or that it was entered later. */
+export const querySays = ({ says }: TallyQueryView, landownerName: string): string => (says === '' ? 'Entered after the tally was queried.' : `${landownerName}: ${says}`);
 
 /** Every entry of the tally in the order it was made, boards first. */
 export function tallyLines(view: TallyView, zone: string): TallyLine[] {

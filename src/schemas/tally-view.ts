@@ -22,6 +22,7 @@ export interface TallyQueryView {
   readonly id: string;
   readonly line: string;
   readonly lineId: string | null;
+  /** What the landowner says of it; empty when the sawyer entered it after the tally was queried, so that nobody has read it yet. */
   readonly says: string;
   readonly answer: string | null;
   readonly decision: { readonly kind: 'stands' | 'struck' | 'count'; readonly count?: number } | null;

@@ -241,15 +241,36 @@ describe('the tally', () => {
     const queryOf = (board: { id: string }): string => queries.find(({ lineId }) => lineId === board.id)?.id ?? '';
     await answerQuery(cast.bram, { booking: number, query: queryOf(first), answer: 'Two went to the stack behind the barn.' }, at);
     const because = 'The photograph of the stack shows 18.';
-    await expect(decideTally(cast.ada, { booking: number, decisions: [] }, at)).rejects.toMatchObject({ kind: 'forbidden' });
-    await expect(decideTally(cast.mo, { booking: number, decisions: [{ query: queryOf(first), decision: { kind: 'count', count: 18 }, because }] }, at)).rejects.toThrow('every queried line');
-    await decideTally(cast.mo, { booking: number, decisions: [{ query: queryOf(first), decision: { kind: 'count', count: 18 }, because }, { query: queryOf(second), decision: { kind: 'stands' }, because: 'It agrees with the count.' }] }, at);
+    await expect(decideTally(cast.ada, { booking: number, sha256: page.sha256, decisions: [] }, at)).rejects.toMatchObject({ kind: 'forbidden' });
+    await expect(decideTally(cast.mo, { booking: number, sha256: page.sha256, decisions: [{ query: queryOf(first), decision: { kind: 'count', count: 18 }, because }] }, at)).rejects.toThrow('every queried line');
+    await decideTally(cast.mo, { booking: number, sha256: page.sha256, decisions: [{ query: queryOf(first), decision: { kind: 'count', count: 18 }, because }, { query: queryOf(second), decision: { kind: 'stands' }, because: 'It agrees with the count.' }] }, at);
     await house.work();
     // 18 boards of 8 instead of 20: 362 bf × $0.50 = 181.00 + 75 + 24 = 280.00.
     expect((await tallyPage(cast.ada, number)).settlement.costCents).toBe(28_000);
     expect((await stateOf(number))[0]).toBe('settled');
     expect(await TallyQuery.count({ where: { decidedBecause: because } })).toBe(1);
     expect(await checkBooks(house)).toEqual([]);
+  });
+
+  it('is decided only as the moderator read it, with what was entered since it was queried', async () => {
+    const number = await tallied();
+    const page = await tallyPage(cast.ada, number);
+    const [first] = page.view.boards;
+    if (!first) throw new Error('the tally has boards');
+    await queryTally(cast.ada, { booking: number, lines: [{ line: 'board', lineId: first.id }], says: 'I counted 18.' }, at);
+    const [asked] = (await tallyPage(cast.mo, number)).view.queries;
+    const because = 'The photograph shows it.';
+    const later: Line = { kind: 'board', id: randomUUID(), logId: null, boardKind: 'board', thicknessIn: 1, widthIn: 12, secondWidthIn: null, lengthFt: 12, count: 40 };
+    const extras: Line = { kind: 'extras', id: randomUUID(), stickers: 5000 };
+    await enterTally(cast.bram, { booking: number, entries: [later, extras] }, at);
+    await enterTally(cast.bram, { booking: number, entries: [later, extras] }, at);
+    const stands = (query: string) => ({ query, decision: { kind: 'stands' } as const, because });
+    await expect(decideTally(cast.mo, { booking: number, sha256: page.sha256, decisions: [stands(asked?.id ?? '')] }, at)).rejects.toThrow('has changed since');
+    const { sha256, view } = await tallyPage(cast.mo, number);
+    expect(view.queries.map(({ line, says }) => [line, says])).toEqual([['board', 'I counted 18.'], ['board', ''], ['extras', '']]);
+    await expect(decideTally(cast.mo, { booking: number, sha256, decisions: [stands(asked?.id ?? '')] }, at)).rejects.toThrow('every queried line');
+    await decideTally(cast.mo, { booking: number, sha256, decisions: view.queries.map(({ id, says }) => ({ query: id, decision: { kind: says === '' ? 'struck' : 'stands' }, because })) }, at);
+    expect((await tallyPage(cast.ada, number)).settlement.costCents, 'as it was offered').toBe(page.settlement.costCents);
   });
 
   it('charges hours to the quarter, waiting with them, and no breakdown', async () => {

@@ -4,9 +4,10 @@ import { execute, inTransaction, oneRow } from '../db.ts';
 import { conflict, invalid } from '../errors.ts';
 import { lockBooking } from '../locks.ts';
 import { type Booking, Log, MeasuredLog, MetalHit, Tally, TallyPart } from '../models/index.ts';
-import type { KeptClock } from '../tally-work.ts';
+import { type KeptClock, tallyWork } from '../tally-work.ts';
 import { record } from '../transition.ts';
 import type { Viewer } from '../viewer.ts';
+import { queryEntered } from './query-entered.ts';
 import { beginSawing } from './start-sawing.ts';
 import type { Line } from './take-entries.ts';
 import { watchHold, watchLogs, watchMetal } from './watch-day.ts';
@@ -106,6 +107,7 @@ export async function enterTally(by: Viewer, input: { readonly booking: number; 
     if (!tally) throw conflict('Go through the check-list and start sawing first.');
     await refuseStrangeLogs(input.entries, booking);
     if (booking.status === 'sawing') await refuseSignedLines(input.entries, tally);
+    const queried = booking.status === 'queried' ? await tallyWork(booking) : null;
 
     const hitsBefore = await MetalHit.count({ where: { tallyId: tally.id, removedAt: null } });
     const last = await oneRow<{ sequence: number }>('SELECT coalesce(max(sequence), 0)::int AS sequence FROM tally_board WHERE tally_id = $1', [tally.id]);
@@ -122,7 +124,11 @@ export async function enterTally(by: Viewer, input: { readonly booking: number; 
     tally.revision += 1;
     await tally.save();
     await booking.update({ updatedAt: at });
-    if (booking.status === 'queried') await record(by, 'amendTally', 'booking', booking.id, at, { data: { entries: input.entries.length } });
+    if (queried) {
+      await record(by, 'amendTally', 'booking', booking.id, at, { data: { entries: input.entries.length } });
+      const amended = await tallyWork(booking);
+      if (amended) await queryEntered(queried, amended, at);
+    }
     await watchLogs(by, booking, logsChanged);
     await watchMetal(by, booking, tally, hitsBefore);
     await watchHold(by, booking, tally, at);

@@ -49,7 +49,7 @@ export async function answerQuery(by: Viewer, input: { readonly booking: number;
   });
 }
 
-/** How a moderator decides a line: it stands, it is struck out, or (for boards) this many are counted. */
+/** How a moderator decides a line: it stands, it is struck out (of the extras all are), or (for boards) this many are counted. */
 export type Decision = { readonly kind: 'stands' } | { readonly kind: 'struck' } | { readonly kind: 'count'; readonly count: number };
 
 export interface Decided {
@@ -60,7 +60,8 @@ export interface Decided {
 }
 
 async function carryOut(tally: Tally, query: TallyQuery, decision: Decision, at: Date): Promise<void> {
-  if (decision.kind === 'stands' || query.lineId === null) return;
+  if (decision.kind === 'stands') return;
+  if (query.lineId === null) return void (await tally.update({ extras: {} }));
   if (query.line === 'board' && decision.kind === 'count' && decision.count > 0) {
     await TallyBoard.update({ count: decision.count }, { where: { id: query.lineId, tallyId: tally.id } });
     return;
@@ -74,13 +75,15 @@ async function carryOut(tally: Tally, query: TallyQuery, decision: Decision, at:
 
 /**
  * A moderator decides every open queried line with a reason; the tally then counts as signed.
- * @throws Refusal `conflict` when a line is left undecided
+ * @param input `sha256` of the tally that the moderator read
+ * @throws Refusal `conflict` when a line is left undecided, or the tally has changed since it was read
  */
-export async function decideTally(by: Viewer, input: { readonly booking: number; readonly decisions: readonly Decided[] }, at: Date): Promise<void> {
+export async function decideTally(by: Viewer, input: { readonly booking: number; readonly sha256: string; readonly decisions: readonly Decided[] }, at: Date): Promise<void> {
   await inTransaction(async () => {
     const booking = await lockBooking(input.booking);
     authorize(by, 'booking', 'decideTally', rolesOnBooking(by, booking), booking.status);
     const tally = await Tally.findOne({ where: { bookingId: booking.id, part: 1 }, lock: true, rejectOnEmpty: true });
+    if ((await tallyWork(booking))?.sha256 !== input.sha256) throw conflict('The tally has changed since this page was shown. Read it as it stands now, then decide.');
     const open = await TallyQuery.findAll({ where: { tallyId: tally.id, decidedAt: null }, lock: true });
     for (const query of open) {
       const decided = input.decisions.find((one) => one.query === query.id);
