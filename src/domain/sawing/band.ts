@@ -207,7 +207,7 @@ function cantStack(stock: Stock, rule: RowRule, { below, above }: Band): Layer[]
 }
 
 /** Value of some layers under a row rule. */
-const layersValue = (rule: RowRule, layers: readonly Layer[]): number =>
+export const layersValue = (rule: RowRule, layers: readonly Layer[]): number =>
   layers.reduce((sum, layer) => {
     const { far, near } = distances(layer);
     return sum + rule.value(layer.group, far, near);

@@ -6,11 +6,11 @@ import type { Model, Solver } from './solver.ts';
  * What every choice of plans satisfies, whichever plans: at any prices, the logs used are worth no less than the pieces made; and a
  * log gives no more of one size than it holds of that size alone. Columns: logs used of each shape, then pieces short.
  */
-function relaxed(pool: Pool, demand: readonly Demand[], shortCost: (index: number) => number, logCost: (cubicFeet: number) => number, whole: boolean): Model {
-  const { shapes, worths, mostOf } = pool;
+function relaxed(pool: Pool, demand: readonly Demand[], shortCost: (index: number) => number, logCost: (cost: number) => number, whole: boolean): Model {
+  const { shapes, limits, worths, mostOf } = pool;
   return {
     columns: [
-      ...shapes.map(({ cubicFeet, ids }) => ({ cost: logCost(cubicFeet), most: ids.length, whole })),
+      ...shapes.map(({ cost, ids }) => ({ cost: logCost(cost), most: ids.length, whole })),
       ...demand.map(({ count }, index) => ({ cost: shortCost(index), most: count, whole })),
     ],
     rows: [
@@ -25,6 +25,7 @@ function relaxed(pool: Pool, demand: readonly Demand[], shortCost: (index: numbe
         sign: '>=' as const,
         rest: count,
       })),
+      ...limits.map(({ shapes: limited, most }) => ({ terms: limited.map((shape) => [shape, 1] as const), sign: '<=' as const, rest: most })),
     ],
   };
 }
@@ -44,12 +45,12 @@ export function leastShort(pool: Pool, demand: readonly Demand[], solve: Solver,
   return Math.max(0, least((whole) => relaxed(pool, demand, (index) => demand[index]?.boardFeet ?? 0, () => 0, whole), solve, seconds));
 }
 
-/** Cubic feet of logs that are used, whatever plans are chosen, when as many board feet are short as `short` says. */
-export function leastVolume(pool: Pool, demand: readonly Demand[], short: readonly number[], solve: Solver, seconds: number): number {
+/** What the logs that are used count, whatever plans are chosen, when as many board feet are short as `short` says. */
+export function leastCost(pool: Pool, demand: readonly Demand[], short: readonly number[], solve: Solver, seconds: number): number {
   if (pool.shapes.length === 0) return 0;
   const allowed = demand.reduce((sum, { boardFeet }, index) => sum + boardFeet * (short[index] ?? 0), 0);
   const model = (whole: boolean): Model => {
-    const { columns, rows } = relaxed(pool, demand, () => 0, (cubicFeet) => cubicFeet, whole);
+    const { columns, rows } = relaxed(pool, demand, () => 0, (cost) => cost, whole);
     return { columns, rows: [...rows, { terms: demand.map(({ boardFeet }, index) => [pool.shapes.length + index, boardFeet] as const), sign: '<=', rest: allowed + 1e-6 }] };
   };
   return Math.max(0, least(model, solve, seconds));

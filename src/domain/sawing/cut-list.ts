@@ -1,16 +1,18 @@
-import { totalBoardFeet } from './board.ts';
-import { leastShort, leastVolume } from './cut-list-bound.ts';
+import { leastShort, leastCost } from './cut-list-bound.ts';
 import { Pool } from './cut-list-patterns.ts';
 import { boardFeetShort, choose } from './cut-list-choice.ts';
 import { assembled, type LogPlan } from './cut-list-plans.ts';
 import { type Demand, demandOf } from './demand.ts';
 import { cubicFeet, type LogShape } from './log-shape.ts';
+import type { PieceKind } from './piece-kind.ts';
 import type { Mill } from './pieces.ts';
 import type { Pattern } from './saw-plan.ts';
 import type { Solver } from './solver.ts';
 
 export interface ListedShape extends LogShape {
   readonly id: string;
+  /** What its use counts beside the others', for the same pieces made; its cubic feet when left out. */
+  readonly cost?: number | undefined;
 }
 
 /** A wanted size, green, and how many. */
@@ -20,6 +22,14 @@ export interface WantedPiece {
   readonly widthIn: number;
   readonly lengthFt: number;
   readonly count: number;
+  /** How it must lie in its log; a board when left out. A slab's width is the least that both of its faces have. */
+  readonly kind?: PieceKind | undefined;
+}
+
+/** Logs of which only so many may be used together: ways to cut one stem that overlap. */
+export interface Together {
+  readonly ids: readonly string[];
+  readonly most: number;
 }
 
 export interface CutListRequest {
@@ -29,6 +39,7 @@ export interface CutListRequest {
   readonly pattern?: Pattern | 'best' | undefined;
   readonly waneAllowanceIn?: number | undefined;
   readonly pieces: readonly WantedPiece[];
+  readonly together?: readonly Together[] | undefined;
 }
 
 export interface Covered {
@@ -66,13 +77,14 @@ const NEAR = 1e-6;
 
 /**
  * Chooses a plan for each log so that the wanted pieces are covered: least board feet short first, then least cubic feet of logs
- * used. Plans are made at prices that the solver puts on the pieces (column generation); which plan each log takes is then solved in
+ * used. Timbers round the heart, timbers free of it and slabs are planned with the boards that the same log gives beside them. Plans are made at prices that the solver puts on the pieces (column generation); which plan each log takes is then solved in
  * whole numbers over all plans made. The bound holds for every plan of the pattern, made or not.
  * @param solve a solver of linear models in whole numbers. @param patience how long to look; with no time at all, still an answer.
  */
 export function cutList(request: CutListRequest, solve: Solver, patience: Patience): CutListAnswer {
   const demand = demandOf(request.pieces);
   const pool = new Pool(request, demand);
+  pool.sharpen(patience.toPlan);
   pool.planAt(demand.map(({ boardFeet }) => boardFeet), patience.toPlan);
   pool.planOneByOne(patience.toPlan);
   // Of few logs, how many of each size they hold alone makes the bound sharp.
@@ -85,10 +97,10 @@ export function cutList(request: CutListRequest, solve: Solver, patience: Patien
   const short = boardFeetShort(demand, choice);
   const bound = Math.min(short, leastShort(pool, demand, solve, patience.solverSeconds));
   const plans = assembled(request, pool, choice, demand);
-  const proven = short <= bound + NEAR && usedVolume(request.logs, plans) <= leastVolume(pool, demand, choice.short, solve, patience.solverSeconds) + NEAR;
+  const proven = short <= bound + NEAR && usedCost(request.logs, plans) <= leastCost(pool, demand, choice.short, solve, patience.solverSeconds) + NEAR;
   const covered = coveredBy(request.pieces, demand, choice.short);
-  const made = request.pieces.reduce((sum, piece, index) => sum + (covered[index]?.made ?? 0) * ((piece.thicknessIn * piece.widthIn * piece.lengthFt) / 12), 0);
-  const surplus = plans.reduce((sum, { boards }) => sum + totalBoardFeet(boards), 0) - made;
+  const made = covered.reduce((sum, each, index) => sum + each.made * feetOf(request.pieces[index]), 0);
+  const surplus = plans.reduce((sum, { boards }) => sum + boards.reduce((all, { piece }) => all + (demand[piece]?.boardFeet ?? 0), 0), 0) - made;
   return {
     covered,
     plans,
@@ -100,8 +112,10 @@ export function cutList(request: CutListRequest, solve: Solver, patience: Patien
   };
 }
 
-const usedVolume = (logs: readonly ListedShape[], plans: readonly LogPlan[]): number =>
-  logs.reduce((sum, log, index) => sum + ((plans[index]?.boards.length ?? 0) > 0 ? cubicFeet(log) : 0), 0);
+const feetOf = (piece: WantedPiece | undefined): number => (piece ? (piece.thicknessIn * piece.widthIn * piece.lengthFt) / 12 : 0);
+
+const usedCost = (logs: readonly ListedShape[], plans: readonly LogPlan[]): number =>
+  logs.reduce((sum, log, index) => sum + ((plans[index]?.boards.length ?? 0) > 0 ? (log.cost ?? cubicFeet(log)) : 0), 0);
 
 /** Shares what is short of a size among the pieces that ask for it, the last in the list first. */
 function coveredBy(pieces: readonly WantedPiece[], demand: readonly Demand[], short: readonly number[]): Covered[] {

@@ -1,7 +1,9 @@
 import { formatFeet, formatInches } from '../measure.ts';
 import { type Board, totalBoardFeet } from './board.ts';
 import { cutList, type CutListAnswer, type CutListRequest, type Patience, type WantedPiece } from './cut-list.ts';
+import type { LogPlan } from './cut-list-plans.ts';
 import { cutsOf } from './cuts.ts';
+import { demandOf } from './demand.ts';
 import { fillRound } from './fill-round.ts';
 import { GREEN_FOUR_QUARTER_IN } from './expected.ts';
 import { type FlawedLog, soundCore } from './sound-core.ts';
@@ -9,14 +11,14 @@ import { type LogShape } from './log-shape.ts';
 import type { Mill, Piece } from './pieces.ts';
 import { type Pattern, sawPlan, type SawPlan } from './saw-plan.ts';
 import { type Shortfall, shortfalls } from './shortfall.ts';
-import { dedicate, type KindPiece, leastLogOf } from './special-pieces.ts';
+import { leastLogOf } from './special-pieces.ts';
 import type { Solver } from './solver.ts';
 
 export interface ListingPlanRequest {
   readonly logs: readonly (FlawedLog & { readonly id: string })[];
   readonly mill: Mill;
   /** Green sizes. */
-  readonly pieces: readonly KindPiece[];
+  readonly pieces: readonly WantedPiece[];
   /** How boards are sawn; `best` when left out. Timbers and slabs have their own ways. */
   readonly pattern?: Pattern | 'best' | undefined;
 }
@@ -80,66 +82,64 @@ function withJackets(core: LogShape, mill: Mill, plan: SawPlan, pieces: readonly
   return { ...plan, pattern: boards.some((board) => board.turned) ? 'cant' : 'live', boards, boardFeet: totalBoardFeet(boards), value: plan.value + totalBoardFeet(more) * (piece.value ?? 1), cuts: cutsOf(core, mill.kerfIn, boards, false) };
 }
 
-/** What is covered of the whole list: timbers and slabs from their own logs, boards from the rest. Bounds are for the boards alone, so with other kinds nothing is proven. */
-function together(pieces: readonly KindPiece[], madeOfKinds: readonly number[], boards: CutListAnswer | null): Omit<CutListAnswer, 'plans'> {
-  const known = new Map(boards?.covered.map((each) => [each.id, each]));
-  const covered = pieces.map((piece, index) => known.get(piece.id) ?? { id: piece.id, made: madeOfKinds[index] ?? 0, short: piece.count - (madeOfKinds[index] ?? 0) });
-  const boardFeetShort = covered.reduce((sum, { short }, index) => sum + short * feetOf(pieces[index]), 0);
-  const kinds = pieces.some(isSpecial);
-  const bound = kinds ? 0 : (boards?.boundBoardFeetShort ?? 0);
-  return { covered, surplusBoardFeet: boards?.surplusBoardFeet ?? 0, boardFeetShort, boundBoardFeetShort: bound, gapBoardFeet: Math.max(0, boardFeetShort - bound), provenBest: !kinds && (boards?.provenBest ?? false) };
-}
-
-const isSpecial = ({ kind }: KindPiece): boolean => kind !== undefined && kind !== 'board';
-const feetOf = (piece: KindPiece | undefined): number => (piece ? (piece.thicknessIn * piece.widthIn * piece.lengthFt) / 12 : 0);
+const isSpecial = ({ kind }: WantedPiece): boolean => kind !== undefined && kind !== 'board';
 
 /** What would mend a timber or slab that is short. */
-function mendOfKind(piece: KindPiece, short: number, mill: Mill): Shortfall {
+function mendOfKind(piece: WantedPiece, short: number, mill: Mill): Shortfall {
   const least = leastLogOf(piece, mill);
   const mend = least === null ? 'A smaller section: no log up to 60 in gives this one on this mill.' : `${short === 1 ? 'One more log' : 'More logs, each'} at least ${formatInches(least)} at the small end and ${formatFeet(Math.max(4, piece.lengthFt))} long.`;
   return { id: piece.id, short, mend: [mend] };
 }
 
-/**
- * The boards of a whole listing on one mill: timbers and slabs first, each from logs of its own, then the boards of the cut list, then
- * 4/4 jacket boards from what is left.
- */
+/** The boards of the cut list's plans by piece: those of one size and kind go to the pieces that ask for them in their order. */
+function namedByPiece(plans: readonly LogPlan[], pieces: readonly WantedPiece[]): Map<string, Board[]> {
+  const left = pieces.map(({ count }) => count);
+  const sizes = demandOf(pieces).map(({ ids }) => ids.map((id) => pieces.findIndex((piece) => piece.id === id)));
+  return new Map(plans.map(({ logId, boards }) => [logId, boards.map((board): Board => {
+    const places = sizes[board.piece] ?? [];
+    const piece = places.find((place) => (left[place] ?? 0) > 0) ?? places[0] ?? 0;
+    left[piece] = (left[piece] ?? 0) - 1;
+    return { ...board, piece };
+  })]));
+}
+
+/** The boards of a whole listing on one mill: the pieces of the cut list, then 4/4 jacket boards from what is left. */
 export function listingPlan({ logs, mill, pieces, pattern = 'best' }: ListingPlanRequest, solve: Solver, patience: Patience): ListingPlan {
   const cores = logs.map((log) => ({ id: log.id, core: soundCore(log) }));
-  const whole = cores.flatMap(({ id, core }) => (core ? [{ id, core }] : []));
-  const special = dedicate(whole, mill, pieces);
-  const dedicated = new Map(special.taken.map(({ id, plan }) => [id, plan]));
-  const sound = whole.flatMap(({ id, core }) => (dedicated.has(id) ? [] : [{ id, ...core }]));
-  const boards = pieces.filter((piece) => !isSpecial(piece));
-  const request: CutListRequest = { logs: sound, mill, pieces: boards, pattern };
-  const answer = boards.length > 0 && sound.length > 0 ? cutList(request, solve, patience) : null;
-  // The plans of the boards name their pieces among the boards alone.
-  const places = pieces.flatMap((piece, index) => (isSpecial(piece) ? [] : [index]));
+  const sound = cores.flatMap(({ id, core }) => (core ? [{ id, ...core }] : []));
+  const request: CutListRequest = { logs: sound, mill, pieces, pattern };
+  const answer = pieces.length > 0 ? cutList(request, solve, patience) : null;
+  const named = namedByPiece(answer?.plans ?? [], pieces);
   const jackets = new Map<string, SawPlan>();
   const planned = cores.map(({ id, core }): PlannedLog => {
     if (!core) return { id, core, plan: none('The sweep or the rot leaves no sound wood to plan in.'), use: 'none' };
-    const given = dedicated.get(id);
-    if (given) return { id, core, plan: withJackets(core, mill, given, pieces), use: 'cut-list' };
     const wanted = answer?.plans.find(({ logId }) => logId === id);
-    if (wanted && wanted.boards.length > 0) return { id, core, plan: withJackets(core, mill, { ...wanted, boards: wanted.boards.map((board) => ({ ...board, piece: places[board.piece] ?? 0 })) }, pieces), use: 'cut-list' };
+    const boards = named.get(id) ?? [];
+    if (wanted && boards.length > 0) return { id, core, plan: withJackets(core, mill, { ...wanted, boards }, pieces), use: 'cut-list' };
     const key = JSON.stringify(core);
     const plan = jackets.get(key) ?? jacket(core, mill, pattern === 'best' ? 'live' : pattern);
     jackets.set(key, plan);
     return { id, core, plan, use: plan.boards.length > 0 ? 'jacket' : 'none' };
   });
-  const list = pieces.length === 0 || whole.length === 0 ? null : together(pieces, special.made, answer);
-  const short = answer?.covered.filter((each) => each.short > 0) ?? [];
-  const thin = answer && short.length > 0 && mill.kerfIn > THIN_KERF_IN + 0.02 ? cutList({ ...request, mill: { ...mill, kerfIn: THIN_KERF_IN } }, solve, patience) : null;
-  const mendable = pieces.flatMap((piece, index) => {
-    const missing = piece.count - (special.made[index] ?? 0);
-    return isSpecial(piece) && missing > 0 ? [mendOfKind(piece, missing, mill)] : [];
-  });
+  if (!answer) return { logs: planned, list: null, shortfalls: [], thinner: null };
+  const short = answer.covered.filter((each) => each.short > 0);
+  const thin = short.length > 0 && mill.kerfIn > THIN_KERF_IN + 0.02 ? cutList({ ...request, mill: { ...mill, kerfIn: THIN_KERF_IN } }, solve, patience) : null;
+  const { plans: _, ...list } = answer;
   return {
     logs: planned,
     list,
-    shortfalls: [...mendable, ...shortfalls(request, short)],
-    thinner: answer && thin && thin.boardFeetShort < answer.boardFeetShort - 1e-6 ? { kerfIn: THIN_KERF_IN, boardFeetShort: thin.boardFeetShort } : null,
+    shortfalls: mends(request, short),
+    thinner: thin && thin.boardFeetShort < answer.boardFeetShort - 1e-6 ? { kerfIn: THIN_KERF_IN, boardFeetShort: thin.boardFeetShort } : null,
   };
+}
+
+/** For every piece that is short, in the order of the list, what would mend it. */
+export function mends(request: CutListRequest, short: readonly { readonly id: string; readonly short: number }[]): Shortfall[] {
+  return short.flatMap((each) => {
+    const piece = request.pieces.find(({ id }) => id === each.id);
+    if (!piece) return [];
+    return isSpecial(piece) ? [mendOfKind(piece, each.short, request.mill)] : shortfalls(request, [each]);
+  });
 }
 
 /** Boards of one plan by size, the largest first: for tables and cut sheets. */

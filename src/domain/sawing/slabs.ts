@@ -25,13 +25,18 @@ const chord = (radiusIn: number, fromPithIn: number): number => 2 * Math.sqrt(Ma
  * A log sawn through and through into live-edge slabs of one thickness, from below up. The pith lies in the middle of one slab, never
  * between two, so that it checks in one board only. A slab counts while its narrower face is wide enough at the small end.
  * @param leastFaceIn the narrowest face worth keeping, in.
+ * @param clearIn slabs keep so far from the pith on both sides (a rotten heart, a cut too wide for the mill), in; 0 for none.
  */
-export function liveEdgeSlabs(log: LogShape, kerfIn: number, thicknessIn: number, leastFaceIn = 6): Slab[] {
+export function liveEdgeSlabs(log: LogShape, kerfIn: number, thicknessIn: number, leastFaceIn = 6, clearIn = 0): Slab[] {
   const radii = { small: log.smallEndIn / 2, middle: radiusAt(log, log.lengthFt / 2), large: largeEnd(log) / 2 };
   const face = (fromPithIn: number): AlongLog => ({ small: chord(radii.small, fromPithIn), middle: chord(radii.middle, fromPithIn), large: chord(radii.large, fromPithIn) });
   const pitch = thicknessIn + kerfIn;
   const reach = Math.ceil(radii.large / pitch) + 1;
-  return Array.from({ length: 2 * reach + 1 }, (_, index) => (index - reach) * pitch - thicknessIn / 2).flatMap((bottomIn): Slab[] => {
+  const outward = (index: number): number => clearIn + index * pitch;
+  const bottoms = clearIn > 0
+    ? Array.from({ length: 2 * reach }, (_, index) => (index < reach ? -outward(reach - 1 - index) - thicknessIn : outward(index - reach)))
+    : Array.from({ length: 2 * reach + 1 }, (_, index) => (index - reach) * pitch - thicknessIn / 2);
+  return bottoms.flatMap((bottomIn): Slab[] => {
     const [far, near] = [Math.max(Math.abs(bottomIn), Math.abs(bottomIn + thicknessIn)), Math.min(Math.abs(bottomIn), Math.abs(bottomIn + thicknessIn))];
     const [wideFaceIn, narrowFaceIn] = [face(near), face(far)];
     if (narrowFaceIn.small < leastFaceIn - 1e-9) return [];
