@@ -92,7 +92,7 @@ function mendOfKind(piece: WantedPiece, short: number, mill: Mill): Shortfall {
 }
 
 /** The boards of the cut list's plans by piece: those of one size and kind go to the pieces that ask for them in their order. */
-function namedByPiece(plans: readonly LogPlan[], pieces: readonly WantedPiece[]): Map<string, Board[]> {
+export function namedByPiece(plans: readonly LogPlan[], pieces: readonly WantedPiece[]): Map<string, Board[]> {
   const left = pieces.map(({ count }) => count);
   const sizes = demandOf(pieces).map(({ ids }) => ids.map((id) => pieces.findIndex((piece) => piece.id === id)));
   return new Map(plans.map(({ logId, boards }) => [logId, boards.map((board): Board => {
