@@ -1,6 +1,9 @@
+import { blankPiece, isBlankPiece, type PieceTyped } from '~/domain/listing/draft.ts';
+import { readPieceRow } from '~/domain/listing/rows.ts';
 import { parseLengthFt, parseLengthIn } from '~/domain/measure.ts';
 import type { Problem, Result } from '~/domain/result.ts';
 import type { BuckingRules, Stem } from '~/domain/sawing/bucking.ts';
+import { type SawnPiece, sawnPieces } from '~/domain/sawing/sawn-piece.ts';
 import type { StemWorth } from '~/domain/sawing/stem-plan.ts';
 import { logRules } from '~/domain/timber/log-rules.ts';
 import { findSpecies, type Species } from '~/domain/timber/species.ts';
@@ -9,19 +12,24 @@ import { insideBarkIn } from '~/domain/timber/taper-and-bark.ts';
 /** Rows of the form: places measured along the stem, and stretches that no log may hold. */
 export const MEASURES = 8;
 export const STRETCHES = 3;
+/** Rows of a cut list that the stem may be cut for. */
+export const PIECES = 6;
 /** Lengths that may be chosen, ft. */
 export const LOG_LENGTHS_FT: readonly number[] = [6, 8, 10, 12, 14, 16, 18, 20];
 /** Trim over the length, in: common practice is 4 to 6. */
 export const TRIM_IN: readonly number[] = [3, 4, 5, 6, 8];
 const LONGEST_STEM_FT = 150;
-/** Planned by boards a longer stem takes too long. */
-const LONGEST_BY_BOARDS_FT = 100;
+/** Planned by boards or for a list a longer stem takes too long. */
+const LONGEST_PLANNED_FT = 100;
 
 export interface StemAsked {
   readonly species: Species;
   readonly stem: Stem;
   readonly rules: BuckingRules;
-  readonly by: StemWorth;
+  /** What the logs shall give most of, or a cut list. */
+  readonly by: StemWorth | 'list';
+  /** The cut list; empty unless the stem is cut for it. */
+  readonly pieces: readonly SawnPiece[];
 }
 
 export interface StemPage {
@@ -33,7 +41,10 @@ export interface StemPage {
   readonly lengths: readonly string[];
 }
 
-const worths: readonly StemWorth[] = [...logRules, 'boards'];
+const worths: readonly StemAsked['by'][] = [...logRules, 'boards', 'list'];
+
+/** The fields of a row of the cut list, as they are named in the address: `p0-thickness`. */
+export const pieceFields = ['label', 'thickness', 'width', 'length', 'count', 'sizing', 'kind'] as const;
 
 const first: Readonly<Record<string, string>> = { bark: 'over', trim: '5', smallest: '8', by: 'internationalQuarter', at0: '0' };
 const firstLengths = ['8', '10', '12', '16'];
@@ -50,8 +61,9 @@ export function readStemPage(params: URLSearchParams): StemPage {
   const rules = reader.rules(lengths);
   const by = worths.find((one) => one === said('by'));
   if (!by) reader.say('by', 'Choose what the logs shall give most of.');
-  if (by === 'boards' && stem?.measures.some(({ fromButtFt }) => fromButtFt > LONGEST_BY_BOARDS_FT)) reader.say('by', `By its boards a stem is worked out up to ${LONGEST_BY_BOARDS_FT} ft. Choose a log rule for a longer one.`);
-  const asked = species && stem && rules && by && reader.problems.length === 0 ? { species, stem, rules, by } : null;
+  if ((by === 'boards' || by === 'list') && stem?.measures.some(({ fromButtFt }) => fromButtFt > LONGEST_PLANNED_FT)) reader.say('by', `${by === 'list' ? 'For a list' : 'By its boards'} a stem is worked out up to ${LONGEST_PLANNED_FT} ft. Choose a log rule for a longer one.`);
+  const pieces = by === 'list' ? reader.pieces() : [];
+  const asked = species && stem && rules && by && reader.problems.length === 0 ? { species, stem, rules, by, pieces } : null;
   return { asked, problems: reader.problems, said, lengths };
 }
 
@@ -106,6 +118,20 @@ class Reader {
       if (toFt <= fromFt) return (this.say(`to${index}`, 'This stretch ends before it begins.'), []);
       return [{ fromFt, toFt }];
     });
+  }
+
+  /** The rows of the cut list in which anything was typed. */
+  pieces(): SawnPiece[] {
+    const rows = Array.from({ length: PIECES }, (_, index) => ({ index, typed: Object.fromEntries(pieceFields.map((name) => [name, this.said(`p${index}-${name}`)])) as Partial<PieceTyped> }))
+      .map(({ index, typed }) => ({ index, typed: { ...blankPiece(), ...typed } }))
+      .filter(({ typed }) => !isBlankPiece(typed));
+    if (rows.length === 0) this.say('p0-thickness', 'Write at least one size that the stem shall give.');
+    return sawnPieces(rows.flatMap(({ index, typed }) => {
+      const read = readPieceRow(typed);
+      if (read.ok) return [read.value];
+      for (const { path, message } of read.problems) this.say(`p${index}-${path}`, message);
+      return [];
+    }));
   }
 
   rules(typed: readonly string[]): BuckingRules | null {

@@ -2,8 +2,10 @@ import { beforeAll, describe, expect, it } from 'vitest';
 import { changeBid } from '~/server/commands/change-bid.ts';
 import { placeBid } from '~/server/commands/place-bid.ts';
 import { planBidList } from '~/server/commands/plan-bid-list.ts';
+import { LIST_PLAN_VERSION } from '~/domain/trade/list-cover.ts';
 import { rows } from '~/server/db.ts';
-import { Piece } from '~/server/models/listing.ts';
+import { planListsAnew } from '~/server/jobs/handlers/plan-lists-anew.ts';
+import { Log, Piece } from '~/server/models/listing.ts';
 import { Bid, Mill, SawyerProfile } from '~/server/models/sawyer.ts';
 import { compareBids } from '~/server/queries/compare-bids.ts';
 import { type Cast, makeCast } from '../support/cast.ts';
@@ -49,7 +51,49 @@ describe('the cut list of each bid', () => {
     expect(await jobs(id)).toHaveLength(2);
     await listing.update({ revision: 2 });
     await planBidList(id);
-    expect((await Bid.findByPk(id, { rejectOnEmpty: true })).cutList?.millId).toBe(mills.bram);
+    expect((await Bid.findByPk(id, { rejectOnEmpty: true })).cutList).toBeNull();
+  });
+
+  it('is planned anew where it is missing or of an older way of planning, each once and few at a time', async () => {
+    const listing = await makeOpenListing(cast.ada.id);
+    await Piece.create({ listingId: listing.id, position: 1, label: 'Shelves', thicknessIn: 1, widthIn: 6, lengthFt: 8, count: 2, sizing: 'full-sawn', forDwelling: false });
+    const [bram, cleo] = [await placeBid(cast.bram, listing.number, bidOf(mills.bram), MARKET_AT), await placeBid(cast.cleo, listing.number, bidOf(mills.cleo), MARKET_AT)];
+    const after = (minutes: number): Date => new Date(MARKET_AT.getTime() + minutes * 60_000);
+    const waiting = async (id: string): Promise<number> => (await rows(`SELECT 1 FROM pgboss.job WHERE name = 'plan-bid-list' AND state < 'completed' AND data ->> 'bidId' = $1`, [id])).length;
+    const finish = () => rows(`UPDATE pgboss.job SET state = 'completed', created_on = $1, completed_on = $1 WHERE name = 'plan-bid-list'`, [MARKET_AT]);
+    const shown = async (id: string) => (await compareBids(cast.ada, listing.number, 'estimate', after(200))).bids.find((bid) => bid.id === id);
+    await planListsAnew(after(90));
+    // The job that came with each bid is still to be done.
+    expect([await waiting(bram), await waiting(cleo)]).toEqual([1, 1]);
+    await finish();
+    await planBidList(bram);
+    const cover = (await Bid.findByPk(bram, { rejectOnEmpty: true })).cutList;
+    if (!cover) throw new Error('the bid was not planned');
+    const { version: _, ...older } = cover;
+    await Bid.update({ cutList: older }, { where: { id: bram } });
+    // Nothing is shown as being worked out for ever; an older plan stands until the new one has come.
+    expect(await shown(cleo)).toMatchObject({ cover: null, coverIsLate: true });
+    expect((await shown(bram))?.cover).toMatchObject({ boardFeetShort: 0 });
+    await planListsAnew(after(30));
+    expect([await waiting(bram), await waiting(cleo)]).toEqual([0, 0]);
+    await planListsAnew(after(90));
+    await planListsAnew(after(91));
+    expect([await waiting(bram), await waiting(cleo)]).toEqual([1, 1]);
+    for (const id of [bram, cleo]) await planBidList(id);
+    await finish();
+    await planListsAnew(after(180));
+    expect([await waiting(bram), await waiting(cleo)]).toEqual([0, 0]);
+    expect((await shown(bram))?.cover).toEqual(cover);
+    expect((await shown(cleo))?.cover).toMatchObject({ version: LIST_PLAN_VERSION });
+  });
+
+  it('says that all is short where no log has sound wood', async () => {
+    const listing = await makeOpenListing(cast.ada.id);
+    await Piece.create({ listingId: listing.id, position: 1, label: '', thicknessIn: 1, widthIn: 6, lengthFt: 8, count: 2, sizing: 'full-sawn', forDwelling: false });
+    await Log.update({ heartDefectIn: 60 }, { where: { listingId: listing.id } });
+    const id = await placeBid(cast.bram, listing.number, bidOf(mills.bram), MARKET_AT);
+    await planBidList(id);
+    expect((await Bid.findByPk(id, { rejectOnEmpty: true })).cutList).toMatchObject({ boardFeetShort: 8, pieces: [{ short: 2 }] });
   });
 
   it('is nothing where nothing is wanted', async () => {

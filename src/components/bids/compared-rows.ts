@@ -60,8 +60,9 @@ function fit({ frozen: { estimate } }: ComparedBid): Cell {
   return estimate.fit.fits ? words('all of them', estimate.fit.notes.join(' ')) : words('not all', [...estimate.fit.reasons, ...estimate.fit.notes].join(' '));
 }
 
-function cutList({ cover, status }: ComparedBid): Cell {
-  if (!cover) return words(status === 'toConfirm' ? 'not yet' : 'being worked out', status === 'toConfirm' ? 'once the sawyer has confirmed' : 'look again in a minute');
+function cutList({ cover, coverIsLate, status }: ComparedBid): Cell {
+  if (!cover && status === 'toConfirm') return words('not yet', 'once the sawyer has confirmed');
+  if (!cover) return coverIsLate ? words('not worked out yet', 'tried again each hour; see it now under “Boards in these logs”') : words('being worked out', 'look again in a minute');
   const { made, text, note } = coverWords(cover);
   return { ...(made ? words(text, note) : figure(text, note)), ...(made ? { mark: 'whole list' } : {}) };
 }

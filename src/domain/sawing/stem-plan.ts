@@ -48,5 +48,5 @@ export function planStem({ stem, rules, by }: StemRequest): StemPlan {
 }
 
 /** The logs of a plan as the estimator and a listing take them: full length, trim and all. */
-export const logsOfStem = ({ logs }: Bucked, species: string, trimIn: number): LogGroup[] =>
+export const logsOfStem = ({ logs }: Pick<Bucked, 'logs'>, species: string, trimIn: number): LogGroup[] =>
   logs.map(({ smallEndIn, largeEndIn, lengthFt }) => ({ species, smallEndIn, largeEndIn, lengthFt: lengthFt + trimIn / 12, count: 1 }));

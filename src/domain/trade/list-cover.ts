@@ -3,8 +3,13 @@ import type { PieceRead } from '../listing/rows.ts';
 import { pieceKindWords } from '../sawing/piece-kind.ts';
 import type { CutListAnswer } from '../sawing/cut-list.ts';
 
+/** Raised when plans are made otherwise than before: covers of an older version are worked out anew. */
+export const LIST_PLAN_VERSION = 2;
+
 /** What one mill makes of a listing's cut list, as a bid keeps it. */
 export interface ListCover {
+  /** `LIST_PLAN_VERSION` when it was planned; none in the first. */
+  readonly version?: number | undefined;
   /** The listing's revision and the mill that were planned. */
   readonly revision: number;
   readonly millId: string;
@@ -26,6 +31,7 @@ export interface CoveredPiece {
 export function listCover(list: Omit<CutListAnswer, 'plans'>, pieces: readonly (PieceRead & { readonly id: string })[], planned: Pick<ListCover, 'revision' | 'millId'>): ListCover {
   const short = new Map(list.covered.map((each) => [each.id, each.short]));
   return {
+    version: LIST_PLAN_VERSION,
     ...planned,
     pieces: pieces.map((piece) => ({ label: piece.label, size: [pieceSize(piece), pieceKindWords[piece.kind]].filter(Boolean).join(', '), count: piece.count, short: short.get(piece.id) ?? piece.count })),
     boardFeetShort: list.boardFeetShort,

@@ -28,8 +28,10 @@ export async function changeBid(by: Viewer, bidId: string, form: BidForm, at: Da
     if (card === null) throw invalid([{ path: '', message: 'Fill in your rate card before you bid.' }]);
     const mill = await millOf(by.id, form.millId);
     const worked = await workOut(form, listing, mill, card, at, foreseen);
+    // What it made of the list on other logs or another mill is of no use any more.
+    const cutList = bid.listingRevision === listing.revision && bid.millId === mill.id ? bid.cutList : null;
     await transition(bidStates, 'change', bid, by, at, {
-      ...bidFigures(worked), listingRevision: listing.revision, millId: mill.id, mill, estimate: worked,
+      ...bidFigures(worked), cutList, listingRevision: listing.revision, millId: mill.id, mill, estimate: worked,
       overrideReason: form.ownBf === null ? null : form.ownReason, daysOffered: [...new Set(form.days)].sort(), message: form.message, updatedAt: at,
     });
     await enqueue('plan-bid-list', { bidId: bid.id });

@@ -33,7 +33,7 @@ export async function confirmBid(by: Viewer, bidId: string, listingRevision: num
     if (daysOffered.length === 0) throw conflict('The days you offered have passed. Change the bid and offer new ones.');
     const { terms, options } = bid.estimate as FrozenEstimate;
     const worked = await estimateOn(listing, bid.mill as BidMill, terms, options, null, foreseen);
-    await transition(bidStates, 'confirm', bid, by, at, { ...bidFigures(worked), estimate: worked, overrideReason: null, listingRevision: listing.revision, daysOffered, updatedAt: at });
+    await transition(bidStates, 'confirm', bid, by, at, { ...bidFigures(worked), estimate: worked, cutList: null, overrideReason: null, listingRevision: listing.revision, daysOffered, updatedAt: at });
     await enqueue('plan-bid-list', { bidId: bid.id });
     const owner = await Account.findByPk(listing.ownerId, { rejectOnEmpty: true });
     await enqueue('send-mail', bidChanged(owner, by.name, listing, bid, linkTo(paths.listingBids(listing.number))));

@@ -34,6 +34,8 @@ export interface ComparedBid {
   readonly mill: BidMill;
   /** What this mill makes of the cut list as it stands now; null while that is worked out. */
   readonly cover: ListCover | null;
+  /** No cover has come for an hour: something hinders the planner. */
+  readonly coverIsLate: boolean;
   readonly frozen: FrozenEstimate;
   readonly expectedCents: Cents;
   readonly lowCents: Cents;
@@ -62,6 +64,7 @@ interface Row {
   readonly mill_id: string;
   readonly listing_revision: number;
   readonly cut_list: ListCover | null;
+  readonly updated_at: Date;
   readonly lumber_credential: string | null;
   readonly estimate: FrozenEstimate;
   readonly expected_cents: number;
@@ -77,7 +80,7 @@ interface Row {
 
 // Leans on bid_of_listing, booking_of_sawyer and review_of_subject; a listing has tens of bids at most.
 const SQL = `
-  SELECT b.id, b.status, b.sawyer_id, coalesce(nullif(p.business_name, ''), a.name) AS sawyer, b.road_miles, b.mill, b.mill_id, b.listing_revision, b.cut_list, p.lumber_credential, b.estimate,
+  SELECT b.id, b.status, b.sawyer_id, coalesce(nullif(p.business_name, ''), a.name) AS sawyer, b.road_miles, b.mill, b.mill_id, b.listing_revision, b.cut_list, b.updated_at, p.lumber_credential, b.estimate,
     b.expected_cents, b.low_cents, b.high_cents, b.hold_cents, b.expected_bf_hundredths, b.expected_by, b.override_reason,
     b.days_offered::text[] AS days_offered, b.message,
     (SELECT count(*)::int FROM booking k WHERE k.sawyer_id = b.sawyer_id AND k.status = 'settled') AS settled_jobs,
@@ -103,7 +106,7 @@ export async function compareBids(viewer: Viewer | null, listingNumber: number, 
   const bids: ComparedBid[] = [];
   for (const row of found) {
     const days = await sawyerDays(row.sawyer_id, listing.timeZone ?? 'UTC', at, row.days_offered);
-    bids.push(toBid(row, earliestOpenDay(days)));
+    bids.push(toBid(row, earliestOpenDay(days), at));
   }
   const booking = await Booking.findOne({ where: { listingId: listing.id }, order: [['createdAt', 'DESC']] });
   const pieces = await listedPieces(listing.id);
@@ -120,11 +123,13 @@ const order: Readonly<Record<BidSort, (a: ComparedBid, b: ComparedBid) => number
 
 const seenWords = (until: Day | null): string | null => (until === null ? null : `certificate seen, expires on ${formatDayWithYear(until)}`);
 
-const toBid = (row: Row, earliest: Day | null): ComparedBid => ({
+const LATE_MS = 3_600_000;
+
+const toBid = (row: Row, earliest: Day | null, at: Date): ComparedBid => ({
   id: row.id, status: row.status, sawyerId: row.sawyer_id, sawyer: row.sawyer, settledJobs: row.settled_jobs, reviews: row.reviews, stars: row.stars,
   certificate: seenWords(row.certificate_expires_on), lumberCertificate: seenWords(row.lumber_expires_on),
   roadMiles: row.road_miles, mill: row.mill, lumberCredential: row.lumber_credential ?? '',
-  cover: row.cut_list?.revision === row.listing_revision && row.cut_list.millId === row.mill_id ? row.cut_list : null, frozen: row.estimate, expectedCents: row.expected_cents, lowCents: row.low_cents, highCents: row.high_cents,
+  cover: row.cut_list?.revision === row.listing_revision && row.cut_list.millId === row.mill_id ? row.cut_list : null, coverIsLate: at.getTime() - row.updated_at.getTime() > LATE_MS, frozen: row.estimate, expectedCents: row.expected_cents, lowCents: row.low_cents, highCents: row.high_cents,
   holdCents: row.hold_cents, expectedBf: row.expected_bf_hundredths / 100, expectedBy: row.expected_by, overrideReason: row.override_reason,
   earliestOpenDay: earliest, daysOffered: row.days_offered, message: row.message,
 });

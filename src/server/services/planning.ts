@@ -2,6 +2,7 @@ import type { CutListAnswer, CutListRequest } from '~/domain/sawing/cut-list.ts'
 import { type Expected, expectedLumber, isQuick, type LumberRequest } from '~/domain/sawing/expected.ts';
 import type { ListingPlan, ListingPlanRequest } from '~/domain/sawing/listing-plan.ts';
 import type { SawPlan, SawPlanRequest } from '~/domain/sawing/saw-plan.ts';
+import type { StemListPlan, StemListRequest } from '~/domain/sawing/stem-list.ts';
 import type { StemPlan, StemRequest } from '~/domain/sawing/stem-plan.ts';
 import type { Work } from './planning-thread.ts';
 import { Thread } from './thread.ts';
@@ -63,6 +64,12 @@ const stems = new Kept<StemRequest, StemPlan>(50);
 
 /** Where to cut a stem for the boards of its logs, worked out in a thread. @param asker who asks @throws Refusal as `planLog` */
 export const planStemBoards = (request: StemRequest, asker: string): Promise<StemPlan> => stems.answer(request, () => calculators.ask<StemPlan>({ kind: 'stem', request }, { mostMs: CALCULATOR_MOST_MS, asker }));
+
+const stemLists = new Kept<StemListRequest, StemListPlan>(50);
+
+/** Where to cut a stem for a cut list, worked out in a thread. @param asker who asks @throws Refusal as `planLog` */
+export const planStemList = (request: StemListRequest, asker: string): Promise<StemListPlan> =>
+  stemLists.answer(request, () => calculators.ask<StemListPlan>({ kind: 'stem-list', request }, { mostMs: CALCULATOR_MOST_MS, asker }));
 
 /** The boards of a whole listing on one mill, worked out in a thread. @param asker who asks; nobody for our own jobs @throws Refusal as `planLog` */
 export const planListing = (request: ListingPlanRequest, asker?: string): Promise<ListingPlan> => listings.answer(request, () => listingThread.ask<ListingPlan>({ kind: 'listing', request }, { mostMs: MOST_MS, asker }));

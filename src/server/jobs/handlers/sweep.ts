@@ -9,6 +9,7 @@ import { log } from '../../log.ts';
 import { tellEveningBefore } from './evening-before.ts';
 import { moneySweeps } from './money-sweeps.ts';
 import { photoSweeps } from './photo-sweeps.ts';
+import { planListsAnew } from './plan-lists-anew.ts';
 import { remindOfBoards } from './remind-boards.ts';
 import { sweepTallies } from './sweep-tallies.ts';
 
@@ -29,6 +30,7 @@ export const sweeps: Readonly<Record<string, Sweep>> = {
   'remind of boards': remindOfBoards,
   'remind of certificates': remindOfCertificates,
   'remove files of certificates': removeCertificateFiles,
+  'plan cut lists anew': planListsAnew,
   // Last: it waits for others' servers, and no deadline may wait with it.
   'read other calendars': readOtherCalendars,
 };
