@@ -53,8 +53,11 @@ export interface CutBetween extends LogShape {
   readonly from: number;
   readonly top: number;
   readonly largeEndIn: number;
-  /** Large end of the straight log that lies in the stem's wood all along: less than its own where the butt flares. */
-  readonly straightLargeEndIn: number;
+  /**
+   * The straight log that lies in the stem's wood all along, its large end less than its own where the butt flares; without the trim,
+   * in which no board lies.
+   */
+  readonly straight: LogShape & { readonly largeEndIn: number };
 }
 
 /** A stem in steps of an inch from the butt, with the rules of its cuts. */
@@ -82,6 +85,12 @@ export function stemSteps(stem: Stem, { lengthsFt, trimIn, longestFt = Infinity,
   const kinks = stem.measures.map(({ fromButtFt, diameterIn }) => [fromButtFt * STEPS_PER_FT, diameterIn] as const);
   const trim = Math.ceil(trimIn);
   const diameterIn = (step: number): number => at[step] ?? 0;
+  // The largest end of a log that tapers straight to its small end and nowhere leaves the wood.
+  const straightTo = (from: number, top: number): number => {
+    const small = diameterIn(top);
+    const large = kinks.reduce((least, [place, diameter]) => (place <= from || place >= top ? least : Math.min(least, small + ((diameter - small) * (top - from)) / (top - place))), diameterIn(from));
+    return Math.max(small, Math.floor(large * 8 + 1e-9) / 8);
+  };
   return {
     lengthFt, end, trim, diameterIn,
     lengthsFt: [...new Set(lengthsFt)].filter((feet) => feet > 0 && feet + trimIn / 12 <= longestFt + 1e-9).sort((a, b) => a - b),
@@ -92,11 +101,8 @@ export function stemSteps(stem: Stem, { lengthsFt, trimIn, longestFt = Infinity,
       const largeEndIn = diameterIn(from);
       const smallEndIn = Math.min(diameterIn(top), largeEndIn);
       if (smallEndIn < shortestEndIn) return null;
-      const straight = kinks.reduce((least, [place, diameter]) => {
-        if (place <= from || place >= top) return least;
-        return Math.min(least, smallEndIn + ((diameter - smallEndIn) * (top - from)) / (top - place));
-      }, largeEndIn);
-      return { from, top, smallEndIn, largeEndIn, straightLargeEndIn: Math.max(smallEndIn, Math.floor(straight * 8 + 1e-9) / 8), lengthFt: feet };
+      const nominal = top - trim;
+      return { from, top, smallEndIn, largeEndIn, lengthFt: feet, straight: { smallEndIn: diameterIn(nominal), largeEndIn: straightTo(from, nominal), lengthFt: feet } };
     },
   };
 }
@@ -124,8 +130,8 @@ export function buck(stem: Stem, rules: BuckingRules, worth: (log: LogShape) => 
     for (const feet of lengthsFt) {
       const found = cut(step, feet);
       if (!found) continue;
-      const { from, top, straightLargeEndIn, ...log } = found;
-      const own = worthOf({ ...log, largeEndIn: straightLargeEndIn });
+      const { from, top, straight, ...log } = found;
+      const own = worthOf({ ...log, largeEndIn: Math.max(log.smallEndIn, straight.largeEndIn) });
       // Of two ways that are worth the same, the one that begins nearer the butt and has the longer log.
       if (own > 0 && own + (best[top] as number) > value - 1e-9) {
         value = own + (best[top] as number);

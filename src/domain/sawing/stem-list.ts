@@ -40,10 +40,7 @@ export interface StemListPlan {
   readonly everyCut: boolean;
 }
 
-/** Ways to cut that are looked at in the time there is; of a long stem with more, only the lengths that the pieces ask for. */
-const MOST_WAYS = 300;
-
-/** Of the lengths allowed, the least that holds each piece: a longer log that begins at the same place gives hardly more boards. */
+/** Of the lengths allowed, the least that holds each piece: a longer log that begins at the same place gives no more boards, as it tapers no less. */
 function usefulLengths(lengthsFt: readonly number[], pieces: readonly WantedPiece[]): number[] {
   const useful = new Set(pieces.flatMap((piece) => lengthsFt.find((feet) => feet >= piece.lengthFt - 1e-9) ?? []));
   return lengthsFt.filter((feet) => useful.has(feet));
@@ -84,9 +81,6 @@ function overlaps(ways: readonly CutBetween[]): Together[] {
   return edges.map((edge) => ({ ids: ways.flatMap(({ from, top }, index) => (from <= edge && top > edge ? [String(index)] : [])), most: 1 }));
 }
 
-/** The straight log that is planned in. */
-const straightOf = ({ smallEndIn, straightLargeEndIn, lengthFt }: CutBetween): LogShape => ({ smallEndIn, largeEndIn: straightLargeEndIn, lengthFt });
-
 /** Whether boards planned in a thicker log lie in this one too. */
 function holds(log: LogShape, boards: readonly Board[]): boolean {
   return boards.every((board) => {
@@ -108,7 +102,7 @@ function movedUp(taken: readonly Taken[], { end, cut }: StemSteps): Taken[] {
     const { way, boards } = each;
     for (let from = above - (way.top - way.from); from > way.from; from--) {
       const higher = cut(from, way.lengthFt);
-      if (!higher || !holds(straightOf(higher), boards)) continue;
+      if (!higher || !holds(higher.straight, boards)) continue;
       above = from;
       return { ...each, way: higher };
     }
@@ -123,7 +117,7 @@ const international = ({ smallEndIn, lengthFt }: LogShape): number => boardFeetB
 function withRest({ stem, rules, mill }: StemListRequest, { lengthFt, trim }: StemSteps, taken: readonly Taken[]): { readonly logs: readonly StemLog[]; readonly leftFt: number; readonly rest: number } {
   const used = taken.map(({ way }) => ({ fromFt: way.from / STEPS_PER_FT, toFt: way.top / STEPS_PER_FT }));
   const rest = buck({ ...stem, leaveOut: [...(stem.leaveOut ?? []), ...used] }, rules, international);
-  const listed = taken.map(({ way, boards, plan }): StemLog => ({ smallEndIn: way.smallEndIn, largeEndIn: way.largeEndIn, lengthFt: way.lengthFt, fromButtFt: way.from / STEPS_PER_FT, value: plan.boardFeet, core: straightOf(way), plan: { ...plan, boards, cuts: cutsOf(straightOf(way), mill.kerfIn, boards, plan.pattern === 'quartersawn') } }));
+  const listed = taken.map(({ way, boards, plan }): StemLog => ({ smallEndIn: way.smallEndIn, largeEndIn: way.largeEndIn, lengthFt: way.lengthFt, fromButtFt: way.from / STEPS_PER_FT, value: plan.boardFeet, core: way.straight, plan: { ...plan, boards, cuts: cutsOf(way.straight, mill.kerfIn, boards, plan.pattern === 'quartersawn') } }));
   const logs = [...listed, ...rest.logs.map((log): StemLog => ({ ...log, core: null, plan: null }))].sort((a, b) => a.fromButtFt - b.fromButtFt);
   return { logs, leftFt: leftOver(lengthFt, logs, trim), rest: rest.value };
 }
@@ -136,10 +130,8 @@ function withRest({ stem, rules, mill }: StemListRequest, { lengthFt, trim }: St
 export function stemForList(request: StemListRequest, solve: Solver, patience: Patience): StemListPlan {
   const { stem, rules, mill, pieces } = request;
   const steps = stemSteps(stem, rules);
-  const every = waysToCut(steps, steps.lengthsFt.filter((feet) => pieces.some((piece) => piece.lengthFt <= feet + 1e-9)), mill);
-  const whole = every.length <= MOST_WAYS;
-  const ways = whole ? every : waysToCut(steps, usefulLengths(steps.lengthsFt, pieces), mill);
-  const logs = ways.map((way, index) => ({ ...straightOf(way), id: String(index) }));
+  const ways = waysToCut(steps, usefulLengths(steps.lengthsFt, pieces), mill);
+  const logs = ways.map((way, index) => ({ ...way.straight, id: String(index) }));
   const asked: CutListRequest = { logs, mill, pieces, together: overlaps(ways) };
   const { plans, ...list } = cutList(asked, solve, patience);
   const named = namedByPiece(plans, pieces);
@@ -153,5 +145,5 @@ export function stemForList(request: StemListRequest, solve: Solver, patience: P
   const longest = Math.max(0, ...steps.lengthsFt);
   // What would mend a shortfall is said of logs as they are allowed here.
   const mendable: CutListRequest = { ...asked, logs: logs.length > 0 ? logs : [{ id: '', smallEndIn: 0, lengthFt: longest }] };
-  return { logs: cut, list, shortfalls: mends(mendable, list.covered.filter(({ short }) => short > 0)), leftFt, everyCut: whole && tapersEvenly(stem) && steps.diameterIn(0) <= (mill.widestCutIn ?? Infinity) };
+  return { logs: cut, list, shortfalls: mends(mendable, list.covered.filter(({ short }) => short > 0)), leftFt, everyCut: tapersEvenly(stem) && steps.diameterIn(0) <= (mill.widestCutIn ?? Infinity) };
 }

@@ -42,10 +42,11 @@ function exhaustive({ stem, rules, pieces }: StemListRequest, gives: (log: LogSh
     for (const lengthFt of rules.lengthsFt) {
       const top = step + lengthFt * 12 + rules.trimIn;
       if (top > end || eighth(top) < (rules.shortestEndIn ?? 4) || (stem.leaveOut ?? []).some(({ fromFt, toFt }) => fromFt * 12 < top && toFt * 12 > step)) continue;
-      // The straight log under the stem's own outline, tried inch by inch.
-      const small = eighth(top);
+      // The straight log under the stem's own outline, tried inch by inch; the trim holds no board.
+      const nominal = top - rules.trimIn;
+      const small = eighth(nominal);
       let largeEndIn = eighth(step);
-      for (let at = step + 1; at < top; at++) largeEndIn = Math.min(largeEndIn, small + ((diameterAt(stem, at / 12) - small) * (top - step)) / (top - at));
+      for (let at = step + 1; at < nominal; at++) largeEndIn = Math.min(largeEndIn, small + ((diameterAt(stem, at / 12) - small) * (nominal - step)) / (nominal - at));
       const log = { smallEndIn: small, largeEndIn: Math.max(small, Math.floor(largeEndIn * 8 + 1e-9) / 8), lengthFt };
       pieces.forEach((piece, index) => {
         const given = givenBy(log, piece);
@@ -99,15 +100,15 @@ describe('a stem cut for a list', () => {
     fc.assert(fc.property(stems, pieces, (stem, asked) => {
       const request: StemListRequest = { stem, rules, mill, pieces: asked.map((piece, index) => ({ ...piece, id: String(index) })) };
       const least = exhaustive(request, (log, piece) => (piece.kind === 'slab' ? slabsIn(log, mill, piece).length : planFor(log, mill, piece, 1).boards.length));
-      const plan = stemForList(request, solve, patience(300));
+      const plan = stemForList(request, solve, patience(100));
       expect(faults(plan, request)).toEqual([]);
       // A stem that tapers faster towards its top has no better cut anywhere; others are cut from the places that matter.
       if (plan.everyCut) expect(plan.list.boardFeetShort).toBeCloseTo(least, 6);
       if (plan.everyCut) expect(plan.list.boundBoardFeetShort).toBeLessThanOrEqual(least + 1e-6);
       else if (plan.list.boardFeetShort > least + 1e-6) missed += 1;
       if (plan.list.gapBoardFeet < 1e-6) proven += 1;
-    }), { numRuns: 25 });
-    expect(proven).toBeGreaterThan(15);
+    }), { numRuns: 15 });
+    expect(proven).toBeGreaterThan(8);
     expect(missed).toBeLessThan(5);
   }, 120_000);
 
@@ -116,7 +117,7 @@ describe('a stem cut for a list', () => {
     fc.assert(fc.property(stems, piece, (stem, size) => {
       const request: StemListRequest = { stem, rules, mill, pieces: [{ ...size, id: 'a' }] };
       const least = exhaustive(request, (log, { thicknessIn, widthIn, lengthFt }) => sawPlan({ log, mill, pattern: 'best', pieces: [{ thicknessIn, widthIn, lengthFt }] }).boards.length);
-      const plan = stemForList(request, solve, patience(300));
+      const plan = stemForList(request, solve, patience(100));
       expect(faults(plan, request)).toEqual([]);
       if (plan.everyCut) expect(plan.list.boundBoardFeetShort).toBeLessThanOrEqual(least + 1e-6);
       // The planner looks a little less far at each price than a plan of one log alone does.
