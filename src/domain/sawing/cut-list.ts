@@ -95,7 +95,8 @@ export function cutList(request: CutListRequest, solve: Solver, patience: Patien
   }
   const choice = choose(pool, solve, patience.solverSeconds);
   const short = boardFeetShort(demand, choice);
-  const bound = Math.min(short, leastShort(pool, demand, solve, patience.solverSeconds));
+  const least = leastShort(pool, demand, solve, patience.solverSeconds);
+  const bound = short - least < NEAR ? short : least;
   const plans = assembled(request, pool, choice, demand);
   const proven = short <= bound + NEAR && usedCost(request.logs, plans) <= leastCost(pool, demand, choice.short, solve, patience.solverSeconds) + NEAR;
   const covered = coveredBy(request.pieces, demand, choice.short);
@@ -107,7 +108,7 @@ export function cutList(request: CutListRequest, solve: Solver, patience: Patien
     surplusBoardFeet: Math.abs(surplus) < NEAR ? 0 : surplus,
     boardFeetShort: short,
     boundBoardFeetShort: bound,
-    gapBoardFeet: short - bound < NEAR ? 0 : short - bound,
+    gapBoardFeet: short - bound,
     provenBest: proven,
   };
 }

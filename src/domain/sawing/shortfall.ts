@@ -20,6 +20,13 @@ export function leastLogFor(piece: Pick<WantedPiece, 'thicknessIn' | 'widthIn' |
   return null;
 }
 
+/** Where no log that the mill takes is as long as the piece. */
+function tooLong({ logs, mill }: CutListRequest, lengthFt: number, longestFt: number): string[] {
+  if (lengthFt <= longestFt) return [];
+  const beyond = mill.longestFt !== undefined && logs.some((log) => log.lengthFt > Math.max(lengthFt, mill.longestFt ?? 0)) ? [`A log here is long enough but longer than the mill takes (${formatFeet(mill.longestFt)}): cut it to length first.`] : [];
+  return [...beyond, ...(longestFt > 0 ? [`The longest log here${beyond.length > 0 ? ' that the mill takes' : ''} is ${formatFeet(longestFt)}: pieces of that length or shorter fit.`] : [])];
+}
+
 /** For every piece that is short: the limits it meets, and the smallest change that would mend it. */
 export function shortfalls(request: CutListRequest, short: readonly { readonly id: string; readonly short: number }[]): Shortfall[] {
   const { logs, mill, pieces } = request;
@@ -28,7 +35,10 @@ export function shortfalls(request: CutListRequest, short: readonly { readonly i
     const piece = pieces.find((each) => each.id === id);
     if (!piece || missing <= 0) return [];
     const { lengthFt, widthIn, thicknessIn } = piece;
-    if (mill.longestFt !== undefined && lengthFt > mill.longestFt) return [{ id, short: missing, mend: [`A mill that takes logs of ${formatFeet(lengthFt)} or longer.`] }];
+    if (mill.longestFt !== undefined && lengthFt > mill.longestFt) {
+      const long = logs.some((log) => log.lengthFt >= lengthFt - 1e-9);
+      return [{ id, short: missing, mend: [long ? `A mill that takes logs of ${formatFeet(lengthFt)} or longer.` : `A log of ${formatFeet(lengthFt)} and a mill that takes it; this one takes logs up to ${formatFeet(mill.longestFt)}.`] }];
+    }
     if (mill.widestBoardIn !== undefined && Math.max(widthIn, 0) > mill.widestBoardIn) return [{ id, short: missing, mend: [`A mill that cuts boards ${formatInches(widthIn)} wide, or two narrower boards joined.`] }];
     const length = Math.max(lengthFt, 4);
     const one = leastLogFor(piece, 1, length, request);
@@ -41,7 +51,7 @@ export function shortfalls(request: CutListRequest, short: readonly { readonly i
       short: missing,
       mend: [
         all !== null ? `One more log, ${log(all)}, gives ${missing === 1 ? 'the one' : `all ${missing}`} that ${missing === 1 ? 'is' : 'are'} missing.` : `More logs, each ${log(one)}.`,
-        ...(lengthFt > longestFt ? [`The longest log here is ${formatFeet(longestFt)}: pieces of that length or shorter fit.`] : []),
+        ...tooLong(request, lengthFt, longestFt),
         ...(!fits && lengthFt <= longestFt ? [`A smaller section: ${formatInches(thicknessIn)} × ${formatInches(widthIn)} needs a log of ${formatInches(one)}.`] : []),
       ],
     }];

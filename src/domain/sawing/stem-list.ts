@@ -50,16 +50,17 @@ function usefulLengths(lengthsFt: readonly number[], pieces: readonly WantedPiec
  * Logs that may be cut, each from the butt, from another log's end or from where a bad stretch ends; also from where a stem that is
  * too thick for the mill's cut is so no more.
  */
-function waysToCut({ end, trim, cut, clearFrom, diameterIn }: StemSteps, lengthsFt: readonly number[], { widestCutIn = Infinity }: Mill): CutBetween[] {
+function waysToCut({ end, cut, clearFrom, diameterIn }: StemSteps, lengthsFt: readonly number[], { widestCutIn = Infinity }: Mill): CutBetween[] {
   const thin = diameterIn(0) <= widestCutIn ? [] : Array.from({ length: end }, (_, step) => step).filter((step) => diameterIn(step) <= widestCutIn).slice(0, 1);
   const places = new Set([0, ...clearFrom, ...thin]);
   const ways: CutBetween[] = [];
   for (let from = 0; from < end; from++) {
     if (!places.has(from)) continue;
     for (const feet of lengthsFt) {
-      places.add(from + Math.round(feet * STEPS_PER_FT) + trim);
       const found = cut(from, feet);
-      if (found) ways.push(found);
+      if (!found) continue;
+      ways.push(found);
+      places.add(found.top);
     }
   }
   return ways;
@@ -113,6 +114,22 @@ function movedUp(taken: readonly Taken[], { end, cut }: StemSteps): Taken[] {
 
 const international = ({ smallEndIn, lengthFt }: LogShape): number => boardFeetByRule('internationalQuarter', wholeInches(smallEndIn), wholeFeet(lengthFt));
 
+/** The same logs as near the butt as they go, so that what is left is left in one piece. */
+function movedDown(taken: readonly Taken[], { cut }: StemSteps): Taken[] {
+  let below = 0;
+  return taken.map((each) => {
+    const { way, boards } = each;
+    for (let from = below; from < way.from; from++) {
+      const lower = cut(from, way.lengthFt);
+      if (!lower || !holds(lower.straight, boards)) continue;
+      below = lower.top;
+      return { ...each, way: lower };
+    }
+    below = way.top;
+    return each;
+  });
+}
+
 /** The logs of the list in their places, and the rest of the stem cut for its scale. */
 function withRest({ stem, rules, mill }: StemListRequest, { lengthFt, trim }: StemSteps, taken: readonly Taken[]): { readonly logs: readonly StemLog[]; readonly leftFt: number; readonly rest: number } {
   const used = taken.map(({ way }) => ({ fromFt: way.from / STEPS_PER_FT, toFt: way.top / STEPS_PER_FT }));
@@ -125,7 +142,7 @@ function withRest({ stem, rules, mill }: StemListRequest, { lengthFt, trim }: St
 /**
  * Where to cut a stem so that its logs give a cut list: least board feet short first, then least log volume. Every way to cut is
  * offered as a log of its own to the choice of plans, and of those that overlap one is taken; so cuts and plans are chosen together,
- * under a bound for both. The logs then stand as high as their boards allow, and the rest of the stem is cut for its scale.
+ * under a bound for both. Where these logs may stand higher or lower, they stand so that the rest of the stem, cut for its scale, is worth most.
  */
 export function stemForList(request: StemListRequest, solve: Solver, patience: Patience): StemListPlan {
   const { stem, rules, mill, pieces } = request;
@@ -140,8 +157,8 @@ export function stemForList(request: StemListRequest, solve: Solver, patience: P
     const boards = named.get(String(index)) ?? [];
     return plan && boards.length > 0 ? [{ way, boards, plan }] : [];
   }).sort((a, b) => a.way.from - b.way.from);
-  const [low, high] = [withRest(request, steps, taken), withRest(request, steps, movedUp(taken, steps))];
-  const { logs: cut, leftFt } = high.rest > low.rest ? high : low;
+  // Of the places where these logs may lie, those whose rest is worth most.
+  const { logs: cut, leftFt } = [movedUp(taken, steps), taken, movedDown(taken, steps)].map((places) => withRest(request, steps, places)).reduce((best, each) => (each.rest > best.rest ? each : best));
   const longest = Math.max(0, ...steps.lengthsFt);
   // What would mend a shortfall is said of logs as they are allowed here.
   const mendable: CutListRequest = { ...asked, logs: logs.length > 0 ? logs : [{ id: '', smallEndIn: 0, lengthFt: longest }] };
