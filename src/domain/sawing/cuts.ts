@@ -20,6 +20,8 @@ interface Slice {
 }
 
 const NEAR = 1e-6;
+/** Less wood than this between two boards is not sawn off: it stays on the board. */
+const SLIVER_IN = 1 / 16;
 
 /** Distinct layers of some boards, highest first, in heights over the bed. */
 function slices(boards: readonly Board[], heightOf: (board: Board) => Slice): Slice[] {
@@ -36,7 +38,7 @@ function passes(layers: readonly Slice[], kerf: number, turnDeg: number, face?: 
   const cuts: Omit<Cut, 'order'>[] = [];
   let surface = Infinity;
   for (const { low, high } of layers) {
-    if (Math.abs(surface - high) > NEAR) cuts.push({ turnDeg, heightIn: high, kind: 'slab' });
+    if (surface - high > SLIVER_IN) cuts.push({ turnDeg, heightIn: high, kind: 'slab' });
     surface = low - kerf;
     if (low > NEAR) cuts.push({ turnDeg, heightIn: Math.max(0, surface), kind: 'board' });
   }

@@ -155,9 +155,31 @@ export function stackOf(stock: Stock, rule: RowRule, blocked: Units = blockedHal
       if (table) found.push({ group: table.group, at });
       at += table ? table.group.thickness + kerf : 1;
     }
-    return found;
+    return blocked === 0 && stock.heart === 0 ? pulledTogether(found, from, kerf) : found;
   };
   return { above, layers };
+}
+
+/**
+ * The same layers without wood left between them: all moved towards the one nearest the pith, and that one down to `from` where the
+ * stack begins above the pith. Nearer the pith a layer holds no less.
+ */
+function pulledTogether(layers: readonly Layer[], from: Units, kerf: Units): Layer[] {
+  const far = layers.map((layer) => distances(layer).far);
+  const nearest = far.indexOf(Math.min(...far));
+  const first = layers[nearest];
+  if (!first) return [...layers];
+  const moved = [...layers];
+  moved[nearest] = from >= 0 ? { ...first, at: Math.ceil(from) } : first;
+  for (let index = nearest + 1; index < moved.length; index++) {
+    const [below, layer] = [moved[index - 1] as Layer, moved[index] as Layer];
+    moved[index] = { ...layer, at: below.at + below.group.thickness + kerf };
+  }
+  for (let index = nearest - 1; index >= 0; index--) {
+    const [above, layer] = [moved[index + 1] as Layer, moved[index] as Layer];
+    moved[index] = { ...layer, at: above.at - kerf - layer.group.thickness };
+  }
+  return moved;
 }
 
 /** Moves a whole stack to the middle of its play, so that what is left over is shared by the slabs on both sides. */

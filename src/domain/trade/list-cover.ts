@@ -56,7 +56,7 @@ export function listInWords(bids: readonly { readonly sawyer: string; readonly c
   if (bids.length < 2 || known.length < bids.length) return [];
   const makers = known.filter(({ short }) => short === 0).map(({ sawyer }) => sawyer);
   if (makers.length === known.length) return ['Every mill makes your cut list as planned.'];
-  if (makers.length > 0) return [`Your cut list is made by ${makers.length === 1 ? `${makers[0]} only` : makers.join(' and ')}; on the other ${known.length - makers.length === 1 ? 'mill' : 'mills'} it comes out short.`];
+  if (makers.length > 0) return [`Your cut list is made by ${makers.length === 1 ? `${makers[0]} only` : `${makers.slice(0, -1).join(', ')} and ${makers.at(-1)}`}; on the other ${known.length - makers.length === 1 ? 'mill' : 'mills'} it comes out short.`];
   const least = known.reduce((a, b) => (b.short < a.short ? b : a));
   return [`No mill makes the whole of your cut list from these logs; ${least.sawyer} leaves least short, ${Math.round(least.short).toLocaleString('en-US')} bf.`];
 }

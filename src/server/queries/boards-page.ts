@@ -16,6 +16,8 @@ export interface MillChoice {
   readonly key: string;
   readonly label: string;
   readonly mill: MillAtWork;
+  /** Of a bid's mill, the lumber that the bid expects, bf. */
+  readonly bidBf?: number | undefined;
 }
 
 const typical: MillChoice = { key: 'typical', label: `A typical band mill, kerf ${formatInches(TYPICAL_BAND_MILL.kerfIn, 32)}`, mill: TYPICAL_BAND_MILL };
@@ -24,7 +26,7 @@ const labelOf = (who: string, mill: BidMill): string => `${who}${mill.name}, ker
 
 // Leans on bid_of_listing: a listing has tens of live bids at most.
 const LIVE_BIDS = `
-  SELECT b.id, b.mill, coalesce(nullif(p.business_name, ''), a.name) AS sawyer
+  SELECT b.id, b.mill, b.expected_bf_hundredths AS hundredths, coalesce(nullif(p.business_name, ''), a.name) AS sawyer
   FROM bid b JOIN account a ON a.id = b.sawyer_id LEFT JOIN sawyer_profile p ON p.account_id = b.sawyer_id
   WHERE b.listing_id = $1 AND b.status IN ('open', 'toConfirm', 'chosen') ORDER BY b.created_at`;
 
@@ -32,8 +34,8 @@ const LIVE_BIDS = `
 async function millsFor(viewer: Viewer | null, listing: { readonly id: string; readonly isOwner: boolean }): Promise<readonly MillChoice[]> {
   if (!viewer) return [typical];
   if (listing.isOwner) {
-    const bids = await rows<{ id: string; mill: BidMill; sawyer: string }>(LIVE_BIDS, [listing.id]);
-    return [...bids.map(({ id, mill, sawyer }) => ({ key: id, label: labelOf(`${sawyer}: `, mill), mill })), typical];
+    const bids = await rows<{ id: string; mill: BidMill; hundredths: number; sawyer: string }>(LIVE_BIDS, [listing.id]);
+    return [...bids.map(({ id, mill, hundredths, sawyer }) => ({ key: id, label: labelOf(`${sawyer}: `, mill), mill, bidBf: hundredths / 100 })), typical];
   }
   const own = await Mill.findAll({ where: { sawyerId: viewer.id, retiredAt: null }, order: [['createdAt', 'ASC']] });
   return [...own.map((mill) => ({ key: mill.id, label: labelOf('Your mill: ', bidMill(mill)), mill: bidMill(mill) })), typical];

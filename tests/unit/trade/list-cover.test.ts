@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { coverWords, listCover, listInWords, type ListCover } from '~/domain/trade/list-cover.ts';
+import { LIST_PLAN_VERSION, coverWords, listCover, listInWords, type ListCover } from '~/domain/trade/list-cover.ts';
 
 const piece = (id: string, label: string, count: number) => ({ id, label, thicknessIn: 2, widthIn: 6, lengthFt: 8, count, sizing: 'full-sawn' as const, forDwelling: false, kind: 'board' as const });
 const list = (...short: readonly [string, number, number][]) => ({
@@ -10,7 +10,7 @@ const cover = (...short: readonly number[]): ListCover => listCover(list(...shor
 
 describe('what a bid makes of a cut list', () => {
   it('is kept with what was planned, piece by piece', () => {
-    expect(cover(3)).toEqual({ revision: 3, millId: 'mill', boardFeetShort: 24, provenBest: true, pieces: [{ label: 'rafters', size: '2 × 6 in × 8 ft', count: 12, short: 3 }] });
+    expect(cover(3)).toEqual({ version: LIST_PLAN_VERSION, revision: 3, millId: 'mill', boardFeetShort: 24, provenBest: true, pieces: [{ label: 'rafters', size: '2 × 6 in × 8 ft', count: 12, short: 3 }] });
   });
   it('counts a piece that the plan does not know as short', () => {
     expect(listCover(list(), [piece('x', '', 5)], planned).pieces[0]?.short).toBe(5);
