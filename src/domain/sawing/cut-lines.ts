@@ -26,31 +26,16 @@ export function leftAfter(made: readonly CutLine[]): Left {
 
 /**
  * The lines of a plan's cuts; of a quartered log those that quarter it, because its quarters then lie on the bed one by one. A height is over what lies on the bed: the bark with the pith half the large end's diameter over it, or
- * a flat that an earlier cut has left: the top face for the turn over, the first side for the side opposite, the lower face for the
- * cant that is laid back on it.
+ * the flat that the last cut from the side opposite has left.
  * @param core the wood that was planned in
  */
 export function cutLines(core: LogShape, cuts: readonly Cut[]): CutLine[] {
   const pith = largeEnd(core) / 2;
   if (cuts.some(({ kind }) => kind === 'quarter')) return cuts.filter(({ kind }) => kind === 'quarter').map(({ order, turnDeg, heightIn }) => ({ order, turnDeg, fromPithIn: heightIn - pith }));
-  let [top, bottom, right] = [pith, pith, pith];
-  let turnedOver = false;
+  const surfaces = new Map<number, number>();
   return cuts.map(({ order, turnDeg, heightIn }) => {
-    const onBark = { order, turnDeg, fromPithIn: heightIn - pith };
-    if (turnDeg === 0 && !turnedOver) {
-      top = onBark.fromPithIn;
-      return onBark;
-    }
-    turnedOver = true;
-    if (turnDeg === 180) {
-      bottom = top - heightIn;
-      return { order, turnDeg, fromPithIn: -bottom };
-    }
-    if (turnDeg === 90) {
-      right = onBark.fromPithIn;
-      return onBark;
-    }
-    if (turnDeg === 270) return { order, turnDeg, fromPithIn: heightIn - right };
-    return { order, turnDeg, fromPithIn: bottom + heightIn };
+    const fromPithIn = heightIn - (surfaces.get((turnDeg + 180) % 360) ?? pith);
+    surfaces.set(turnDeg, fromPithIn);
+    return { order, turnDeg, fromPithIn };
   });
 }

@@ -20,9 +20,9 @@ export interface CutSheet {
   readonly cuts: readonly SheetCut[];
 }
 
-/** Whether the log lies on its bark: for the first face and a face square to it; the face opposite lies on the flat, and so does a cant. */
+/** Whether the log lies on its bark: as long as the side opposite was not cut. A quartered log does so for the first cut only. */
 const liesOnBark = (cut: Cut, index: number, cuts: readonly Cut[]): boolean =>
-  cut.turnDeg === 0 ? cuts.slice(0, index).every((before) => before.turnDeg === 0) : cut.turnDeg < 180 && (cut.turnDeg !== 135);
+  cuts.some(({ kind }) => kind === 'quarter') ? index === 0 : cuts.slice(0, index).every(({ turnDeg }) => turnDeg !== (cut.turnDeg + 180) % 360);
 
 /**
  * A plan as the sawyer cuts it: toe boards, turns, and each height as it is measured from the bed.

@@ -33,34 +33,16 @@ function slices(boards: readonly Board[], heightOf: (board: Board) => Slice): Sl
   return found.sort((a, b) => b.high - a.high);
 }
 
-/** Passes from the top down through some layers, to a face when one is wanted. The lowest layer stays on the bed at height 0. */
-function passes(layers: readonly Slice[], kerf: number, turnDeg: number, face?: number): Omit<Cut, 'order'>[] {
+/** Passes from the top down through some layers. The lowest layer stays on the bed. */
+function passes(layers: readonly Slice[], kerf: number, turnDeg: number): Omit<Cut, 'order'>[] {
   const cuts: Omit<Cut, 'order'>[] = [];
   let surface = Infinity;
   for (const { low, high } of layers) {
     if (surface - high > SLIVER_IN) cuts.push({ turnDeg, heightIn: high, kind: 'slab' });
     surface = low - kerf;
-    if (low > NEAR) cuts.push({ turnDeg, heightIn: Math.max(0, surface), kind: 'board' });
+    if (surface > SLIVER_IN) cuts.push({ turnDeg, heightIn: surface, kind: 'board' });
   }
-  if (face !== undefined && Math.abs(surface - face) > NEAR) cuts.push({ turnDeg, heightIn: face, kind: 'face' });
   return cuts;
-}
-
-/**
- * Flat boards that lie in the band of the turned ones, and the band's own lower and upper face. A flat board nearer than a kerf belongs
- * to the band: a pass between would take wood from the turned ones.
- */
-function bandOf(flat: readonly Board[], turned: readonly Board[], kerf: number): { readonly bottom: number; readonly top: number; readonly cant: readonly Board[] } {
-  let bottom = Math.min(...turned.map((board) => section(board).bottom));
-  let top = Math.max(...turned.map((board) => section(board).top));
-  let cant: readonly Board[] = [];
-  for (;;) {
-    const within = flat.filter((board) => section(board).top > bottom - kerf + NEAR && section(board).bottom < top + kerf - NEAR);
-    bottom = Math.min(bottom, ...within.map((board) => section(board).bottom));
-    top = Math.max(top, ...within.map((board) => section(board).top));
-    if (within.length === cant.length) return { bottom, top, cant: within };
-    cant = within;
-  }
 }
 
 function quarterCuts(log: LogShape, boards: readonly Board[], kerf: number): Omit<Cut, 'order'>[] {
@@ -79,35 +61,108 @@ function quarterCuts(log: LogShape, boards: readonly Board[], kerf: number): Omi
   return [...halves, ...sides.flatMap(([turnDeg, has]) => passes(slices(boards.filter(has), over), kerf, turnDeg))];
 }
 
+/** How a log lies: 0 as it first lay, then turned; each turn brings another side up. */
+type Turn = 0 | 90 | 180 | 270;
+const opposite = (turn: Turn): Turn => ((turn + 180) % 360) as Turn;
+
+/** A log on the mill, sawn layer by layer from whichever side is up. Places are from the pith, towards the side that is up. */
+class OnTheMill {
+  readonly cuts: Omit<Cut, 'order'>[] = [];
+  private readonly surface = new Map<Turn, number>();
+
+  constructor(
+    radiusIn: number,
+    private readonly kerfIn: number,
+    private left: readonly Board[],
+  ) {
+    for (const turn of [0, 90, 180, 270] as const) this.surface.set(turn, radiusIn);
+  }
+
+  get isDone(): boolean {
+    return this.left.length === 0;
+  }
+
+  get count(): number {
+    return this.left.length;
+  }
+
+  private along(board: Board, turn: Turn): Slice {
+    const { left, right, bottom, top } = section(board);
+    return { 0: { low: bottom, high: top }, 90: { low: left, high: right }, 180: { low: -top, high: -bottom }, 270: { low: -right, high: -left } }[turn];
+  }
+
+  private cut(turn: Turn, at: number, kind: CutKind): void {
+    this.cuts.push({ turnDeg: turn, heightIn: at + (this.surface.get(opposite(turn)) ?? 0), kind });
+    this.surface.set(turn, at);
+  }
+
+  /** The uppermost boards, when one pass takes them all off and nothing else. */
+  private layer(turn: Turn, left: readonly Board[]): readonly Board[] {
+    const top = left.reduce<Slice | null>((highest, board) => {
+      const slice = this.along(board, turn);
+      return highest && highest.high >= slice.high ? highest : slice;
+    }, null);
+    if (!top) return [];
+    const upper = left.filter((board) => this.along(board, turn).high > top.low - this.kerfIn + NEAR);
+    const lies = (board: Board): boolean => {
+      const { low, high } = this.along(board, turn);
+      return board.turned === (turn % 180 === 90) && Math.abs(low - top.low) < NEAR && Math.abs(high - top.high) < NEAR;
+    };
+    return upper.every(lies) ? upper : [];
+  }
+
+  /** Whether layer after layer can be taken off from this side until nothing is left. */
+  opensWholly(turn: Turn): boolean {
+    let left = this.left;
+    while (left.length > 0) {
+      const layer = this.layer(turn, left);
+      if (layer.length === 0) return false;
+      left = left.filter((board) => !layer.includes(board));
+    }
+    return true;
+  }
+
+  /** Takes off what comes in whole layers. The last one stays on the bed. */
+  peel(turn: Turn): void {
+    for (let layer = this.layer(turn, this.left); layer.length > 0; layer = this.layer(turn, this.left)) {
+      const { low, high } = this.along(layer[0] as Board, turn);
+      if ((this.surface.get(turn) ?? 0) - high > SLIVER_IN) this.cut(turn, high, 'slab');
+      const under = low - this.kerfIn;
+      if (under + (this.surface.get(opposite(turn)) ?? 0) > SLIVER_IN) this.cut(turn, under, 'board');
+      this.left = this.left.filter((board) => !layer.includes(board));
+    }
+  }
+
+  /** Leaves a face over what is left, where there is wood worth sawing off. */
+  face(turn: Turn): void {
+    const wanted = Math.max(...this.left.map((board) => this.along(board, turn).high));
+    if (this.left.length > 0 && (this.surface.get(turn) ?? 0) - wanted > SLIVER_IN) this.cut(turn, wanted, 'face');
+  }
+}
+
 /**
  * The cuts of a plan in order, with the turns, the pith levelled. Heights are over the bed: while the log lies on its bark its pith
- * is half the large end's diameter over the bed; after that the flat already cut lies on the bed.
+ * is half the large end's diameter over the bed; after that the flat already cut lies on the bed. The side that is up is sawn as far
+ * as its boards come off in whole layers, then the one opposite, then the two beside them, until what is left opens from one side.
  */
 export function cutsOf(log: LogShape, kerfIn: number, boards: readonly Board[], quartered: boolean): Cut[] {
-  const pith = largeEnd(log) / 2;
-  const flat = boards.filter((board) => !board.turned);
-  const turned = boards.filter((board) => board.turned);
   const number = (cuts: readonly Omit<Cut, 'order'>[]): Cut[] => cuts.map((cut, index) => ({ order: index + 1, ...cut }));
   if (boards.length === 0) return [];
   if (quartered) return number(quarterCuts(log, boards, kerfIn));
-  const fromBark = (board: Board): Slice => ({ low: pith + section(board).bottom, high: pith + section(board).top });
-  if (turned.length === 0) return number(passes(slices(flat, fromBark), kerfIn, 0));
-  const { bottom, top, cant } = bandOf(flat, turned, kerfIn);
-  const aboveBand = flat.filter((board) => section(board).bottom >= top - NEAR);
-  const belowBand = flat.filter((board) => section(board).top <= bottom + NEAR);
-  const upsideDown = (board: Board): Slice => ({ low: top - section(board).top, high: top - section(board).bottom });
-  const onSide = (board: Board): Slice => ({ low: pith + section(board).left, high: pith + section(board).right });
-  const cuts = [...passes(slices(aboveBand, fromBark), kerfIn, 0, pith + top), ...passes(slices(belowBand, upsideDown), kerfIn, 180, top - bottom)];
-  if (cant.length === 0) return number([...cuts, ...passes(slices(turned, onSide), kerfIn, 90)]);
-  const right = Math.max(...cant.map((board) => section(board).right));
-  const left = Math.min(...cant.map((board) => section(board).left));
-  const onOtherSide = (board: Board): Slice => ({ low: right - section(board).right, high: right - section(board).left });
-  const onFlat = (board: Board): Slice => ({ low: section(board).bottom - bottom, high: section(board).top - bottom });
-  const cantLayers = slices(cant, onFlat);
-  return number([
-    ...cuts,
-    ...passes(slices(turned.filter((board) => section(board).left >= right), onSide), kerfIn, 90, pith + right),
-    ...passes(slices(turned.filter((board) => section(board).right <= left), onOtherSide), kerfIn, 270, right - left),
-    ...passes(cantLayers, kerfIn, 0).filter((cut, index) => index > 0 || cut.kind !== 'slab' || Math.abs(cut.heightIn - (top - bottom)) > NEAR),
-  ]);
+  const mill = new OnTheMill(largeEnd(log) / 2, kerfIn, boards);
+  if (mill.opensWholly(0)) {
+    mill.peel(0);
+    return number(mill.cuts);
+  }
+  let before: number;
+  do {
+    before = mill.count;
+    for (const turn of [0, 180, 90, 270] as const) {
+      if (mill.isDone) break;
+      const wholly = turn !== 180 && mill.opensWholly(turn);
+      mill.peel(turn);
+      if (!wholly) mill.face(turn);
+    }
+  } while (!mill.isDone && mill.count < before);
+  return number(mill.cuts);
 }

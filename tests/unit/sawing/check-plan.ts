@@ -1,3 +1,4 @@
+import { section } from '~/domain/sawing/board.ts';
 import { largeEnd, type LogShape, radiusAt } from '~/domain/sawing/log-shape.ts';
 import type { SawPlan, SawPlanRequest } from '~/domain/sawing/saw-plan.ts';
 
@@ -45,6 +46,42 @@ export function faults(request: SawPlanRequest, plan: SawPlan): string[] {
   wrong(plan.value <= plan.upperBoundValue + 1e-6, `value ${plan.value} over its bound ${plan.upperBoundValue}`);
   wrong(plan.boards.length > 0 || (plan.reason ?? '').endsWith('.'), 'nothing cut and no reason');
   plan.cuts.forEach((cut, index) => wrong(cut.order === index + 1 && cut.heightIn >= 0 && cut.heightIn <= largeEnd(log) + 2 * waneAllowanceIn + 1e-6, 'a cut out of order or off the log'));
+  if (plan.pattern !== 'quartersawn') found.push(...replayed(request, plan));
+  return found;
+}
+
+/** Less wood than this is left on a board rather than sawn off it. */
+const SLIVER_IN = 1 / 16;
+
+/**
+ * Saws the log by its list of cuts, on paper: what lies on the bed is whatever was cut or barked before, each pass takes off what is
+ * over it. No pass may go through a board, what comes off as a board is one layer of them, and all boards have come off at the end.
+ */
+export function replayed({ log, mill, waneAllowanceIn = 0 }: Pick<SawPlanRequest, 'log' | 'mill' | 'waneAllowanceIn'>, { boards, cuts }: SawPlan): string[] {
+  const found: string[] = [];
+  const boxes = boards.map(section);
+  const extent = new Map([[0, largeEnd(log) / 2], [90, largeEnd(log) / 2], [180, largeEnd(log) / 2], [270, largeEnd(log) / 2]]);
+  let left = boxes.map((box) => new Map([[0, [box.bottom, box.top]], [90, [box.left, box.right]], [180, [-box.top, -box.bottom]], [270, [-box.right, -box.left]]] as const));
+  const along = (box: (typeof left)[number], turn: number): readonly [number, number] => (box.get(turn as 0) ?? [NaN, NaN]) as readonly [number, number];
+  for (const { turnDeg, heightIn, kind, order } of cuts) {
+    const plane = heightIn - (extent.get((turnDeg + 180) % 360) ?? NaN);
+    const off = left.filter((box) => along(box, turnDeg)[0] >= plane + mill.kerfIn - 1e-6);
+    const kept = left.filter((box) => !off.includes(box));
+    if (kept.some((box) => along(box, turnDeg)[1] > plane + 1e-6)) found.push(`cut ${order} goes through a board`);
+    if (kind !== 'board' && off.length > 0) found.push(`cut ${order} takes a board off as waste`);
+    if (kind === 'board' && off.length === 0) found.push(`cut ${order} takes no board off`);
+    const surface = Math.max(extent.get(turnDeg) ?? NaN, ...off.map((box) => along(box, turnDeg)[1]));
+    if (off.some((box) => along(box, turnDeg)[0] - plane - mill.kerfIn > 1e-6)) found.push(`cut ${order} is below its boards`);
+    if (kind === 'board' && off.some((box) => surface - along(box, turnDeg)[1] > SLIVER_IN + waneAllowanceIn + 1e-6)) found.push(`cut ${order} leaves waste on its boards`);
+    extent.set(turnDeg, plane);
+    left = kept;
+  }
+  // What lies on the bed at last is one layer, split where it is edged.
+  if ([0, 90].every((turn) => new Set(left.map((box) => along(box, turn).map((at) => at.toFixed(5)).join())).size > 1)) found.push('boards are left in the log');
+  cuts.forEach(({ turnDeg, heightIn, order }, index) => {
+    const before = cuts[index - 1];
+    if (before?.turnDeg === turnDeg && before.heightIn - heightIn <= SLIVER_IN) found.push(`cut ${order} is a hair under the one before`);
+  });
   return found;
 }
 
