@@ -25,8 +25,9 @@ export function leftAfter(made: readonly CutLine[]): Left {
 }
 
 /**
- * The lines of a plan's cuts; of a quartered log those that quarter it, because its quarters then lie on the bed one by one. A height is over what lies on the bed: the bark with the pith half the large end's diameter over it, or
- * the flat that the last cut from the side opposite has left.
+ * The lines of a plan's cuts; of a quartered log those that quarter it, because its quarters then lie on the bed one by one. A height is
+ * over what lies on the bed: the bark, with the pith half the large end's diameter over it, or the flat that the last cut from the side
+ * opposite has left.
  * @param core the wood that was planned in
  */
 export function cutLines(core: LogShape, cuts: readonly Cut[]): CutLine[] {
