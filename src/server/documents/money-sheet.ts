@@ -65,8 +65,11 @@ export function moneyPdf(sheet: MoneySheet): Promise<Uint8Array<ArrayBuffer>> {
   return done;
 }
 
+/** What a spreadsheet would take for a formula; an amount by itself is none. */
+const FORMULA = /^(?!-?\$?[\d,]+(?:\.\d+)?$)[=+\-@\t\r\n＝＋－＠]/;
+
 /** The sheet for a spreadsheet: the facts, an empty line, then headings and rows. What could be taken for a formula is escaped. */
 export function moneyCsv(sheet: MoneySheet): string {
   const facts = [[sheet.title, sheet.number], ...sheet.facts.map((fact) => [...fact])];
-  return `${Papa.unparse([...facts, [], sheet.columns.map(({ heading }) => heading), ...sheet.rows, ...sheet.totals], { escapeFormulae: /^[=+\-@\t\r](?![\d$.])/, newline: '\r\n' })}\r\n`;
+  return `${Papa.unparse([...facts, [], sheet.columns.map(({ heading }) => heading), ...sheet.rows, ...sheet.totals], { escapeFormulae: FORMULA, newline: '\r\n' })}\r\n`;
 }
