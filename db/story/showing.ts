@@ -21,7 +21,7 @@ export async function tellShowing(now: Date): Promise<void> {
   for (const [daysAgo, moisturePct] of [[20, 66], [13, 52], [6, 43]] as const) await addMoistureReading(ada, maple, { readOn: addDays(today, -daysAgo), moisturePct, note: 'Second course, middle board' }, now);
   const { photos } = await jobPageSettings(ada, maple);
   await keepJobPage(ada, maple, { photos: photos.map(({ id }) => id), words: 'The maple by the school road went over in the July storm. Half of it is going to be a bench for the children.' }, now);
-  await agreeToJobPage(ada, maple, true, now);
-  await agreeToJobPage(await who('cleo'), maple, true, now);
+  const { shows } = await jobPageSettings(ada, maple);
+  for (const side of [ada, await who('cleo')]) await agreeToJobPage(side, maple, { agrees: true, shows }, now);
   await offerBoardsLeft(await who('tilda'), (await bookingOf('tilda-oak')).number, { boards: 'Northern red oak, 4/4, 8, 10, 6\nNorthern red oak, 4/4, 6, 8, 9', asks: 'two dollars a board foot, or a load of firewood' }, now);
 }

@@ -64,6 +64,8 @@ export type BoardsLeftForm = z.infer<typeof boardsLeftForm>;
 
 export const nothingForm = z.object({});
 
+export const agreeToJobForm = z.object({ shows: z.string().max(100).default('') });
+
 const asList = (value: unknown): unknown => (value === undefined ? [] : Array.isArray(value) ? value : [value]);
 export const jobPageForm = z.object({
   photos: z.preprocess(asList, z.array(z.uuid()).max(100)),

@@ -1,3 +1,4 @@
+import { createHash } from 'node:crypto';
 import { photoAlt, pictureView, type PictureView } from '~/domain/photo.ts';
 import { rows } from './db.ts';
 
@@ -6,6 +7,10 @@ export interface JobPhoto {
   readonly words: string;
   readonly picture: PictureView;
 }
+
+/** Names what a job's page shows, so that a side agrees to what it read: any change gives another name. */
+export const shownName = (kept: { readonly photoIds: readonly string[]; readonly words: string } | null): string =>
+  createHash('sha256').update(JSON.stringify([kept?.photoIds ?? [], kept?.words ?? ''])).digest('base64url').slice(0, 22);
 
 /** The photographs of a job that its page may show, from tree to boards: the listing's own in their order, then those of the milling day. */
 export async function photosToPick(booking: { readonly id: string; readonly listingId: string }): Promise<JobPhoto[]> {

@@ -70,6 +70,7 @@ describe('boards left over', () => {
 
 describe('a job shown around', () => {
   const read = (viewer: Viewer | null) => jobPage(viewer, booking.number);
+  const agree = async (side: Viewer): Promise<void> => agreeToJobPage(side, booking.number, { agrees: true, shows: (await jobPageSettings(cast.ada, booking.number)).shows }, at);
   const photo = async (change: object = {}): Promise<string> => {
     const id = randomUUID();
     await Photo.create({ id, listingId: listing.id, ownerId: cast.bram.id, bookingId: booking.id, shows: 'boards', position: 0, originalKey: id, status: 'ready', width: 90, height: 60, blur: '', createdAt: at, ...change });
@@ -81,7 +82,7 @@ describe('a job shown around', () => {
     const left = await photo();
     await keepJobPage(cast.ada, booking.number, { photos: [picked], words: 'A storm oak.' }, at);
     for (const stranger of [null, cast.cleo]) await expect(read(stranger)).rejects.toMatchObject({ kind: 'notFound' });
-    await agreeToJobPage(cast.ada, booking.number, true, at);
+    await agree(cast.ada);
     await expect(read(null)).rejects.toMatchObject({ kind: 'notFound' });
     await expect(photoAudience(null, picked)).rejects.toMatchObject({ kind: 'notFound' });
     expect((await read(cast.bram)).isPublic).toBe(false);
@@ -92,7 +93,7 @@ describe('a job shown around', () => {
     expect(before.jobs[0]?.month).toMatch(/^20\d\d-\d\d$/);
     expect(JSON.stringify(before.jobs)).not.toMatch(/43\.65|90\.64|cents|Ada|54665/i);
 
-    await agreeToJobPage(cast.bram, booking.number, true, at);
+    await agree(cast.bram);
     // 5/4 × 8 × 10 has a surface measure of 8 × 10 / 12 = 6.67, to 7: 7 × 1.25 × 6 = 52.5, half up 53 bf.
     expect(await read(null)).toMatchObject({ isPublic: true, words: 'A storm oak.', tallyBf: 53, photos: [{ id: picked, words: 'Boards' }] });
     expect(await photoAudience(null, picked)).toBe('viewer');
@@ -102,28 +103,41 @@ describe('a job shown around', () => {
     // Nothing of the place, the money or the landowner.
     expect(JSON.stringify(await read(null))).not.toMatch(/43\.65|90\.64|cents|Ada|54665/i);
 
-    await agreeToJobPage(cast.bram, booking.number, false, at);
+    await agreeToJobPage(cast.bram, booking.number, { agrees: false }, at);
     await expect(read(null)).rejects.toMatchObject({ kind: 'notFound' });
     await expect(photoAudience(null, picked)).rejects.toMatchObject({ kind: 'notFound' });
   });
 
   it('asks both again when what it shows has changed', async () => {
-    for (const side of [cast.ada, cast.bram]) await agreeToJobPage(side, booking.number, true, at);
+    for (const side of [cast.ada, cast.bram]) await agree(side);
     expect((await read(null)).isPublic).toBe(true);
     await keepJobPage(cast.ada, booking.number, { photos: [], words: 'Another word.' }, at);
     expect((await jobPageSettings(cast.bram, booking.number)).agreed).toEqual({ landowner: false, sawyer: false });
     await expect(read(null)).rejects.toMatchObject({ kind: 'notFound' });
   });
 
+  it('is agreed to as it was read: never to what it was changed to meanwhile', async () => {
+    const [plain, other] = [await photo(), await photo({ shows: 'metal' })];
+    await keepJobPage(cast.ada, booking.number, { photos: [plain], words: 'Boards.' }, at);
+    const { shows } = await jobPageSettings(cast.bram, booking.number);
+    await keepJobPage(cast.ada, booking.number, { photos: [other], words: 'The worst sawyer of the county.' }, at);
+    await agree(cast.ada);
+    await expect(agreeToJobPage(cast.bram, booking.number, { agrees: true, shows }, at)).rejects.toMatchObject({ kind: 'conflict' });
+    await expect(read(null)).rejects.toMatchObject({ kind: 'notFound' });
+    await agree(cast.bram);
+    expect((await read(null)).isPublic).toBe(true);
+    await keepJobPage(cast.ada, booking.number, { photos: [], words: '' }, at);
+  });
+
   it('is kept by its landowner, of its own photographs, and agreed to by its sides', async () => {
     await expect(keepJobPage(cast.bram, booking.number, { photos: [], words: '' }, at)).rejects.toMatchObject({ kind: 'forbidden' });
     await expect(keepJobPage(cast.ada, booking.number, { photos: [randomUUID()], words: '' }, at)).rejects.toMatchObject({ kind: 'invalid' });
-    for (const other of [cast.cleo, cast.mo]) await expect(agreeToJobPage(other, booking.number, true, at)).rejects.toMatchObject({ kind: 'forbidden' });
+    for (const other of [cast.cleo, cast.mo]) await expect(agree(other)).rejects.toMatchObject({ kind: 'forbidden' });
     await expect(jobPageSettings(cast.cleo, booking.number)).rejects.toMatchObject({ kind: 'notFound' });
   });
 
   it('goes with a listing that a moderator takes off show', async () => {
-    for (const side of [cast.ada, cast.bram]) await agreeToJobPage(side, booking.number, true, at);
+    for (const side of [cast.ada, cast.bram]) await agree(side);
     await execute('UPDATE listing SET hidden_at = $2 WHERE id = $1', [listing.id, at]);
     await expect(read(null)).rejects.toMatchObject({ kind: 'notFound' });
   });

@@ -6,7 +6,7 @@ import type { Day } from '~/domain/time.ts';
 import { rolesOnBooking } from '../authorize.ts';
 import { conflict, notFound } from '../errors.ts';
 import { bookedDaysOf } from '../invitations.ts';
-import { photosToPick, type JobPhoto } from '../job-photos.ts';
+import { photosToPick, shownName, type JobPhoto } from '../job-photos.ts';
 import { Account, Booking, JobPage as Kept, Listing } from '../models/index.ts';
 import { partiesOf } from '../parties.ts';
 import { tallyWork, type TallyWork } from '../tally-work.ts';
@@ -75,6 +75,8 @@ export interface JobPageSettings {
   readonly words: string;
   readonly photos: readonly (JobPhoto & { readonly picked: boolean })[];
   readonly agreed: { readonly landowner: boolean; readonly sawyer: boolean };
+  /** Names what the page shows; an agreement is to that. */
+  readonly shows: string;
   readonly can: Record<Action<'booking'>, boolean>;
 }
 
@@ -91,6 +93,6 @@ export async function jobPageSettings(viewer: Viewer, number: number): Promise<J
     number, title: listing.title ?? '', side: viewer.id === landowner.id ? 'landowner' : viewer.id === sawyer.id ? 'sawyer' : 'moderator',
     otherName: viewer.id === landowner.id ? sawyer.name : landowner.name, words: kept?.words ?? '',
     photos: (await photosToPick(booking)).map((photo) => ({ ...photo, picked: kept?.photoIds.includes(photo.id) ?? false })),
-    agreed: { landowner: Boolean(kept?.landownerAgreedAt), sawyer: Boolean(kept?.sawyerAgreedAt) }, can,
+    agreed: { landowner: Boolean(kept?.landownerAgreedAt), sawyer: Boolean(kept?.sawyerAgreedAt) }, shows: shownName(kept), can,
   };
 }
