@@ -104,7 +104,7 @@ describe('a tile', () => {
 });
 
 describe('the counts of a low zoom', () => {
-  const low = [0, 2, 5, 6] as const;
+  const low = [0, 2, 5, 6, 7] as const;
   const noted = async (): Promise<number> => (await rows('SELECT 1 AS one FROM map_changed')).length;
   /** The marks as they are counted one by one: a filter that leaves everything in. */
   const oneByOne = async (): Promise<unknown> => Promise.all(low.map((z) => marksAt(z, { minBoardFeet: 0 })));

@@ -53,7 +53,7 @@ export function cellsOf({ z, x, y }: Tile): { readonly first: number; readonly e
 }
 
 /** The level at which open listings are kept counted, and the deepest zoom whose marks are made of such counts. */
-const COUNTED_LEVEL = 9;
+const COUNTED_LEVEL = 10;
 export const DEEPEST_COUNTED = COUNTED_LEVEL - 3;
 /** How far a finest cell is divided to come to a counted one, in bits; the database says the same of `map_count`. */
 export const COUNTED_SHIFT = 2 * (FINEST - COUNTED_LEVEL);
