@@ -67,3 +67,29 @@ describe('a cut list over HTTP', () => {
     expect(((await response.json()) as { errors: { path: string }[] }).errors.map((error) => error.path)).toContain(path);
   });
 });
+
+describe('a stem cut for a list, as a page', () => {
+  const address = (fields: Readonly<Record<string, string>>): URL => {
+    const url = new URL('/estimator/stem', origin);
+    for (const [name, value] of Object.entries({ species: 'white-oak', bark: 'inside', at0: '0', across0: '20', at1: '30', across1: '12', trim: '5', smallest: '8', by: 'list', lengths: '8', ...fields })) url.searchParams.append(name, value);
+    return url;
+  };
+
+  test('shows each piece made or short, with what would mend it, without a script', async () => {
+    const response = await fetch(address({ 'p0-label': 'Shelves', 'p0-thickness': '1', 'p0-width': '6', 'p0-length': '8', 'p0-count': '4', 'p1-label': 'Joists', 'p1-thickness': '2', 'p1-width': '6', 'p1-length': '12', 'p1-count': '2' }));
+    expect(response.status).toBe(200);
+    const page = await response.text();
+    expect(page).toContain('24 bf of your list short');
+    expect(page).toContain('4 of 4 made');
+    expect(page).toMatch(/One more log, at least \d+ in at the small end and 12 ft long/);
+    expect(page).toContain('The longest log here is 8 ft');
+  });
+
+  test('is refused beside the field that is wrong, with all that was typed', async () => {
+    const response = await fetch(address({ 'p0-label': 'Shelves', 'p0-thickness': 'thick', 'p0-width': '6', 'p0-length': '8' }));
+    expect(response.status).toBe(422);
+    const page = await response.text();
+    expect(page).toMatch(/id="p0-thickness-error"|p0-thickness/);
+    expect(page).toContain('value="thick"');
+  });
+});

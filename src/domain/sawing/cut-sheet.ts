@@ -20,9 +20,9 @@ export interface CutSheet {
   readonly cuts: readonly SheetCut[];
 }
 
-/** Whether the log lies on its bark: as long as the side opposite was not cut. A quartered log does so for the first cut only. */
+/** Whether the log lies on its bark: as long as the side opposite was not cut. A quartered log does so until it lies in quarters. */
 const liesOnBark = (cut: Cut, index: number, cuts: readonly Cut[]): boolean =>
-  cuts.some(({ kind }) => kind === 'quarter') ? index === 0 : cuts.slice(0, index).every(({ turnDeg }) => turnDeg !== (cut.turnDeg + 180) % 360);
+  cuts.some(({ kind }) => kind === 'quarter') ? cut.kind === 'quarter' : cuts.slice(0, index).every(({ turnDeg }) => turnDeg !== (cut.turnDeg + 180) % 360);
 
 /**
  * A plan as the sawyer cuts it: toe boards, turns, and each height as it is measured from the bed.

@@ -1,7 +1,7 @@
 import type { ReactElement } from 'react';
 import { buttonKinds, gloveSize, join } from '~/components/classes.ts';
 import { formatFeet, formatFraction } from '~/domain/measure.ts';
-import { cutKindWords, heightWords, turnWords } from '~/domain/sawing/cut-words.ts';
+import { cutKindWords, heightWords, turnWords, quarterWords } from '~/domain/sawing/cut-words.ts';
 import { leftAfter } from '~/domain/sawing/cut-lines.ts';
 import { measuresSaid, type Measures } from '~/domain/trade/day-logs.ts';
 import type { KeptSheet } from '~/islands/day/store.ts';
@@ -45,6 +45,7 @@ function Planned({ planned, log, millName, at, goTo }: { readonly planned: LogOf
             <div className="flex justify-between gap-3 border-b border-rule py-1"><dt>Toe board under the small end</dt><dd className="figure font-bold">{heightWords(planned.raiseSmallEndIn)}</dd></div>
             <div className="flex justify-between gap-3 border-b border-rule py-1"><dt>Pith over the bed, both ends</dt><dd className="figure font-bold">{heightWords(planned.pithHeightIn)}</dd></div>
           </dl>
+          {quarterWords(cuts, core.largeEndIn) && <p className="mt-2">{quarterWords(cuts, core.largeEndIn)}</p>}
           <OneCut {...{ planned, cut, at }} name={log.label} onGo={(to) => goTo(planned.logId, to)} />
           <AllCuts cuts={cuts} at={at} name={log.label} />
         </>
@@ -71,7 +72,7 @@ function OneCut({ planned, cut, at, name, onGo }: { readonly planned: LogOfSheet
       <div className="mt-2 border-2 border-ink bg-sheet px-3 py-2" role="status" data-testid="this-cut">
         <p className="flex flex-wrap justify-between gap-x-3"><span className="font-bold">Cut {cut.order} of {cuts.length}</span><span className={cut.turnByDeg === 0 ? '' : 'bg-ink px-2 font-bold text-paper'}>{turnWords(cut.turnByDeg)}</span></p>
         <p className="flex flex-wrap items-baseline justify-between gap-x-3"><span>Saw at</span><span className="figure text-3xl font-bold">{heightWords(cut.heightIn)}</span></p>
-        <p>{cutKindWords[cut.kind]}{cut.onBark ? ', over the bark' : ', from the flat on the bed'}</p>
+        <p>{cutKindWords[cut.kind]}{cut.onBark ? ', over the bark' : cuts.some(({ kind }) => kind === 'quarter') ? ', the quarter on its blocks' : ', from the flat on the bed'}</p>
       </div>
       <div className="mt-2 flex gap-2">
         <button type="button" className={join(buttonKinds.outlined, gloveSize, 'flex-1')} disabled={at === 0} onClick={() => onGo(at - 1)}>Back</button>

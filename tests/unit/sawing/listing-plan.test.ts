@@ -1,8 +1,10 @@
 import fc from 'fast-check';
 import { beforeAll, describe, expect, it } from 'vitest';
 import { cutSheet } from '~/domain/sawing/cut-sheet.ts';
+import { quarterWords } from '~/domain/sawing/cut-words.ts';
 import { greenSize } from '~/domain/sawing/green-size.ts';
 import { listingPlan, tallyBoardFeet } from '~/domain/sawing/listing-plan.ts';
+import { sawPlan } from '~/domain/sawing/saw-plan.ts';
 import { leastLogFor } from '~/domain/sawing/shortfall.ts';
 import { soundCore } from '~/domain/sawing/sound-core.ts';
 import type { Solver } from '~/domain/sawing/solver.ts';
@@ -63,6 +65,24 @@ describe('a cut sheet', () => {
     sheet.cuts.forEach((cut, index) => expect(cut.heightIn - (one.plan.cuts[index]?.heightIn ?? 0)).toBeCloseTo(cut.onBark ? lift : 0, 9));
     expect(sheet.cuts[0]).toMatchObject({ onBark: true, turnByDeg: 0 });
     expect(sheet.cuts.filter((cut) => cut.turnByDeg === 180).every((cut) => !cut.onBark)).toBe(true);
+  });
+});
+
+describe('the cut sheet of a quartered log', () => {
+  it('quarters it on its bark, and says how its quarters are blocked up', () => {
+    const core = { smallEndIn: 18, lengthFt: 10 };
+    const plan = sawPlan({ log: core, mill, pattern: 'quartersawn', pieces: [{ thicknessIn: 1 }] });
+    const { cuts, pithHeightIn } = cutSheet(core, core, plan, 1.05);
+    const quarters = cuts.filter(({ kind }) => kind === 'quarter');
+    // 18 in and ⅛ in a foot of taper: the large end is 19¼ in. Half a kerf under the pith, over the bark, both times.
+    expect(quarters.map(({ heightIn, onBark }) => [heightIn, onBark])).toEqual([[pithHeightIn - 0.0625, true], [pithHeightIn - 0.0625, true]]);
+    expect(cuts.filter(({ kind }) => kind !== 'quarter').every(({ onBark }) => !onBark)).toBe(true);
+    expect(quarterWords(cuts, 19.25)).toContain('9 5/8 in over the bed');
+    // The boards of the quarter on the right lie on both sides of its middle, so their cuts do of the height said.
+    const first = plan.boards.filter((board) => !board.turned && board.xIn > 0);
+    const cutsOfIt = cuts.filter(({ kind }, index) => kind === 'board' && cuts.slice(0, index).filter(({ turnByDeg }) => turnByDeg !== 0).length === 3);
+    expect(cutsOfIt.map(({ heightIn }) => heightIn - 9.625).every((at) => first.some(({ yIn }) => Math.abs(yIn - mill.kerfIn - at) < 1e-6))).toBe(true);
+    expect(quarterWords([{ kind: 'board' }], 19.25)).toBe('');
   });
 });
 
