@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { fieldOf, list, text, ticked } from './fields.ts';
 import { logLengthFt, smallEndIn, speciesCode, between } from './timber-fields.ts';
 
 const inches = (most: number) => z.number().positive('This must be more than zero.').max(most, `At most ${most} in.`);
@@ -81,3 +82,7 @@ export const queryForm = z.object({
   says: z.string().trim().min(1, 'Say what is wrong with these lines.').max(1000),
 });
 export const answerForm = z.object({ query: z.uuid(), answer: z.string().trim().min(1, 'Write an answer.').max(1000) });
+/** The check-list gone through, without a script: every point is ticked. */
+export const startForm = (points: number) => z.object({ check: list.refine((ticks) => ticks.length >= points, 'Go through every point of the check-list before sawing begins.') });
+/** The tally offered for signing, without a script. */
+export const offerTallyForm = z.object({ endedBySawyer: ticked, note: fieldOf(text(1000)) });

@@ -94,7 +94,7 @@ export const routes: Readonly<Record<string, Route>> = {
 
   // Bookings.
   'bookings/index.astro': { path: at('/bookings'), GET: SIGNED_IN },
-  'bookings/[number]/index.astro': { path: ({ queried }) => `/bookings/${queried}`, GET: PARTIES, POST: 'in 403 422 403 422 403 403' },
+  'bookings/[number]/index.astro': { path: ({ queried }) => `/bookings/${queried}`, GET: PARTIES, POST: 'in 404 409 404 409 404 403' },
   'bookings/[number]/agreement.astro': { path: ({ queried }) => `/bookings/${queried}/agreement`, GET: PARTIES },
   'bookings/[number]/cut-sheet.astro': { path: ({ queried }) => `/bookings/${queried}/cut-sheet`, GET: PARTIES },
   'bookings/[number]/no-show.astro': { path: ({ queried }) => `/bookings/${queried}/no-show`, GET: PARTIES, POST: 'in 404 422 404 422 404 422' },
@@ -102,7 +102,7 @@ export const routes: Readonly<Record<string, Route>> = {
   'bookings/[number]/pay.astro': { path: ({ agreed }) => `/bookings/${agreed}/pay`, GET: 'in 404 200 404 403 404 403', POST: 'in 404 303 404 403 404 403' },
   'bookings/[number]/paid.astro': { path: ({ agreed }) => `/bookings/${agreed}/paid`, GET: 'in 404 200 404 403 404 403' },
   'bookings/[number]/cancel.astro': { path: ({ agreed }) => `/bookings/${agreed}/cancel`, GET: 'in 404 200 404 200 404 404', POST: 'in 404 422 404 422 404 404' },
-  'bookings/[number]/tally.astro': { path: ({ queried }) => `/bookings/${queried}/tally`, GET: 'in 404 303 404 200 404 403', POST: 'in 403 403 403 422 403 403' },
+  'bookings/[number]/tally.astro': { path: ({ queried }) => `/bookings/${queried}/tally`, GET: 'in 404 303 404 200 404 403', POST: 'in 404 403 404 409 404 403' },
   'bookings/[number]/sign.astro': { path: ({ queried }) => `/bookings/${queried}/sign`, GET: PARTIES, POST: 'in 404 422 404 422 404 422' },
   'bookings/[number]/tally.pdf.ts': { path: ({ queried }) => `/bookings/${queried}/tally.pdf`, GET: PARTIES },
   'bookings/[number]/after.astro': { path: ({ queried }) => `/bookings/${queried}/after`, GET: PARTIES, POST: 'in 404 422 404 422 404 422' },
