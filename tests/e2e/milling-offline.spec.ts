@@ -86,6 +86,15 @@ async function expectForField(page: Page): Promise<void> {
     expect(over, `${viewport.width} px wide`).toBeLessThanOrEqual(0);
   }
   await page.setViewportSize({ width: 390, height: 844 });
+  // Letters alone at twice their size, as a phone's own setting makes them.
+  const atTwice = await page.evaluate(() => {
+    const sheet = [...document.styleSheets].find(({ href }) => href?.startsWith(location.origin));
+    const rule = sheet?.insertRule('html { font-size: 200% !important }', sheet.cssRules.length) ?? -1;
+    const over = document.documentElement.scrollWidth - document.documentElement.clientWidth;
+    sheet?.deleteRule(rule);
+    return over;
+  });
+  expect(atTwice, 'letters at 200 %').toBeLessThanOrEqual(0);
 }
 
 /** The bookings are made at one go; each check takes the next. */
@@ -233,6 +242,10 @@ test('the landowner signs on the sawyer’s phone without signal, and it settles
   const sheet = await ada.request.get(`/bookings/${job.number}/tally.pdf`);
   expect([sheet.status(), sheet.headers()['content-type']]).toEqual([200, 'application/pdf']);
   await expect.poll(async () => (await ada.goto(`/bookings/${job.number}`), ada.getByRole('img', { name: /^(Boards|Metal hit, blade re-sharpened)/ }).count()), { timeout: 30_000 }).toBe(2);
+  // She adds one of her own, from the page of the day's photographs.
+  await ada.goto(`/bookings/${job.number}/photographs`);
+  await ada.getByLabel('Add photographs').setInputFiles({ name: 'stack.jpg', mimeType: 'image/jpeg', buffer: await plainJpeg(700, 500) });
+  await expect(ada.getByRole('button', { name: /^Take out/ })).toHaveCount(1);
   await phone.context.close();
 });
 

@@ -1,5 +1,14 @@
-import type { ReactElement } from 'react';
+import { useEffect, useRef, type ReactElement } from 'react';
+import { sendPictures } from '~/islands/day/pictures.ts';
+import { refresh } from '~/islands/day/send.ts';
+import { holderOf } from '~/islands/day/store.ts';
 import { Kept, TakeOne, usePhotographs } from './Photographs.tsx';
+
+/** Sends what waits: what an earlier visit could not, too. A browser that keeps nobody's days yet asks for them first. */
+async function sendWaiting(): Promise<void> {
+  if (!(await holderOf())) await refresh();
+  await sendPictures();
+}
 
 interface AddPhotographsProps {
   readonly accountId: string;
@@ -9,6 +18,18 @@ interface AddPhotographsProps {
 /** Adds photographs of the boards from any phone or desk of either side: kept here first, sent when there is signal. */
 export function AddPhotographs({ accountId, booking }: AddPhotographsProps): ReactElement {
   const { here, trouble, take } = usePhotographs(accountId, booking);
+  const waited = useRef(false);
+  useEffect(() => {
+    const send = (): void => void sendWaiting().catch(() => undefined);
+    send();
+    window.addEventListener('online', send);
+    return () => window.removeEventListener('online', send);
+  }, []);
+  useEffect(() => {
+    // All sent: the page, which the server makes, shows them.
+    if (waited.current && here.length === 0) location.reload();
+    waited.current = here.length > 0;
+  }, [here.length]);
   return (
     <div>
       <p><TakeOne label="Add photographs" onTake={(file) => take('boards', null, file)} /></p>

@@ -88,14 +88,13 @@ function AllCuts({ cuts, at, name }: { readonly cuts: readonly CutOfSheet[]; rea
       <summary className={summaryClass}>All cuts in order</summary>
       <table className="ruled w-full">
         <caption className="sr-only">Cuts of {name} in order</caption>
-        <thead><tr><th scope="col" className="num">Cut</th><th scope="col">Turn</th><th scope="col" className="num">Saw at</th><th scope="col">What</th></tr></thead>
+        <thead><tr><th scope="col" className="num">Cut</th><th scope="col">Turn, and what</th><th scope="col" className="num">Saw at</th></tr></thead>
         <tbody>
           {cuts.map((cut, index) => (
             <tr key={cut.order} aria-current={index === at ? 'step' : undefined} className={index === at ? 'font-bold' : ''}>
               <th scope="row" className="num">{cut.order}</th>
-              <td>{turnWords(cut.turnByDeg)}</td>
+              <td>{turnWords(cut.turnByDeg)}; {cutKindWords[cut.kind]}</td>
               <td className="num">{heightWords(cut.heightIn)}</td>
-              <td>{cutKindWords[cut.kind]}</td>
             </tr>
           ))}
         </tbody>
