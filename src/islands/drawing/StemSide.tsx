@@ -26,6 +26,7 @@ export function StemSide({ measures, logs, leaveOut, diameterAt, label, thicker 
     return `M${[...upper, ...lower].join('L')}Z`;
   };
   const half = widest / 2;
+  const step = end > 60 ? 20 : 10;
   return (
     <svg className="log-drawing w-full" viewBox={`${-size * 0.6} ${-half - size * 2} ${end * unit + size * 1.2} ${widest + size * 6}`} role="img" aria-label={label} focusable="false">
       <path className="log-trim" d={outline(places[0] ?? 0, end)} />
@@ -39,7 +40,7 @@ export function StemSide({ measures, logs, leaveOut, diameterAt, label, thicker 
       {leaveOut.map(({ fromFt, toFt }) => <path className="log-rot" key={fromFt} d={outline(Math.min(fromFt, end), Math.min(toFt, end))} />)}
       <path className="log-ring" d={`M0 0H${end * unit}`} strokeDasharray="6 3" />
       <path className="log-scale" d={`M0 ${half + size * 2.6}H${end * unit}`} />
-      {Array.from({ length: Math.floor(end / 10) + 1 }, (_, index) => index * 10).map((feet) => (
+      {Array.from({ length: Math.floor(end / step) + 1 }, (_, index) => index * step).map((feet) => (
         <g key={feet}>
           <path className="log-scale" d={`M${feet * unit} ${half + size * 2.4}v${size * 0.4}`} />
           {feet < end - 3 || feet === 0 ? <text className="log-words" fontSize={size * 0.8} textAnchor={feet === 0 ? 'start' : 'middle'} x={feet * unit} y={half + size * 3.6}>{feet === 0 ? 'butt' : `${feet} ft`}</text> : null}
