@@ -68,6 +68,8 @@ export interface Patience {
   readonly toPlan: () => boolean;
   /** Seconds that one solving may take. */
   readonly solverSeconds: number;
+  /** As much time again for a second question; without it, what is left of the first. */
+  readonly anew?: () => Patience;
 }
 
 /** Rounds of planning every log at the prices of the round before. */

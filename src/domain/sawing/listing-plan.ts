@@ -123,7 +123,7 @@ export function listingPlan({ logs, mill, pieces, pattern = 'best' }: ListingPla
   });
   if (!answer) return { logs: planned, list: null, shortfalls: [], thinner: null };
   const short = answer.covered.filter((each) => each.short > 0);
-  const thin = short.length > 0 && mill.kerfIn > THIN_KERF_IN + 0.02 ? cutList({ ...request, mill: { ...mill, kerfIn: THIN_KERF_IN } }, solve, patience) : null;
+  const thin = short.length > 0 && mill.kerfIn > THIN_KERF_IN + 0.02 ? cutList({ ...request, mill: { ...mill, kerfIn: THIN_KERF_IN } }, solve, patience.anew?.() ?? patience) : null;
   const { plans: _, ...list } = answer;
   return {
     logs: planned,

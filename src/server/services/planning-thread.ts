@@ -24,7 +24,7 @@ function patience(times = 1): Patience {
     const { user, system } = process.cpuUsage(from);
     return (user + system) / 1000;
   };
-  return { toPlan: () => cpuMs() < times * PLANNING_CPU_MS && performance.now() - wall < times * PLANNING_MS, solverSeconds: SOLVER_SECONDS };
+  return { toPlan: () => cpuMs() < times * PLANNING_CPU_MS && performance.now() - wall < times * PLANNING_MS, solverSeconds: SOLVER_SECONDS, anew: () => patience(times) };
 }
 
 async function done(task: Task): Promise<unknown> {

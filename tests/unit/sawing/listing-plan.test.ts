@@ -47,6 +47,15 @@ describe('the boards of a listing', () => {
     expect(leastLogFor({ thicknessIn: 8, widthIn: 8, lengthFt: 8 }, 1, 8, { mill })).toBe(12);
   });
 
+  it('says when a thinner kerf would leave less short, with time of its own to look', () => {
+    const pieces = [{ id: 'a', thicknessIn: 1, widthIn: 4, lengthFt: 8, count: 60 }];
+    const asked = { logs: [log('one', 12)], mill: { kerfIn: 0.375 }, pieces };
+    const spent = { toPlan: () => false, solverSeconds: 2 };
+    const { list, thinner } = listingPlan(asked, solve, { ...patience(8), anew: () => patience(8) });
+    expect(thinner?.boardFeetShort).toBeLessThan((list?.boardFeetShort ?? 0) - 8);
+    expect(thinner?.boardFeetShort).toBeLessThan(listingPlan({ ...asked, mill: { kerfIn: 3 / 32 } }, solve, spent).list?.boardFeetShort ?? 0);
+  });
+
   it('leaves out what a sweep or rot takes', () => {
     expect(soundCore({ smallEndIn: 12, lengthFt: 8, defects: [{ kind: 'sweep', departureIn: 3 }] })).toMatchObject({ smallEndIn: 9, largeEndIn: 10 });
     expect(soundCore({ smallEndIn: 12, lengthFt: 8, heartDefectIn: 4, defects: [] })?.heartDefectIn).toBe(4);
