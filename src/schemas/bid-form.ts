@@ -37,4 +37,4 @@ export type BidForm = z.output<typeof bidForm>;
 export const confirmBidForm = z.object({ listingRevision: fieldOf(whole(0, 1_000_000)) });
 
 /** Choosing a bid: the revision of the listing that the landowner read. */
-export const chooseBidForm = z.object({ listingRevision: fieldOf(whole(0, 1_000_000)) });
+export const chooseBidForm = z.object({ listingRevision: fieldOf(whole(0, 1_000_000)), terms: z.string().max(100).default('') });

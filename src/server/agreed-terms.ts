@@ -1,4 +1,5 @@
-import type { AgreedTerms } from '~/domain/trade/agreement.ts';
+import { createHash } from 'node:crypto';
+import { type AgreedTerms, canonicalJson } from '~/domain/trade/agreement.ts';
 import type { BidMill } from '~/domain/trade/bid-estimate.ts';
 import type { FrozenEstimate } from './bid-work.ts';
 import { env } from './env.ts';
@@ -15,3 +16,6 @@ export function agreedTerms(bid: Bid, listing: Listing, landowner: string, sawye
     feeBasisPoints: env().FEE_BASIS_POINTS, daysOffered: bid.daysOffered, message: bid.message,
   };
 }
+
+/** Names the terms: any change gives another name. The work agreement keeps it, and a choice names the terms that were read by it. */
+export const termsSha256 = (agreed: AgreedTerms): string => createHash('sha256').update(canonicalJson(agreed)).digest('hex');

@@ -31,6 +31,7 @@ const choosing = async (listing: number, sawyer: string): Promise<string> => {
   return new RegExp(`href="(/listings/${listing}/bids/[0-9a-f-]{36})"[^>]*>Choose this bid<span class="sr-only"> of ${sawyer}<`).exec(html)?.[1] ?? '';
 };
 const revisionOf = async (address: string): Promise<string> => /name="listingRevision" value="(\d+)"/.exec(await (await ada.get(address)).text())?.[1] ?? '';
+const termsOf = async (address: string): Promise<string> => /name="terms" value="([0-9a-f]{64})"/.exec(await (await ada.get(address)).text())?.[1] ?? '';
 
 describe('who may see and do', () => {
   it.each(['bid', 'bid/withdraw', 'bids', 'bids/2b6f1c3e-0000-4000-8000-000000000000'])('%s: a guest signs in first', async (name) => {
@@ -159,10 +160,13 @@ describe('from two bids to one agreement', () => {
     const choose = await choosing(number, 'Bram Band');
     const other = await choosing(number, 'Cleo Cuts');
     const listingRevision = await revisionOf(choose);
+    const read = new Map([[choose, await termsOf(choose)], [other, await termsOf(other)]]);
     const forms = new Map([[bram, await bidFields(bram, number)], [cleo, await bidFields(cleo, number)]]);
     for (const who of [eve, bram]) expect((await who.post(choose, { listingRevision })).status).toBe(404);
     expect((await ada.post(choose, { listingRevision: 'x' })).status).toBe(422);
-    const answers = await Promise.all([choose, other, choose, other, choose, other, choose, other].map((address) => ada.post(address, { listingRevision })));
+    // The terms of another bid, or none, are not those that were read.
+    for (const terms of [read.get(other) ?? '', '']) expect((await ada.post(choose, { listingRevision, terms })).status).toBe(409);
+    const answers = await Promise.all([choose, other, choose, other, choose, other, choose, other].map((address) => ada.post(address, { listingRevision, terms: read.get(address) ?? '' })));
     expect(answers.map(({ status }) => status).sort()).toEqual([303, 409, 409, 409, 409, 409, 409, 409]);
     const booking = answers.find(({ status }) => status === 303)?.headers.get('location') ?? '';
     expect(booking).toMatch(/^\/bookings\/\d+$/);

@@ -1,8 +1,10 @@
 import { beforeAll, beforeEach, describe, expect, it } from 'vitest';
+import { changeBid } from '~/server/commands/change-bid.ts';
 import { chooseBid } from '~/server/commands/choose-bid.ts';
 import { placeBid } from '~/server/commands/place-bid.ts';
 import { rows } from '~/server/db.ts';
 import { agreementOf } from '~/server/queries/agreement.ts';
+import { bidToChoose } from '~/server/queries/bid-to-choose.ts';
 import { compareBids } from '~/server/queries/compare-bids.ts';
 import { Booking, Conversation, Outing, WorkAgreement } from '~/server/models/booking.ts';
 import { Listing } from '~/server/models/listing.ts';
@@ -69,6 +71,20 @@ describe('choosing', () => {
     await expect(chooseBid(cast.ada, bids[0] ?? '', 1, MARKET_AT)).rejects.toMatchObject({ kind: 'conflict' });
     await expect(chooseBid(cast.ada, bids[0] ?? '', 2, MARKET_AT)).rejects.toMatchObject({ kind: 'conflict' });
     expect(await Booking.count({ where: { listingId: listing.id } })).toBe(0);
+  });
+
+  it('is of the terms that were read: never of what the bid was changed to meanwhile', async () => {
+    const bid = bids[0] ?? '';
+    const read = await bidToChoose(cast.ada, listing.number, bid, MARKET_AT);
+    const { viewer, mill } = sawyers[0] ?? { viewer: cast.bram, mill: '' };
+    await changeBid(viewer, bid, bidOf(mill, { roadMiles: 200 }), MARKET_AT);
+    const now = await bidToChoose(cast.ada, listing.number, bid, MARKET_AT);
+    expect(now.terms.figures.holdCents).toBeGreaterThan(read.terms.figures.holdCents);
+    await expect(chooseBid(cast.ada, bid, 1, MARKET_AT, read.termsSha256)).rejects.toMatchObject({ kind: 'conflict', message: expect.stringContaining('changed this bid') });
+    await expect(chooseBid(cast.ada, bid, 1, MARKET_AT, '')).rejects.toMatchObject({ kind: 'conflict' });
+    const number = await chooseBid(cast.ada, bid, 1, MARKET_AT, now.termsSha256);
+    expect((await agreementOf(cast.ada, number)).terms.figures).toEqual(now.terms.figures);
+    expect(await WorkAgreement.count({ where: { sha256: now.termsSha256 } })).toBe(1);
   });
 
   it('is the owner’s alone', async () => {

@@ -1,4 +1,5 @@
-import { beforeAll, beforeEach, describe, expect, it } from 'vitest';
+import pg from 'pg';
+import { beforeAll, beforeEach, describe, expect, it, vi } from 'vitest';
 import { agreeToTrip, leaveTrip, withdrawTrip } from '~/server/commands/answer-trip.ts';
 import { cancelBooking } from '~/server/commands/cancel-booking.ts';
 import { chooseBid } from '~/server/commands/choose-bid.ts';
@@ -113,6 +114,24 @@ describe('a shared trip', () => {
     }
     const agreement = await agreementOf(who(0), bookings.find(({ landownerId }) => landownerId === who(0).id)?.number ?? 0);
     expect(agreementClauses(agreement.terms).map(({ title }) => title)).toContain('A shared trip');
+  });
+
+  it('never binds a bid that is changed while the last one agrees', async () => {
+    const trip = await offerTrip(sawyer, offer(2), MARKET_AT);
+    await agree(0, trip);
+    const bid = await Bid.findOne({ where: { listingId: listings[0]?.id ?? '', sawyerId: sawyer.id }, rejectOnEmpty: true });
+    // The sawyer's change holds the listing first; the answer has looked at the bid already and waits for it.
+    const change = new pg.Client({ connectionString: process.env['DATABASE_URL'] });
+    await change.connect();
+    await change.query('BEGIN');
+    await change.query('SELECT 1 FROM listing WHERE id = $1 FOR UPDATE', [bid.listingId]);
+    const answer = agree(1, trip).catch((error: unknown) => error);
+    await vi.waitFor(async () => expect((await rows(`SELECT 1 FROM pg_stat_activity WHERE datname = current_database() AND wait_event_type = 'Lock'`)).length).toBeGreaterThan(0), { timeout: 20_000 });
+    await change.query('UPDATE bid SET expected_cents = expected_cents + 50000, updated_at = $2 WHERE id = $1', [bid.id, new Date(MARKET_AT.getTime() + 60_000)]);
+    await change.query('COMMIT');
+    await change.end();
+    expect(await answer).toMatchObject({ kind: 'conflict' });
+    expect(await Booking.count({ where: { sawyerId: sawyer.id } })).toBe(0);
   });
 
   it('asks again with the new figure when one drops out, before anybody is bound', async () => {

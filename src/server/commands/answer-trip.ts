@@ -44,6 +44,8 @@ async function bookStop(by: Viewer, trip: SharedTrip, stop: TripStop, outing: Ou
   if (stop.bookingId !== null) return stop.bookingId;
   const listing = await Listing.findByPk(stop.listingId, { lock: true, rejectOnEmpty: true });
   const bid = await Bid.findByPk(stop.bidId, { lock: true, rejectOnEmpty: true });
+  // Looked at again under their locks: what was agreed to is the bid that was seen.
+  if (listing.status !== 'open' || bid.status !== 'open' || bid.listingRevision !== listing.revision || bid.updatedAt > stop.bidSeenAt) throw conflict('A bid of this trip or its listing has just changed. Load the page again.');
   const owner = await Account.findByPk(stop.landownerId, { rejectOnEmpty: true });
   const worked = await estimateOnTrip(bid, { trip: trip.number ?? 0, travelCents: stop.travelCents, setUpCents: stop.setUpCents });
   await transition(bidStates, 'change', bid, by, at, { ...bidFigures(worked), estimate: worked, updatedAt: at }, { data: { trip: trip.number } });

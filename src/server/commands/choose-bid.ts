@@ -1,10 +1,9 @@
-import { createHash } from 'node:crypto';
 import { paths } from '~/domain/paths.ts';
 import { bidStates } from '~/domain/states/bid.ts';
 import { listingStates } from '~/domain/states/listing.ts';
-import { AGREEMENT_VERSION, canonicalJson } from '~/domain/trade/agreement.ts';
+import { AGREEMENT_VERSION } from '~/domain/trade/agreement.ts';
 import { bidChosen, bidDeclined, choiceConfirmed } from '~/emails/bids.ts';
-import { agreedTerms } from '../agreed-terms.ts';
+import { agreedTerms, termsSha256 } from '../agreed-terms.ts';
 import type { Reader } from '../bidders.ts';
 import { authorize, rolesOnBid, rolesOnListing } from '../authorize.ts';
 import { refuseBlocked } from '../blocks.ts';
@@ -27,9 +26,10 @@ const MOVED_ON = 'Someone chose on this listing already. Load the page again to 
  * Chooses one bid: it is chosen, the others are declined, the listing is matched, a booking is opened and the terms are frozen in a
  * work agreement, all in one step. Of several who choose at once exactly one succeeds.
  * @param listingRevision the revision the landowner was looking at: a stale one is refused
+ * @param terms that the landowner read, by `termsSha256`: others are refused. Only who reads no page leaves it out
  * @returns the booking's number
  */
-export async function chooseBid(by: Viewer, bidId: string, listingRevision: number, at: Date): Promise<number> {
+export async function chooseBid(by: Viewer, bidId: string, listingRevision: number, at: Date, terms?: string): Promise<number> {
   try {
     return await inTransaction(async () => {
       const { bid, listing } = await lockListingAndBid(bidId);
@@ -38,6 +38,7 @@ export async function chooseBid(by: Viewer, bidId: string, listingRevision: numb
         throw conflict('The listing has changed since this page was shown, so these bids are out of date. Load it again: bids must be confirmed on the new logs first.');
       }
       authorize(by, 'bid', 'choose', rolesOnBid(by, bid, listing), bid.status);
+      if (terms !== undefined && terms !== (await termsOf(bid, listing))) throw conflict('The sawyer has changed this bid since this page was shown. Read it as it stands now, then choose.');
       await refuseBlocked(by.id, bid.sawyerId);
       if (listing.hiddenAt !== null) throw conflict('A moderator has taken this listing off show, so no bid can be chosen now.');
       return (await settleChoice(by, by, bid, listing, at)).number;
@@ -92,6 +93,10 @@ async function openBooking(by: Viewer, bid: Bid, listing: Listing, at: Date, sha
 
 async function freezeTerms(booking: Booking, bid: Bid, listing: Listing, landowner: string, sawyer: string, at: Date): Promise<void> {
   const agreed = agreedTerms(bid, listing, landowner, sawyer);
-  const sha256 = createHash('sha256').update(canonicalJson(agreed)).digest('hex');
-  await WorkAgreement.create({ bookingId: booking.id, textVersion: AGREEMENT_VERSION, terms: agreed, sha256, frozenAt: at });
+  await WorkAgreement.create({ bookingId: booking.id, textVersion: AGREEMENT_VERSION, terms: agreed, sha256: termsSha256(agreed), frozenAt: at });
+}
+
+async function termsOf(bid: Bid, listing: Listing): Promise<string> {
+  const [owner, sawyer] = [await Account.findByPk(listing.ownerId, { rejectOnEmpty: true }), await Account.findByPk(bid.sawyerId, { rejectOnEmpty: true })];
+  return termsSha256(agreedTerms(bid, listing, owner.name, sawyer.name));
 }

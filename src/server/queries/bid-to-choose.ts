@@ -1,6 +1,6 @@
 import { isId } from '~/domain/id.ts';
 import { abilities, rolesOnBid } from '../authorize.ts';
-import { agreedTerms } from '../agreed-terms.ts';
+import { agreedTerms, termsSha256 } from '../agreed-terms.ts';
 import { notFound } from '../errors.ts';
 import { Account } from '../models/account.ts';
 import { Bid } from '../models/sawyer.ts';
@@ -16,12 +16,14 @@ export async function bidToChoose(viewer: Viewer | null, listingNumber: number, 
   const row = isId(bidId) ? await Bid.findOne({ where: { id: bidId, listingId: listing.id } }) : null;
   if (!row) throw notFound('bid');
   const name = async (id: string): Promise<string> => (await Account.findByPk(id, { attributes: ['name'], rejectOnEmpty: true })).name;
+  const terms = agreedTerms(row, listing, await name(listing.ownerId), await name(row.sawyerId));
   return {
     listing,
     booking,
     /** As it is compared; null once it is no longer live. */
     bid: bids.find(({ id }) => id === row.id) ?? null,
-    terms: agreedTerms(row, listing, await name(listing.ownerId), await name(row.sawyerId)),
+    terms,
+    termsSha256: termsSha256(terms),
     others: bids.filter(({ id }) => id !== row.id).length,
     canChoose: can.chooseBid && abilities('bid', rolesOnBid(viewer, row, listing), row.status).choose,
   };
