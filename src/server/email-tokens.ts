@@ -22,6 +22,14 @@ export async function makeToken(accountId: string, purpose: TokenPurpose, email:
   return token;
 }
 
+/**
+ * Ends the links that could take an account over, in the caller's transaction: whoever sets a new password shuts out everybody who asked
+ * for one before, or for another address.
+ */
+export async function endTakeoverLinks(accountId: string, at: Date): Promise<void> {
+  await EmailToken.update({ usedAt: at }, { where: { accountId, purpose: ['change-email', 'reset-password'], usedAt: null } });
+}
+
 /** Whether a link still works, without using it: a page asks before it shows its button. */
 export async function tokenWorks(token: string, purposes: readonly TokenPurpose[], at: Date): Promise<boolean> {
   return (await EmailToken.count({ where: { hash: hashed(token), purpose: [...purposes], usedAt: null, expiresAt: { [Op.gt]: at } } })) === 1;

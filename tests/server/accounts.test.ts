@@ -24,6 +24,7 @@ import { blockedBetween } from '~/server/blocks.ts';
 import { execute, oneRow, rows } from '~/server/db.ts';
 import { Account, EmailToken, Event, Session, TermsAcceptance } from '~/server/models/index.ts';
 import { passwordMatches } from '~/server/passwords.ts';
+import { countMore } from '~/server/http/limits.ts';
 import { pendingAccount, pendingFor } from '~/server/pending-sign-in.ts';
 import { accountExport } from '~/server/queries/account-export.ts';
 import { sessionsOf } from '~/server/queries/account.ts';
@@ -146,12 +147,21 @@ describe('signing in', () => {
     expect((await signingIn(email, PASSWORD)).secondFactor).toBe(false);
   });
 
-  it('counts wrong tries by account and forgets them after a success', async () => {
+  it('counts wrong tries by account and address and forgets them after a success', async () => {
     const { email } = await newcomer();
-    for (let n = 0; n < 9; n += 1) await expect(signingIn(email, 'wrong', `192.0.2.${n}`)).rejects.toMatchObject({ kind: 'invalid' });
+    for (let n = 0; n < 9; n += 1) await expect(signingIn(email, 'wrong')).rejects.toMatchObject({ kind: 'invalid' });
     await signingIn(email, PASSWORD);
-    for (let n = 0; n < 10; n += 1) await expect(signingIn(email, 'wrong', `192.0.3.${n}`)).rejects.toMatchObject({ kind: 'invalid' });
-    await expect(signingIn(email, PASSWORD, '192.0.3.99')).rejects.toMatchObject({ kind: 'tooMany' });
+    for (let n = 0; n < 10; n += 1) await expect(signingIn(email, 'wrong')).rejects.toMatchObject({ kind: 'invalid' });
+    await expect(signingIn(email, PASSWORD)).rejects.toMatchObject({ kind: 'tooMany' });
+    // A stranger who tries and tries does not keep the account's holder out, who comes from elsewhere.
+    await signingIn(email, PASSWORD, '192.0.3.99');
+  });
+
+  it('counts wrong tries for one account from everywhere', async () => {
+    const { email } = await newcomer();
+    await countMore('sign-in by account', email, 99);
+    await expect(signingIn(email, 'wrong', '192.0.2.7')).rejects.toMatchObject({ kind: 'invalid' });
+    await expect(signingIn(email, PASSWORD, '192.0.2.8')).rejects.toMatchObject({ kind: 'tooMany' });
   });
 
   it('goes on to our own pages only', () => {
@@ -225,6 +235,22 @@ describe('password and address', () => {
     expect(await confirmEmail(await tokenIn('nell.new@cast.example', 'Confirm your new e-mail address'), at)).toMatchObject({ changed: true });
     expect(await viewerFor(viewer.id)).toMatchObject({ email: 'nell.new@cast.example', emailConfirmed: true });
     expect((await lettersTo(email))[0]?.subject).toBe('Your e-mail address was changed');
+  });
+
+  it.each([
+    ['changed', async (viewer: Viewer) => changePassword(viewer, { currentPassword: PASSWORD, newPassword: 'another good one' }, at)],
+    ['reset', async (viewer: Viewer) => {
+      await askPasswordReset({ email: viewer.email, clientAddress: '192.0.2.1' }, at);
+      await resetPassword({ token: await tokenIn(viewer.email, 'Choose a new password'), newPassword: 'another good one' }, at);
+    }],
+  ])('end the links of earlier letters when the password is %s: who asked for another address before does not get the account', async (how, renew) => {
+    const { viewer, email } = await newcomer();
+    const elsewhere = `thief-${how}@cast.example`;
+    await changeEmail(viewer, { newEmail: elsewhere, emailPassword: PASSWORD }, at);
+    const link = await tokenIn(elsewhere, 'Confirm your new e-mail address');
+    await renew(viewer);
+    await expect(confirmEmail(link, at)).rejects.toMatchObject({ kind: 'notFound' });
+    expect((await viewerFor(viewer.id)).email).toBe(email);
   });
 
   it('send no link to an address of another account, and do not say so', async () => {

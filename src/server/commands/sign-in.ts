@@ -19,11 +19,13 @@ const wrong = (): Refusal => new Refusal('invalid', 'That address and password d
  */
 export async function signIn(input: SigningIn, at: Date): Promise<{ readonly accountId: string; readonly secondFactor: boolean }> {
   await countTry('sign-in by address', input.clientAddress);
+  const here = `${input.clientAddress} ${input.email}`;
+  await countTry('sign-in by account and address', here);
   await countTry('sign-in by account', input.email);
   const account = await Account.findOne({ where: { email: input.email } });
   const matches = await passwordMatches(account?.passwordHash ?? null, input.password);
   if (!account || !matches || account.status === 'closed') throw wrong();
-  await forgetTries('sign-in by account', input.email);
+  await forgetTries('sign-in by account and address', here);
   const secondFactor = account.totpConfirmedAt !== null;
   if (!secondFactor) await record(account, 'signIn', 'account', account.id, at);
   return { accountId: account.id, secondFactor };

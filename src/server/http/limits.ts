@@ -6,7 +6,10 @@ import { env } from '../env.ts';
 /** How many tries, in how many seconds. Kept in PostgreSQL, so every process counts together. */
 const limits = {
   'sign-in by address': { points: 30, duration: 900 },
-  'sign-in by account': { points: 10, duration: 900 },
+  // Wrong passwords for one account from one address, and from everywhere: a stranger alone cannot keep somebody from signing in.
+  'sign-in by account and address': { points: 10, duration: 900 },
+  'sign-in by account': { points: 100, duration: 900 },
+  'own password': { points: 10, duration: 900 },
   'second factor': { points: 8, duration: 900 },
   'sign-up': { points: 20, duration: 3600 },
   'password reset': { points: 6, duration: 3600 },
