@@ -27,9 +27,10 @@ const placeText = (listing: Listing, exact: boolean): string => {
 /**
  * The booking's days as an iCalendar file: one event a day, each with a lasting UID, so that a change updates and a removed day is taken
  * out. The place is the town only until the money is held.
+ * @param reader whose calendar it is for: the only one it names, so that nobody's mail address goes to the other side; null for a moderator
  * @param gone how many further day events of an earlier plan to cancel
  */
-export function invitationFor(booking: Booking, listing: Listing, days: readonly Day[], startTime: string, parties: readonly Party[], gone: number, cancelled: boolean): Invitation {
+export function invitationFor(booking: Booking, listing: Listing, days: readonly Day[], startTime: string, reader: Party | null, gone: number, cancelled: boolean): Invitation {
   const summary = `Milling: ${listing.title ?? 'logs'}`;
   const link = bookingLink(booking);
   const exact = placeTold.has(booking.status);
@@ -50,7 +51,7 @@ export function invitationFor(booking: Booking, listing: Listing, days: readonly
       status: off ? ICalEventStatus.CANCELLED : ICalEventStatus.CONFIRMED,
       organizer: { name: 'Skidway', email: 'post@skidway.example' },
     });
-    for (const party of parties) event.createAttendee({ name: party.name, email: party.email });
+    if (reader) event.createAttendee({ name: reader.name, email: reader.email });
   });
   return { ics: calendar.toString(), summary };
 }
@@ -76,9 +77,9 @@ export async function sendInvitations(booking: Booking, before: readonly Day[], 
   if (days.length === 0) return;
   await booking.update({ invitationSequence: booking.invitationSequence + 1 });
   const parties = await partiesOf(booking);
-  const people = [parties.landowner, parties.sawyer];
-  const { ics, summary } = invitationFor(booking, listing, days, await startTimeOf(booking.id), people, Math.max(0, before.length - days.length), cancelled);
-  for (const person of people) {
+  const startTime = await startTimeOf(booking.id);
+  for (const person of [parties.landowner, parties.sawyer]) {
+    const { ics, summary } = invitationFor(booking, listing, days, startTime, person, Math.max(0, before.length - days.length), cancelled);
     await enqueue('send-mail', { ...calendarNote(person, summary, bookingLink(booking), cancelled), calendar: { method: cancelled ? 'CANCEL' : 'REQUEST', ics } });
   }
 }

@@ -17,6 +17,7 @@ import { writeReview } from '~/server/commands/write-review.ts';
 import { oneRow, rows } from '~/server/db.ts';
 import { sweepTallies } from '~/server/jobs/handlers/sweep-tallies.ts';
 import { BookedDay, Booking, DayProposal, Event, HeldPayment, Listing, Log, Review, Tally, TallyBoard, TallyQuery } from '~/server/models/index.ts';
+import { bookingCalendar } from '~/server/queries/booking-calendar.ts';
 import { bookingPage } from '~/server/queries/booking-page.ts';
 import { tallyPage } from '~/server/queries/tally-page.ts';
 import { makeCast, type Cast } from '../support/cast.ts';
@@ -163,6 +164,21 @@ describe('agreeing on a day', () => {
     const seen = await Event.count({ where: { action: 'seePlace', actorId: cast.mo.id } });
     await bookingPage(cast.mo, paid, at);
     expect(await Event.count({ where: { action: 'seePlace', actorId: cast.mo.id } })).toBe(seen + 1);
+  });
+});
+
+describe('an invitation', () => {
+  it('tells neither side the mail address of the other', async () => {
+    const number = await agreed();
+    const sent = await rows<{ to: string; ics: string }>(`SELECT data->>'to' AS to, data->'calendar'->>'ics' AS ics FROM pgboss.job WHERE name = 'send-mail' AND data->'calendar'->>'ics' LIKE '%booking-${number}-1@%'`);
+    const plain = (ics: string): string => ics.replaceAll(/\r\n[ \t]/g, '');
+    const [ada, bram] = [cast.ada.email, cast.bram.email];
+    expect(new Set(sent.map(({ to }) => to))).toEqual(new Set([ada, bram]));
+    for (const { to, ics } of sent) expect([plain(ics).includes(ada), plain(ics).includes(bram)]).toEqual([to === ada, to === bram]);
+    const own = plain(await bookingCalendar(cast.bram, number, at));
+    expect([own.includes(ada), own.includes(bram)]).toEqual([false, true]);
+    const desk = plain(await bookingCalendar(cast.mo, number, at));
+    expect([desk.includes(ada), desk.includes(bram)]).toEqual([false, false]);
   });
 });
 

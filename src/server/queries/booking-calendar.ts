@@ -2,7 +2,7 @@ import { abilities, rolesOnBooking } from '../authorize.ts';
 import { notFound } from '../errors.ts';
 import { bookedDaysOf, invitationFor, startTimeOf } from '../invitations.ts';
 import { Booking, Listing } from '../models/index.ts';
-import { partiesOf } from '../parties.ts';
+import { partyOf } from '../parties.ts';
 import { notePlaceSeen } from '../place-views.ts';
 import type { Viewer } from '../viewer.ts';
 
@@ -15,6 +15,6 @@ export async function bookingCalendar(viewer: Viewer, number: number, at: Date):
   if (days.length === 0) throw notFound('calendar entry: no day is agreed yet');
   const listing = await Listing.findByPk(booking.listingId, { rejectOnEmpty: true });
   if (can.seePlace && listing.place) await notePlaceSeen(viewer, listing, at, { booking: booking.number });
-  const parties = await partiesOf(booking);
-  return invitationFor(booking, listing, days, await startTimeOf(booking.id), [parties.landowner, parties.sawyer], 0, false).ics;
+  const reader = viewer.id === booking.landownerId || viewer.id === booking.sawyerId ? await partyOf(viewer.id) : null;
+  return invitationFor(booking, listing, days, await startTimeOf(booking.id), reader, 0, false).ics;
 }
