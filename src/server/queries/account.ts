@@ -1,6 +1,7 @@
 import { termsVersion } from '~/domain/terms.ts';
 import { oneRow, rows } from '../db.ts';
 import type { Viewer } from '../viewer.ts';
+import { knownName } from './known-name.ts';
 
 export interface AccountPage {
   readonly name: string;
@@ -23,7 +24,7 @@ export async function accountPage(viewer: Viewer): Promise<AccountPage> {
   );
   if (!account) throw new Error('the viewer has no account');
   const blocked = await rows<AccountPage['blocked'][number]>(
-    'SELECT account.id, account.name FROM account_block JOIN account ON account.id = blocked_id WHERE blocker_id = $1 ORDER BY account_block.created_at DESC LIMIT 200',
+    `SELECT account.id, ${knownName('$1')} AS name FROM account_block JOIN account ON account.id = blocked_id WHERE blocker_id = $1 ORDER BY account_block.created_at DESC LIMIT 200`,
     [viewer.id],
   );
   return { ...account, blocked };

@@ -2,6 +2,7 @@ import type { PictureView } from '~/domain/photo.ts';
 import { oneRow } from '../db.ts';
 import { Refusal } from '../errors.ts';
 import type { Viewer } from '../viewer.ts';
+import { knownName } from './known-name.ts';
 import { onePhoto, photoAudience } from './photos.ts';
 
 /** What can be reported. */
@@ -26,17 +27,17 @@ export interface Reportable {
 const uuid = /^[0-9a-f]{8}(-[0-9a-f]{4}){3}-[0-9a-f]{12}$/i;
 
 const findings: Readonly<Record<ReportableThing, string>> = {
-  listing: `SELECT listing.title, listing.owner_id AS "personId", account.name AS "personName" FROM listing JOIN account ON account.id = owner_id
+  listing: `SELECT listing.title, listing.owner_id AS "personId", ${knownName('$2')} AS "personName" FROM listing JOIN account ON account.id = owner_id
     WHERE listing.id = $1 AND listing.status <> 'draft' AND listing.hidden_at IS NULL AND owner_id IS DISTINCT FROM $2`,
-  message: `SELECT body AS title, sender_id AS "personId", account.name AS "personName" FROM message JOIN account ON account.id = sender_id
+  message: `SELECT body AS title, sender_id AS "personId", ${knownName('$2')} AS "personName" FROM message JOIN account ON account.id = sender_id
     WHERE message.id = $1 AND recipient_id = $2 AND hidden_at IS NULL`,
-  review: `SELECT stars || ' of 5' || CASE WHEN body = '' THEN '' ELSE E'\\n' || body END AS title, author_id AS "personId", account.name AS "personName"
+  review: `SELECT stars || ' of 5' || CASE WHEN body = '' THEN '' ELSE E'\\n' || body END AS title, author_id AS "personId", ${knownName('$2')} AS "personName"
     FROM review JOIN account ON account.id = author_id JOIN booking ON booking.id = booking_id
     WHERE review.id = $1 AND review.hidden_at IS NULL AND author_id <> $2
       AND ($2 IN (booking.landowner_id, booking.sawyer_id) OR EXISTS (SELECT 1 FROM sawyer_profile WHERE account_id = subject_id))`,
-  photo: `SELECT caption AS title, owner_id AS "personId", account.name AS "personName" FROM photo JOIN account ON account.id = owner_id
+  photo: `SELECT caption AS title, owner_id AS "personId", ${knownName('$2')} AS "personName" FROM photo JOIN account ON account.id = owner_id
     WHERE photo.id = $1 AND owner_id IS DISTINCT FROM $2`,
-  account: `SELECT name AS title, id AS "personId", name AS "personName" FROM account WHERE id = $1 AND status <> 'closed' AND id IS DISTINCT FROM $2`,
+  account: `SELECT ${knownName('$2')} AS title, id AS "personId", ${knownName('$2')} AS "personName" FROM account WHERE id = $1 AND status <> 'closed' AND id IS DISTINCT FROM $2`,
 };
 
 /** Whether the reader may see the photograph, which its renditions decide. */

@@ -1,4 +1,5 @@
 import { beforeAll, beforeEach, describe, expect, it } from 'vitest';
+import { blockAccount, unblockAccount } from '~/server/commands/block-account.ts';
 import { chooseBid } from '~/server/commands/choose-bid.ts';
 import { endSecondFactor } from '~/server/commands/end-second-factor.ts';
 import { handleReport } from '~/server/commands/handle-report.ts';
@@ -9,6 +10,7 @@ import { openConversation, sendMessage } from '~/server/commands/send-message.ts
 import { takeOut } from '~/server/commands/take-out.ts';
 import { execute, rows } from '~/server/db.ts';
 import { Account, Event, Listing, Message, Photo, Report, Review } from '~/server/models/index.ts';
+import { accountPage } from '~/server/queries/account.ts';
 import { conversationPage } from '~/server/queries/conversations.ts';
 import { deskReport } from '~/server/queries/desk/reports.ts';
 import { listingPage } from '~/server/queries/listing-page.ts';
@@ -16,7 +18,8 @@ import { photoAudience } from '~/server/queries/photos.ts';
 import { reportable, type ReportableThing } from '~/server/queries/report-page.ts';
 import { sawyerPage } from '~/server/queries/sawyer-page.ts';
 import { openSession, viewerOf } from '~/server/sessions.ts';
-import { makeCast, type Cast } from '../../support/cast.ts';
+import type { Viewer } from '~/server/viewer.ts';
+import { makeAccount, makeCast, type Cast, viewerFor } from '../../support/cast.ts';
 import { makeAgreedBooking } from '../../support/money-market.ts';
 import { bidOf, makeOpenListing, MARKET_AT, setUpSawyer } from '../../support/sawing-market.ts';
 
@@ -101,6 +104,22 @@ describe('reports', () => {
     await takeOut(cast.mo, { thing: 'message', id: message.id, reason: 'Asks for cash.' }, at);
     for (const reader of [cast.ada, cast.bram]) expect((await conversationPage(reader, id)).messages).toEqual([]);
     await expect(takeOut(cast.mo, { thing: 'message', id: message.id, reason: 'x' }, at)).rejects.toMatchObject({ kind: 'conflict' });
+  });
+
+  it('tell a stranger no more than the first name of whoever is not in public', async () => {
+    const olga = await viewerFor((await makeAccount({ name: 'Olga Oakley', landowner: true })).id);
+    const sid = await viewerFor((await makeAccount({ name: 'Sid Sawyer', sawyer: true })).id);
+    const listing = await makeOpenListing(olga.id);
+    const told = async (by: Viewer, thing: 'listing' | 'account', id: string): Promise<string | undefined> => (await reportable(by, thing, id))?.person?.name;
+    const blocks = async (by: Viewer): Promise<readonly string[]> => (await accountPage(by)).blocked.map(({ name }) => name);
+    expect([await told(sid, 'listing', listing.id), await told(sid, 'account', olga.id), await told(olga, 'account', sid.id)]).toEqual(['Olga', 'Olga', 'Sid Sawyer']);
+    await blockAccount(sid, olga.id, at);
+    expect(await blocks(sid)).toEqual(['Olga']);
+    await unblockAccount(sid, olga.id, at);
+    await openConversation(sid, listing.number, at);
+    expect(await told(sid, 'listing', listing.id)).toBe('Olga Oakley');
+    await blockAccount(sid, olga.id, at);
+    expect(await blocks(sid)).toEqual(['Olga Oakley']);
   });
 
   it('of a review come from those who read it; taken out, it counts no more', async () => {
