@@ -1,3 +1,4 @@
+import { request } from 'node:http';
 import { gzipSync } from 'node:zlib';
 import { expect, inject, test } from 'vitest';
 
@@ -33,6 +34,21 @@ test('the list comes as a PDF', async () => {
   expect(answer.status).toBe(200);
   expect(answer.headers.get('content-type')).toBe('application/pdf');
   expect(Buffer.from(await answer.arrayBuffer()).subarray(0, 5).toString()).toBe('%PDF-');
+});
+
+test('as many lists as a person prints come from one address, and no more', async () => {
+  const body = new URLSearchParams({ logs: 'white-oak_18__12' }).toString();
+  const { hostname, port } = new URL(origin);
+  // From another address of this machine, so that nobody else's tries are used up.
+  const ask = (): Promise<number> =>
+    new Promise((resolve, reject) => {
+      const headers = { 'content-type': 'application/x-www-form-urlencoded', 'content-length': body.length, origin, host: `${hostname}:${port}`, 'x-forwarded-for': `192.0.2.${Math.floor(Math.random() * 250)}` };
+      request({ host: '127.0.0.1', port, localAddress: '127.0.0.7', path: '/estimator/logs.pdf', method: 'POST', headers }, (answer) => resolve((answer.resume(), answer.statusCode ?? 0))).once('error', reject).end(body);
+    });
+  const answers: number[] = [];
+  for (let turn = 0; turn < 31; turn += 1) answers.push(await ask());
+  expect(new Set(answers.slice(0, 30))).toEqual(new Set([200]));
+  expect(answers[30]).toBe(429);
 });
 
 test.each([

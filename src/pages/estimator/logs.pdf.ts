@@ -2,6 +2,8 @@ import type { APIRoute } from 'astro';
 import { z } from 'zod';
 import { readLogs } from '~/domain/timber/logs-in-url.ts';
 import { logListPdf } from '~/server/documents/log-list-pdf.ts';
+import { clientAddress } from '~/server/http/client-address.ts';
+import { countTry } from '~/server/http/limits.ts';
 import { problemResponse } from '~/server/http/problem.ts';
 import { problemsOf } from '~/server/http/endpoint.ts';
 
@@ -21,6 +23,7 @@ export const POST: APIRoute = async ({ request, locals }) => {
   if (!read.success) return problemResponse(422, 'The list cannot be read.', problemsOf(read.error));
   const logs = readLogs(read.data.logs);
   if (!logs.ok) return problemResponse(422, 'The list cannot be read.', logs.problems);
+  await countTry('list on paper', clientAddress(request));
   const pdf = await logListPdf(logs.value, { halfInchRounding: read.data.half, longestScalingLengthFt: lengths[read.data.longest] }, locals.origin);
   return new Response(pdf, { headers: { 'content-type': 'application/pdf', 'content-disposition': 'inline; filename="log-estimate.pdf"', 'cache-control': 'no-store' } });
 };

@@ -21,6 +21,8 @@ const limits = {
   'map tiles': { points: 1500, duration: 300 },
   // Seconds of planning by the calculators that are for anyone.
   planning: { points: 240, duration: 600 },
+  // A list of a thousand logs on paper holds the process for a part of a second.
+  'list on paper': { points: 30, duration: 600 },
   report: { points: 20, duration: 3600 },
 } as const;
 
