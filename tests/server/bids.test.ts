@@ -11,7 +11,8 @@ import { AccountBlock } from '~/server/models/account.ts';
 import { Listing, Log } from '~/server/models/listing.ts';
 import { Bid, DayOff, Mill, RateCard, SawyerProfile } from '~/server/models/sawyer.ts';
 import type { FrozenEstimate } from '~/server/bid-work.ts';
-import { type Cast, makeCast } from '../support/cast.ts';
+import { countMore } from '~/server/http/limits.ts';
+import { type Cast, makeAccount, makeCast, viewerFor } from '../support/cast.ts';
 import { OAK_CARD } from '../support/rate-cards.ts';
 import { bidOf, makeOpenListing, MARKET_AT, setUpSawyer } from '../support/sawing-market.ts';
 
@@ -99,6 +100,20 @@ describe('a bid', () => {
     const mill = await Mill.findOne({ where: { sawyerId: cast.dora.id }, rejectOnEmpty: true });
     await expect(placeBid(cast.dora, listing.number, bidOf(mill.id), MARKET_AT)).rejects.toMatchObject({ kind: 'forbidden' });
     await AccountBlock.destroy({ where: {} });
+  });
+
+  it('is changed, or taken back and placed again, only so often: each sends the landowner a letter', async () => {
+    const sent = async (): Promise<number> => (await rows(`SELECT 1 FROM pgboss.job WHERE name = 'send-mail' AND data->>'to' = $1`, [cast.ada.email])).length;
+    const busy = await viewerFor((await makeAccount({ name: 'Busy', sawyer: true })).id);
+    const itsMill = await setUpSawyer(busy.id);
+    const id = await placeBid(busy, listing.number, bidOf(itsMill), MARKET_AT);
+    await countMore('bid on a listing', `${busy.id} ${listing.number}`, 28);
+    await changeBid(busy, id, bidOf(itsMill, { message: 'Once more.' }), MARKET_AT);
+    const before = await sent();
+    await expect(changeBid(busy, id, bidOf(itsMill, { message: 'And again.' }), MARKET_AT)).rejects.toMatchObject({ kind: 'tooMany' });
+    await withdrawBid(busy, id, MARKET_AT);
+    await expect(placeBid(busy, listing.number, bidOf(itsMill), MARKET_AT)).rejects.toMatchObject({ kind: 'tooMany' });
+    expect(await sent()).toBe(before + 1);
   });
 
   it('is withdrawn only by its bidder, and may be made again', async () => {

@@ -5,6 +5,7 @@ import { bidChanged } from '~/emails/bids.ts';
 import { authorize, rolesOnBid } from '../authorize.ts';
 import { inTransaction } from '../db.ts';
 import { invalid } from '../errors.ts';
+import { countTry } from '../http/limits.ts';
 import { enqueue } from '../jobs/queue.ts';
 import { linkTo } from '../parties.ts';
 import { Account } from '../models/account.ts';
@@ -18,7 +19,9 @@ import { lockListingAndBid } from './lock-listing-and-bid.ts';
 /** Changes a live bid: worked out anew on the logs, with the sawyer's rate card as it is now. A bid to confirm is thereby confirmed. */
 export async function changeBid(by: Viewer, bidId: string, form: BidForm, at: Date): Promise<void> {
   const seen = await Bid.findOne({ where: { id: bidId, sawyerId: by.id }, attributes: ['listingId'] });
-  const foreseen = await foresee(by.id, seen && (await Listing.findByPk(seen.listingId)), form.millId);
+  const before = seen && (await Listing.findByPk(seen.listingId));
+  if (before) await countTry('bid on a listing', `${by.id} ${before.number}`);
+  const foreseen = await foresee(by.id, before, form.millId);
   await inTransaction(async () => {
     const { bid, listing } = await lockListingAndBid(bidId);
     authorize(by, 'bid', 'change', rolesOnBid(by, bid, listing), bid.status);

@@ -7,6 +7,7 @@ import { refuseDaysOff } from '../bid-work.ts';
 import { daysOffFrom, giveDaysBack, takeDaysOff, todayOf } from '../days-off.ts';
 import { inTransaction, lockFor, rows } from '../db.ts';
 import { conflict, invalid, notFound } from '../errors.ts';
+import { countTry } from '../http/limits.ts';
 import { enqueue } from '../jobs/queue.ts';
 import { Account } from '../models/account.ts';
 import { Listing } from '../models/listing.ts';
@@ -58,6 +59,7 @@ async function moveOfferedDay(by: Viewer, listingNumber: number, { from, to }: D
   const seen = await Listing.findOne({ where: { number: listingNumber }, attributes: ['id'] });
   const own = seen && (await Bid.findOne({ where: { listingId: seen.id, sawyerId: by.id, status: ['open', 'toConfirm'] }, attributes: ['id'] }));
   if (!own) throw notFound('bid');
+  await countTry('bid on a listing', `${by.id} ${listingNumber}`);
   const { bid, listing } = await lockListingAndBid(own.id);
   authorize(by, 'bid', 'change', rolesOnBid(by, bid, listing), bid.status);
   if (bid.status === 'toConfirm') throw conflict('The listing was changed since you bid. Confirm or change that bid first.');

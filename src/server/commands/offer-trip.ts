@@ -9,6 +9,7 @@ import { readerOf } from '../bidders.ts';
 import { currentCard, refuseDaysOff } from '../bid-work.ts';
 import { inTransaction, lockFor, refusedBy } from '../db.ts';
 import { conflict, invalid, notFound } from '../errors.ts';
+import { countTry } from '../http/limits.ts';
 import { enqueue } from '../jobs/queue.ts';
 import { Booking } from '../models/booking.ts';
 import { Listing } from '../models/listing.ts';
@@ -83,6 +84,7 @@ export async function offerTrip(by: Viewer, asked: TripOffer, at: Date): Promise
   const zone = (await SawyerProfile.findByPk(by.id))?.timeZone ?? 'America/Chicago';
   const offer = { ...asked, listings: [...new Set(asked.listings)].sort((a, b) => a - b) };
   checkOffer(offer, zone, at);
+  await countTry('trip offered', by.id);
   try {
     return await inTransaction(async () => {
       await lockFor('calendar', by.id);

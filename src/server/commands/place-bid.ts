@@ -5,6 +5,7 @@ import { authorize, rolesOnListing } from '../authorize.ts';
 import { refuseBlocked } from '../blocks.ts';
 import { inTransaction, refusedBy } from '../db.ts';
 import { conflict, forbidden, invalid, notFound } from '../errors.ts';
+import { countTry } from '../http/limits.ts';
 import { enqueue } from '../jobs/queue.ts';
 import { linkTo } from '../parties.ts';
 import { Account } from '../models/account.ts';
@@ -18,9 +19,10 @@ import { bidFigures, checkBiddable, currentCard, foresee, millOf, refuseDaysOff,
 /**
  * Bids on an open listing: the estimate is worked out here, on the logs as they stand, and frozen with the mill and the rate card.
  * @returns the bid's id
- * @throws Refusal `conflict` when the listing has moved on or the sawyer has a live bid on it already.
+ * @throws Refusal `conflict` when the listing has moved on or the sawyer has a live bid on it already, `tooMany`.
  */
 export async function placeBid(by: Viewer, listingNumber: number, form: BidForm, at: Date): Promise<string> {
+  await countTry('bid on a listing', `${by.id} ${listingNumber}`);
   const foreseen = await foresee(by.id, await Listing.findOne({ where: { number: listingNumber } }), form.millId);
   try {
     return await inTransaction(async () => {

@@ -17,6 +17,9 @@ const limits = {
   'other calendar': { points: 20, duration: 3600 },
   upload: { points: 200, duration: 3600 },
   message: { points: 60, duration: 3600 },
+  // Each sends the landowner a letter: so many on one listing, so many trips.
+  'bid on a listing': { points: 30, duration: 3600 },
+  'trip offered': { points: 20, duration: 3600 },
   // A map asks for about twenty tiles each time it is moved; those that are kept do not count.
   'map tiles': { points: 1500, duration: 300 },
   // Seconds of planning by the calculators that are for anyone.
