@@ -1,6 +1,9 @@
 /** An adjustment by hand above this needs a second moderator. The database holds the same figure. */
 export const FOUR_EYES_CENTS = 50_000;
 
+/** The most that one card payment may be: eight digits of cents (the provider's published limit, from memory). A hold is one payment. */
+export const MOST_HOLD_CENTS = 99_999_999;
+
 /** Whole US cents. Negative only in the ledger. */
 export type Cents = number;
 

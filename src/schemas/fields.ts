@@ -26,7 +26,7 @@ export const text = (most: number, missing?: string) => (typed: string): Result<
 /** Dollars and cents as cents. */
 export const money = (typed: string): Result<Cents> => {
   const cents = parseCents(typed);
-  return cents === null ? refused('', typed === '' ? 'Write an amount in dollars; 0 when there is none.' : 'Write an amount in dollars, like 75 or 0.55.') : good(cents);
+  return cents === null ? refused('', typed === '' ? 'Write an amount in dollars; 0 when there is none.' : 'Write an amount in dollars, like 75 or 0.55; at most $1,000,000.') : good(cents);
 };
 
 /** An amount where empty means 0. */

@@ -1,4 +1,5 @@
 import { Op } from 'sequelize';
+import { formatCents, MOST_HOLD_CENTS } from '~/domain/money.ts';
 import { roadMiles } from '~/domain/trade/road-miles.ts';
 import { type BidEstimate, type BidMill, estimateBid, type ExpectedLumber, type ListedLog, lumberByPlan, withOwnFigure } from '~/domain/trade/bid-estimate.ts';
 import { FIRST_YIELD } from '~/domain/sawing/expected.ts';
@@ -105,7 +106,10 @@ export async function estimateOn(listing: Listing, mill: BidMill, terms: BidTerm
   const logs = await listedLogs(listing.id);
   const worked = stillOf(foreseen, listing, mill);
   const lumber = ownBf === null ? worked : withOwnFigure(worked, ownBf);
-  return { terms, options, estimate: estimateBid({ logs, mill, terms, options, lumber }) };
+  const estimate = estimateBid({ logs, mill, terms, options, lumber });
+  const { holdCents } = estimate.quote;
+  if (holdCents > MOST_HOLD_CENTS) throw invalid([{ path: '', message: `The hold comes to ${formatCents(holdCents)}, more than the ${formatCents(MOST_HOLD_CENTS)} that a card can pay. Look at your rates.` }]);
+  return { terms, options, estimate };
 }
 
 /** The columns of a bid that follow from its estimate. */

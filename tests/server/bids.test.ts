@@ -59,6 +59,13 @@ describe('a bid', () => {
     await placeBid(cast.bram, listing.number, bidOf(bramsMill), MARKET_AT);
   });
 
+  it('is refused when no card could pay its hold', async () => {
+    await saveRateCard(cast.bram, { ...OAK_CARD, setUpPerLanding: 99_999_000 }, MARKET_AT);
+    await expect(placeBid(cast.bram, listing.number, bidOf(bramsMill), MARKET_AT)).rejects.toMatchObject({ kind: 'invalid', problems: [{ path: '', message: expect.stringMatching(/more than the \$999,999\.99 that a card can pay/) }] });
+    await saveRateCard(cast.bram, OAK_CARD, MARKET_AT);
+    await placeBid(cast.bram, listing.number, bidOf(bramsMill), MARKET_AT);
+  });
+
   it('stands though the rate card changes afterwards', async () => {
     const id = await placeBid(cast.bram, listing.number, bidOf(bramsMill), MARKET_AT);
     await saveRateCard(cast.bram, { ...OAK_CARD, setUpPerLanding: 20_000 }, MARKET_AT);

@@ -24,7 +24,7 @@ describe('the rate card form', () => {
   it('names every field that is wrong at once', () => {
     expect(problems(rateCardForm.safeParse({ ...rateCardTyped(OAK_CARD), priceWith: 'cheap', freeMiles: '3.5', basis: '' }))).toEqual({
       basis: 'Choose what you charge by.',
-      priceWith: 'Write an amount in dollars, like 75 or 0.55.',
+      priceWith: 'Write an amount in dollars, like 75 or 0.55; at most $1,000,000.',
       freeMiles: 'Write a whole number.',
     });
   });
