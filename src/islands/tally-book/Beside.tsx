@@ -28,7 +28,7 @@ function readHours(day: string, from: string, to: string, others: readonly { rea
 }
 
 /** The line that opens one of the book's further parts. */
-export const summaryClass = 'flex min-h-glove cursor-pointer items-center border-t border-rule text-lg font-bold text-crayon';
+export const summaryClass = 'flex min-h-glove cursor-pointer items-center border-t border-rule py-2 text-lg leading-snug font-bold text-crayon';
 
 /** Blades that metal has cost: each a tap, each taken back with another, each with a photograph of what was hit. */
 export function MetalHits({ view, logId, add, photographs }: BesideProps & { readonly photographs: Photographs }): ReactElement {

@@ -12,7 +12,7 @@ import { useCutSheet } from '~/islands/day/cut-sheets.ts';
 import { SavedBadge, SendingTrouble } from '~/islands/day/SavedLine.tsx';
 import { CullLogs, Extras, Hours, MetalHits } from './Beside.tsx';
 import { CutSheet } from './CutSheet.tsx';
-import { bySize, countView, oneBoard, stillWanted } from './count.ts';
+import { boardEntry, bySize, countView, oneBoard, stillWanted } from './count.ts';
 import { Pad, readInches } from './Pad.tsx';
 import { BoardPhotographs, usePhotographs } from './Photographs.tsx';
 import { RainStop } from './RainStop.tsx';
@@ -69,7 +69,7 @@ export function TallyPad({ queue }: { readonly queue: TallyQueue }): ReactElemen
   const count = Math.max(1, Math.min(500, Math.floor(Number(several) || 1)));
 
   const addBoards = (size: { thicknessIn: number; widthIn: number; lengthFt: number }, howMany: number): void => {
-    add({ kind: 'board', id: crypto.randomUUID(), logId: log?.id ?? null, boardKind: kind, ...size, secondWidthIn: kind === 'slab' ? secondWidthIn : null, count: howMany } satisfies TallyEntry);
+    add(boardEntry(size, { logId: log?.id ?? null, kind, secondWidthIn, count: howMany }));
     setSeveral('1');
   };
   const goTo = (index: number): void => {
@@ -125,9 +125,9 @@ export function TallyPad({ queue }: { readonly queue: TallyQueue }): ReactElemen
         {kind === 'slab' && <Pad label="The other face at mid-length, in" values={[6, 8, 10, 12, 16]} chosen={secondWidthIn} name={formatFraction} onChoose={setSecondWidth} read={readInches(60)} />}
         <Pad label="Length, ft" values={lengths} chosen={lengthFt} name={formatFraction} onChoose={setLength} read={readFeet} />
 
-        <button type="button" className="mt-4 min-h-[72px] w-full rounded bg-crayon px-4 text-xl font-bold text-paper hover:bg-ink" onClick={() => addBoards({ thicknessIn, widthIn, lengthFt }, count)}>
-          Add {count > 1 ? `${count} ` : ''}{kind === 'board' ? (count > 1 ? 'boards' : 'board') : kind === 'slab' ? 'slab' : 'out of size'}
-          {kind === 'board' && <span className="figure"> · {next.surfaceMeasure !== null && `SM ${next.surfaceMeasure} · `}{Number(next.boardFeet.toFixed(2))} bf</span>}
+        <button type="button" className="mt-4 flex min-h-[72px] w-full flex-wrap items-center justify-center gap-x-3 rounded bg-crayon px-4 py-2 text-xl font-bold leading-tight text-paper hover:bg-ink" onClick={() => addBoards({ thicknessIn, widthIn, lengthFt }, count)}>
+          <span>Add {count > 1 ? `${count} ` : ''}{kind === 'board' ? (count > 1 ? 'boards' : 'board') : kind === 'slab' ? 'slab' : 'out of size'}</span>
+          {kind === 'board' && <span className="figure">{next.surfaceMeasure !== null && `SM ${next.surfaceMeasure} · `}{Number(next.boardFeet.toFixed(2))} bf</span>}
         </button>
         <div className="mt-2 flex flex-wrap items-center justify-between gap-x-4">
           <button type="button" className={join(buttonKinds.quiet, 'min-h-glove')} disabled={!lastBoard} onClick={() => lastBoard && add({ kind: 'remove', id: lastBoard.id })}>Undo last</button>
@@ -163,7 +163,7 @@ function SizeTable({ view, add }: { readonly view: TallyView; readonly add: (...
   };
   if (rows.length === 0) return <p className="mt-4 text-ink-soft">No boards yet. Choose a size and add the first.</p>;
   return (
-    <table className="ruled mt-4 w-full">
+    <div className="sizes mt-4"><table className="ruled w-full">
       <caption className="sr-only">Boards so far by size</caption>
       <thead><tr><th scope="col">Size</th><th scope="col" className="num">Boards</th><th scope="col" className="num">bf</th><th scope="col"><span className="sr-only">Correct</span></th></tr></thead>
       <tbody>
@@ -176,6 +176,6 @@ function SizeTable({ view, add }: { readonly view: TallyView; readonly add: (...
           </tr>
         ))}
       </tbody>
-    </table>
+    </table></div>
   );
 }

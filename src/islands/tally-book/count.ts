@@ -4,6 +4,7 @@ import { jobOf, limitOf } from '~/domain/trade/day-job.ts';
 import { leftOf } from '~/domain/trade/still-wanted.ts';
 import { countBoards, countTally, tallyRuleOf } from '~/domain/trade/tally-count.ts';
 import { tallyBoards } from '~/domain/timber/tally.ts';
+import type { TallyEntry } from '~/schemas/tally-entries.ts';
 import type { TallyBoardView, TallyView } from '~/schemas/tally-view.ts';
 
 /** The tally so far, counted on the phone by the same rules that settle it. */
@@ -63,4 +64,16 @@ export function oneBoard(view: TallyView, thicknessIn: number, widthIn: number, 
 /** How many of each wanted piece are still to be sawn. */
 export function stillWanted(view: TallyView): { readonly label: string; readonly thicknessIn: number; readonly widthIn: number; readonly lengthFt: number; readonly left: number }[] {
   return view.cutList.map((piece) => ({ label: piece.label, thicknessIn: piece.thicknessIn, widthIn: piece.widthIn, lengthFt: piece.lengthFt, left: leftOf(piece, view.boards) }));
+}
+
+/** A size to be entered: inches and feet. What else comes with it (a wanted piece has a label and how many are left) is no part of an entry. */
+interface EnteredSize {
+  readonly thicknessIn: number;
+  readonly widthIn: number;
+  readonly lengthFt: number;
+}
+
+/** The entry of boards of one size, with an id of its own. Only a slab has a second width, in inches. */
+export function boardEntry({ thicknessIn, widthIn, lengthFt }: EnteredSize, of: { readonly logId: string | null; readonly kind: TallyBoardView['kind']; readonly secondWidthIn: number; readonly count: number }): TallyEntry {
+  return { kind: 'board', id: crypto.randomUUID(), logId: of.logId, boardKind: of.kind, thicknessIn, widthIn, lengthFt, secondWidthIn: of.kind === 'slab' ? of.secondWidthIn : null, count: of.count };
 }
