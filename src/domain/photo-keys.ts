@@ -2,7 +2,8 @@ import { renditionSizes, renditionTypes, type RenditionFormat, type RenditionSiz
 
 /** Where a photograph's files lie in storage. Originals are never served; renditions are passed on by our own address. */
 
-export const originalKey = (listingId: string, photoId: string): string => `originals/${listingId}/${photoId}`;
+/** @param ofId the listing it belongs to, or the sawyer */
+export const originalKey = (ofId: string, photoId: string): string => `originals/${ofId}/${photoId}`;
 
 export const renditionKey = (photoId: string, size: RenditionSize, format: RenditionFormat): string => `renditions/${photoId}/${size}.${format}`;
 

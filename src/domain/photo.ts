@@ -6,6 +6,8 @@ export const largestPhotoBytes = 25 * 1024 * 1024;
 export const mostPhotoPixels = 60_000_000;
 /** Photographs of one listing. */
 export const mostPhotos = 40;
+/** Photographs that a sawyer shows of their own work. */
+export const mostWorkPhotos = 24;
 /** Photographs of one milling day. */
 export const mostDayPhotos = 60;
 export const longestCaption = 200;
@@ -84,7 +86,7 @@ export function pictureView(photo: { readonly id: string; readonly width: number
 
 export type PhotoStatus = 'awaiting' | 'checking' | 'ready' | 'refused';
 
-/** A photograph of a listing as its owner sees it. `picture` is there once it is ready. */
+/** A photograph of a listing, or of a sawyer's work, as its owner sees it. `picture` is there once it is ready. */
 export interface PhotoView {
   readonly id: string;
   readonly status: PhotoStatus;
@@ -98,3 +100,6 @@ export interface PhotoView {
 
 /** What a picture shows, in words: its caption, else the log it belongs to, else that it shows the logs. */
 export const photoAlt = (caption: string, logLabel: string | null): string => caption.trim() || (logLabel ? `Photograph of ${logLabel}` : 'Photograph of the logs');
+
+/** What a picture of a sawyer's own work shows, in words: its caption, else whose work it is. */
+export const workAlt = (caption: string, sawyerName: string | null): string => caption.trim() || (sawyerName ? `Work by ${sawyerName}` : 'Photograph of your work');

@@ -6,7 +6,7 @@ import { estimateAnswer, estimateRequest } from './estimate.ts';
 import { draftAnswer, draftRequest } from './listing-draft.ts';
 import { listingsAnswer, listingsQuery } from './listings.ts';
 import { placeAnswer, placeQuery } from './place.ts';
-import { beginPhotoAnswerSchema, beginPhotoSchema, changePhotoSchema, listPhotosSchema, orderPhotosSchema, photosAnswerSchema, photoViewSchema } from './photo.ts';
+import { beginPhotoAnswerSchema, beginPhotoSchema, beginWorkPhotoSchema, changePhotoSchema, listPhotosSchema, orderPhotosSchema, orderWorkPhotosSchema, photosAnswerSchema, photoViewSchema } from './photo.ts';
 import { tileQuery } from './tiles.ts';
 import { speciesAnswer } from './species.ts';
 import { quotingPracticeAnswer, quotingPracticeQuery } from './quoting-practice.ts';
@@ -48,8 +48,11 @@ export const operations: readonly Operation[] = [
   { method: 'post', path: '/api/photos', summary: 'Begin an upload: a photograph and the form to send its file with', signedIn: true, body: beginPhotoSchema, answer: beginPhotoAnswerSchema },
   { method: 'put', path: '/api/photos/order', summary: "Put a listing's photographs in order", signedIn: true, body: orderPhotosSchema, answer: photosAnswerSchema },
   { method: 'patch', path: '/api/photos/{id}', summary: "Change a photograph's caption or which log it shows", signedIn: true, body: changePhotoSchema, answer: photoViewSchema },
-  { method: 'delete', path: '/api/photos/{id}', summary: 'Take a photograph off its listing', signedIn: true },
+  { method: 'delete', path: '/api/photos/{id}', summary: "Take a photograph off its listing, its day or the sawyer's page", signedIn: true },
   { method: 'post', path: '/api/photos/{id}/arrived', summary: 'Say that the file is in storage; it is checked next', signedIn: true, answer: photoViewSchema },
+  { method: 'get', path: '/api/work-photos', summary: "A sawyer's photographs of their own work, unfinished and refused ones included", signedIn: true, answer: photosAnswerSchema },
+  { method: 'post', path: '/api/work-photos', summary: "Begin the upload of a photograph of one's own work for one's own page", signedIn: true, body: beginWorkPhotoSchema, answer: beginPhotoAnswerSchema },
+  { method: 'put', path: '/api/work-photos/order', summary: "Put the photographs of one's own work in order", signedIn: true, body: orderWorkPhotosSchema, answer: photosAnswerSchema },
   { method: 'post', path: '/api/webhooks/payments', summary: "The payment provider's signed messages" },
   { method: 'get', path: '/api/day', summary: 'The bookings to come with all that a phone keeps of them for the milling day', signedIn: true },
   { method: 'get', path: '/api/bookings/{number}/tally', summary: 'The tally of a booking, for its two sides', signedIn: true },

@@ -1,5 +1,5 @@
 import { z } from 'zod';
-import { largestPhotoBytes, longestCaption, mostPhotos } from '~/domain/photo.ts';
+import { largestPhotoBytes, longestCaption, mostPhotos, mostWorkPhotos } from '~/domain/photo.ts';
 
 const id = z.uuid('This is not the id of anything here.');
 const caption = z.string().trim().max(longestCaption, `A caption has at most ${longestCaption} letters.`);
@@ -15,6 +15,10 @@ export const beginPhotoSchema = z.strictObject({
 });
 export type BeginPhoto = z.infer<typeof beginPhotoSchema>;
 
+/** `POST /api/work-photos`: begins the upload of a photograph of one's own work. */
+export const beginWorkPhotoSchema = beginPhotoSchema.omit({ listingId: true, logId: true });
+export type BeginWorkPhoto = z.infer<typeof beginWorkPhotoSchema>;
+
 /** `PATCH /api/photos/{id}`. What is left out stays. */
 export const changePhotoSchema = z.strictObject({ caption: caption.optional(), logId: id.nullable().optional() });
 export type ChangePhoto = z.infer<typeof changePhotoSchema>;
@@ -22,6 +26,10 @@ export type ChangePhoto = z.infer<typeof changePhotoSchema>;
 /** `PUT /api/photos/order`: every photograph of the listing, first to last. */
 export const orderPhotosSchema = z.strictObject({ listingId: id, ids: z.array(id).max(mostPhotos * 2) });
 export type OrderPhotos = z.infer<typeof orderPhotosSchema>;
+
+/** `PUT /api/work-photos/order`: every photograph of one's own work, first to last. */
+export const orderWorkPhotosSchema = z.strictObject({ ids: z.array(id).max(mostWorkPhotos * 2) });
+export type OrderWorkPhotos = z.infer<typeof orderWorkPhotosSchema>;
 
 /** `GET /api/photos` */
 export const listPhotosSchema = z.strictObject({ listingId: id });

@@ -143,6 +143,8 @@ export const routes: Readonly<Record<string, Route>> = {
   'api/photos/order.ts': { path: at('/api/photos/order'), PUT: API_POST },
   'api/photos/[id]/index.ts': { path: at(`/api/photos/${nobody}`), PATCH: '401 404 404 404 404 404 404', DELETE: '401 404 404 404 404 404 404' },
   'api/photos/[id]/arrived.ts': { path: at(`/api/photos/${nobody}/arrived`), POST: '401 404 404 404 404 404 404' },
+  'api/work-photos/index.ts': { path: at('/api/work-photos'), GET: '401 403 403 200 200 403 403', POST: API_POST },
+  'api/work-photos/order.ts': { path: at('/api/work-photos/order'), PUT: API_POST },
 
   // The rest of the interface for programs.
   'api/species.ts': { path: at('/api/species'), GET: ALL },

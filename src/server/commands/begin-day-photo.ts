@@ -1,15 +1,15 @@
-import { largestPhotoBytes, mostDayPhotos, photoProblem, photoType, type PhotoView } from '~/domain/photo.ts';
+import { largestPhotoBytes, mostDayPhotos, type PhotoView } from '~/domain/photo.ts';
 import { originalKey } from '~/domain/photo-keys.ts';
 import type { BeginDayPhoto } from '~/schemas/day-photo.ts';
 import { authorize, rolesOnBooking } from '../authorize.ts';
 import { inTransaction } from '../db.ts';
-import { conflict, invalid, notFound } from '../errors.ts';
-import { countTry } from '../http/limits.ts';
+import { conflict, notFound } from '../errors.ts';
 import { lockBooking } from '../locks.ts';
 import { type Booking, MetalHit, Photo, Tally } from '../models/index.ts';
 import { onePhoto } from '../queries/photos.ts';
 import { uploadForm, type UploadForm } from '../services/storage.ts';
 import type { Viewer } from '../viewer.ts';
+import { checkFile } from './begin-photo-upload.ts';
 
 /** The hit of this booking that a photograph names; null when it was taken back or never sent. */
 async function hitOf(booking: Booking, hitId: string | null): Promise<string | null> {
@@ -25,10 +25,7 @@ async function hitOf(booking: Booking, hitId: string | null): Promise<string | n
  * @throws Refusal `forbidden` for others than the two sides, `conflict` when the booking has as many as it may have
  */
 export async function beginDayPhoto(by: Viewer, number: number, input: BeginDayPhoto, at: Date): Promise<{ readonly photo: PhotoView; readonly upload: UploadForm | null }> {
-  const problem = photoProblem(input.fileName, input.type, input.bytes);
-  const type = photoType(input.fileName, input.type);
-  if (problem !== null || type === null) throw invalid([{ path: 'file', message: problem ?? 'This is not a picture.' }], problem ?? undefined);
-  await countTry('upload', by.id);
+  const type = await checkFile(by, input);
   const photo = await inTransaction(async () => {
     const booking = await lockBooking(number);
     authorize(by, 'booking', 'addDayPhoto', rolesOnBooking(by, booking), booking.status);

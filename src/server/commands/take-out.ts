@@ -32,8 +32,8 @@ const found: Readonly<Record<TakenOutAlone, (id: string) => Promise<{ readonly o
 };
 
 /**
- * Takes a message out of its conversation, a review off the pages and out of the mean of the stars, or a photograph off its listing or
- * day. Whoever wrote or took it is told why; the words of a message or review are kept for the record, the files of a photograph are
+ * Takes a message out of its conversation, a review off the pages and out of the mean of the stars, or a photograph off its listing,
+ * its day or a sawyer's page. Whoever wrote or took it is told why; the words of a message or review are kept for the record, the files of a photograph are
  * deleted by the sweep.
  * @throws Refusal `forbidden` for all but moderators, `notFound`, `conflict` when it is out already
  */

@@ -86,7 +86,10 @@ export type Piece = Row<typeof Piece>;
 
 export const Photo = table('photo', {
   id: id(),
-  listingId: ref(),
+  /** Null on a photograph of a sawyer's own work, which has `sawyerId` instead. */
+  listingId: nullable(ref()),
+  /** Set on what a sawyer shows of their own work, on their own page: the owner. */
+  sawyerId: nullable(ref()),
   ownerId: ref(),
   logId: nullable(ref()),
   /** Set on a photograph of the milling day, which is the booking's and not the listing's. */

@@ -12,7 +12,7 @@ const parts: Readonly<Record<string, string>> = {
     ST_Y(place::geometry) AS lat, ST_X(place::geometry) AS lng, access, landing, waste, metal_risk, metal_note, note, closes_at, saw_by, created_at, published_at FROM listing WHERE owner_id = $1`,
   logs: 'SELECT listing.number AS listing, log.position, log.label, log.species, small_end_in, large_end_in, length_ft, heart_defect_in, defects, log.note FROM log JOIN listing ON listing.id = listing_id WHERE owner_id = $1',
   cutList: 'SELECT listing.number AS listing, piece.position, label, thickness_in, width_in, length_ft, count, sizing, kind, for_dwelling FROM piece JOIN listing ON listing.id = listing_id WHERE owner_id = $1',
-  photographs: 'SELECT photo.id, listing.number AS listing, caption, file_name, photo.status, width, height, photo.created_at, removed_at FROM photo JOIN listing ON listing.id = listing_id WHERE photo.owner_id = $1',
+  photographs: 'SELECT photo.id, listing.number AS listing, photo.sawyer_id IS NOT NULL AS of_own_work, photo.position, caption, file_name, photo.status, width, height, photo.created_at, removed_at FROM photo LEFT JOIN listing ON listing.id = listing_id WHERE photo.owner_id = $1',
   sawyerProfile: `SELECT business_name, about, zip, town, state, time_zone, ST_Y(base::geometry) AS base_lat, ST_X(base::geometry) AS base_lng, travel_miles, services, languages,
     lumber_credential, working_days, notice_days, payout_account, payouts_ready FROM sawyer_profile WHERE account_id = $1`,
   certificates: 'SELECT kind, sent_at, says_until, seen_at, expires_on FROM certificate WHERE sawyer_id = $1',

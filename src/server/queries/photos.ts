@@ -1,12 +1,13 @@
-import { photoAlt, pictureView, type PhotoStatus, type PhotoView, type PictureView } from '~/domain/photo.ts';
+import { photoAlt, pictureView, workAlt, type PhotoStatus, type PhotoView, type PictureView } from '~/domain/photo.ts';
 import { may } from '~/domain/permissions.ts';
 import type { ListingState } from '~/domain/states/listing.ts';
 import { speciesOf } from '~/domain/timber/species.ts';
-import { rolesOnListing } from '../authorize.ts';
+import { authorize, rolesOnListing } from '../authorize.ts';
 import { oneRow, rows } from '../db.ts';
 import { notFound } from '../errors.ts';
 import { Listing, Log } from '../models/index.ts';
-import type { Viewer } from '../viewer.ts';
+import { baseRoles, type Viewer } from '../viewer.ts';
+import { publicSawyerConditions } from './sawyers-near.ts';
 
 interface PhotoRow {
   id: string;
@@ -16,6 +17,7 @@ interface PhotoRow {
   caption: string;
   logId: string | null;
   logLabel: string | null;
+  isWork: boolean;
   width: number | null;
   height: number | null;
   blur: string | null;
@@ -23,11 +25,11 @@ interface PhotoRow {
 
 const columns = `photo.id, photo.status, photo.refused_because AS "refusedBecause", photo.file_name AS "fileName", photo.caption,
   photo.log_id AS "logId", CASE WHEN log.label = '' THEN 'log ' || log.position ELSE log.label END AS "logLabel",
-  photo.width, photo.height, photo.blur`;
+  photo.sawyer_id IS NOT NULL AS "isWork", photo.width, photo.height, photo.blur`;
 
 function picture(row: PhotoRow): PictureView | null {
   if (row.status !== 'ready' || row.width === null || row.height === null) return null;
-  return pictureView({ id: row.id, width: row.width, height: row.height, blur: row.blur ?? '' }, photoAlt(row.caption, row.logLabel));
+  return pictureView({ id: row.id, width: row.width, height: row.height, blur: row.blur ?? '' }, row.isWork ? workAlt(row.caption, null) : photoAlt(row.caption, row.logLabel));
 }
 
 const view = (row: PhotoRow): PhotoView => ({
@@ -48,6 +50,34 @@ export async function allPhotos(listingId: string): Promise<PhotoView[]> {
     [listingId],
   );
   return found.map(view);
+}
+
+/** Every photograph of a sawyer's own work in its order, unfinished and refused ones included. Leans on `photo_of_sawyer`. */
+export async function workPhotos(sawyerId: string): Promise<PhotoView[]> {
+  const found = await rows<PhotoRow>(
+    `SELECT ${columns} FROM photo LEFT JOIN log ON log.id = photo.log_id WHERE photo.sawyer_id = $1 AND photo.removed_at IS NULL ORDER BY photo.position, photo.created_at, photo.id`,
+    [sawyerId],
+  );
+  return found.map(view);
+}
+
+/** A photograph of a sawyer's own work as readers of the sawyer's page see it. */
+export interface OwnWork {
+  readonly id: string;
+  readonly caption: string;
+  readonly picture: PictureView;
+}
+
+/** What a sawyer shows of their own work, in order. Whether their page may be read is decided by the caller. */
+export async function shownWork(sawyerId: string, sawyerName: string): Promise<OwnWork[]> {
+  const ready = (await workPhotos(sawyerId)).flatMap(({ id, caption, picture: shown }) => (shown ? [{ id, caption, picture: shown }] : []));
+  return ready.map((photo, index) => ({ ...photo, picture: { ...photo.picture, alt: workAlt(photo.caption, `${sawyerName}, photograph ${index + 1}`) } }));
+}
+
+/** A sawyer's own photographs of work, for their board. @throws Refusal `forbidden` when the viewer is no sawyer */
+export async function ownWorkPhotos(viewer: Viewer): Promise<PhotoView[]> {
+  authorize(viewer, 'sawyer', 'keepProfile', baseRoles(viewer));
+  return workPhotos(viewer.id);
 }
 
 /** One photograph, whoever asks: for a command's answer. */
@@ -96,7 +126,8 @@ export async function photosForOwner(viewer: Viewer, listingId: string): Promise
 
 /** What the board of photographs is given. */
 export interface PhotoEditor {
-  readonly listingId: string;
+  /** Null for the board of one's own work. */
+  readonly listingId: string | null;
   readonly logs: readonly { readonly id: string; readonly label: string }[];
   readonly photos: readonly PhotoView[];
 }
@@ -117,10 +148,18 @@ export async function photoEditor(viewer: Viewer | null, number: number): Promis
  * Whether the viewer may see a photograph's renditions now, and whether everyone may keep them: then any cache may, for a while.
  * They are seen by whoever may read the listing's page: everyone once it is published and while it is not hidden, its owner
  * always, moderators except for drafts. A photograph of the milling day is for the two sides of its booking and moderators,
- * and for everyone on a job's page that both sides have agreed to.
+ * and for everyone on a job's page that both sides have agreed to. One of a sawyer's own work is seen by everyone while the
+ * sawyer's page is, and by that sawyer and moderators always.
  * @throws Refusal `notFound`, the same for what does not exist and what is not theirs to see.
  */
 export async function photoAudience(viewer: Viewer | null, photoId: string): Promise<'everyone' | 'viewer'> {
+  const work = await oneRow<{ ownerId: string; isShown: boolean }>(
+    `SELECT photo.owner_id AS "ownerId", EXISTS (SELECT 1 FROM sawyer_profile s JOIN account a ON a.id = s.account_id WHERE s.account_id = photo.sawyer_id AND ${publicSawyerConditions}) AS "isShown"
+     FROM photo WHERE photo.id = $1 AND photo.sawyer_id IS NOT NULL AND photo.status = 'ready' AND photo.removed_at IS NULL`,
+    [photoId],
+  );
+  if (work?.isShown) return 'everyone';
+  if (work && viewer && (viewer.id === work.ownerId || (viewer.active && viewer.isModerator))) return 'viewer';
   const found = await oneRow<{ ownerId: string; status: ListingState; isHidden: boolean; sides: string[] | null; onJobPage: boolean }>(
     `SELECT listing.owner_id AS "ownerId", listing.status, listing.hidden_at IS NOT NULL AS "isHidden",
        CASE WHEN booking.id IS NOT NULL THEN ARRAY[booking.landowner_id, booking.sawyer_id]::text[] END AS sides,

@@ -81,7 +81,7 @@ const mostHistory = 300;
 const things: Readonly<Record<'listing' | 'booking' | 'account', string>> = {
   listing: `(e.thing = 'listing' AND e.thing_id = $1) OR (e.thing = 'bid' AND e.thing_id IN (SELECT id FROM bid WHERE listing_id = $1)) OR (e.thing = 'photo' AND e.thing_id IN (SELECT id FROM photo WHERE listing_id = $1))`,
   booking: `(e.thing = 'booking' AND e.thing_id = $1) OR (e.thing = 'heldPayment' AND e.thing_id IN (SELECT id FROM held_payment WHERE booking_id = $1)) OR (e.thing = 'bid' AND e.thing_id IN (SELECT bid_id FROM booking WHERE id = $1))`,
-  account: `e.thing = 'account' AND e.thing_id = $1`,
+  account: `(e.thing = 'account' AND e.thing_id = $1) OR (e.thing = 'photo' AND e.thing_id IN (SELECT id FROM photo WHERE sawyer_id = $1))`,
 };
 
 /** Everything that happened to one thing, newest first (at most 300 lines). Leans on event_of_thing. */

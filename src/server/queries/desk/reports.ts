@@ -31,7 +31,7 @@ const select = `SELECT r.id, r.thing, r.thing_id AS "thingId", r.reason, r.note,
   FROM report r LEFT JOIN account reporter ON reporter.id = r.reporter_id LEFT JOIN account handler ON handler.id = r.handled_by
   LEFT JOIN photo p ON r.thing = 'photo' AND p.id = r.thing_id
   LEFT JOIN review v ON r.thing = 'review' AND v.id = r.thing_id
-  LEFT JOIN listing l ON r.thing IN ('listing', 'photo') AND l.id = coalesce(p.listing_id, r.thing_id)
+  LEFT JOIN listing l ON r.thing IN ('listing', 'photo') AND l.id = CASE r.thing WHEN 'photo' THEN p.listing_id ELSE r.thing_id END
   LEFT JOIN message m ON r.thing = 'message' AND m.id = r.thing_id
   LEFT JOIN account person ON person.id = CASE r.thing WHEN 'listing' THEN l.owner_id WHEN 'photo' THEN p.owner_id WHEN 'message' THEN m.sender_id WHEN 'review' THEN v.author_id WHEN 'account' THEN r.thing_id END`;
 
