@@ -1,13 +1,13 @@
 import { useRef, type ReactElement } from 'react';
 import { useDropzone } from 'react-dropzone';
 import { buttonKinds, join } from '~/components/classes.ts';
-import { largestPhotoBytes, mostPhotos, photoTypes } from '~/domain/photo.ts';
+import { largestPhotoBytes, photoTypes } from '~/domain/photo.ts';
 
 const endings = Object.values(photoTypes).flat().map((ending) => `.${ending}`);
 const accepted = [...Object.keys(photoTypes), ...endings].join(',');
 
 /** Where pictures are dropped or chosen. It takes whatever comes: each file that cannot be used says why in its own row. */
-export function DropArea({ room, onFiles }: { readonly room: number; readonly onFiles: (files: readonly File[], leftOut: number) => void }): ReactElement {
+export function DropArea({ room, full, onFiles }: { readonly room: number; /** Why there is no room, in words that begin small. */ readonly full: string; readonly onFiles: (files: readonly File[], leftOut: number) => void }): ReactElement {
   const camera = useRef<HTMLInputElement>(null);
   const take = (files: readonly File[]): void => {
     if (files.length > 0) onFiles(files.slice(0, room), Math.max(0, files.length - room));
@@ -33,7 +33,7 @@ export function DropArea({ room, onFiles }: { readonly room: number; readonly on
             <span className="[@media(pointer:coarse)]:hidden">or drop them here</span>
           </div>
         )
-        : <p className="font-semibold">A listing has at most {mostPhotos} photographs. Remove one to add another.</p>}
+        : <p className="font-semibold">{full.charAt(0).toUpperCase() + full.slice(1)}. Remove one to add another.</p>}
       <p className="mt-3 text-sm text-ink-soft">JPEG, PNG, WebP, AVIF or HEIC, up to {largestPhotoBytes / 1024 ** 2} MB each.{room > 0 && room < 10 ? ` Room for ${room} more.` : ''}</p>
     </div>
   );

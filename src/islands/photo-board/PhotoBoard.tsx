@@ -1,25 +1,28 @@
-import { useRef, useState, type ReactElement } from 'react';
-import { mostPhotos, type PhotoView } from '~/domain/photo.ts';
+import { useMemo, useRef, useState, type ReactElement } from 'react';
+import type { PhotoView } from '~/domain/photo.ts';
+import { albumOf } from './album.ts';
 import { DropArea } from './DropArea.tsx';
 import { PhotoRow } from './PhotoRow.tsx';
 import { usePhotos } from './use-photos.ts';
 
 export interface PhotoBoardProps {
-  readonly listingId: string;
+  /** Null for the board of the reader's own work. */
+  readonly listingId: string | null;
   /** The listing's logs, for saying which one a photograph shows. */
   readonly logs: readonly { readonly id: string; readonly label: string }[];
   readonly photos: readonly PhotoView[];
 }
 
-/** Adds, arranges and describes the photographs of a listing. Everything is kept at once; there is nothing to save. */
+/** Adds, arranges and describes the photographs of a listing, or of a sawyer's own work. Everything is kept at once; there is nothing to save. */
 export function PhotoBoard({ listingId, logs, photos: given }: PhotoBoardProps): ReactElement {
-  const photos = usePhotos(listingId, given);
+  const album = useMemo(() => albumOf(listingId), [listingId]);
+  const photos = usePhotos(album, given);
   const [said, say] = useState('');
   const [leftOut, setLeftOut] = useState(0);
   const [dragged, setDragged] = useState<string | null>(null);
   const list = useRef<HTMLOListElement>(null);
   const { items } = photos;
-  const room = mostPhotos - items.filter(({ stage }) => stage !== 'refused').length;
+  const room = album.most - items.filter(({ stage }) => stage !== 'refused').length;
 
   const moveBy = (from: number, by: -1 | 1): void => {
     const to = from + by;
@@ -43,16 +46,16 @@ export function PhotoBoard({ listingId, logs, photos: given }: PhotoBoardProps):
 
   return (
     <div className="max-w-[52rem]">
-      <DropArea room={room} onFiles={(files, left) => {
+      <DropArea room={room} full={album.full} onFiles={(files, left) => {
         photos.add(files);
         setLeftOut(left);
         say(files.length === 1 ? '1 picture added.' : `${files.length} pictures added.`);
       }} />
-      {leftOut > 0 && <p className="mt-3 border-l-4 border-amber pl-2 font-semibold" role="alert">{leftOut === 1 ? '1 picture was' : `${leftOut} pictures were`} left out: a listing has at most {mostPhotos}.</p>}
+      {leftOut > 0 && <p className="mt-3 border-l-4 border-amber pl-2 font-semibold" role="alert">{leftOut === 1 ? '1 picture was' : `${leftOut} pictures were`} left out: {album.full}.</p>}
       {photos.trouble && <p className="mt-3 border-l-4 border-heartwood pl-2 font-semibold text-heartwood" role="alert">{photos.trouble}</p>}
       <p className="sr-only" role="status">{said}</p>
       {items.length === 0
-        ? <p className="mt-4 text-ink-soft">No photographs yet. Logs with pictures of both ends get closer bids.</p>
+        ? <p className="mt-4 max-w-prose text-ink-soft">{album.empty}</p>
         : (
           <ol className="mt-4 border-t border-rule" ref={list} tabIndex={-1} aria-label="Photographs, in order">
             {items.map((item, index) => (
@@ -81,7 +84,7 @@ export function PhotoBoard({ listingId, logs, photos: given }: PhotoBoardProps):
             ))}
           </ol>
         )}
-      {items.length > 1 && <p className="mt-3 text-sm text-ink-soft">The first one is shown in lists. Drag a picture, or use its arrows, to change the order.</p>}
+      {items.length > 1 && <p className="mt-3 text-sm text-ink-soft">{album.order} Drag a picture, or use its arrows, to change the order.</p>}
     </div>
   );
 }

@@ -3,6 +3,7 @@ import type { PhotoView } from '~/domain/photo.ts';
 import { callApi } from '~/islands/call-api.ts';
 import { isUnderway, itemOf, itemOfFile, merge, moved, type Item } from './item.ts';
 import { sendFile } from './send-file.ts';
+import type { Album } from './album.ts';
 
 const AT_ONCE = 3;
 
@@ -28,8 +29,8 @@ export interface Photos {
 
 const messageOf = (error: unknown): string => (error instanceof Error ? error.message : 'That did not work. Try again.');
 
-/** The photographs of a listing and everything a person does to them here. Files are sent three at a time. */
-export function usePhotos(listingId: string, given: readonly PhotoView[]): Photos {
+/** The photographs of a listing, or of a sawyer's work, and everything a person does to them here. Files are sent three at a time. */
+export function usePhotos(album: Album, given: readonly PhotoView[]): Photos {
   const [items, setItems] = useState<readonly Item[]>(() => given.map((photo) => itemOf(photo)));
   const [trouble, setTrouble] = useState<string | null>(null);
   // The newest list, for work that began with an older one.
@@ -48,12 +49,12 @@ export function usePhotos(listingId: string, given: readonly PhotoView[]): Photo
     clearTimeout(orderTimer.current);
     orderTimer.current = setTimeout(() => {
       const ids = latest.current.flatMap(({ photo }) => (photo ? [photo.id] : []));
-      callApi('PUT', '/api/photos/order', { listingId, ids }).then(
+      callApi('PUT', album.orderAt, { ...album.of, ids }).then(
         () => setTrouble(null),
         (error: unknown) => setTrouble(`The order is not kept yet. ${messageOf(error)}`),
       );
     }, 400);
-  }, [listingId]);
+  }, [album]);
 
   const forget = (photo: PhotoView | null): void => {
     // Best effort: what stays behind is forgotten by the server after a while.
@@ -66,7 +67,7 @@ export function usePhotos(listingId: string, given: readonly PhotoView[]): Photo
     patch(key, { stage: 'sending', sent: 0, problem: null });
     let photo: PhotoView | null = null;
     try {
-      const begun = await callApi<Begun>('POST', '/api/photos', { listingId, fileName: file.name, type: file.type, bytes: file.size });
+      const begun = await callApi<Begun>('POST', album.beginAt, { ...album.of, fileName: file.name, type: file.type, bytes: file.size });
       photo = begun.photo;
       if (stop.signal.aborted) return forget(photo);
       patch(key, { photo });
@@ -81,7 +82,7 @@ export function usePhotos(listingId: string, given: readonly PhotoView[]): Photo
     } finally {
       sends.current.delete(key);
     }
-  }, [listingId, patch, settleOrder]);
+  }, [album, patch, settleOrder]);
 
   useEffect(() => {
     const free = AT_ONCE - items.filter(({ stage }) => stage === 'sending').length;
@@ -95,7 +96,7 @@ export function usePhotos(listingId: string, given: readonly PhotoView[]): Photo
     let timer: ReturnType<typeof setTimeout> | undefined;
     let asked = 0;
     const ask = async (): Promise<void> => {
-      const answer = await callApi<{ photos: PhotoView[] }>('GET', `/api/photos?listingId=${listingId}`).catch(() => null);
+      const answer = await callApi<{ photos: PhotoView[] }>('GET', album.listAt).catch(() => null);
       if (stopped) return;
       if (answer) write((now) => merge(now, answer.photos));
       asked += 1;
@@ -106,7 +107,7 @@ export function usePhotos(listingId: string, given: readonly PhotoView[]): Photo
       stopped = true;
       clearTimeout(timer);
     };
-  }, [isChecking, listingId, write]);
+  }, [album, isChecking, write]);
 
   const isSending = items.some(isUnderway);
   useEffect(() => {
