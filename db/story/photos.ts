@@ -1,5 +1,5 @@
 import { matchSpecies } from '../../src/domain/timber/species.ts';
-import { beginPhotoUpload } from '../../src/server/commands/begin-photo-upload.ts';
+import { beginPhotoUpload, type BegunUpload } from '../../src/server/commands/begin-photo-upload.ts';
 import { finishPhotoUpload } from '../../src/server/commands/finish-photo-upload.ts';
 import { processPhoto } from '../../src/server/jobs/handlers/process-photo.ts';
 import { Log } from '../../src/server/models/listing.ts';
@@ -23,9 +23,8 @@ function pictureOf(species: readonly string[], kind: 'end' | 'landing', variant:
   return made;
 }
 
-/** Sends one picture as the browser does: begins it, posts the file to storage, says that it is there, and has it checked. */
-async function send(by: Viewer, listingId: string, logId: string | null, fileName: string, caption: string, bytes: Buffer, at: Date): Promise<void> {
-  const { photo, upload } = await beginPhotoUpload(by, { listingId, fileName, type: 'image/jpeg', bytes: bytes.length, logId, caption }, at);
+/** Sends one picture that was begun as the browser does: posts the file to storage, says that it is there, and has it checked. */
+export async function sendPicture(by: Viewer, { photo, upload }: BegunUpload, fileName: string, bytes: Buffer, at: Date): Promise<void> {
   const form = new FormData();
   for (const [name, value] of Object.entries(upload.fields)) form.append(name, value);
   form.append('file', new Blob([new Uint8Array(bytes)], { type: 'image/jpeg' }), fileName);
@@ -34,6 +33,9 @@ async function send(by: Viewer, listingId: string, logId: string | null, fileNam
   await finishPhotoUpload(by, photo.id, at);
   await processPhoto({ photoId: photo.id });
 }
+
+const send = async (by: Viewer, listingId: string, logId: string | null, fileName: string, caption: string, bytes: Buffer, at: Date): Promise<void> =>
+  sendPicture(by, await beginPhotoUpload(by, { listingId, fileName, type: 'image/jpeg', bytes: bytes.length, logId, caption }, at), fileName, bytes, at);
 
 /** The landing first, then log ends, from the butt on. */
 async function sendPictures(tree: Tree, at: Date): Promise<void> {
@@ -52,14 +54,17 @@ async function sendPictures(tree: Tree, at: Date): Promise<void> {
 const lanes: Promise<void>[] = [Promise.resolve(), Promise.resolve()];
 let turn = 0;
 
+/** Has pictures sent when a lane is free. */
+export function inALane(sends: () => Promise<void>): void {
+  const lane = turn++ % lanes.length;
+  lanes[lane] = lanes[lane]?.then(sends) ?? Promise.resolve();
+}
+
 /** Pictures of the logs, on the evening of the day they were listed. */
 export function tellPhotos(timeline: Timeline): void {
   for (const tree of trees) {
     if (!tree.pictures || tree.listed === null) continue;
-    timeline.add(tree.listed, '18:55', async (at) => {
-      const lane = turn++ % lanes.length;
-      lanes[lane] = lanes[lane]?.then(() => sendPictures(tree, at)) ?? Promise.resolve();
-    });
+    timeline.add(tree.listed, '18:55', async (at) => inALane(() => sendPictures(tree, at)));
   }
 }
 

@@ -2,11 +2,11 @@ import sharp from 'sharp';
 
 // Every picture of the demo is drawn here, by numbers: log ends with their rings and checks, and logs lying at a landing.
 
-const WIDTH = 1280;
-const HEIGHT = 960;
+export const WIDTH = 1280;
+export const HEIGHT = 960;
 
 /** Colours of a species: heartwood, sapwood, bark. */
-interface Tint {
+export interface Tint {
   readonly heart: string;
   readonly sap: string;
   readonly bark: string;
@@ -23,10 +23,10 @@ const TINTS: Readonly<Record<string, Tint>> = {
 };
 const PINE: Tint = { heart: '#d09a62', sap: '#efd9ab', bark: '#7d5a45' };
 
-const tintOf = (species: string): Tint => TINTS[species] ?? PINE;
+export const tintOf = (species: string): Tint => TINTS[species] ?? PINE;
 
 /** Numbers in [0, 1) that are the same for the same seed (mulberry32). */
-function numbersFrom(seed: number): () => number {
+export function numbersFrom(seed: number): () => number {
   let state = seed >>> 0;
   return () => {
     state = (state + 0x6d2b79f5) >>> 0;
@@ -69,12 +69,12 @@ function logEnd(x: number, y: number, radius: number, tint: Tint, random: () => 
 }
 
 /** Drawn on a field of 1280 × 960 and rendered at three quarters of it, so that telling the story stays quick. */
-const frame = (inner: string): string => `<svg xmlns="http://www.w3.org/2000/svg" width="960" height="720" viewBox="0 0 ${WIDTH} ${HEIGHT}">${inner}</svg>`;
+export const frame = (inner: string): string => `<svg xmlns="http://www.w3.org/2000/svg" width="960" height="720" viewBox="0 0 ${WIDTH} ${HEIGHT}">${inner}</svg>`;
 
 /** Grain over the whole picture, so that flat colour does not look like enamel. */
-const grain = (seed: number): string => `<filter id="g"><feTurbulence type="fractalNoise" baseFrequency="0.55" numOctaves="2" seed="${seed % 1000}"/><feColorMatrix values="0 0 0 0 0.25  0 0 0 0 0.2  0 0 0 0 0.12  0 0 0 0.5 -0.14"/></filter><rect width="100%" height="100%" filter="url(#g)"/>`;
+export const grain = (seed: number): string => `<filter id="g"><feTurbulence type="fractalNoise" baseFrequency="0.55" numOctaves="2" seed="${seed % 1000}"/><feColorMatrix values="0 0 0 0 0.25  0 0 0 0 0.2  0 0 0 0 0.12  0 0 0 0.5 -0.14"/></filter><rect width="100%" height="100%" filter="url(#g)"/>`;
 
-const grass = (random: () => number, from: number): string =>
+export const grass = (random: () => number, from: number): string =>
   Array.from({ length: 240 }, () => {
     const [x, y] = [random() * WIDTH, from + random() * (HEIGHT - from)];
     return `<path d="M${x.toFixed(0)} ${y.toFixed(0)}l${((random() - 0.5) * 14).toFixed(1)} ${(-12 - random() * 26).toFixed(1)}" stroke="${random() > 0.5 ? '#6d7b3d' : '#8a8f4c'}" stroke-width="2.4"/>`;
@@ -113,8 +113,11 @@ function landingPicture(species: readonly string[], seed: number): string {
   return frame(`<rect width="100%" height="100%" fill="#c9d6dc"/><rect width="100%" height="${ground}" fill="#bfd0d8"/>${trees}<rect y="${ground}" width="100%" height="${HEIGHT - ground}" fill="#75803f"/>${grass(random, ground + 20)}${bearers}${pile}${grass(random, HEIGHT * 0.86)}${grain(seed)}`);
 }
 
-/** A picture of the demo: of one log's end, or of the landing. JPEG, 960 × 720. */
+/** JPEG, 960 × 720, of a drawing made by `frame`. */
+export const toJpeg = (svg: string): Promise<Buffer> => sharp(Buffer.from(svg)).jpeg({ quality: 82 }).toBuffer();
+
+/** A picture of the demo: of one log's end, or of the landing. */
 export function drawPicture(what: { readonly kind: 'end'; readonly species: string } | { readonly kind: 'landing'; readonly species: readonly string[] }, seed: number): Promise<Buffer> {
   const svg = what.kind === 'end' ? endPicture(what.species, seed) : landingPicture(what.species, seed);
-  return sharp(Buffer.from(svg)).jpeg({ quality: 82 }).toBuffer();
+  return toJpeg(svg);
 }

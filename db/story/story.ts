@@ -15,6 +15,7 @@ import { tellTalks } from './talk.ts';
 import { tellTallies } from './tallies.ts';
 import { Timeline } from './timeline.ts';
 import { tellWeeks } from './weeks.ts';
+import { tellWork } from './work.ts';
 import { tellTrips } from './trips.ts';
 
 /**
@@ -27,6 +28,7 @@ export async function tellStory(now: Date): Promise<void> {
   tellSawyers(timeline);
   tellCertificates(timeline);
   tellWeeks(timeline);
+  tellWork(timeline);
   tellListings(timeline);
   tellPhotos(timeline);
   tellBids(timeline);
