@@ -1,5 +1,6 @@
 import type { Page } from '@playwright/test';
-import { expect, expectAccessible, test } from './support/check.ts';
+import { plainJpeg } from '../support/sample-pictures.ts';
+import { awake, expect, expectAccessible, test } from './support/check.ts';
 import { openAccount } from './support/people.ts';
 
 // Three long forms, each looked at in both themes.
@@ -72,6 +73,25 @@ for (const { name, width, script } of [{ name: 'at a desk', width: 1280, script:
       await page.goto('/sawyer/rates');
       await expect(page.getByRole('region', { name: 'Your card now' })).toContainText('log scale, Doyle');
       if (script) await expectSound(page);
+
+      // A photograph of earlier work, seen on the page that landowners find.
+      await page.goto('/sawyer/profile');
+      await expect(page.getByRole('heading', { name: 'Photographs of your work' })).toBeVisible();
+      if (!script) return;
+      await awake(page);
+      await page.getByLabel('Choose pictures').setInputFiles({ name: 'slabs.jpg', mimeType: 'image/jpeg', buffer: await plainJpeg(900, 600) });
+      await page.getByLabel('Caption of slabs.jpg').fill('Walnut slabs');
+      await expect(page.getByRole('list', { name: 'Photographs, in order' }).getByRole('img', { name: 'Walnut slabs' })).toBeVisible({ timeout: 20_000 });
+      await expectSound(page);
+      await page.getByRole('link', { name: 'See your page as they do' }).click();
+      await expect(page.getByRole('region', { name: 'Photographs of work' }).getByRole('img', { name: 'Walnut slabs' })).toBeVisible();
+
+      await page.context().grantPermissions(['geolocation']);
+      await page.context().setGeolocation({ latitude: 43.5571, longitude: -90.8891 });
+      await page.getByRole('navigation', { name: 'Breadcrumb' }).getByRole('link', { name: 'Sawyers near you' }).click();
+      await page.getByRole('button', { name: 'Use where I am' }).click();
+      await expect(page).toHaveURL(/lat=43\.56&lng=-90\.89/);
+      await expect(page.getByRole('link', { name: 'Newblade Sawing' })).toBeVisible();
     });
   });
 }

@@ -32,6 +32,7 @@ describe('public pages', () => {
     ['/logs?zip=54665&radiusMi=40', 'within 40 miles'],
     ['/logs?zip=nowhere&species=purple', 'Write the five digits of a ZIP code.'],
     ['/sawyers?zip=54665', 'Sawyers near you'],
+    ['/sawyers?lat=43.56&lng=-90.89', 'Measured from where your device is.'],
     ['/how-it-works', 'held until you sign the tally'],
     ['/safety', 'Usual practice; check the rule that applies to you.'],
     ['/privacy', 'a coarse grid of about a mile'],
