@@ -33,6 +33,14 @@ export const tripOffered = (to: To, sawyer: string, title: string, figures: Figu
 export const tripChanged = (to: To, title: string, figures: Figures, day: string, link: string): MailMessage =>
   letter(to.email, `New figures for the shared trip: ${title}`, to.name, [`Somebody has left the trip on ${day}, so your part is another. Nothing binds you until you agree to it.`, { facts: facts(figures) }, { button: 'See the trip and answer', href: link }]);
 
+/** To the sawyer: somebody has left, and the trip goes on with fewer. */
+export const tripSmaller = (to: To, trip: { readonly places: number; readonly miles: number; readonly wholeCents: number; readonly aloneCents: number }, day: string, link: string): MailMessage =>
+  letter(to.email, `One place fewer on your trip on ${day}`, to.name, [
+    `A landowner is no longer on the trip. ${trip.places} places are left, ${trip.miles} miles base to base. Whoever pays another part than before is asked again; you hear when all have agreed.`,
+    { facts: [['Travel of the trip', formatCents(trip.wholeCents)], ['One by one', formatCents(trip.aloneCents)]] },
+    { button: 'See the trip', href: link },
+  ]);
+
 /** To a landowner, or the sawyer: the trip does not come about. */
 export const tripEnded = (to: To, why: string, link: string): MailMessage =>
   letter(to.email, 'The shared trip does not come about', to.name, [`${why} Bids and bookings stand as they were, each on its own.`, { button: 'See the trip', href: link }]);

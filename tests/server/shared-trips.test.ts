@@ -15,7 +15,7 @@ import { BookedDay, Booking, DayProposal, Outing } from '~/server/models/booking
 import type { Listing } from '~/server/models/listing.ts';
 import { Bid, DayOff } from '~/server/models/sawyer.ts';
 import { accountExport } from '~/server/queries/account-export.ts';
-import { tripsAskedOf } from '~/server/queries/trip-page.ts';
+import { tripPage, tripsAskedOf } from '~/server/queries/trip-page.ts';
 import { SharedTrip, TripStop } from '~/server/models/trip.ts';
 import { agreementOf } from '~/server/queries/agreement.ts';
 import { coarsePoint } from '~/domain/geo.ts';
@@ -144,6 +144,10 @@ describe('a shared trip', () => {
     expect(after.map(({ status }) => status)).toEqual(['asked', 'asked', 'out']);
     expect(after[0]?.travelCents).toBeGreaterThan(before[0]?.travelCents ?? 0);
     expect((await letters('New figures for the shared trip')).sort()).toEqual([who(0).email, who(1).email].sort());
+    expect(await letters('One place fewer on your trip')).toEqual([sawyer.email]);
+    expect((await tripsAskedOf(who(0))).find(({ number }) => number === trip)).toMatchObject({ answered: false, changed: true });
+    expect((await tripsAskedOf(who(2))).some(({ number }) => number === trip)).toBe(false);
+    expect(await tripPage(who(2), trip)).toMatchObject({ places: 2, stops: [{ status: 'out', can: { agree: false, leave: false } }] });
     await expect(agree(0, trip, 1)).rejects.toMatchObject({ kind: 'conflict' });
     expect(await agree(0, trip, 2)).toBe('waiting');
     expect(await agree(1, trip, 2)).toBe('bound');

@@ -2,7 +2,7 @@ import { paths } from '~/domain/paths.ts';
 import { tripStates, tripStopStates } from '~/domain/states/trip.ts';
 import { addHours, dayStart, formatDayWithYear } from '~/domain/time.ts';
 import type { RateCard } from '~/domain/trade/rate-card.ts';
-import { tripChanged, tripEnded } from '~/emails/trip-letters.ts';
+import { tripChanged, tripEnded, tripSmaller } from '~/emails/trip-letters.ts';
 import { readerOf } from '../bidders.ts';
 import { inTransaction, rows } from '../db.ts';
 import { enqueue } from '../jobs/queue.ts';
@@ -67,6 +67,7 @@ export async function workOutAgain(by: Actor, trip: SharedTrip, at: Date): Promi
   // At least two days to look at new figures, but an answer half a day before the start at the latest.
   const answerBy = new Date(Math.min(Math.max(trip.answerBy.getTime(), addHours(at, 48).getTime()), addHours(start, -12).getTime()));
   await trip.update({ ...tripColumns(plan), version: trip.version + 1, answerBy, updatedAt: at });
+  await enqueue('send-mail', tripSmaller(await readerOf(trip.sawyerId), { places: stops.length, miles: trip.miles, wholeCents: trip.wholeCents, aloneCents: trip.aloneCents }, formatDayWithYear(trip.day), linkTo(paths.trip(trip.number))));
   for (const stop of stops) {
     const now = figures.find(({ listingId }) => listingId === stop.listingId);
     if (!now) continue;

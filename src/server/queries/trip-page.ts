@@ -130,12 +130,14 @@ export interface TripAsked {
   readonly title: string;
   readonly day: string;
   readonly answered: boolean;
+  /** Somebody has left since it was offered. */
+  readonly changed: boolean;
 }
 
 /** Offered trips that this landowner is asked about. */
 export const tripsAskedOf = (viewer: Viewer): Promise<TripAsked[]> =>
   rows<TripAsked>(
-    `SELECT t.number, l.title, t.day::text AS day, s.status = 'agreed' AS answered FROM trip_stop s JOIN shared_trip t ON t.id = s.trip_id JOIN listing l ON l.id = s.listing_id
+    `SELECT t.number, l.title, t.day::text AS day, s.status = 'agreed' AS answered, t.version > 1 AS changed FROM trip_stop s JOIN shared_trip t ON t.id = s.trip_id JOIN listing l ON l.id = s.listing_id
      WHERE s.landowner_id = $1 AND s.status IN ('asked', 'agreed') AND t.status = 'offered' ORDER BY t.day, t.number`,
     [viewer.id],
   );
