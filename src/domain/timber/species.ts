@@ -83,14 +83,15 @@ const words = (species: Species): readonly string[] => [species.name, species.sc
 
 const searchTable: readonly { readonly species: Species; readonly names: readonly string[] }[] = speciesList.map((species) => ({ species, names: words(species) }));
 
-/** 0 is the best match; null is none. Whole name, then a name that begins so, then all typed words begin a word of one name. */
+/** 0 is the best match; null is none. Whole name, then its own name that begins so, then another that does, then all typed words begin a word of one name. */
 const rank = (names: readonly string[], typed: string): number | null => {
   if (names.includes(typed)) return names[0] === typed ? 0 : 1;
-  if (names.some((name) => name.startsWith(typed))) return 2;
+  if (names[0]?.startsWith(typed)) return 2;
+  if (names.some((name) => name.startsWith(typed))) return 3;
   const parts = typed.split(' ');
   const allBegin = names.some((name) => parts.every((part) => name.split(' ').some((word) => word.startsWith(part))));
-  if (allBegin) return 3;
-  return names.some((name) => name.replaceAll(' ', '').includes(typed.replaceAll(' ', ''))) ? 4 : null;
+  if (allBegin) return 4;
+  return names.some((name) => name.replaceAll(' ', '').includes(typed.replaceAll(' ', ''))) ? 5 : null;
 };
 
 /** Species whose common name, scientific name or other names match what was typed, best first; all of them for an empty text. */

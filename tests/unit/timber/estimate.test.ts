@@ -122,6 +122,8 @@ describe('finding a species', () => {
     ['quercus alba', 'white-oak'],
     ['juglans nigra', 'black-walnut'],
     ['White oak', 'white-oak'],
+    // Bur and chestnut oak are called white oak too; the tree that is named so comes first.
+    ['white o', 'white-oak'],
     ['hard maple', 'sugar-maple'],
     ['tulip', 'yellow-poplar'],
     ['douglas fir', 'douglas-fir'],
