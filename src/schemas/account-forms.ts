@@ -16,7 +16,7 @@ export type RoleName = (typeof roleNames)[number];
 
 const roles = list.transform((typed, ctx): RoleName[] => {
   const chosen = roleNames.filter((role) => typed.includes(role));
-  if (chosen.length === 0) ctx.addIssue({ code: 'custom', message: 'Choose at least one.' });
+  if (chosen.length === 0) ctx.addIssue({ code: 'custom', message: 'Say what you have: logs, a mill, or both.' });
   return chosen;
 });
 
@@ -41,11 +41,12 @@ const code = fieldOf((typed) => (/^\d{3}\s?\d{3}$/.test(typed) ? good(typed.repl
 const name = fieldOf(text(120, 'Write the name that others will see.'));
 const next = z.string().optional();
 
+/** In the order of the form, so that what is wrong is listed in it. */
 export const signUpForm = z.object({
+  as: roles,
   name,
   email: fieldOf(emailAddress),
   password: newPassword,
-  as: roles,
   zip: fieldOf(optional(zipCode)),
   terms: ticked.refine((yes) => yes, 'Read and accept the terms to go on.'),
   next,

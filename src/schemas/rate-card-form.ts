@@ -1,8 +1,12 @@
 import { z } from 'zod';
 import { formatFraction } from '~/domain/measure.ts';
 import type { Cents } from '~/domain/money.ts';
+import { refused, type Result } from '~/domain/result.ts';
 import type { RateCard, SawingBasis } from '~/domain/trade/rate-card.ts';
 import { choice, feet, fieldOf, inches, money, moneyOrZero, number, optional, text, ticked, whole } from './fields.ts';
+
+/** A rate must be said; `missing` names which one, where two stand below each other. */
+const rate = (missing: string) => (typed: string): Result<Cents> => (typed === '' ? refused('', missing) : money(typed));
 
 /**
  * A rate card as its form posts it. Every field is plain text; those that belong to another basis than the chosen one are kept on the
@@ -16,8 +20,8 @@ export const rateCardForm = z
     smallestDiameterIn: fieldOf(optional(inches(4, 60))),
     smallestLengthFt: fieldOf(optional(feet(4, 40))),
     clockFrom: fieldOf(optional(choice(['first-cut', 'arrival'], 'Say when the clock starts.'))),
-    priceWithout: fieldOf(money),
-    priceWith: fieldOf(money),
+    priceWithout: fieldOf(rate('Write your rate when the landowner provides the off-bearer, in dollars, like 0.45.')),
+    priceWith: fieldOf(rate('Write your rate when you bring the off-bearer, in dollars; the same figure if it makes no difference.')),
     slabBy: fieldOf(choice(['none', 'square-foot', 'board-foot'], 'Choose how slabs are charged.')),
     slabPrice: fieldOf(optional(money)),
     quartersawn: fieldOf(moneyOrZero),

@@ -13,7 +13,7 @@ export async function changeAccount(by: Viewer, input: { readonly name: string; 
   if (!by.active) throw forbidden('This account is suspended.');
   await inTransaction(async () => {
     const account = await Account.findByPk(by.id, { lock: true, rejectOnEmpty: true });
-    if (input.as.length === 0 && !account.isModerator) throw invalid([{ path: 'as', message: 'Choose at least one.' }]);
+    if (input.as.length === 0 && !account.isModerator) throw invalid([{ path: 'as', message: 'Say what you have: logs, a mill, or both.' }]);
     await account.update({ name: input.name, zip: input.zip, isLandowner: input.as.includes('landowner'), isSawyer: input.as.includes('sawyer') });
     await record(by, 'changeAccount', 'account', by.id, at, { data: { as: input.as } });
   });
