@@ -2,7 +2,7 @@ import { formatFraction } from '~/domain/measure.ts';
 import { formatCents } from '~/domain/money.ts';
 import type { BidMill } from '~/domain/trade/bid-estimate.ts';
 import { MILL_KIND_NAMES } from '~/domain/trade/mill-fit.ts';
-import type { Line } from '~/domain/trade/price.ts';
+import { withUnit, type Line } from '~/domain/trade/price.ts';
 import type { BidSort } from '~/domain/trade/comparison.ts';
 import type { Waste } from '~/domain/trade/rate-card.ts';
 
@@ -12,7 +12,7 @@ export function lineWords({ kind, quantity, unit, unitCents }: Line): string {
   if (unit === '%') return `${count} % of ${formatCents(unitCents)}`;
   if (kind === 'minimum' || unit === 'job') return '';
   if (unit === 'each') return `${count} at ${formatCents(unitCents)}`;
-  return `${count} ${unit}${quantity !== 1 && !['bf', 'sq ft'].includes(unit) ? 's' : ''} at ${formatCents(unitCents)}`;
+  return `${withUnit(count, quantity, unit)} at ${formatCents(unitCents)}`;
 }
 
 /** `band, kerf 3/32 in` */

@@ -6,6 +6,11 @@ import { basisPrice, type BidTerms, offBearerCents, type RateCard } from './rate
 export type LineKind = 'sawing' | 'surcharge' | 'extra' | 'set-up' | 'travel' | 'minimum' | 'metal' | 'tax';
 export type LineUnit = 'bf' | 'hour' | 'sq ft' | 'log' | 'pass' | 'each' | 'landing' | 'mile' | 'load' | 'blade' | 'job' | 'trip' | '%';
 
+const WITHOUT_PLURAL: readonly LineUnit[] = ['bf', 'sq ft', 'each', '%'];
+
+/** `12 miles`, `1 landing`, `3 passes`: a line's quantity (already said as text) with its unit. */
+export const withUnit = (said: string, quantity: number, unit: LineUnit): string => `${said} ${unit}${quantity === 1 || WITHOUT_PLURAL.includes(unit) ? '' : unit === 'pass' ? 'es' : 's'}`;
+
 /** One line of a bill. `amountCents` is rounded once, half up, from quantity × price; the lines of a job sum to its cost. */
 export interface Line {
   readonly kind: LineKind;

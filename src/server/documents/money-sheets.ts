@@ -1,5 +1,6 @@
 import { formatCents } from '~/domain/money.ts';
 import { dayAt, formatDayWithYear } from '~/domain/time.ts';
+import { withUnit } from '~/domain/trade/price.ts';
 import type { EarningsStatement } from '../queries/earnings-statement.ts';
 import type { MoneyOfBooking } from '../queries/money-of-booking.ts';
 import type { PaymentsStatement } from '../queries/payments-statement.ts';
@@ -55,7 +56,7 @@ export function receiptSheet(money: MoneyOfBooking, number: string): MoneySheet 
     title: 'Receipt', number,
     facts: [['Day', formatDayWithYear(dayAt(settlement.signedAt, money.timeZone))], ['Job', `${money.title}, booking ${money.number}`], ['Landowner', money.landownerName], ['Sawyer', money.sawyerName]],
     columns: [{ heading: 'For', part: 0.46 }, { heading: 'Quantity', part: 0.2, figure: true }, { heading: 'Price', part: 0.16, figure: true }, { heading: 'Amount', part: 0.18, figure: true }],
-    rows: whole.lines.map((line) => [line.label, `${line.quantity.toLocaleString('en-US', { maximumFractionDigits: 2 })} ${line.unit}`, line.unit === '%' ? '' : formatCents(line.unitCents), formatCents(line.amountCents)]),
+    rows: whole.lines.map((line) => [line.label, withUnit(line.quantity.toLocaleString('en-US', { maximumFractionDigits: 2 }), line.quantity, line.unit), line.unit === '%' ? '' : formatCents(line.unitCents), formatCents(line.amountCents)]),
     totals: [total('The work came to', whole.costCents), ...sums, ...(lostCents > 0 ? [total('Given back by the bank after a dispute', lostCents)] : [])],
     notes: [...(parts.taxCents > 0 ? [`Tax of ${formatCents(parts.taxCents)} is inside. ${TAX_NOTE}`] : []), ...(settlement.lackingCents > 0 ? [`${formatCents(settlement.lackingCents)} was not held and is not paid.`] : [])],
   };

@@ -5,6 +5,7 @@ import { thicknessName } from '~/domain/timber/tally.ts';
 import { countBoards, tallyRuleOf } from '~/domain/trade/tally-count.ts';
 import { TALLY_RULE_NAMES } from '~/domain/trade/rate-card.ts';
 import type { Settlement } from '~/domain/trade/settlement.ts';
+import { withUnit } from '~/domain/trade/price.ts';
 import type { TallyBoardView, TallyView } from '~/schemas/tally-view.ts';
 import { openPaper } from './paper.ts';
 
@@ -81,7 +82,7 @@ export function tallyPdf(sheet: TallySheet): Promise<Uint8Array<ArrayBuffer>> {
     for (const hit of hits) row(`Metal hit: blade ${hit.outcome}`, '1');
   }
   heading('What it comes to');
-  for (const line of settlement.lines) row(`${line.label}: ${figure(line.quantity)} ${line.unit} at ${formatCents(line.unitCents)}`, formatCents(line.amountCents));
+  for (const line of settlement.lines) row(`${line.label}: ${withUnit(figure(line.quantity), line.quantity, line.unit)} at ${formatCents(line.unitCents)}`, formatCents(line.amountCents));
   row('The work comes to', formatCents(settlement.costCents), true);
   row('Held', formatCents(view.heldCents));
   if (settlement.overHold) row('More than is held by', formatCents(settlement.overHold.lackingCents));

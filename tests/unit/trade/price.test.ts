@@ -1,8 +1,15 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { NO_WORK, priceWork } from '~/domain/trade/price.ts';
+import { NO_WORK, priceWork, withUnit } from '~/domain/trade/price.ts';
 import { describeBasis, describeMinimum, describeRate } from '~/domain/trade/rate-card.ts';
 import { OAK_CARD, OAK_TERMS, termsWith } from '../../support/rate-cards.ts';
+
+describe('a quantity with its unit', () => {
+  it('is one of it or many', () => {
+    expect([withUnit('1', 1, 'landing'), withUnit('12', 12, 'mile'), withUnit('2', 2, 'pass'), withUnit('1', 1, 'pass'), withUnit('632.83', 632.83, 'bf'), withUnit('0.5', 0.5, 'hour')])
+      .toEqual(['1 landing', '12 miles', '2 passes', '1 pass', '632.83 bf', '0.5 hours']);
+  });
+});
 
 const amounts = (terms = OAK_TERMS, work = NO_WORK) => priceWork(terms, work).lines.map(({ label, amountCents }) => [label, amountCents]);
 
