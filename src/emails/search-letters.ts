@@ -1,5 +1,5 @@
 import { formatDollars } from '~/domain/money.ts';
-import { formatDay } from '~/domain/time.ts';
+import { formatDay, formatDayWithYear } from '~/domain/time.ts';
 import { hourWords, type JobForMill } from '~/domain/trade/job-worth.ts';
 import type { MailMessage } from '~/server/services/mail.ts';
 import { letter, type Part } from './letter.ts';
@@ -25,7 +25,7 @@ function factsOf({ town, boardFeet, largestEndOutsideBarkIn, distanceMi, sawBy, 
     ['Where', `near ${town}${distanceMi === null ? '' : `, ${Math.round(distanceMi)} mi`}`],
     ['Logs', `${boardFeet.toLocaleString('en-US')} bf International ¼, butt ${Math.round(largestEndOutsideBarkIn)} in`],
     ['Closes to bids', formatDay(closesOn)],
-    ...(sawBy === null ? [] : [['Best sawn by', formatDay(sawBy)] as const]),
+    ...(sawBy === null ? [] : [['Best sawn by', formatDayWithYear(sawBy)] as const]),
     ...(job === null ? [] : [['Your mill', job.fit.fits ? `fits ${job.mill.name}` : (job.fit.reasons[0] ?? 'does not fit')] as const]),
     ...(job?.fit.fits && worth ? [['Estimate', `${dollars(worth.estimateCents)}, ${hourWords(worth.workHours)} at work, ${worth.roadMiles * 2} mi there and back, ${dollars(worth.perHourCents)} an hour`] as const] : []),
   ];

@@ -9,6 +9,19 @@ export const WIDEST_SPAN_DAYS = 31;
 /** The days of the week in the order of their numbers: 1 Monday … 7 Sunday. */
 export const WEEKDAYS = ['Monday', 'Tuesday', 'Wednesday', 'Thursday', 'Friday', 'Saturday', 'Sunday'] as const;
 
+/** `Monday to Saturday`, or `Monday, Wednesday, Friday`: days of the week by their numbers (Monday is 1), three or more in a row as a range. */
+export function weekdaysSaid(days: readonly number[]): string {
+  const inOrder = [...new Set(days)].sort((a, b) => a - b);
+  const runs: number[][] = [];
+  for (const day of inOrder) {
+    const last = runs.at(-1);
+    if (last && last.at(-1) === day - 1) last.push(day);
+    else runs.push([day]);
+  }
+  const name = (day: number | undefined): string => WEEKDAYS[(day ?? 1) - 1] ?? '';
+  return runs.map((run) => (run.length >= 3 ? `${name(run[0])} to ${name(run.at(-1))}` : run.map(name).join(', '))).join(', ');
+}
+
 /** What stands on a sawyer's day, for those who want to book it. */
 export type DayState = 'open' | 'offered' | 'booked' | 'off';
 
