@@ -7,7 +7,7 @@ export const ZONE = 'America/Chicago';
 export interface Calendar {
   readonly now: Date;
   readonly day: (offset: number) => Day;
-  /** A day on which sawyers work: a Sunday becomes the Monday after it. */
+  /** A day on which sawyers work: a Sunday to come becomes the Monday after it. What is past was sawn on the day told, by agreement on a Sunday too. */
   readonly workday: (offset: number) => Day;
   /** An instant of that day on the local clock, never after the moment of telling. */
   readonly at: (offset: number, clock: string) => Date;
@@ -19,7 +19,7 @@ export function calendarFrom(now: Date): Calendar {
   return {
     now,
     day,
-    workday: (offset) => (new Date(`${day(offset)}T00:00:00Z`).getUTCDay() === 0 ? day(offset + 1) : day(offset)),
+    workday: (offset) => (offset > 0 && new Date(`${day(offset)}T00:00:00Z`).getUTCDay() === 0 ? day(offset + 1) : day(offset)),
     at: (offset, clock) => {
       const instant = dayStart(day(offset), ZONE, clock);
       return instant < now ? instant : now;
