@@ -50,8 +50,8 @@ function Row({ booking }: { readonly booking: KeptBooking }): ReactElement {
   const today = booking.days.includes(dayAt(new Date(), booking.timeZone));
   return (
     <li className="border-b border-rule">
-      <a className="block min-h-glove py-3 text-ink no-underline hover:underline" href={`#${booking.number}`}>
-        <span className="block font-bold">{booking.title}</span>
+      <a className="block min-h-glove py-3 text-ink no-underline" href={`#${booking.number}`}>
+        <span className="block font-bold text-crayon underline underline-offset-4">{booking.title}</span>
         <span className="block">{today ? 'Today' : booking.days.map(formatDay).join(', ')} · {booking.otherName} · {booking.town}</span>
         {booking.status !== 'held' && <span className="block font-semibold text-moss">{stateWords[booking.status] ?? booking.status}</span>}
       </a>

@@ -153,6 +153,10 @@ function FormBody(props: ListingFormProps & { readonly restored: boolean; readon
           </ol>
           <div className="mt-4"><SaveLine draft={draft} back={back} /></div>
         </nav>
+        <details className="mb-6 border-y border-rule lg:hidden" data-chrome>
+          <summary className="min-h-target py-2.5 font-semibold text-crayon">The {steps.length} parts of this form</summary>
+          <nav aria-label="Parts of the form"><ol className="grid grid-cols-2 gap-x-4 pb-2">{steps.map(([id, title], index) => <li key={id}><a className="flex min-h-target items-center gap-2" href={`#${id}`}><span className="figure text-heartwood">{index + 1}</span>{title}</a></li>)}</ol></nav>
+        </details>
         <form id="listing-form" ref={form} method="post" action={back} onInput={changed} onSubmit={onSubmit} onKeyDown={onKeyDown} noValidate>
           {/* The first button is the one that Enter presses where there is no script. */}
           <button className="sr-only" type="submit" name="deed" value={props.isDraft ? 'save' : 'revise'} tabIndex={-1} aria-hidden="true">Save</button>
@@ -165,7 +169,7 @@ function FormBody(props: ListingFormProps & { readonly restored: boolean; readon
           <MetalPart />
           <PiecesPart rows={pieces} />
           <DatesPart />
-          <div className="lg:hidden"><SaveLine draft={draft} back={back} /></div>
+          <div className="pb-6 lg:hidden"><SaveLine draft={draft} back={back} /></div>
         </form>
       </div>
     </FormContext.Provider>

@@ -47,7 +47,7 @@ export function ProjectHelper({ room, onAdd }: { readonly room: number; readonly
   const pieces = project && Object.keys(problems).length === 0 && !wasteProblem ? projectPieces(project, size, wastePct ?? 0, dressed === 'store-size') : [];
   return (
     <details className="border-b border-rule py-2">
-      <summary className="flex min-h-target cursor-pointer items-center font-semibold">Sizes for a small project</summary>
+      <summary className="min-h-target py-2.5 font-semibold text-crayon">Sizes for a small project</summary>
       <div className="grid gap-3 pb-3 pt-1">
         <div className="grid grid-cols-2 items-start gap-3 sm:grid-cols-4">
           <div className="col-span-2 sm:col-span-1">
