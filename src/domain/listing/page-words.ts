@@ -33,7 +33,8 @@ export const landingSaid = (landing: Landing, waste: Waste): readonly Said[] => 
   say('Logs off the dirt', landing.offDirt ? 'yes' : 'no'),
   say('Logs side by side', landing.parallel ? 'yes' : 'no'),
   say('Within rolling distance', landing.rolling ? 'yes' : 'no'),
-  say('Moving the logs', saidOf(reDeckers, landing.reDecks), landing.note),
+  say('Moving the logs', saidOf(reDeckers, landing.reDecks)),
   say('Slabs', saidOf(slabEnds, waste.slabs)),
   say('Sawdust', saidOf(sawdustEnds, waste.sawdust)),
+  ...(landing.note === '' ? [] : [say('About the landing', '', landing.note)]),
 ];

@@ -71,7 +71,7 @@ function Outcome({ typed, log, problems }: { readonly typed: LogTyped; readonly 
           {(['internationalQuarter', 'scribnerDecimalC', 'doyle'] as const).map((rule) => (
             <div className={cell} key={rule}><dt className="text-sm text-ink-soft">{logRuleNames[rule]}</dt><dd className="figure">{wholeNumber(boardFeet[rule])} bf</dd></div>
           ))}
-          <div className={cell}><dt className="text-sm text-ink-soft">Green weight</dt><dd className="figure">{wholeNumber(Math.round(weightLb / 10) * 10)} lb</dd></div>
+          <div className={cell}><dt className="text-sm text-ink-soft">Green weight, with bark</dt><dd className="figure">{wholeNumber(Math.round(weightLb / 10) * 10)} lb</dd></div>
         </dl>
         {log.defects.length > 0 && <p className="mt-1 text-sm text-ink-soft">Less {log.defects.length === 1 ? 'one defect' : `${log.defects.length} defects`} that you gave in the estimator.</p>}
         {!trim.enough && trim.cleanFt >= 4 && <p className="mt-1 text-sm text-ink-soft">No trim to spare: with 4 to 6 in over the whole foot the boards come out a clean {trim.nominalFt} ft, as it is they are {trim.cleanFt} ft.</p>}

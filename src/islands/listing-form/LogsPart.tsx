@@ -46,7 +46,7 @@ function Sums({ logs, rows }: { readonly logs: Parameters<typeof totalFigures>[0
         {(['internationalQuarter', 'scribnerDecimalC', 'doyle'] as const).map((rule) => (
           <div className="flex items-baseline justify-between gap-4 border-b border-rule py-1.5" key={rule}><dt>{logRuleNames[rule]}</dt><dd className="figure font-bold">{wholeNumber(total.boardFeet[rule])} bf</dd></div>
         ))}
-        <div className="flex items-baseline justify-between gap-4 py-1.5"><dt>Green weight with bark</dt><dd className="figure font-bold">{wholeNumber(Math.round(total.weightLb / 10) * 10)} lb</dd></div>
+        <div className="flex items-baseline justify-between gap-4 py-1.5"><dt>Green weight, with bark</dt><dd className="figure font-bold">{wholeNumber(Math.round(total.weightLb / 10) * 10)} lb</dd></div>
       </dl>
       <p className="mt-2 max-w-prose text-sm text-ink-soft">A tape at home reads high more often than low: by International ¼ expect {wholeNumber(total.low)} to {wholeNumber(total.high)} bf. {whyRulesDiffer}</p>
     </div>

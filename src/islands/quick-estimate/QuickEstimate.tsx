@@ -29,12 +29,12 @@ export default function QuickEstimate({ typed: given = firstTyped, species }: Pr
   return (
     <form className="sheet p-5 sm:p-7" method="get" action="/#estimate" id="estimate" aria-labelledby="estimate-title" onSubmit={live ? (event) => event.preventDefault() : undefined}>
       <h2 id="estimate-title">What is in this log?</h2>
+      <p className="mt-1 text-sm text-ink-soft">Measure across the small end, inside the bark: two readings at right angles, halved.</p>
       <div className="mt-4 grid gap-x-3 gap-y-4 sm:grid-cols-3">
         <Select name="species" label="Species" options={species} value={typed.species} onChange={change('species')} error={problemAt(problems, 'species')} />
         <Field name="smallEnd" label="Small end" suffix="in" figure inputMode="text" autoComplete="off" value={typed.smallEnd} onChange={change('smallEnd')} error={problemAt(problems, 'smallEnd')} />
         <Field name="length" label="Length" suffix="ft" figure inputMode="text" autoComplete="off" value={typed.length} onChange={change('length')} error={problemAt(problems, 'length')} />
       </div>
-      <p className="mt-1 text-sm text-ink-soft">Across the small end, inside the bark: two readings at right angles, halved.</p>
       {!live && <div className="mt-4"><Button type="submit">Work it out</Button></div>}
       {last && <Answer worked={last} stale={worked === null} />}
     </form>
