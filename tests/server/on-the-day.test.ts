@@ -225,7 +225,7 @@ describe('hours', () => {
     expect(after.settlement.costCents).toBe(9_900 + 31_500);
     expect(after.sha256).not.toBe(before.sha256);
     expect(after.view.clock.find(({ id }) => id === wrong.id)).toMatchObject({ endsAt: '2026-08-04T11:00:00-05:00', corrections: [{ startsAt: '2026-08-04T08:00:00-05:00', endsAt: '2026-08-04T12:00:00-05:00', reason: 'The phone was an hour fast' }] });
-    expect(tallyLines(after.view, 'America/Chicago').find(({ ref }) => ref === `clock:${wrong.id}`)?.text).toBe('Sawing, Tue 4 Aug, 8:00 am to Tue 4 Aug, 11:00 am; put right, first written Tue 4 Aug, 8:00 am to Tue 4 Aug, 12:00 pm: The phone was an hour fast');
+    expect(tallyLines(after.view, 'America/Chicago').find(({ ref }) => ref === `clock:${wrong.id}`)?.text).toBe('Sawing, Tue 4 Aug, 8:00 am to 11:00 am; put right, first written Tue 4 Aug, 8:00 am to Tue 4 Aug, 12:00 pm: The phone was an hour fast');
     // The phone shows the same before it has sent it, and is bound to the same.
     expect(await hashOf(withEntries(before.view, [right]))).toBe(after.sha256);
     expect(withEntries(after.view, [right]).clock).toEqual(after.view.clock);
