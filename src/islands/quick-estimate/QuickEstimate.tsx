@@ -35,7 +35,8 @@ export default function QuickEstimate({ typed: given = firstTyped, species }: Pr
         <Field name="smallEnd" label="Small end" suffix="in" figure inputMode="text" autoComplete="off" value={typed.smallEnd} onChange={change('smallEnd')} error={problemAt(problems, 'smallEnd')} />
         <Field name="length" label="Length" suffix="ft" figure inputMode="text" autoComplete="off" value={typed.length} onChange={change('length')} error={problemAt(problems, 'length')} />
       </div>
-      {!live && <div className="mt-4"><Button type="submit">Work it out</Button></div>}
+      {/* Only where no script will ever run: a button that goes away once one does would move what is below. */}
+      <noscript><div className="mt-4"><Button type="submit">Work it out</Button></div></noscript>
       {last && <Answer worked={last} stale={worked === null} />}
     </form>
   );
