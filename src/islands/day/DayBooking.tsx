@@ -40,7 +40,7 @@ export function DayBooking({ booking }: { readonly booking: KeptBooking }): Reac
       <nav className="mx-auto max-w-[34rem] px-4" aria-label="Back"><a className="inline-flex min-h-glove items-center" href="#">All milling days</a></nav>
       {view && mine && begun && <DayTally view={view} booking={booking} />}
       {view && !mine && <LandownersDay view={view} booking={booking} />}
-      <div className="mx-auto max-w-[34rem] px-4 pb-12">
+      <div className={`mx-auto max-w-[34rem] px-4 pb-12${mine && begun ? ' pt-10' : ''}`}>
         <Title second={begun && !mine}>{booking.title}</Title>
         <p className="mt-1">{booking.startsAt ? `${booking.days.map(formatDay).join(', ')}. Starts ${formatInstant(new Date(booking.startsAt), booking.timeZone)}.` : 'No day yet.'}</p>
         {mine && view && !begun && <CheckList place={booking.place} onStart={start} />}
