@@ -30,6 +30,13 @@ describe('a sawyer’s own pages', () => {
     expect(await own.text()).not.toMatch(/\sstyle="|\son[a-z]+="/);
   });
 
+  test('say to whoever has not confirmed the address what is left, and where the letter is sent again', async () => {
+    const left = await (await unconfirmed.get('/sawyer')).text();
+    expect(left).toContain('One step is left');
+    expect(left).toMatch(/<main[\s\S]*href="\/account"/);
+    expect(await (await landowner.get('/sawyer')).text()).toContain('This is not yours to do');
+  });
+
   test.each(['/sawyer/profile', '/sawyer/rates', '/sawyer/calendar', '/sawyer/bids'])('%s takes no post from a landowner or another site', async (path) => {
     expect((await landowner.post(path, { ...rateCardTyped(OAK_CARD), deed: 'renew-feed', 'bids[]': 'x' })).status).toBe(403);
     expect((await sawyer.request(path, { method: 'POST', headers: { origin: 'https://elsewhere.example' }, body: new URLSearchParams({ deed: 'renew-feed' }) })).status).toBe(403);
