@@ -17,7 +17,7 @@ export async function setUpSawyer(page: Page, businessName: string): Promise<voi
   await expect(page).not.toHaveURL(/\/sawyer\/rates/);
   await page.goto('/sawyer/profile');
   for (const [name, value] of Object.entries({ businessName, zip: '54665', travelMiles: '60', noticeDays: '0' })) await field(page, name).fill(value);
-  for (const box of await page.locator('[name="workingDays[]"]').all()) await box.check();
+  for (const box of await page.locator('[name="workingDays"]').all()) await box.check();
   await page.getByRole('button', { name: 'Save the profile' }).click();
   await expect(page).not.toHaveURL(/\/sawyer\/profile/);
 }
