@@ -1,4 +1,4 @@
-import { useEffect, useMemo, useState, type ReactElement } from 'react';
+import { useEffect, useMemo, useRef, useState, type ReactElement } from 'react';
 import { problemAt } from '~/components/field-ids.ts';
 import { formatFeet, formatInches } from '~/domain/measure.ts';
 import { paths } from '~/domain/paths.ts';
@@ -21,19 +21,25 @@ const whole = (figure: number): string => Math.round(figure).toLocaleString('en-
 export default function QuickEstimate({ typed: given = firstTyped, species }: Props): ReactElement {
   const [typed, setTyped] = useState(given);
   const [live, setLive] = useState(false);
-  useEffect(() => setLive(true), []);
+  const form = useRef<HTMLFormElement>(null);
+  useEffect(() => {
+    setLive(true);
+    // The fields keep their own text, so that what was typed before the script came is read here and not put back.
+    const there = new FormData(form.current ?? undefined);
+    setTyped((before) => ({ species: String(there.get('species') ?? before.species), smallEnd: String(there.get('smallEnd') ?? before.smallEnd), length: String(there.get('length') ?? before.length) }));
+  }, []);
   const { worked, problems } = useMemo(() => workOut(typed), [typed]);
   const [last, setLast] = useState(worked);
   if (worked && worked !== last) setLast(worked);
   const change = (name: keyof Typed) => (event: { target: { value: string } }) => setTyped((before) => ({ ...before, [name]: event.target.value }));
   return (
-    <form className="sheet p-5 sm:p-7" method="get" action="/#estimate" id="estimate" aria-labelledby="estimate-title" onSubmit={live ? (event) => event.preventDefault() : undefined}>
+    <form ref={form} className="sheet p-5 sm:p-7" method="get" action="/#estimate" id="estimate" aria-labelledby="estimate-title" onSubmit={live ? (event) => event.preventDefault() : undefined}>
       <h2 id="estimate-title">What is in this log?</h2>
       <p className="mt-1 text-sm text-ink-soft">Measure across the small end, inside the bark: two readings at right angles, halved.</p>
       <div className="mt-4 grid gap-x-3 gap-y-4 sm:grid-cols-3">
-        <Select name="species" label="Species" options={species} value={typed.species} onChange={change('species')} error={problemAt(problems, 'species')} />
-        <Field name="smallEnd" label="Small end" suffix="in" figure inputMode="text" autoComplete="off" value={typed.smallEnd} onChange={change('smallEnd')} error={problemAt(problems, 'smallEnd')} />
-        <Field name="length" label="Length" suffix="ft" figure inputMode="text" autoComplete="off" value={typed.length} onChange={change('length')} error={problemAt(problems, 'length')} />
+        <Select name="species" label="Species" options={species} defaultValue={given.species} onChange={change('species')} error={problemAt(problems, 'species')} />
+        <Field name="smallEnd" label="Small end" suffix="in" figure inputMode="text" autoComplete="off" defaultValue={given.smallEnd} onChange={change('smallEnd')} error={problemAt(problems, 'smallEnd')} />
+        <Field name="length" label="Length" suffix="ft" figure inputMode="text" autoComplete="off" defaultValue={given.length} onChange={change('length')} error={problemAt(problems, 'length')} />
       </div>
       {/* Only where no script will ever run: a button that goes away once one does would move what is below. */}
       <noscript><div className="mt-4"><Button type="submit">Work it out</Button></div></noscript>
